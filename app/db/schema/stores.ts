@@ -1,0 +1,66 @@
+import { sql } from "drizzle-orm"
+import {
+	boolean,
+	check,
+	foreignKey,
+	index,
+	integer,
+	pgTable,
+	primaryKey,
+	smallint,
+	text,
+	unique,
+	uuid,
+} from "drizzle-orm/pg-core"
+import { cents, day, id, instant, producerId } from "./columns"
+import { priceTiers } from "./pricing"
+import { producers } from "./producers"
+
+/** A wholesale customer: its prices, its terms, where the van stops. */
+export const stores = pgTable(
+	"stores",
+	{
+		producerId: producerId().references(() => producers.id),
+		id: id(),
+		slug: text("slug").notNull(),
+		name: text("name").notNull(),
+		tierId: uuid("tier_id").notNull(),
+		address: text("address").notNull().default(""),
+		/** Where and until when goods are taken in: "To the back door, before 10 am." */
+		receivingNote: text("receiving_note").notNull().default(""),
+		minimumCents: cents("minimum_cents").notNull().default(0),
+		deliveryChargeCents: cents("delivery_charge_cents").notNull().default(0),
+		/** Orders of this much and more are delivered free; null = never. */
+		freeAboveCents: cents("free_above_cents"),
+		termsKind: text("terms_kind", { enum: ["on-receipt", "net", "end-of-month"] })
+			.notNull()
+			.default("net"),
+		termsDays: smallint("terms_days").notNull().default(14),
+		termsDiscountBasisPoints: integer("terms_discount_basis_points").notNull().default(0),
+		termsDiscountDays: smallint("terms_discount_days").notNull().default(0),
+		/** Bought for resale under a certificate good until this day; null = sales tax is charged where it applies. */
+		resaleCertificateUntil: day("resale_certificate_until"),
+		isActive: boolean("is_active").notNull().default(true),
+		createdAt: instant("created_at").notNull().defaultNow(),
+	},
+	(t) => [
+		primaryKey({ name: "stores_pk", columns: [t.producerId, t.id] }),
+		foreignKey({
+			name: "stores_tier",
+			columns: [t.producerId, t.tierId],
+			foreignColumns: [priceTiers.producerId, priceTiers.id],
+		}),
+		unique("stores_slug_once").on(t.producerId, t.slug),
+		index("stores_by_name").on(t.producerId, t.name, t.id),
+		check("stores_slug_form", sql`${t.slug} ~ '^[a-z0-9]+(-[a-z0-9]+)*$'`),
+		check(
+			"stores_money_not_negative",
+			sql`${t.minimumCents} >= 0 and ${t.deliveryChargeCents} >= 0 and coalesce(${t.freeAboveCents}, 0) >= 0`,
+		),
+		check("stores_terms_known", sql`${t.termsKind} in ('on-receipt','net','end-of-month')`),
+		check(
+			"stores_terms_sane",
+			sql`${t.termsDays} between 0 and 365 and ${t.termsDiscountBasisPoints} between 0 and 10000 and ${t.termsDiscountDays} between 0 and 365`,
+		),
+	],
+)
