@@ -24,7 +24,10 @@ export function withProducer<T>(producerId: string, work: (tx: Tx) => Promise<T>
 
 /** As `withProducer`, for reading: the database refuses any write, and all statements see one moment. */
 export function readProducer<T>(producerId: string, work: (tx: Tx) => Promise<T>): Promise<T> {
-	return inOneTransaction(`begin isolation level repeatable read read only; ${setting("waxbill.producer_id", producerId)}`, work)
+	return inOneTransaction(
+		`begin isolation level repeatable read read only; ${setting("waxbill.producer_id", producerId)}`,
+		work,
+	)
 }
 
 /** One transaction on the tables that belong to no producer. Rows of producers are invisible in it. */
@@ -34,7 +37,10 @@ export function withPlatform<T>(work: (tx: PlatformTx) => Promise<T>): Promise<T
 
 /** Reads what a person may know of themselves across producers: their own memberships. */
 export function readPerson<T>(userId: string, work: (tx: Tx) => Promise<T>): Promise<T> {
-	return inOneTransaction(`begin isolation level repeatable read read only; ${setting("waxbill.user_id", userId)}`, work)
+	return inOneTransaction(
+		`begin isolation level repeatable read read only; ${setting("waxbill.user_id", userId)}`,
+		work,
+	)
 }
 
 // `begin` and the setting go in one round trip, which takes no parameters: hence the strict check of the id.
