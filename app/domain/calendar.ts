@@ -32,6 +32,11 @@ export function isDay(text: string): boolean {
 	return !Number.isNaN(at.getTime()) && at.toISOString().slice(0, 10) === text
 }
 
+/** Sorts days, the earlier first. */
+export function compareDays(a: Day, b: Day): number {
+	return a < b ? -1 : a > b ? 1 : 0
+}
+
 function epochDay(day: Day): number {
 	if (!isDay(day)) throw new RangeError(`not a calendar day: ${day}`)
 	return Date.parse(`${day}T00:00:00Z`) / MS_PER_DAY
