@@ -1,0 +1,3 @@
+import type { RouteConfigEntry } from "@react-router/dev/routes"
+
+export const stallRoutes: RouteConfigEntry[] = []
