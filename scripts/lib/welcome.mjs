@@ -1,0 +1,33 @@
+import { existsSync, readFileSync } from "node:fs"
+import { join } from "node:path"
+import { workFolder } from "./paths.mjs"
+import { say } from "./say.mjs"
+
+/** Prints where everything is, whom the demo knows, and how to stop. */
+export function welcome({ ports, own }) {
+	const people = demoPeople()
+	const local = (port) => `http://127.0.0.1:${port}`
+	say()
+	say("Waxbill is running.")
+	say(`  The product       ${local(ports.web)}`)
+	say(`  Its mail          ${local(ports.mail)}   (sign-in codes arrive here)`)
+	say(`  The payment fake  ${local(ports.stripe)}`)
+	if (people.length > 0) {
+		const width = (key) => Math.max(...people.map((person) => String(person[key] ?? "").length))
+		const [name, role, email] = [width("name"), width("role"), width("email")]
+		say()
+		say("Sign in as one of the demo people; the code comes by mail:")
+		for (const person of people) {
+			const columns = [person.name.padEnd(name), person.role.padEnd(role), person.email.padEnd(email)]
+			const url = person.url?.startsWith("/") ? `${local(ports.web)}${person.url}` : (person.url ?? "")
+			say(`  ${columns.join("  ")}  ${url}`.trimEnd())
+		}
+	}
+	say()
+	say(`Ctrl-C stops all of it${own ? "; the data stay in .waxbill" : ""}. Logs are in .waxbill/log.`)
+}
+
+function demoPeople() {
+	const file = join(workFolder, "demo-people.json")
+	return existsSync(file) ? JSON.parse(readFileSync(file, "utf8")) : []
+}

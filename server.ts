@@ -1,0 +1,55 @@
+import { createRequestHandler } from "@react-router/express"
+import compression from "compression"
+import express, { type Express } from "express"
+import type { ServerBuild } from "react-router"
+import { closePool } from "~/db/client.server"
+import { type Env, EnvironmentError, readEnv } from "~/platform/env.server"
+import { live, ready } from "~/platform/health.server"
+import { bodyLimit, clientAddress, lastResort, securityHeaders } from "~/platform/http.server"
+import { requestLog } from "~/platform/log.server"
+import { inProcesses, listen } from "~/platform/serve.server"
+
+/** The web server's middleware; the order matters, and each step says what it relies on. */
+function createApp(env: Env, build: ServerBuild): Express {
+	const app = express()
+	app.disable("x-powered-by")
+	app.disable("etag")
+	app.set("trust proxy", env.TRUST_PROXY_HOPS)
+
+	// 1. First, so that every answer is logged and every request has its id and its client's address.
+	app.use(requestLog(), clientAddress)
+	// 2. Before anything that could fail: a probe must tell the process's state, not that of the pages.
+	app.get("/health/live", live)
+	app.get("/health/ready", ready)
+	app.use(securityHeaders(env.BASE_URL.startsWith("https:")))
+	// 3. Rendered copies of public pages go here: behind the headers, ahead of compression and of the pages.
+	// 4. Names under /assets change with their content; the rest of the folder keeps its names.
+	app.use(compression())
+	app.use("/assets", express.static("build/client/assets", { immutable: true, maxAge: "1y", index: false }))
+	app.use(express.static("build/client", { maxAge: "1h", index: false, redirect: false }))
+	// 5. The pages, behind the limit on what may be sent to them.
+	app.use(bodyLimit)
+	app.use(createRequestHandler({ build, mode: env.NODE_ENV }))
+	app.use(lastResort)
+	return app
+}
+
+/** The environment, or the end of the process with every fault named. */
+function completeEnv(): Env {
+	try {
+		return readEnv()
+	} catch (error) {
+		if (!(error instanceof EnvironmentError)) throw error
+		console.error(error.message)
+		process.exit(1)
+	}
+}
+
+const env = completeEnv()
+// Found beside this file at run time, not bundled into it: the pages are a build of their own.
+const pages = new URL("../server/index.js", import.meta.url).href
+
+inProcesses(env.PROCESSES, async () => {
+	const build: ServerBuild = await import(/* @vite-ignore */ pages)
+	listen(createApp(env, build), { host: env.HOST, port: env.PORT }, closePool)
+})
