@@ -1,0 +1,201 @@
+import type Stripe from "stripe"
+import { z } from "zod"
+import { getCustomer } from "./customers"
+import { invalidRequest, noSuch } from "./errors"
+import { type Cause, fromPage } from "./events"
+import type { Fake } from "./fake"
+import { newId } from "./ids"
+import { lineItemSchema, makeLines } from "./line-items"
+import { page } from "./lists"
+import { expandable, integer, list, mergeMetadata, metadata, paging, readParams } from "./params"
+import { cancelIntent } from "./payment-intents"
+import type { Endpoints } from "./router"
+
+const SHORTEST = 30 * 60
+const LONGEST = 24 * 60 * 60
+
+const createSchema = z.strictObject({
+	...expandable,
+	mode: z.literal("payment", "The payment fake knows the mode payment only"),
+	line_items: list(lineItemSchema),
+	success_url: z.url("Not a valid URL"),
+	cancel_url: z.url("Not a valid URL").optional(),
+	client_reference_id: z.string().max(200).optional(),
+	customer: z.string().optional(),
+	customer_email: z.email("Invalid email address").optional(),
+	expires_at: integer.optional(),
+	locale: z.string().optional(),
+	metadata: metadata.optional(),
+	payment_intent_data: z.strictObject({ description: z.string().optional(), metadata: metadata.optional() }).optional(),
+	payment_method_types: list(z.literal("card")).optional(),
+	submit_type: z.enum(["auto", "book", "donate", "pay"]).optional(),
+})
+const updateSchema = z.strictObject({ ...expandable, metadata: metadata.optional() })
+const listSchema = z.strictObject({
+	...paging,
+	customer: z.string().optional(),
+	payment_intent: z.string().optional(),
+	status: z.enum(["complete", "expired", "open"]).optional(),
+})
+
+/** The session named `id`; refuses with 404 `resource_missing`. */
+export function getSession(fake: Fake, id: string): Stripe.Checkout.Session {
+	const session = fake.store.sessions.get(id)
+	if (!session) throw noSuch("checkout.session", id, "session")
+	return session
+}
+
+function checkExpiry(fake: Fake, asked: number | undefined): number {
+	const now = fake.seconds()
+	if (asked === undefined) return now + LONGEST
+	const wrong = (bound: string) =>
+		invalidRequest(`The \`expires_at\` timestamp must be ${bound} from Checkout Session creation.`, {
+			param: "expires_at",
+		})
+	if (asked < now + SHORTEST) throw wrong("at least 30 minutes")
+	if (asked > now + LONGEST) throw wrong("less than 24 hours")
+	return asked
+}
+
+function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkout.Session {
+	if (given.customer !== undefined && given.customer_email !== undefined) {
+		throw invalidRequest("You may only specify one of these parameters: customer, customer_email.", {
+			code: "parameters_exclusive",
+			param: "customer_email",
+		})
+	}
+	const customer = given.customer === undefined ? null : getCustomer(fake, given.customer, "customer")
+	const expiresAt = checkExpiry(fake, given.expires_at)
+	const { lines, total, currency } = makeLines(fake, given.line_items)
+	const id = newId("cs_test", 40)
+	const session: Stripe.Checkout.Session = {
+		...blankSession,
+		id,
+		amount_subtotal: total,
+		amount_total: total,
+		cancel_url: given.cancel_url ?? null,
+		client_reference_id: given.client_reference_id ?? null,
+		created: fake.seconds(),
+		currency,
+		customer: customer?.id ?? null,
+		customer_creation: customer ? null : "if_required",
+		customer_email: given.customer_email ?? null,
+		expires_at: expiresAt,
+		locale: given.locale ?? null,
+		metadata: mergeMetadata({}, given.metadata),
+		submit_type: given.submit_type ?? null,
+		success_url: given.success_url,
+		url: `${fake.url}/pay/${id}`,
+	}
+	fake.store.sessions.set(id, session)
+	fake.store.sessionSecrets.set(id, {
+		lines,
+		intentDescription: given.payment_intent_data?.description ?? null,
+		intentMetadata: mergeMetadata({}, given.payment_intent_data?.metadata),
+	})
+	return session
+}
+
+const blankSession = {
+	object: "checkout.session",
+	adaptive_pricing: null,
+	after_expiration: null,
+	allow_promotion_codes: null,
+	allowed_payment_method_types: null,
+	automatic_tax: { enabled: false, liability: null, provider: null, status: null },
+	billing_address_collection: null,
+	client_secret: null,
+	collected_information: null,
+	consent: null,
+	consent_collection: null,
+	currency_conversion: null,
+	custom_fields: [],
+	custom_text: { after_submit: null, shipping_address: null, submit: null, terms_of_service_acceptance: null },
+	customer_account: null,
+	customer_details: null,
+	discounts: [],
+	integration_identifier: null,
+	invoice: null,
+	invoice_creation: null,
+	livemode: false,
+	managed_payments: null,
+	mode: "payment",
+	origin_context: null,
+	// Made when somebody tries to pay, not before: an application must not count on it in an open session.
+	payment_intent: null,
+	payment_link: null,
+	payment_method_collection: "if_required",
+	payment_method_configuration_details: null,
+	payment_method_options: {},
+	payment_method_types: ["card"],
+	payment_status: "unpaid",
+	permissions: null,
+	recovered_from: null,
+	saved_payment_method_options: null,
+	setup_intent: null,
+	shipping_address_collection: null,
+	shipping_cost: null,
+	shipping_options: [],
+	status: "open",
+	subscription: null,
+	total_details: { amount_discount: 0, amount_shipping: 0, amount_tax: 0 },
+	ui_mode: "hosted_page",
+	wallet_options: null,
+} satisfies Partial<Stripe.Checkout.Session>
+
+/** Ends an open session and what was begun under it; emits checkout.session.expired. */
+function expire(fake: Fake, session: Stripe.Checkout.Session, cause: Cause): void {
+	session.status = "expired"
+	session.url = null
+	const intent = fake.store.intents.get(String(session.payment_intent))
+	if (intent && intent.status !== "canceled") cancelIntent(fake, intent, "automatic", cause)
+	fake.events.emit("checkout.session.expired", session, cause)
+}
+
+/** Expires every open session whose time has come; called before each request and now and then. */
+export function expireDue(fake: Fake): void {
+	for (const session of fake.store.sessions.values()) {
+		if (session.status === "open" && session.expires_at <= fake.seconds()) expire(fake, session, fromPage)
+	}
+}
+
+export const checkoutSessionEndpoints: Endpoints = {
+	"POST /v1/checkout/sessions": ({ fake, form }) => create(fake, readParams(createSchema, form)),
+	"GET /v1/checkout/sessions": ({ fake, form }) => {
+		const { customer, payment_intent, status, ...rest } = readParams(listSchema, form)
+		const rows = [...fake.store.sessions.values()].filter(
+			(row) =>
+				(customer === undefined || row.customer === customer) &&
+				(payment_intent === undefined || row.payment_intent === payment_intent) &&
+				(status === undefined || row.status === status),
+		)
+		return page(rows, "/v1/checkout/sessions", rest)
+	},
+	"GET /v1/checkout/sessions/:id": ({ fake, form, id }) => {
+		readParams(z.strictObject(expandable), form)
+		return getSession(fake, id)
+	},
+	"POST /v1/checkout/sessions/:id": ({ fake, form, id }) => {
+		const session = getSession(fake, id)
+		session.metadata = mergeMetadata(session.metadata ?? {}, readParams(updateSchema, form).metadata)
+		return session
+	},
+	"GET /v1/checkout/sessions/:id/line_items": ({ fake, form, id }) => {
+		const given = readParams(z.strictObject(paging), form)
+		getSession(fake, id)
+		// Lines are answered in their own order, not newest first.
+		const lines = [...(fake.store.sessionSecrets.get(id)?.lines ?? [])].reverse()
+		return page(lines, `/v1/checkout/sessions/${id}/line_items`, given)
+	},
+	"POST /v1/checkout/sessions/:id/expire": ({ fake, form, id, cause }) => {
+		readParams(z.strictObject(expandable), form)
+		const session = getSession(fake, id)
+		if (session.status !== "open") {
+			throw invalidRequest(
+				`Only Checkout Sessions with a status in ["open"] can be expired. This Checkout Session has a status of \`${session.status}\`.`,
+			)
+		}
+		expire(fake, session, cause)
+		return session
+	},
+}

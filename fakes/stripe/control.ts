@@ -1,0 +1,57 @@
+import type { IncomingMessage, ServerResponse } from "node:http"
+import { z } from "zod"
+import type { Fake } from "./fake"
+import { readBody, sendJson } from "./http"
+import { dumpStore, resetStore } from "./store"
+import { setSwitches, switchesOff } from "./switches"
+import type { Courier } from "./webhooks"
+
+const flushSchema = z.strictObject({ order: z.enum(["created", "reverse"]).default("created") })
+
+/** Turns switches on or off; events that were held are let go when holding ends. */
+export function changeSwitches(fake: Fake, courier: Courier, changes: unknown): void {
+	setSwitches(fake.switches, changes)
+	if (!fake.switches.holdEvents) void courier.flush("created")
+}
+
+/** Forgets all payments, events, answers and switches; the readers of the demo are there again. */
+export function resetFake(fake: Fake, courier: Courier): void {
+	courier.drop()
+	resetStore(fake.store)
+	Object.assign(fake.switches, switchesOff())
+}
+
+/**
+ * The paths for tests and people who try things out: GET and POST /_switches, POST /_reset, POST /_events/flush,
+ * GET /_state. Answers false when the path is none of these.
+ */
+export function createControl(fake: Fake, courier: Courier, saved: () => void) {
+	const routes: Record<string, (body: unknown) => unknown> = {
+		"GET /_switches": () => fake.switches,
+		"POST /_switches": (body) => {
+			changeSwitches(fake, courier, body)
+			return fake.switches
+		},
+		"POST /_reset": () => {
+			resetFake(fake, courier)
+			saved()
+			return { reset: true }
+		},
+		"POST /_events/flush": async (body) => {
+			await courier.flush(flushSchema.parse(body).order)
+			return { flushed: true }
+		},
+		"GET /_state": () => ({ ...dumpStore(fake.store), deliveries: fake.store.deliveries }),
+	}
+	return async (request: IncomingMessage, response: ServerResponse, path: string): Promise<boolean> => {
+		const handle = routes[`${request.method} ${path}`]
+		if (!handle) return false
+		try {
+			const text = request.method === "POST" ? await readBody(request) : ""
+			sendJson(response, 200, JSON.stringify(await handle(text ? JSON.parse(text) : {}), null, 2))
+		} catch (error) {
+			sendJson(response, 400, JSON.stringify({ error: { message: String(error) } }))
+		}
+		return true
+	}
+}
