@@ -1,0 +1,79 @@
+import { addDays, type Day, weekday } from "~/domain/calendar"
+import { firstDeliveryDay } from "~/domain/delivery/delivery-days"
+import { cadenceOf } from "./cadence"
+import { occurrences } from "./recurrence"
+
+/** One date of a standing order. */
+export type StandingDate = {
+	/** The date by the rule: the name of this date, whatever day the van comes. */
+	ruleOn: Day
+	/** The day the van comes; later than `ruleOn` when that is shut or no delivery day. */
+	deliveryOn: Day
+	isMoved: boolean
+	/** Whether nothing comes: skipped by the store, or within a pause. */
+	isSkipped: boolean
+}
+
+/** A standing order's rule and what bends it. */
+export type StandingRule = {
+	rule: string
+	startsOn: Day
+	endsOn: Day | null
+	/** From this day on every date is skipped; null while it runs. */
+	pausedFrom: Day | null
+	/** ISO weekdays on which the van comes to the store, 1 Monday to 7 Sunday. */
+	deliveryWeekdays: readonly number[]
+	shutDays: readonly Day[]
+	/** Dates by the rule on which the store wants nothing. */
+	skips: readonly Day[]
+}
+
+/**
+ * The day from which the weeks are counted: the first date that the weekday allows on or after `startsOn`, so that "every
+ * other Tuesday from Thursday" begins on the next Tuesday and not in the week after.
+ */
+function anchor(rule: string, startsOn: Day): Day {
+	const cadence = cadenceOf(rule)
+	if (!cadence) throw new RangeError(`not the rule of a standing order: ${rule}`)
+	return cadence.every === "week" ? addDays(startsOn, (cadence.weekday - weekday(startsOn) + 7) % 7) : startsOn
+}
+
+/**
+ * The next `count` dates of a standing order whose delivery is on or after `from`, skipped ones among them and marked.
+ * A date on a shut day, or on a weekday when the van does not come, moves to the store's next delivery day after it. A
+ * date that would move onto or past the rule's next date is dropped: the van comes once for both. No delivery falls after
+ * `endsOn`. Fewer come back when the order ends or no delivery day is left within a year of a date. Throws RangeError on
+ * a rule that `ruleOf` does not write. Source: design.md, "Standing orders"; the rule for moving is stated here.
+ */
+export function nextDeliveryDates(standing: StandingRule, from: Day, count: number): StandingDate[] {
+	const { deliveryWeekdays, shutDays, endsOn } = standing
+	const startsOn = anchor(standing.rule, standing.startsOn)
+	if (deliveryWeekdays.length === 0 || count <= 0) return []
+	// Dates lie a week or more apart: no date moves further than one week for each shut day and one more, so that many
+	// dates may lie before `from`; each shut day drops at most one; and one more says what comes next.
+	const weeksOfMove = shutDays.length + 1
+	const ruleDays = occurrences({
+		rule: standing.rule,
+		startsOn,
+		from: addDays(from, -7 * weeksOfMove),
+		...(endsOn === null ? {} : { until: endsOn }),
+		count: count + weeksOfMove + shutDays.length + 2,
+	})
+
+	const dates: StandingDate[] = []
+	for (const [index, ruleOn] of ruleDays.entries()) {
+		if (dates.length === count) break
+		const deliveryOn = firstDeliveryDay({ from: ruleOn, deliveryWeekdays, shutDays })
+		const next = ruleDays[index + 1]
+		if (deliveryOn === null || deliveryOn < from || (endsOn !== null && deliveryOn > endsOn)) continue
+		if (deliveryOn !== ruleOn && next !== undefined && next <= deliveryOn) continue
+		const isPaused = standing.pausedFrom !== null && ruleOn >= standing.pausedFrom
+		dates.push({
+			ruleOn,
+			deliveryOn,
+			isMoved: deliveryOn !== ruleOn,
+			isSkipped: isPaused || standing.skips.includes(ruleOn),
+		})
+	}
+	return dates
+}

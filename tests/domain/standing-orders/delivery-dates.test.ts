@@ -1,0 +1,140 @@
+import fc from "fast-check"
+import { describe, expect, test } from "vitest"
+import { addDays, daysBetween, type Weekday, weekday } from "~/domain/calendar"
+import { ruleOf } from "~/domain/standing-orders/cadence"
+import { nextDeliveryDates, type StandingRule } from "~/domain/standing-orders/delivery-dates"
+import { occurrences } from "~/domain/standing-orders/recurrence"
+
+const everyOtherTuesday: StandingRule = {
+	rule: "FREQ=WEEKLY;INTERVAL=2;BYDAY=TU",
+	startsOn: "2026-08-18",
+	endsOn: null,
+	pausedFrom: null,
+	deliveryWeekdays: [2, 5],
+	shutDays: [],
+	skips: [],
+}
+const days = (standing: StandingRule, from: string, count: number) =>
+	nextDeliveryDates(standing, from, count).map((date) => date.deliveryOn)
+
+describe("the next dates of a standing order", () => {
+	test("every other Tuesday gives every other Tuesday", () => {
+		expect(days(everyOtherTuesday, "2026-08-13", 6)).toEqual([
+			"2026-08-18",
+			"2026-09-01",
+			"2026-09-15",
+			"2026-09-29",
+			"2026-10-13",
+			"2026-10-27",
+		])
+	})
+
+	test("looked at later, the weeks are still counted from the start", () => {
+		expect(days(everyOtherTuesday, "2026-08-19", 2)).toEqual(["2026-09-01", "2026-09-15"])
+		expect(days(everyOtherTuesday, "2027-08-19", 1)).toEqual(["2027-08-31"])
+	})
+
+	test("a start on another weekday begins with the first date that fits", () => {
+		const thursday = { ...everyOtherTuesday, startsOn: "2026-08-13" }
+		expect(days(thursday, "2026-08-13", 2)).toEqual(["2026-08-18", "2026-09-01"])
+	})
+
+	test("a skipped date stays in view, marked, and so do all dates of a pause", () => {
+		const bent = { ...everyOtherTuesday, skips: ["2026-09-01"], pausedFrom: "2026-09-29" }
+		expect(nextDeliveryDates(bent, "2026-08-13", 4).map((date) => date.isSkipped)).toEqual([false, true, false, true])
+	})
+
+	test("a date on a shut day moves to the store's next delivery day and keeps its name", () => {
+		const shut = { ...everyOtherTuesday, shutDays: ["2026-09-01"] }
+		expect(nextDeliveryDates(shut, "2026-08-19", 2)).toEqual([
+			{ ruleOn: "2026-09-01", deliveryOn: "2026-09-04", isMoved: true, isSkipped: false },
+			{ ruleOn: "2026-09-15", deliveryOn: "2026-09-15", isMoved: false, isSkipped: false },
+		])
+	})
+
+	test("a date that moved past today is still to come", () => {
+		const shut = { ...everyOtherTuesday, shutDays: ["2026-09-01"] }
+		expect(days(shut, "2026-09-03", 1)).toEqual(["2026-09-04"])
+	})
+
+	test("a weekly date that would move onto the next one is dropped: the van comes once", () => {
+		const weekly = { ...everyOtherTuesday, rule: "FREQ=WEEKLY;BYDAY=TU", deliveryWeekdays: [2 as const] }
+		const shut = { ...weekly, shutDays: ["2026-08-25", "2026-09-01"] }
+		expect(days(shut, "2026-08-13", 3)).toEqual(["2026-08-18", "2026-09-08", "2026-09-15"])
+	})
+
+	test("a rule for a weekday when the van does not come is met on the next day it does", () => {
+		const wednesdays = { ...everyOtherTuesday, rule: "FREQ=WEEKLY;BYDAY=WE" }
+		expect(days(wednesdays, "2026-08-18", 2)).toEqual(["2026-08-21", "2026-08-28"])
+	})
+
+	test("nothing is delivered after the last day", () => {
+		const ending = { ...everyOtherTuesday, endsOn: "2026-09-15" }
+		expect(days(ending, "2026-08-13", 6)).toEqual(["2026-08-18", "2026-09-01", "2026-09-15"])
+		expect(days({ ...ending, shutDays: ["2026-09-15"] }, "2026-08-13", 6)).toEqual(["2026-08-18", "2026-09-01"])
+	})
+
+	test("the last Friday of the chosen months", () => {
+		const monthly = { ...everyOtherTuesday, rule: "FREQ=MONTHLY;BYMONTH=6,7;BYDAY=-1FR", startsOn: "2026-07-01" }
+		expect(days(monthly, "2026-07-01", 3)).toEqual(["2026-07-31", "2027-06-25", "2027-07-30"])
+	})
+
+	test("without a delivery day there is no date, and a strange rule throws", () => {
+		expect(days({ ...everyOtherTuesday, deliveryWeekdays: [] }, "2026-08-13", 3)).toEqual([])
+		expect(days(everyOtherTuesday, "2026-08-13", 0)).toEqual([])
+		expect(() => days({ ...everyOtherTuesday, rule: "FREQ=DAILY" }, "2026-08-13", 3)).toThrow(RangeError)
+	})
+
+	test("with any shut days and any cadence, dates rise, lie on open delivery days and are asked for once", () => {
+		const day = fc.integer({ min: 0, max: 200 }).map((ahead) => addDays("2026-05-01", ahead))
+		const anyWeekday = fc.integer({ min: 1, max: 7 }).map((one) => one as Weekday)
+		fc.assert(
+			fc.property(
+				fc.record({ interval: fc.integer({ min: 1, max: 4 }), weekday: anyWeekday, startsOn: day, from: day }),
+				fc.uniqueArray(anyWeekday, { minLength: 1, maxLength: 3 }),
+				fc.uniqueArray(day, { maxLength: 30 }),
+				({ interval, weekday: on, startsOn, from }, deliveryWeekdays, shutDays) => {
+					const rule = ruleOf({ every: "week", interval, weekday: on, months: [] })
+					const standing = { ...everyOtherTuesday, rule, startsOn, deliveryWeekdays, shutDays }
+					const dates = nextDeliveryDates(standing, from, 5)
+					expect(dates).toHaveLength(5)
+					for (const [index, date] of dates.entries()) {
+						expect(date.deliveryOn >= from && date.deliveryOn >= date.ruleOn && date.ruleOn >= startsOn).toBe(true)
+						expect(deliveryWeekdays).toContain(weekday(date.deliveryOn))
+						expect(shutDays).not.toContain(date.deliveryOn)
+						const before = dates[index - 1]
+						if (before) {
+							expect(date.deliveryOn > before.deliveryOn).toBe(true)
+							expect(daysBetween(before.ruleOn, date.ruleOn) % (7 * interval)).toBe(0)
+						}
+					}
+					const shorter = nextDeliveryDates(standing, from, 2)
+					expect(shorter).toEqual(dates.slice(0, 2))
+				},
+			),
+		)
+	})
+})
+
+describe("a recurrence", () => {
+	test("days before the first asked are passed over, and the last allowed is included", () => {
+		const search = { rule: "FREQ=WEEKLY;BYDAY=TU", startsOn: "2026-08-18", count: 10 }
+		expect(occurrences({ ...search, from: "2026-08-20", until: "2026-09-08" })).toEqual([
+			"2026-08-25",
+			"2026-09-01",
+			"2026-09-08",
+		])
+		expect(occurrences({ ...search, count: 0 })).toEqual([])
+	})
+
+	test("a rule's own count is counted from its start, not from the day asked", () => {
+		const search = { rule: "FREQ=WEEKLY;COUNT=3", startsOn: "2026-08-18", from: "2026-08-20", count: 10 }
+		expect(occurrences(search)).toEqual(["2026-08-25", "2026-09-01"])
+	})
+
+	test("a malformed rule throws", () => {
+		for (const rule of ["FREQ=NONSENSE", "hello", "FREQ=WEEKLY;BYDAY=XX"]) {
+			expect(() => occurrences({ rule, startsOn: "2026-08-18", count: 1 })).toThrow()
+		}
+	})
+})
