@@ -12,5 +12,6 @@ export default [
 	...deskRoutes,
 	...stallRoutes,
 	...authRoutes,
+	route("webhooks/stripe", "routes/webhooks/stripe.tsx"),
 	route("parts", "routes/parts.tsx"),
 ] satisfies RouteConfig

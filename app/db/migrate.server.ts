@@ -23,20 +23,23 @@ export async function migrateDatabase(databaseUrl: string, migrationsFolder = "d
 	}
 }
 
-/** The queue's tables, and the one function by which the application hands it a job inside its own transaction. */
+/** The queue's tables, and the two functions by which the application reaches them. */
 async function migrateQueue(databaseUrl: string): Promise<void> {
 	const pool = new pg.Pool({ connectionString: databaseUrl, options: "-c role=waxbill_queue", max: 2 })
+	// Reported by the query that was under way; without listeners it would end the process as well.
 	pool.on("error", () => {})
+	pool.on("connect", (connection) => connection.on("error", () => {}))
 	try {
 		await runMigrations({ pgPool: pool })
-		await pool.query(enqueueFunction)
+		await pool.query(queueFunctions)
 	} finally {
 		await pool.end()
 	}
 }
 
-// Runs with the rights of the queue's role: the application needs none on the queue's tables.
-const enqueueFunction = `
+// They run with the rights of the queue's role: the application needs none on the queue's tables. A job is handed over
+// inside the transaction that it belongs to; jobs of a killed worker are given back.
+const queueFunctions = `
 create or replace function jobs.enqueue(task text, payload json, run_at timestamptz default null, job_key text default null)
 returns void language sql security definer set search_path = graphile_worker, pg_temp
 as $$
@@ -44,4 +47,13 @@ as $$
 $$;
 revoke all on function jobs.enqueue(text, json, timestamptz, text) from public;
 grant execute on function jobs.enqueue(text, json, timestamptz, text) to waxbill_app;
+
+create or replace function jobs.free_stuck(held_for interval) returns void
+language sql security definer set search_path = graphile_worker, pg_temp
+as $$
+	select graphile_worker.force_unlock_workers(array_agg(distinct locked_by))
+	from graphile_worker.jobs where locked_at < now() - held_for;
+$$;
+revoke all on function jobs.free_stuck(interval) from public;
+grant execute on function jobs.free_stuck(interval) to waxbill_app;
 `

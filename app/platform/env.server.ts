@@ -59,6 +59,7 @@ export const envSchema = z.object({
 			.default("info"),
 	),
 	PROCESSES: whole(1, 64, 1),
+	UNDO_SECONDS: whole(0, 3600, 120),
 })
 
 /** The environment as the program uses it: `BASE_URL` is always an origin (no path, no slash at the end). */

@@ -1,26 +1,19 @@
 import { sql } from "drizzle-orm"
 import { outboxMails } from "~/db/schema"
 import type { Tx } from "~/db/transaction.server"
-import type { MailProps, MailTemplate } from "~emails/render"
+import type { Letter } from "~emails/templates"
 
 /** Decisions can be undone for this long before their mail goes. */
 export const DECISION_DELAY_SECONDS = 120
 
 /**
- * Puts a mail into the outbox in the transaction that it tells of: gone on rollback, sent by the worker after commit.
- * `onceKey` names the event; a second mail of the same event to the same person is not written. `delaySeconds` holds
+ * Puts a letter into the outbox in the transaction that it tells of: gone on rollback, sent by the worker after commit.
+ * `onceKey` names the event; a second letter of the same event to the same person is not written. `delaySeconds` holds
  * it back, so that a decision can still be undone.
  */
-export async function queueMail<Name extends MailTemplate>(
+export async function queueMail(
 	tx: Tx,
-	mail: {
-		producerId: string
-		to: string
-		template: Name
-		props: MailProps<Name>
-		onceKey: string
-		delaySeconds?: number
-	},
+	mail: Letter & { producerId: string; to: string; onceKey: string; delaySeconds?: number },
 ): Promise<void> {
 	const [row] = await tx
 		.insert(outboxMails)
@@ -28,7 +21,7 @@ export async function queueMail<Name extends MailTemplate>(
 			producerId: mail.producerId,
 			recipient: mail.to,
 			template: mail.template,
-			props: mail.props as Record<string, unknown>,
+			props: mail.props,
 			onceKey: mail.onceKey,
 		})
 		.onConflictDoNothing()

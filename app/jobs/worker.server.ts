@@ -1,0 +1,60 @@
+import { run, type TaskList } from "graphile-worker"
+import { closePool, createPool, pool } from "~/db/client.server"
+import { env } from "~/platform/env.server"
+import { log } from "~/platform/log.server"
+import type { Task } from "./task.server"
+
+/**
+ * The worker: takes jobs from the queue until it is told to stop. Each handler is loaded when its first job comes, so
+ * that starting is quick. Any number of workers may run; a job goes to one of them at a time, and may come again.
+ */
+const tasks: Record<string, () => Promise<{ default: Task }>> = {
+	"apply-stripe-event": () => import("./apply-stripe-event.job.server"),
+	"free-stuck-jobs": () => import("./free-stuck-jobs.job.server"),
+	"make-standing-orders": () => import("./make-standing-orders.job.server"),
+	"send-mail": () => import("./send-mail.job.server"),
+	"send-sign-in-mail": () => import("./send-sign-in-mail.job.server"),
+	"sweep-standing-orders": () => import("./sweep-standing-orders.job.server"),
+}
+
+const everyMinute = ["free-stuck-jobs", "sweep-standing-orders"]
+
+const taskList: TaskList = Object.fromEntries(
+	Object.entries(tasks).map(([name, load]) => [
+		name,
+		async (payload: unknown) => {
+			const started = performance.now()
+			const { default: handle } = await load()
+			await handle(payload)
+			log.info({ job: name, ms: Math.round(performance.now() - started) }, "job done")
+		},
+	]),
+)
+
+const queuePool = createPool(env.DATABASE_URL, "waxbill_queue", 4)
+const runner = await run({
+	pgPool: queuePool,
+	concurrency: 4,
+	pollInterval: 1_000,
+	noHandleSignals: true,
+	taskList,
+	crontab: everyMinute.map((name) => `* * * * * ${name} ?max=3`).join("\n"),
+})
+runner.events.on("job:error", ({ job, error }) => {
+	log.warn({ job: job.task_identifier, attempt: job.attempts, err: error }, "a job failed and is tried again later")
+})
+await pool().query("select 1")
+log.info("worker is ready")
+console.info("worker is ready")
+
+let stopping = false
+for (const signal of ["SIGINT", "SIGTERM"] as const) {
+	process.on(signal, async () => {
+		if (stopping) return
+		stopping = true
+		await runner.stop()
+		await Promise.all([closePool(), queuePool.end()])
+		process.exit(0)
+	})
+}
+await runner.promise
