@@ -1,0 +1,87 @@
+import { z } from "zod"
+import { dayWords, fullDay } from "~/domain/calendar"
+import { formatMoney } from "~/domain/money"
+import { type InvoiceProps, invoiceProps, openCents, sampleInvoice, sentLines } from "./documents/invoice-props"
+import { Button } from "./parts/button"
+import { Frame } from "./parts/frame"
+import { GivenTable } from "./parts/given-table"
+import { Lead, Small, Title } from "./parts/text"
+import { mailAddress, webAddress } from "./props"
+import { casesInSentence, joinKnown, KEEP_COMB, mistakeWords, NOT_FOR_INFANTS } from "./words"
+
+/** An invoice with the places to pay it and to print it; the PDF goes with the letter. */
+export const schema = z.strictObject({
+	invoice: invoiceProps,
+	sentTo: mailAddress,
+	payUrl: webAddress,
+	pdfUrl: webAddress,
+})
+type Props = z.infer<typeof schema>
+
+export const sample = {
+	invoice: sampleInvoice,
+	sentTo: "rosa@pantryandplume.example.test",
+	payUrl: "https://waxbill.example.test/buy/larkmoor/invoices/1203",
+	pdfUrl: "https://waxbill.example.test/buy/larkmoor/invoices/1203.pdf",
+} satisfies Props
+
+export function subject({ invoice }: Props): string {
+	const { yard, number, due } = invoice
+	const open = openCents(invoice)
+	if (open === 0) return `${yard.name}: invoice ${number}, nothing to pay`
+	return `${yard.name}: invoice ${number}, ${formatMoney(open)} by ${dayWords(due.on)}`
+}
+
+/** The PDF that goes with the letter. Loaded only here, since the drawing of PDFs takes a second to load. */
+export async function attachments({ invoice }: Props) {
+	const { renderInvoicePdf } = await import("./documents/invoice")
+	const name = `invoice-${invoice.number.replace(/[^\w-]+/g, "-")}.pdf`
+	return [{ filename: name, content: await renderInvoicePdf(invoice), contentType: "application/pdf" }]
+}
+
+export default function Invoice(props: Props) {
+	const { invoice, sentTo, payUrl, pdfUrl } = props
+	const { yard, number, issuedOn, due, charges, totalCents, paidCents, notes } = invoice
+	const open = openCents(invoice)
+	const paid = paidCents > 0 ? [{ label: "Paid, thank you", cents: -paidCents }] : []
+	return (
+		<Frame
+			title={subject(props)}
+			preview={`For ${dayWords(invoice.delivered.on)}; the printed page comes with this letter.`}
+			yard={yard}
+			about={[`Invoice ${number}`, fullDay(issuedOn)]}
+			sentTo={sentTo}
+		>
+			<Title>
+				{open > 0 ? (
+					<>
+						Please pay <b style={{ fontWeight: 600 }}>{formatMoney(open)}</b> by {dayWords(due.on)}.
+					</>
+				) : (
+					"There is nothing to pay."
+				)}
+			</Title>
+			<Lead>{deliverySentence(invoice)}</Lead>
+			<Button
+				href={payUrl}
+				words={open > 0 ? "Pay by card or bank" : "Open the invoice"}
+				beside={{ href: pdfUrl, words: "Printed page (PDF)" }}
+			/>
+			<GivenTable
+				casesHead="Cases sent"
+				lines={sentLines(invoice)}
+				charges={[...charges, ...paid]}
+				total={{ label: "To pay", cents: totalCents - paidCents }}
+			/>
+			<Small lines={[`${KEEP_COMB} ${NOT_FOR_INFANTS}`, ...notes, mistakeWords(yard)]} />
+		</Frame>
+	)
+}
+
+/** "For Pantry & Plume: eight cases, Tuesday, August 18, 8:40 am, back door, signed for by Rosa Quill." */
+function deliverySentence({ store, delivered, lines }: InvoiceProps): string {
+	const count = lines.reduce((sum, line) => sum + line.casesSent, 0)
+	const signed = delivered.signedBy && `signed for by ${delivered.signedBy}`
+	const known = joinKnown([dayWords(delivered.on), delivered.at, delivered.place, signed])
+	return `For ${store.name}: ${casesInSentence(count)} on ${known}.`
+}

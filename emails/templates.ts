@@ -1,0 +1,53 @@
+import type { ComponentType } from "react"
+import type { z } from "zod"
+import * as invitation from "./invitation"
+import * as invoice from "./invoice"
+import * as orderConfirmed from "./order-confirmed"
+import * as orderReceived from "./order-received"
+import * as orderSent from "./order-sent"
+import * as paymentReceived from "./payment-received"
+import * as signInCode from "./sign-in-code"
+import * as signInUnknown from "./sign-in-unknown"
+import * as standingOrderSet from "./standing-order-set"
+
+/** A file that goes with a letter. */
+export interface MailAttachment {
+	filename: string
+	content: Buffer
+	contentType: string
+}
+
+/** What a module in this folder exports to be a letter. `sample` is made-up data for previews and tests. */
+export interface Template<Props> {
+	schema: z.ZodType<Props>
+	default: ComponentType<Props & object>
+	subject: (props: Props) => string
+	sample: Props
+	attachments?: (props: Props) => Promise<MailAttachment[]>
+}
+
+const letter = <Props>(template: Template<Props>): Template<Props> => template
+
+/** Every letter the product sends, by the name that an outbox row carries. Names are kept: rows may wait for days. */
+export const templates = {
+	"sign-in-code": letter(signInCode),
+	"sign-in-unknown": letter(signInUnknown),
+	invitation: letter(invitation),
+	"order-received": letter(orderReceived),
+	"order-confirmed": letter(orderConfirmed),
+	"order-sent": letter(orderSent),
+	invoice: letter(invoice),
+	"payment-received": letter(paymentReceived),
+	"standing-order-set": letter(standingOrderSet),
+}
+
+export type TemplateName = keyof typeof templates
+type PropsOf<Name extends TemplateName> = z.infer<(typeof templates)[Name]["schema"]>
+
+/** A letter as the outbox holds it: the name and the props that belong to that name. */
+export type Letter = { [Name in TemplateName]: { template: Name; props: PropsOf<Name> } }[TemplateName]
+
+/** Whether `name`, as it stands in an outbox row, is a letter this version knows. */
+export function isTemplateName(name: string): name is TemplateName {
+	return Object.hasOwn(templates, name)
+}
