@@ -127,3 +127,16 @@ BEGIN
 	END IF;
 	RETURN NEXT;
 END $$;
+--> statement-breakpoint
+
+-- What the public shop goes by now: its version and the day there. Null for an unknown name.
+CREATE FUNCTION shop_stamp(producer_slug text) RETURNS text LANGUAGE plpgsql AS $$
+DECLARE found producers; stamp text;
+BEGIN
+	SELECT * INTO found FROM producers p WHERE p.slug = producer_slug;
+	IF found.id IS NULL THEN RETURN NULL; END IF;
+	PERFORM set_config('waxbill.producer_id', found.id::text, true);
+	SELECT v.version || ' ' || (now() AT TIME ZONE found.time_zone)::date INTO stamp FROM shop_versions v WHERE v.producer_id = found.id;
+	PERFORM set_config('waxbill.producer_id', '', true);
+	RETURN coalesce(stamp, '0 ' || (now() AT TIME ZONE found.time_zone)::date);
+END $$;
