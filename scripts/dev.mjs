@@ -31,7 +31,7 @@ await supervise(
 		crew.start("worker", process.execPath, [tsx, "watch", "app/jobs/worker.server.ts"], printed("worker"))
 		const args = [reactRouter, "dev", "--host", "127.0.0.1", "--port", String(web), "--strictPort"]
 		const pages = crew.start("web server", process.execPath, args, printed("web"))
-		await untilItAnswers(`http://127.0.0.1:${web}/`, pages, 120)
+		await untilItAnswers(`http://127.0.0.1:${web}/`, pages, { seconds: 120 })
 		welcome({ ports, own: !process.env.DATABASE_URL })
 		await crew.ended
 	},

@@ -1,8 +1,8 @@
 import { migrateDatabase } from "~/db/migrate.server"
+import { run } from "./run"
 
-const url = process.env.DATABASE_URL
-if (!url) {
-	console.error("DATABASE_URL is missing: it names the database to migrate.")
-	process.exit(1)
-}
-await migrateDatabase(url)
+await run(async () => {
+	const url = process.env.DATABASE_URL
+	if (!url) throw new Error("DATABASE_URL is missing: it names the database to migrate.")
+	await migrateDatabase(url)
+})

@@ -1,5 +1,8 @@
 import { closePool } from "~/db/client.server"
 import { seedDemo } from "~/services/demo/seed-demo.server"
+import { run } from "./run"
 
-await seedDemo()
-await closePool()
+await run(async () => {
+	await seedDemo()
+	await closePool()
+})

@@ -18,6 +18,7 @@ class Crew {
 	#undo = []
 	#stopping
 	#end
+	#taken = false
 	/** Settles when the crew must stop: rejects when a member ended by itself, resolves at a signal. */
 	ended = new Promise((resolve, reject) => {
 		this.#end = { resolve, reject }
@@ -77,7 +78,7 @@ class Crew {
 		await new Promise((resolve) => setImmediate(resolve))
 		for (const member of this.#children.toReversed()) await endMember(member)
 		for (const undo of this.#undo.toReversed()) await undo()
-		rmSync(join(this.folder, "run.json"), { force: true })
+		if (this.#taken) rmSync(join(this.folder, "run.json"), { force: true })
 	}
 
 	#writeDown() {
@@ -94,6 +95,7 @@ class Crew {
 		if (before && isSame(before))
 			refuse(`Waxbill runs from this folder already (process ${before.pid}): stop that first.`)
 		await endLeftovers(this.folder)
+		this.#taken = true
 		this.#writeDown()
 	}
 }
@@ -148,12 +150,16 @@ function lastLines(file) {
 export async function supervise(folder, work, { signalCode = STOPPED_BY_SIGNAL } = {}) {
 	const crew = new Crew(folder)
 	let interrupted = false
-	for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"]) {
-		process.on(signal, () => {
-			if (!interrupted) crew.interrupt()
-			interrupted = true
-		})
+	const interrupt = () => {
+		if (!interrupted) crew.interrupt()
+		interrupted = true
 	}
+	for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"]) process.on(signal, interrupt)
+	// npm tells its shell to end, not the program in it: that is noticed by the parent being gone.
+	const parent = process.ppid
+	if (process.env.npm_lifecycle_event) setInterval(() => process.ppid !== parent && interrupt(), 250).unref()
+	// A terminal that was closed takes no more words, which must not keep anything from being stopped.
+	for (const stream of [process.stdout, process.stderr]) stream.on("error", () => {})
 	let code
 	try {
 		await crew.take()

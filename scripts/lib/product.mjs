@@ -66,7 +66,7 @@ export async function startStandIns(crew, { ports, env, folder }) {
 		},
 	})
 	await untilItAnswers(`${local(ports.mail)}/api/healthz`, mail)
-	await untilItAnswers(`${local(ports.stripe)}/health`, stripe)
+	await untilItAnswers(local(ports.stripe), stripe, { anyAnswer: true })
 }
 
 /** Starts the built worker and web server, and waits until the latter is ready. */
