@@ -32,6 +32,10 @@ export function stripe(): Stripe {
  * five minutes ago. `rawBody` must be the bytes as they came: JSON that was parsed and written anew does not verify.
  * Throws Stripe.errors.StripeSignatureVerificationError otherwise, also when there is no header.
  */
-export function verifyStripeEvent(rawBody: string, signatureHeader: string | null): Stripe.Event {
-	return Stripe.webhooks.constructEvent(rawBody, signatureHeader ?? "", env.STRIPE_WEBHOOK_SECRET)
+export function verifyStripeEvent(
+	rawBody: string,
+	signatureHeader: string | null,
+	secret: string = env.STRIPE_WEBHOOK_SECRET,
+): Stripe.Event {
+	return Stripe.webhooks.constructEvent(rawBody, signatureHeader ?? "", secret)
 }

@@ -79,7 +79,7 @@ function refusalAnswer(error: unknown): Answer {
 	return { status: refusal.status, body, headers: refusal.headers, kept: refusal.status === 402 }
 }
 
-/** Answers the calls under /v1: key, idempotency, switches, endpoint, in that order. */
+/** Answers the calls under /v1: secret key, faults, idempotency, slowness, endpoint, in that order. */
 export function createApi(fake: Fake, clock: () => number, saved: () => void) {
 	const idempotency = createIdempotency(fake.store, clock)
 
@@ -102,17 +102,19 @@ export function createApi(fake: Fake, clock: () => number, saved: () => void) {
 		const header = method === "POST" ? request.headers["idempotency-key"] : undefined
 		const key = typeof header === "string" && header !== "" ? header : null
 		const fingerprint = fingerprintOf(url.pathname, text)
+		// Faults strike before the key is looked at, so that a repeated call can meet one too.
+		failBySwitch(fake, url.pathname)
+		const { dropNext } = fake.switches
+		const dropped = strikes(dropNext, url.pathname)
+		if (dropped && dropNext?.when === "before") throw new Dropped()
 		const kept = key === null ? undefined : idempotency.claim(key, fingerprint)
 		if (kept) {
+			if (dropped) throw new Dropped()
 			const headers = { "Idempotent-Replayed": "true", "Original-Request": kept.requestId }
 			return { status: kept.status, body: kept.body, headers, kept: false }
 		}
 		try {
 			if (fake.switches.slowMs > 0) await pause(fake.switches.slowMs)
-			failBySwitch(fake, url.pathname)
-			const { dropNext } = fake.switches
-			const dropped = strikes(dropNext, url.pathname)
-			if (dropped && dropNext?.when === "before") throw new Dropped()
 			const result = run(method, url.pathname, parseForm(text), requestId, key)
 			if (key !== null && result.kept) {
 				idempotency.keep(key, { fingerprint, status: result.status, body: result.body, requestId, at: clock() })

@@ -38,6 +38,11 @@ const listSchema = z.strictObject({
 	status: z.enum(["complete", "expired", "open"]).optional(),
 })
 
+/** Where a person pays the session. */
+export function payUrl(fake: Fake, id: string): string {
+	return `${fake.url}/pay/${id}`
+}
+
 /** The session named `id`; refuses with 404 `resource_missing`. */
 export function getSession(fake: Fake, id: string): Stripe.Checkout.Session {
 	const session = fake.store.sessions.get(id)
@@ -85,7 +90,7 @@ function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkou
 		metadata: mergeMetadata({}, given.metadata),
 		submit_type: given.submit_type ?? null,
 		success_url: given.success_url,
-		url: `${fake.url}/pay/${id}`,
+		url: payUrl(fake, id),
 	}
 	fake.store.sessions.set(id, session)
 	fake.store.sessionSecrets.set(id, {

@@ -23,10 +23,11 @@ export function resetFake(fake: Fake, courier: Courier): void {
 
 /**
  * The paths for tests and people who try things out: GET and POST /_switches, POST /_reset, POST /_events/flush,
- * GET /_state. Answers false when the path is none of these.
+ * GET /_state, and GET /health for whoever waits for the fake to be there. Answers false when the path is none of these.
  */
 export function createControl(fake: Fake, courier: Courier, saved: () => void) {
 	const routes: Record<string, (body: unknown) => unknown> = {
+		"GET /health": () => ({ status: "ok" }),
 		"GET /_switches": () => fake.switches,
 		"POST /_switches": (body) => {
 			changeSwitches(fake, courier, body)

@@ -1,7 +1,7 @@
 import { createServer } from "node:http"
 import type { AddressInfo } from "node:net"
 import { createApi } from "./api"
-import { expireDue } from "./checkout-sessions"
+import { expireDue, payUrl } from "./checkout-sessions"
 import { changeSwitches, createControl, resetFake } from "./control"
 import { createEventLog } from "./events"
 import type { Fake } from "./fake"
@@ -81,6 +81,8 @@ export async function startStripeFake(options: StripeFakeOptions = {}): Promise<
 	})
 	const { port } = server.address() as AddressInfo
 	fake.url = options.publicUrl ?? `http://127.0.0.1:${port}`
+	// The port may be another one than before a restart.
+	for (const session of store.sessions.values()) if (session.url !== null) session.url = payUrl(fake, session.id)
 	const sweep = setInterval(() => expireDue(fake), 5000).unref()
 	// What had not been accepted before a restart is sent again.
 	for (const event of store.events.values()) if (event.pending_webhooks > 0) courier.deliver(event)
