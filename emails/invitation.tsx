@@ -16,7 +16,7 @@ const purposeOfRole = {
 
 /** An invitation to one role. A buyer or payer is invited for a store, which is then named. */
 export const schema = z
-	.strictObject({
+	.object({
 		yard,
 		sentTo: mailAddress,
 		role: z.enum(["owner", "desk", "packer", "stall", "buyer", "payer"]),

@@ -10,7 +10,7 @@ import { mailAddress, webAddress } from "./props"
 import { casesInSentence, joinKnown, KEEP_COMB, mistakeWords, NOT_FOR_INFANTS } from "./words"
 
 /** An invoice with the places to pay it and to print it; the PDF goes with the letter. */
-export const schema = z.strictObject({
+export const schema = z.object({
 	invoice: invoiceProps,
 	sentTo: mailAddress,
 	payUrl: webAddress,

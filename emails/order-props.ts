@@ -2,7 +2,7 @@ import { z } from "zod"
 import { cases, cents, charge, day, mailAddress, sampleYard, sentence, webAddress, words, yard } from "./props"
 
 /** What every letter about an order tells. `storeName` is the account, `orderNumber` as the desk and the store see it. */
-export const orderFacts = z.strictObject({
+export const orderFacts = z.object({
 	yard,
 	sentTo: mailAddress,
 	storeName: words,
@@ -12,7 +12,7 @@ export const orderFacts = z.strictObject({
 })
 
 /** A line once cases have been given: `reason` is the sentence of the sharing out, where there was one. */
-export const givenLine = z.strictObject({
+export const givenLine = z.object({
 	productName: words,
 	productNote: words.nullish(),
 	casesAsked: cases,

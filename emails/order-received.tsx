@@ -19,7 +19,7 @@ export const schema = orderFacts
 		changeUntil: words.nullish(),
 		lines: z
 			.array(
-				z.strictObject({
+				z.object({
 					productName: words,
 					productNote: words.nullish(),
 					cases,

@@ -21,7 +21,7 @@ const wayWords = {
  * `onAccountCents` what is over and kept. Refused when the parts do not sum to `amountCents`.
  */
 export const schema = z
-	.strictObject({
+	.object({
 		yard,
 		sentTo: mailAddress,
 		storeName: words,
@@ -29,7 +29,7 @@ export const schema = z
 		paidOn: day,
 		way: z.enum(["card", "bank", "check", "cash", "transfer"]),
 		reference: words.nullish(),
-		applied: z.array(z.strictObject({ invoiceNumber: words, cents: cents.positive(), openCents: cents.nonnegative() })),
+		applied: z.array(z.object({ invoiceNumber: words, cents: cents.positive(), openCents: cents.nonnegative() })),
 		onAccountCents: cents.nonnegative(),
 		invoicesUrl: webAddress,
 	})

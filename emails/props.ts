@@ -14,7 +14,7 @@ export const mailAddress = z.email()
 export const webAddress = z.url({ protocol: /^https?$/ })
 
 /** The producer at the head and foot of a letter; answers go to `email`. `contactName` is whom to ask for. */
-export const yard = z.strictObject({
+export const yard = z.object({
 	name: words,
 	address: words,
 	email: mailAddress,
@@ -24,7 +24,7 @@ export const yard = z.strictObject({
 export type Yard = z.infer<typeof yard>
 
 /** A sum below the lines: delivery, sales tax, a part already paid (negative). */
-export const charge = z.strictObject({ label: words, cents })
+export const charge = z.object({ label: words, cents })
 
 export const sampleYard = {
 	name: "Larkmoor Bee Yard",

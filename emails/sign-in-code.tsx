@@ -6,7 +6,7 @@ import { mailAddress, webAddress } from "./props"
 import { type } from "./theme"
 
 /** The code and link that sign one address in. `link` opens a page; only a press on that page signs in. */
-export const schema = z.strictObject({
+export const schema = z.object({
 	sentTo: mailAddress,
 	code: z.string().regex(/^\d{6}$/),
 	link: webAddress,

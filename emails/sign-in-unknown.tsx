@@ -4,7 +4,7 @@ import { Lead, Small, Title } from "./parts/text"
 import { mailAddress } from "./props"
 
 /** For an address that nobody uses here; the page that asked says the same to everyone. */
-export const schema = z.strictObject({ sentTo: mailAddress })
+export const schema = z.object({ sentTo: mailAddress })
 type Props = z.infer<typeof schema>
 
 export const sample = { sentTo: "someone@quillandrye.example.test" } satisfies Props

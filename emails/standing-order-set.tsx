@@ -13,17 +13,17 @@ import { mistakeWords } from "./words"
  * date's cut-off in words, in the producer's time zone. A line with `leastCases` is left out of a delivery that cannot
  * give that much.
  */
-export const schema = z.strictObject({
+export const schema = z.object({
 	yard,
 	sentTo: mailAddress,
 	storeName: words,
 	cadence: words,
 	lines: z
-		.array(z.strictObject({ productName: words, productNote: words.nullish(), cases, leastCases: cases.nullish() }))
+		.array(z.object({ productName: words, productNote: words.nullish(), cases, leastCases: cases.nullish() }))
 		.min(1)
 		.max(1000),
 	nextDates: z
-		.array(z.strictObject({ deliveryOn: day, changeUntil: words }))
+		.array(z.object({ deliveryOn: day, changeUntil: words }))
 		.min(1)
 		.max(12),
 	standingOrderUrl: webAddress,

@@ -6,7 +6,7 @@ import { cases, cents, charge, day, sampleYard, sentence, words, yard } from "..
  * One line of an invoice. Cases are what left the yard; the price is of one case, at the break that was agreed.
  * `sheetNumber` is the product's number on the order sheet, `reason` why the line is short, where there is one.
  */
-const invoiceLine = z.strictObject({
+const invoiceLine = z.object({
 	sheetNumber: words.nullish(),
 	productName: words,
 	productNote: words.nullish(),
@@ -25,20 +25,20 @@ const invoiceLine = z.strictObject({
  * producer's time zone. `paidCents` is what has been paid so far. Refused when the parts do not sum to `totalCents`.
  */
 export const invoiceProps = z
-	.strictObject({
+	.object({
 		yard,
 		number: words,
 		issuedOn: day,
-		store: z.strictObject({ name: words, contactName: words.nullish(), address: words.nullish() }),
-		order: z.strictObject({ number: words, placedOn: day }),
-		delivered: z.strictObject({
+		store: z.object({ name: words, contactName: words.nullish(), address: words.nullish() }),
+		order: z.object({ number: words, placedOn: day }),
+		delivered: z.object({
 			on: day,
 			at: words.nullish(),
 			place: words.nullish(),
 			netWeight: words.nullish(),
 			signedBy: words.nullish(),
 		}),
-		due: z.strictObject({ on: day, termsWords: words }),
+		due: z.object({ on: day, termsWords: words }),
 		waysToPay: words,
 		lines: z.array(invoiceLine).min(1).max(1000),
 		charges: z.array(charge).max(20),
