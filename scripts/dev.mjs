@@ -5,7 +5,7 @@ import { supervise } from "./lib/crew.mjs"
 import { chosenDatabase, readDotenv } from "./lib/database.mjs"
 import { ensureInstalled } from "./lib/install.mjs"
 import { root, workFolder } from "./lib/paths.mjs"
-import { webPort } from "./lib/ports.mjs"
+import { freePort, webPort } from "./lib/ports.mjs"
 import { choosePorts, productEnv, startStandIns } from "./lib/product.mjs"
 import { untilItAnswers } from "./lib/wait.mjs"
 import { welcome } from "./lib/welcome.mjs"
@@ -21,7 +21,7 @@ await supervise(
 		const web = await webPort()
 		await ensureInstalled()
 		const databaseUrl = await chosenDatabase(crew)
-		const ports = await choosePorts({ web })
+		const ports = await choosePorts(() => freePort(3001), web)
 		const env = productEnv({ databaseUrl, ports, nodeEnv: "development" })
 		const fromSource = (file, sentence) => orRefuse(sentence, process.execPath, ["--import", "tsx", file], { env })
 		await fromSource("scripts/entries/migrate.ts", "The database could not be brought up to date.")

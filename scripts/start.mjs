@@ -4,7 +4,7 @@ import { supervise } from "./lib/crew.mjs"
 import { chosenDatabase, readDotenv } from "./lib/database.mjs"
 import { ensureInstalled } from "./lib/install.mjs"
 import { workFolder } from "./lib/paths.mjs"
-import { webPort } from "./lib/ports.mjs"
+import { freePort, webPort } from "./lib/ports.mjs"
 import { choosePorts, productEnv, runBuilt, startBuilt, startStandIns } from "./lib/product.mjs"
 import { welcome } from "./lib/welcome.mjs"
 
@@ -17,7 +17,7 @@ await supervise(
 		await ensureInstalled()
 		const databaseUrl = await chosenDatabase(crew)
 		await ensureBuilt()
-		const ports = await choosePorts({ web })
+		const ports = await choosePorts(() => freePort(3001), web)
 		const env = productEnv({ databaseUrl, ports })
 		await runBuilt("migrate", "The database could not be brought up to date.", env)
 		await runBuilt("seed", "The demo data could not be written.", env)

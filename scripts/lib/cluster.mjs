@@ -22,7 +22,7 @@ export async function startCluster({ folder: wish, firstPort, throwaway = false 
 	const newest = await ensurePostgres()
 	const folder = privateFolder(wish)
 	const data = join(folder, "data")
-	if (!existsSync(join(data, "PG_VERSION"))) await initialise(newest, folder, data)
+	if (!existsSync(join(data, "PG_VERSION"))) await initialise(newest, folder, data, throwaway ? ["--no-sync"] : [])
 	const major = readFileSync(join(data, "PG_VERSION"), "utf8").trim()
 	const bin =
 		findPostgres(major) ??
@@ -41,8 +41,19 @@ export async function startCluster({ folder: wish, firstPort, throwaway = false 
 	}
 }
 
+/** Stops the cluster that a killed script left in `wish`, and throws its data away. */
+export function removeCluster(wish) {
+	const folder = privateFolder(wish)
+	const data = join(folder, "data")
+	if (existsSync(join(data, "postmaster.pid"))) {
+		const bin = findPostgres(readFileSync(join(data, "PG_VERSION"), "utf8").trim())
+		if (bin && runningPort(bin, data)) stopCluster(bin, data)
+	}
+	for (const place of [folder, wish]) rmSync(place, { recursive: true, force: true })
+}
+
 /** Made under another name first: a folder called `data` is a whole one, however the making ended. */
-async function initialise(bin, folder, data) {
+async function initialise(bin, folder, data, more) {
 	const passwordFile = join(folder, "password")
 	if (!existsSync(passwordFile)) {
 		writeFileSync(passwordFile, `${randomBytes(24).toString("hex")}\n`, { mode: 0o600 })
@@ -55,7 +66,7 @@ async function initialise(bin, folder, data) {
 	chmodSync(copy, 0o644)
 	const settings = ["-U", "postgres", "-A", "scram-sha-256", "--pwfile", copy, "-E", "UTF8", "--locale=C.UTF-8"]
 	try {
-		const [program, args] = asDatabaseUser(join(bin, "initdb"), ["-D", unfinished, ...settings])
+		const [program, args] = asDatabaseUser(join(bin, "initdb"), ["-D", unfinished, ...settings, ...more])
 		await orRefuse("The database could not be made.", program, args, { cwd: "/" })
 	} finally {
 		rmSync(copy, { force: true })

@@ -1,5 +1,6 @@
 import { spawn, spawnSync } from "node:child_process"
 import { root } from "./paths.mjs"
+import { signalGroup } from "./pids.mjs"
 import { refuse } from "./say.mjs"
 
 /** Runs a program to its end without showing it; answers its exit code and what it wrote. */
@@ -9,17 +10,23 @@ export function quietly(program, args, options = {}) {
 	return { ok: done.status === 0, output, stdout: done.stdout ?? "" }
 }
 
+// Each in a group of its own, so that Ctrl-C reaches this script alone and a stop reaches all that a program started.
 const running = new Set()
 
 /** Ends the programs that `visibly` is waiting for, for a stop in the middle of one. */
 export function endCommands() {
-	for (const child of running) child.kill("SIGTERM")
+	for (const child of running) signalGroup(child.pid, "SIGTERM")
 }
 
 /** Runs a program to its end with its output on the terminal; answers its exit code (1 when a signal ended it). */
 export function visibly(program, args, options = {}) {
 	return new Promise((resolve, reject) => {
-		const child = spawn(program, args, { cwd: root, stdio: ["ignore", "inherit", "inherit"], ...options })
+		const child = spawn(program, args, {
+			cwd: root,
+			stdio: ["ignore", "inherit", "inherit"],
+			detached: true,
+			...options,
+		})
 		running.add(child)
 		child.once("error", (error) => {
 			running.delete(child)
@@ -36,7 +43,7 @@ export function visibly(program, args, options = {}) {
 export async function orRefuse(sentence, program, args, options = {}) {
 	const lines = []
 	const code = await new Promise((resolve) => {
-		const child = spawn(program, args, { cwd: root, stdio: ["ignore", "pipe", "pipe"], ...options })
+		const child = spawn(program, args, { cwd: root, stdio: ["ignore", "pipe", "pipe"], detached: true, ...options })
 		running.add(child)
 		const keep = (chunk) => lines.push(chunk)
 		child.stdout.on("data", keep)

@@ -145,9 +145,10 @@ function lastLines(file) {
 /**
  * Runs `work(crew)` with a crew in `folder`, and ends the process when it is through: with the exit code that `work`
  * answers (0 for none), 1 after an error, which is explained in a sentence. Whatever the end, a signal included, all that
- * was started is stopped first. `work` waits for `crew.ended` to go on running; `signalCode` is the exit code of a signal.
+ * was started is stopped first. `work` waits for `crew.ended` to go on running; `signalCode` is the exit code of a signal;
+ * `withParent` stops the crew also when the process that started this one is gone.
  */
-export async function supervise(folder, work, { signalCode = STOPPED_BY_SIGNAL } = {}) {
+export async function supervise(folder, work, { signalCode = STOPPED_BY_SIGNAL, withParent = false } = {}) {
 	const crew = new Crew(folder)
 	let interrupted = false
 	const interrupt = () => {
@@ -157,7 +158,8 @@ export async function supervise(folder, work, { signalCode = STOPPED_BY_SIGNAL }
 	for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"]) process.on(signal, interrupt)
 	// npm tells its shell to end, not the program in it: that is noticed by the parent being gone.
 	const parent = process.ppid
-	if (process.env.npm_lifecycle_event) setInterval(() => process.ppid !== parent && interrupt(), 250).unref()
+	if (withParent || process.env.npm_lifecycle_event)
+		setInterval(() => process.ppid !== parent && interrupt(), 250).unref()
 	// A terminal that was closed takes no more words, which must not keep anything from being stopped.
 	for (const stream of [process.stdout, process.stderr]) stream.on("error", () => {})
 	let code

@@ -1,27 +1,15 @@
 import { join } from "node:path"
 import { orRefuse } from "./commands.mjs"
 import { root } from "./paths.mjs"
-import { freePort } from "./ports.mjs"
 import { demoSecrets } from "./secrets.mjs"
+import { systemEnv } from "./system-env.mjs"
 import { untilItAnswers } from "./wait.mjs"
 
 const local = (port) => `http://127.0.0.1:${port}`
 
-/** Passed on to what we start: the system's own variables, and none of the product's that happen to be set. */
-const INHERITED = ["PATH", "HOME", "LANG", "LC_ALL", "TZ", "TMPDIR", "TERM", "LOG_LEVEL", "NO_COLOR", "CI"]
-
-function systemEnv() {
-	return Object.fromEntries(INHERITED.filter((name) => process.env[name]).map((name) => [name, process.env[name]]))
-}
-
-/** Chooses free ports for the web server (at `web` if given) and its neighbours, from `first` upwards. */
-export async function choosePorts({ web, first = 3001 }) {
-	return {
-		web: web ?? (await freePort(first)),
-		mail: await freePort(first),
-		smtp: await freePort(first),
-		stripe: await freePort(first),
-	}
+/** Chooses ports for the parts by `pick`, which answers a free one each time; the web server's may be settled already. */
+export async function choosePorts(pick, web) {
+	return { web: web ?? (await pick()), mail: await pick(), smtp: await pick(), stripe: await pick() }
 }
 
 /** The environment of the product on stand-ins: mail to the catcher, payments to the fake. */

@@ -1,0 +1,33 @@
+import { defineConfig } from "@playwright/test"
+
+export default defineConfig({
+	testDir: "tests/e2e",
+	outputDir: "tests/e2e/.results",
+	globalSetup: "./tests/setup/e2e.ts",
+	// One product and one database for all: the tests take turns, and a test that passes only now and then is a failure.
+	workers: 1,
+	retries: 0,
+	fullyParallel: false,
+	forbidOnly: true,
+	timeout: 60_000,
+	expect: { timeout: 10_000 },
+	reporter: "list",
+	use: {
+		browserName: "chromium",
+		viewport: { width: 1440, height: 900 },
+		locale: "en-US",
+		trace: "retain-on-failure",
+		screenshot: "only-on-failure",
+		launchOptions: {
+			executablePath: "/usr/bin/chromium",
+			args: [
+				"--disable-gpu",
+				"--disable-quic",
+				"--no-first-run",
+				"--disable-background-networking",
+				"--disable-component-update",
+				"--disable-sync",
+			],
+		},
+	},
+})
