@@ -37,6 +37,9 @@ export const invoices = pgTable(
 		totalCents: cents("total_cents").notNull(),
 		paidCents: cents("paid_cents").notNull().default(0),
 		shortNote: text("short_note").notNull().default(""),
+		/** As they stood when it was issued: a store's terms and certificate may change afterwards. */
+		termsWords: text("terms_words").notNull().default(""),
+		isForResale: boolean("is_for_resale").notNull().default(false),
 		createdAt: instant("created_at").notNull().defaultNow(),
 	},
 	(t) => [

@@ -32,6 +32,8 @@ export const producerSettings = pgTable("producer_settings", {
 	/** Stands at the foot of invoices: what to do about broken comb, how the comb was frozen. */
 	invoiceNote: text("invoice_note").notNull().default(""),
 	contactName: text("contact_name").notNull().default(""),
+	/** Charged on taxable products to stores without a valid resale certificate. */
+	salesTaxBasisPoints: integer("sales_tax_basis_points").notNull().default(0),
 })
 
 /** Gapless numbers: one row for each series and year; its lock makes two transactions wait, so none is skipped. */

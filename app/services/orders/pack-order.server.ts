@@ -29,20 +29,7 @@ export async function packOrder(query: { producerId: string; number: number; per
 		const picked = await pickLots(tx, { producerId, order })
 		if (!picked.ok) return picked
 		if (picked.lines.length > 0) await tx.insert(orderLineLots).values(picked.lines)
-		if (picked.moves.length > 0) {
-			await tx.insert(stockMoves).values(
-				picked.moves.map((move) => ({
-					producerId,
-					lotId: move.lotId,
-					fromPlace: move.place,
-					toPlace: "packed" as const,
-					toRef: order.id,
-					pieces: move.pieces,
-					reason: `packed for order ${order.number}`,
-					movedBy: personId,
-				})),
-			)
-		}
+		if (picked.shelves.length > 0) await tx.insert(stockMoves).values(movesToOrder(picked.shelves, order, personId))
 		await tx
 			.update(orders)
 			.set({ state: "packed" })
@@ -53,7 +40,7 @@ export async function packOrder(query: { producerId: string; number: number; per
 }
 
 type Picked =
-	| { ok: true; lines: (typeof orderLineLots.$inferInsert)[]; moves: Shelf[] }
+	| { ok: true; lines: (typeof orderLineLots.$inferInsert)[]; shelves: Shelf[] }
 	| { ok: false; reason: "lots-too-few"; productName: string; missingPieces: number }
 
 async function pickLots(tx: Tx, query: { producerId: string; order: LockedOrder }): Promise<Picked> {
@@ -68,7 +55,7 @@ async function pickLots(tx: Tx, query: { producerId: string; order: LockedOrder 
 			and l.state = 'released' and l.best_before_on >= ${order.deliveryOn}
 			and b.place in ('ready', 'cold-room') and b.pieces > 0`)
 	const lines: (typeof orderLineLots.$inferInsert)[] = []
-	const moves: Shelf[] = []
+	const taken: Shelf[] = []
 	for (const line of order.lines) {
 		const needed = (line.givenCases ?? 0) * line.piecesPerCase
 		const shelves = rows.filter((shelf) => shelf.productId === line.productId)
@@ -85,12 +72,38 @@ async function pickLots(tx: Tx, query: { producerId: string; order: LockedOrder 
 		}
 		for (const pick of assigned.picks) {
 			lines.push({ producerId, orderLineId: line.id, lotId: pick.lotId, pieces: pick.pieces })
-			moves.push(...takeFromShelves(shelves, pick))
+			taken.push(...takeFromShelves(shelves, pick))
 		}
 	}
+	return { ok: true, lines, shelves: taken }
+}
+
+/** The moves that bring what was taken to the order; what lies in the cold room goes by way of the ready shelf. */
+function movesToOrder(
+	taken: readonly Shelf[],
+	order: LockedOrder,
+	movedBy: string,
+): (typeof stockMoves.$inferInsert)[] {
 	// Balances are locked by the moves themselves: always in the same order.
-	moves.sort((a, b) => (a.lotId + a.place < b.lotId + b.place ? -1 : 1))
-	return { ok: true, lines, moves }
+	return taken
+		.toSorted((a, b) => (a.lotId + a.place < b.lotId + b.place ? -1 : 1))
+		.flatMap(({ lotId, place, pieces }) => {
+			const move = { producerId: order.producerId, lotId, pieces, movedBy }
+			const packed = {
+				...move,
+				fromPlace: "ready" as const,
+				toPlace: "packed" as const,
+				toRef: order.id,
+				reason: `packed for order ${order.number}`,
+			}
+			const fetched = {
+				...move,
+				fromPlace: "cold-room" as const,
+				toPlace: "ready" as const,
+				reason: "taken out to pack",
+			}
+			return place === "cold-room" ? [fetched, packed] : [packed]
+		})
 }
 
 /** Which shelf gives how much of a pick: the ready shelf first. */

@@ -1,0 +1,1 @@
+ALTER TABLE "producer_settings" ADD COLUMN "sales_tax_basis_points" integer DEFAULT 0 NOT NULL;
