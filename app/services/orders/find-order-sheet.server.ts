@@ -1,0 +1,121 @@
+import { and, eq } from "drizzle-orm"
+import { stores } from "~/db/schema"
+import { readProducer, type Tx } from "~/db/transaction.server"
+import { addDays, type Day } from "~/domain/calendar"
+import type { OrderState } from "~/domain/orders/order-states"
+import type { DeliveryTerms } from "~/domain/pricing/price-order"
+import {
+	deliveryDayOn,
+	deliveryDaysOf,
+	findDeliverySchedule,
+	type OpenOrClosedDay,
+} from "~/services/delivery/find-delivery-days.server"
+import { findStorePrices, type StoreProduct } from "~/services/pricing/find-store-prices.server"
+import { findOutlooks } from "~/services/promise/find-outlooks.server"
+import { type CaseStrip, caseStrips } from "./cases-on-day.server"
+import { findCasesToShare, findOwnLines, type OwnLine } from "./find-asked-days.server"
+import { type FortnightDay, fortnightOf, ribbonStart } from "./find-fortnight.server"
+
+/** A row of the sheet; all figures in cases. */
+export type SheetRow = StoreProduct & {
+	strip: CaseStrip
+	/** What all stores together have asked for that day and is still to be shared out. */
+	toShareCases: number
+	/** What the store had on its last delivery before this day. */
+	lastCases: number
+	/** What it has already ordered for this day. */
+	orderedCases: number
+}
+
+export type OrderSheet = {
+	day: OpenOrClosedDay
+	fortnight: FortnightDay[]
+	store: { address: string; receivingNote: string; terms: DeliveryTerms }
+	rows: SheetRow[]
+	/** The store's orders for this day, the earliest first. */
+	orders: { number: number; state: OrderState; cases: number }[]
+}
+
+type SheetQuery = { producerId: string; storeId: string; now: Date; zone: string; day: Day }
+
+/**
+ * Everything the order sheet of one store and day shows, read at one moment in seven statements. Null when the van does
+ * not come to the store that day; a day whose orders have closed is answered, and says so.
+ */
+export function findOrderSheet(query: SheetQuery): Promise<OrderSheet | null> {
+	return readProducer(query.producerId, (tx) => readSheet(tx, query))
+}
+
+async function readSheet(tx: Tx, query: SheetQuery): Promise<OrderSheet | null> {
+	const { producerId, storeId } = query
+	const schedule = await findDeliverySchedule(tx, query)
+	const { today } = schedule
+	const day = deliveryDayOn(schedule, query.day)
+	if (!day) return null
+	const store = await findStoreTerms(tx, { producerId, storeId })
+	const products = await findStorePrices(tx, { producerId, storeId, today })
+	const productIds = products.map((product) => product.productId)
+	const outlooks = await findOutlooks(tx, { producerId, today, productIds })
+	const from = ribbonStart(today, day.on)
+	const ownLines = await findOwnLines(tx, { producerId, storeId, from, to: addDays(from, 13), lastBefore: day.on })
+	const toShare = await findCasesToShare(tx, { producerId, deliveryOn: day.on })
+
+	const lastOn = ownLines.findLast((line) => line.deliveryOn < day.on)?.deliveryOn
+	return {
+		day,
+		fortnight: fortnightOf({ schedule, from, outlooks: [...outlooks.values()], ownLines }),
+		store,
+		rows: products.flatMap((product) => {
+			const outlook = outlooks.get(product.productId)
+			const [strip] = outlook ? caseStrips(outlook, [day.on]) : []
+			if (!strip) return []
+			return {
+				...product,
+				strip,
+				toShareCases: toShare.get(product.productId) ?? 0,
+				lastCases: casesOn(ownLines, lastOn, product.productId),
+				orderedCases: casesOn(ownLines, day.on, product.productId),
+			}
+		}),
+		orders: ordersOn(ownLines, day.on),
+	}
+}
+
+/** The day of the store's next sheet: the first delivery day that still takes orders, or null when there is none. */
+export function findNextOpenDay(query: Omit<SheetQuery, "day">): Promise<Day | null> {
+	return readProducer(query.producerId, async (tx) => {
+		const schedule = await findDeliverySchedule(tx, query)
+		// Cut-offs lie at most a fortnight ahead, so a day that takes orders is among the next fifteen.
+		return deliveryDaysOf(schedule, 15).find((day) => day.isOpen)?.on ?? null
+	})
+}
+
+async function findStoreTerms(tx: Tx, query: { producerId: string; storeId: string }): Promise<OrderSheet["store"]> {
+	const [store] = await tx
+		.select({
+			address: stores.address,
+			receivingNote: stores.receivingNote,
+			minimumCents: stores.minimumCents,
+			deliveryChargeCents: stores.deliveryChargeCents,
+			freeAboveCents: stores.freeAboveCents,
+		})
+		.from(stores)
+		.where(and(eq(stores.producerId, query.producerId), eq(stores.id, query.storeId)))
+	if (!store) throw new Error("a sheet is for a store that is there")
+	const { address, receivingNote, ...terms } = store
+	return { address, receivingNote, terms }
+}
+
+function casesOn(lines: readonly OwnLine[], on: Day | undefined, productId: string): number {
+	return lines
+		.filter((line) => line.deliveryOn === on && line.productId === productId)
+		.reduce((sum, line) => sum + line.cases, 0)
+}
+
+function ordersOn(lines: readonly OwnLine[], on: Day): OrderSheet["orders"] {
+	const orders = new Map<number, OrderSheet["orders"][number]>()
+	for (const { number, state, cases } of lines.filter((line) => line.deliveryOn === on)) {
+		orders.set(number, { number, state, cases: (orders.get(number)?.cases ?? 0) + cases })
+	}
+	return [...orders.values()]
+}

@@ -1,0 +1,42 @@
+import { type Day, weekday } from "~/domain/calendar"
+import { cutoffAt, isOpen } from "~/domain/delivery/delivery-days"
+import { nextDeliveryDates, type StandingDate } from "~/domain/standing-orders/delivery-dates"
+import type { DeliverySchedule } from "~/services/delivery/find-delivery-days.server"
+
+/** What decides the dates of a standing order; `createdAt` is null for one that is not saved yet. */
+export type DatedRule = {
+	rule: string
+	startsOn: Day
+	endsOn: Day | null
+	pausedFrom: Day | null
+	skips: readonly Day[]
+	createdAt: Date | null
+	endedAt: Date | null
+}
+
+/** A date of a standing order with its last orders. */
+export type DueDate = StandingDate & { cutoffAt: Date; isOpen: boolean }
+
+/**
+ * The next `count` dates from today on that are this standing order's to make: last orders fall after it was set and, where
+ * it has ended, no later than its end. A date closes at the cut-off of the day on which the van really comes.
+ */
+export function standingDates(standing: DatedRule, schedule: DeliverySchedule, count: number): DueDate[] {
+	const { rounds, shutDays, zone, today, now } = schedule
+	const since = standing.createdAt ?? now
+	// Cut-offs lie at most a fortnight ahead: at most fifteen daily dates can have closed before it was set.
+	const dates = nextDeliveryDates(
+		{ ...standing, deliveryWeekdays: rounds.map((round) => round.weekday), shutDays },
+		today,
+		count + 15,
+	)
+	return dates
+		.flatMap((date) => {
+			const round = rounds.find((one) => one.weekday === weekday(date.deliveryOn))
+			if (!round) return []
+			const closesAt = cutoffAt(date.deliveryOn, round, zone)
+			if (closesAt <= since || (standing.endedAt && closesAt > standing.endedAt)) return []
+			return { ...date, cutoffAt: closesAt, isOpen: isOpen({ cutoffAt: closesAt }, now) }
+		})
+		.slice(0, count)
+}
