@@ -18,7 +18,8 @@ export async function keepPost(request: Request): Promise<Response> {
 	const address = pageAddress(request.url)
 	const postTo = address.pathname + address.search
 	address.searchParams.delete("index")
-	const fields = await readFields(request)
+	// A post of the sign-in pages themselves, as "Send it now" is, must not take the place of what it was about.
+	const fields = postTo.startsWith("/sign-in") ? null : await readFields(request)
 	const headers = new Headers({
 		location: `/sign-in?${new URLSearchParams({ to: address.pathname + address.search })}`,
 		"cache-control": "no-store",
