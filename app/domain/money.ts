@@ -12,7 +12,7 @@ function dollars(cents: number): Dinero<number, "USD"> {
 
 /**
  * The one rounding of money: a finer amount becomes whole cents, and exactly half a cent goes away from zero, so that a
- * credit mirrors its invoice. Source: check values "computed_price"; the standard leaves the tie open, half-up is chosen.
+ * credit mirrors its invoice. Source: NIST Handbook 44, G-S.5.5 (from memory, high), leaves the tie open.
  */
 function roundHalfUp(amount: Dinero<number, "USD">): number {
 	const cents = toSnapshot(transformScale(amount, CENTS_SCALE, halfAwayFromZero)).amount
@@ -60,7 +60,7 @@ export function weighedPriceCents(weight: number, unit: "lb/1000" | "g", perLbCe
  * and the cents left over go one each to the largest remainders, the earlier part first on ties. Returns whole cents in
  * the order of `weights`; they always sum to `totalCents`. A negative total is split as its mirror image.
  * Throws RangeError on a fractional total, a negative or fractional weight, or when nothing has weight but there are
- * cents to split. Source: Hamilton's method (check values "largest_remainder"); the tie order is this product's choice.
+ * cents to split. Source: Hamilton's method (published values "allocation"); the tie order is this product's choice.
  */
 export function splitByLargestRemainder(totalCents: number, weights: readonly number[]): number[] {
 	if (!Number.isSafeInteger(totalCents)) throw new RangeError(`not a whole total: ${totalCents}`)

@@ -31,7 +31,7 @@ export function weightWords(grams: number): string {
 /**
  * The whole grams to store and print for a label of `ounces` (quarters at the finest), rounded down, so that the ounces
  * stay the larger declaration and the one that is verified: 12 oz is 340 g. Throws RangeError on anything but quarters.
- * Source: NIST Handbook 133, 2.3.3.1 (standards "larger_declaration").
+ * Source: NIST Handbook 133, 2.3.3.1 (published values "labelling", declarations).
  */
 export function labelledGrams(ounces: number): number {
 	if (!Number.isSafeInteger(ounces * 4) || ounces <= 0) throw new RangeError(`not a labelled weight: ${ounces}`)

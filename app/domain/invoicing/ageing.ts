@@ -1,6 +1,6 @@
 import { type Day, daysBetween } from "~/domain/calendar"
 
-/** The ageing columns of a statement, counted in days past the due date. Source: check values "ageing". */
+/** The ageing columns of a statement, counted in days past the due date. Source: published values "terms" (ageing, from memory, high). */
 export const ageingBuckets = ["current", "1–30", "31–60", "61–90", "over 90"] as const
 export type AgeingBucket = (typeof ageingBuckets)[number]
 

@@ -13,7 +13,7 @@ export type InvoiceTotals = {
 
 /**
  * Adds up an invoice: what was sent, the delivery and the sales tax. Delivery is taxed only where `isDeliveryTaxable`.
- * Throws RangeError on negative or fractional amounts. Source: design.md, "Invoices and money".
+ * Throws RangeError on negative or fractional amounts.
  */
 export function invoiceTotals(invoice: {
 	lines: readonly { amountCents: number; isTaxable: boolean }[]

@@ -15,7 +15,7 @@ function oldestFirst(a: OpenInvoice, b: OpenInvoice): number {
  * Lays a payment against open invoices, the one due first, until it is used up. What is over stays on account. Parts are
  * whole cents above 0, oldest invoice first; with `onAccountCents` they sum to the payment, and none is above what its
  * invoice has open. Throws RangeError on a payment or an open amount that is negative or not whole cents.
- * Source: design.md, "Invoices and money" ("oldest first unless told").
+ * This product's own rule.
  */
 export function allocatePayment(
 	paymentCents: number,

@@ -28,9 +28,9 @@ function dueOn(terms: Terms, invoicedOn: Day): Day {
 /**
  * The dates of an invoice of `invoicedOn`, which is day 0. End of month counts from the last day of the invoice's month,
  * whatever its date: no month is skipped for invoices late in it. The discount counts from
- * the invoice too.
- * Throws RangeError on negative or fractional days. Source: check values "due_dates"; the 26th-of-the-month custom of
- * some textbooks (from memory, medium) is not followed, so the date itself is printed on every invoice.
+ * the invoice too. Throws RangeError on negative or fractional days. Source: published values "terms" (due_dates). Some
+ * textbooks move invoices of the 26th and later a month on (from memory, medium); buyers read "end of month" differently,
+ * so the date itself belongs on every invoice.
  */
 export function dueDates(terms: Terms, invoicedOn: Day): DueDates {
 	const due = dueOn(terms, invoicedOn)

@@ -23,7 +23,7 @@ export function canMove(from: OrderState, to: OrderState): boolean {
  * Whether `role` may take an order from one state to another. A store cancels only while the order is placed (and, by the
  * cut-off, only in time); the desk cancels until it is sent; packers pack and send; who takes it in may be noted by the
  * store or by whoever delivers. Refuses with `no-such-step` before it looks at the role, then with `not-yours`.
- * Source: design.md, "Orders and the order sheet" and the table of people.
+ * This product's own rule.
  */
 export function checkMove(move: {
 	from: OrderState

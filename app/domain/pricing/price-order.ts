@@ -104,7 +104,7 @@ function priceLine(line: PriceLine, familyCases: number): PricedLine & { askedCe
  * free when that sum is at or above `freeAboveCents`, nothing where no case is charged, else the store's charge.
  * Falling short of the minimum is told, not refused. Lines come back in the order given; nothing is rounded.
  * Throws RangeError on a line without a price and on negative or fractional numbers.
- * Source: design.md, "Products, tiers and prices" and "Decided".
+ * This product's own rule.
  */
 export function priceOrder(order: { lines: readonly PriceLine[]; terms: DeliveryTerms }): OrderPrice {
 	const { terms } = order

@@ -19,7 +19,7 @@ const text = (a: string, b: string) => (a < b ? -1 : a > b ? 1 : 0)
  * than the one taken, so it can serve every later day that the other could.
  * When it is not feasible, answers `lots-too-few` with the pieces missing of each order, their sum as small as any
  * assignment allows, and the picks that can be made. Picks come by order and then best-before, in whole pieces.
- * Throws RangeError on negative or fractional pieces. Source: design.md, "Free to promise and sharing out".
+ * Throws RangeError on negative or fractional pieces.
  */
 export function assignLots(input: {
 	lots: readonly AssignableLot[]

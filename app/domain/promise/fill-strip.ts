@@ -25,7 +25,7 @@ const SURER_KINDS: Record<SupplyKind, readonly SupplyKind[]> = {
 /**
  * Splits what is free to promise for each of `days` by how sure it is: first what released stock alone allows, then what
  * held lots add to that, then what the hives add. Answers in the order of `days`, in the unit of the outlook.
- * Refuses nothing. Source: design.md, "Free to promise"; look.md, "Fill strip".
+ * Refuses nothing. This product's own rule.
  */
 export function fillStrips(outlook: Outlook & { days: readonly Day[] }): StripOnDay[] {
 	const withKinds = (kind: SupplyKind) =>

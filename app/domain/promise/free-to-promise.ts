@@ -43,8 +43,8 @@ function runningSum(entries: readonly { on: Day; quantity: number }[]): (day: Da
  * What is free to promise for each of `days`: the least, over all days s on or after that day, of what will have been
  * supplied by s, less what is promised by s, less the reserve. Promising that much breaks no earlier promise, for that
  * day or a later one. Answers in the order of `days`, in the unit of the outlook; takes time in proportion to the
- * entries, but for the sorting. Refuses nothing. Source: design.md, "Free to promise"; the same figure as cumulative
- * available-to-promise with look-ahead (check values "planning").
+ * entries, but for the sorting. Refuses nothing. Source: the APICS Dictionary's cumulative
+ * available-to-promise with look-ahead, held by the published values "planning"; the reserve is this product's own.
  */
 export function freeToPromise(outlook: Outlook & { days: readonly Day[] }): FreeOnDay[] {
 	const eventDays = [...outlook.supplies, ...outlook.promises].map((entry) => entry.on)

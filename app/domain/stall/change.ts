@@ -39,7 +39,7 @@ function giveBack(changeCents: number): ChangePart[] {
 /**
  * What to give back for `givenCents` on a sale of `dueCents`: the change and its bills and coins, largest first, which is
  * also the fewest pieces. Too little given is refused with what is missing and its words, "2.50 more".
- * Throws RangeError on negative or fractional cents. Source: look.md, "Stall".
+ * Throws RangeError on negative or fractional cents.
  */
 export function changeFor(sale: {
 	dueCents: number
@@ -64,7 +64,7 @@ const ROUND_STEPS = [500, 2000, 5000, 10_000]
  * Amounts a customer is likely to hand over for `dueCents`, least first, at most five: the exact amount, then the next
  * whole five, twenty, fifty and hundred dollars, and, where some of these are the same, the tens between until there are
  * five. For 49.50: 49.50, 50, 60, 70, 100. Nothing due has no likely amount. Throws RangeError on negative or fractional
- * cents. Source: the amounts drawn in the look; common practice at a stall.
+ * cents. Common practice at a stall, no source.
  */
 export function likelyAmounts(dueCents: number): number[] {
 	requireCents(dueCents)

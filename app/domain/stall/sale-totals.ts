@@ -31,7 +31,7 @@ export type DayTotals = {
 
 /**
  * Adds up the paid sales of a market day. `cashCents` is what stayed in the box: the price of the sale, whatever was
- * handed over. Throws RangeError on negative or fractional numbers. Source: design.md, "Stall" (cash-up).
+ * handed over. Throws RangeError on negative or fractional numbers.
  */
 export function dayTotals(day: {
 	sales: readonly { method: "card" | "cash"; pieces: number; totalCents: number }[]

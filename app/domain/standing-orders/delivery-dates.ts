@@ -43,7 +43,7 @@ function anchor(rule: string, startsOn: Day): Day {
  * A date on a shut day, or on a weekday when the van does not come, moves to the store's next delivery day after it. A
  * date that would move onto or past the rule's next date is dropped: the van comes once for both. No delivery falls after
  * `endsOn`. Fewer come back when the order ends or no delivery day is left within a year of a date. Throws RangeError on
- * a rule that `ruleOf` does not write. Source: design.md, "Standing orders"; the rule for moving is stated here.
+ * a rule that `ruleOf` does not write. Moving and dropping are this product's own rule.
  */
 export function nextDeliveryDates(standing: StandingRule, from: Day, count: number): StandingDate[] {
 	const { deliveryWeekdays, shutDays, endsOn } = standing

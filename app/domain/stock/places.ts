@@ -22,15 +22,12 @@ const MOVES: Record<Place | "hive", readonly Place[]> = {
 	"cut-up": [],
 }
 
-/** Whether pieces may go from one place to another. Source: design.md, "Stock ledger"; the list of moves is stated here. */
+/** Whether pieces may go from one place to another. This product's own rule. */
 export function mayGo(from: Origin, to: Place): boolean {
 	return MOVES[from ?? "hive"].includes(to)
 }
 
-/**
- * Whether every harvested piece of a lot is somewhere: harvested = sum over places, none below zero.
- * Source: design.md, "Stock ledger".
- */
+/** Whether every harvested piece of a lot is somewhere: harvested = sum over places, none below zero. */
 export function harvestedEqualsPlaces(harvestedPieces: number, balances: readonly { pieces: number }[]): boolean {
 	if (balances.some((balance) => balance.pieces < 0)) return false
 	return balances.reduce((sum, balance) => sum + balance.pieces, 0) === harvestedPieces

@@ -1,0 +1,79 @@
+import { readFileSync } from "node:fs"
+import { z } from "zod"
+
+const day = z.iso.date()
+const text = z.string()
+const amounts = z.array(z.number())
+
+/** The shapes of the values that a rule of the product is held to; keys beside these are let through and reported. */
+const valuesSchema = z.looseObject({
+	terms: z
+		.looseObject({ due_dates: z.array(z.record(text, day)).optional(), ageing: z.array(text).optional() })
+		.optional(),
+	planning: z
+		.looseObject({
+			atp: z
+				.array(
+					z.looseObject({
+						id: text,
+						on_hand: z.number(),
+						mps: amounts,
+						orders: amounts,
+						cumulative_without_lookahead: amounts.optional(),
+						cumulative_with_lookahead: amounts.optional(),
+					}),
+				)
+				.optional(),
+		})
+		.optional(),
+	calendar: z
+		.looseObject({
+			rrule: z
+				.array(
+					z.looseObject({ name: text, dtstart: text, tzid: text.optional(), rrule: text, dates: z.array(day).min(1) }),
+				)
+				.optional(),
+		})
+		.optional(),
+	labelling: z
+		.looseObject({
+			computed_price: z
+				.looseObject({ examples: z.array(z.looseObject({ weight: text, unit_price: text, half_up: text })) })
+				.optional(),
+			declarations: z.array(z.looseObject({ net_oz: z.number(), text })).optional(),
+		})
+		.optional(),
+	allocation: z
+		.looseObject({
+			largest_remainder: z
+				.array(z.looseObject({ id: text, weights: amounts, total: z.number(), result: amounts }))
+				.optional(),
+		})
+		.optional(),
+})
+
+/** The repository's own values. */
+export const ownValuesPath = new URL("published-values.json", import.meta.url).pathname
+
+/** Reads a file of published values; throws with the place of the first entry that has another shape. */
+export function readValues(path: string) {
+	return valuesSchema.parse(JSON.parse(readFileSync(path, "utf8")))
+}
+
+/** The values the rules are held to in this run: the repository's own, or the file that CHECK_VALUES names. */
+export const valuesPath = process.env.CHECK_VALUES ?? ownValuesPath
+export const values = readValues(valuesPath)
+
+/**
+ * What the tests beside this file read, by "topic.section": the fields of an entry that are checked. An empty list stands
+ * for entries that are read whole.
+ */
+export const heldTo: Record<string, readonly string[]> = {
+	"terms.due_dates": [],
+	"terms.ageing": [],
+	"planning.atp": ["on_hand", "mps", "orders", "cumulative_without_lookahead", "cumulative_with_lookahead"],
+	"calendar.rrule": ["dtstart", "tzid", "rrule", "dates"],
+	"labelling.computed_price": ["weight", "unit_price", "half_up"],
+	"labelling.declarations": ["net_oz", "text (its grams)"],
+	"allocation.largest_remainder": ["weights", "total", "result"],
+}
