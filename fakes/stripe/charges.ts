@@ -5,7 +5,7 @@ import { noSuch } from "./errors"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { page } from "./lists"
-import { expandable, paging, readParams } from "./params"
+import { expandable, paging, paramsOf, readParams } from "./params"
 import type { Endpoints } from "./router"
 
 /** How the card was given: typed on a page, or presented to a reader. */
@@ -144,7 +144,7 @@ export function getCharge(fake: Fake, id: string, param?: string): Stripe.Charge
 	return charge
 }
 
-const listSchema = z.strictObject({
+const listSchema = paramsOf<Stripe.ChargeListParams>()({
 	...paging,
 	payment_intent: z.string().optional(),
 	customer: z.string().optional(),

@@ -13,7 +13,7 @@ function intentOf(fake: Fake, session: Stripe.Checkout.Session): Stripe.PaymentI
 		{
 			amount: session.amount_total ?? 0,
 			currency: session.currency ?? "usd",
-			types: ["card"],
+			allowedTypes: null,
 			captureMethod: "automatic",
 			customer: typeof session.customer === "string" ? session.customer : null,
 			description: secret?.intentDescription ?? null,

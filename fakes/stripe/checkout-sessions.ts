@@ -7,15 +7,16 @@ import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { lineItemSchema, makeLines } from "./line-items"
 import { page } from "./lists"
-import { expandable, integer, list, mergeMetadata, metadata, paging, readParams } from "./params"
+import { expandable, integer, list, mergeMetadata, metadata, paging, paramsOf, readParams } from "./params"
 import { cancelIntent } from "./payment-intents"
 import type { Endpoints } from "./router"
 
 const SHORTEST = 30 * 60
 const LONGEST = 24 * 60 * 60
 
-const createSchema = z.strictObject({
+const createSchema = paramsOf<Stripe.Checkout.SessionCreateParams>()({
 	...expandable,
+	allowed_payment_method_types: list(z.literal("card")).optional(),
 	mode: z.literal("payment", "The payment fake knows the mode payment only"),
 	line_items: list(lineItemSchema),
 	success_url: z.url("Not a valid URL"),
@@ -27,11 +28,10 @@ const createSchema = z.strictObject({
 	locale: z.string().optional(),
 	metadata: metadata.optional(),
 	payment_intent_data: z.strictObject({ description: z.string().optional(), metadata: metadata.optional() }).optional(),
-	payment_method_types: list(z.literal("card")).optional(),
 	submit_type: z.enum(["auto", "book", "donate", "pay"]).optional(),
 })
-const updateSchema = z.strictObject({ ...expandable, metadata: metadata.optional() })
-const listSchema = z.strictObject({
+const updateSchema = paramsOf<Stripe.Checkout.SessionUpdateParams>()({ ...expandable, metadata: metadata.optional() })
+const listSchema = paramsOf<Stripe.Checkout.SessionListParams>()({
 	...paging,
 	customer: z.string().optional(),
 	payment_intent: z.string().optional(),
@@ -76,6 +76,7 @@ function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkou
 	const session: Stripe.Checkout.Session = {
 		...blankSession,
 		id,
+		allowed_payment_method_types: given.allowed_payment_method_types ?? null,
 		amount_subtotal: total,
 		amount_total: total,
 		cancel_url: given.cancel_url ?? null,
@@ -106,7 +107,6 @@ const blankSession = {
 	adaptive_pricing: null,
 	after_expiration: null,
 	allow_promotion_codes: null,
-	allowed_payment_method_types: null,
 	automatic_tax: { enabled: false, liability: null, provider: null, status: null },
 	billing_address_collection: null,
 	client_secret: null,

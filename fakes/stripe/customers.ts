@@ -4,7 +4,7 @@ import { noSuch } from "./errors"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { page } from "./lists"
-import { clearable, expandable, mergeMetadata, metadata, paging, readParams } from "./params"
+import { clearable, expandable, mergeMetadata, metadata, paging, paramsOf, readParams } from "./params"
 import type { Endpoints } from "./router"
 
 const addressSchema = z.strictObject({
@@ -25,8 +25,8 @@ const fields = {
 	address: addressSchema.optional(),
 	metadata: metadata.optional(),
 }
-const writeSchema = z.strictObject(fields)
-const listSchema = z.strictObject({ ...paging, email: z.string().optional() })
+const writeSchema = paramsOf<Stripe.CustomerCreateParams & Stripe.CustomerUpdateParams>()(fields)
+const listSchema = paramsOf<Stripe.CustomerListParams>()({ ...paging, email: z.string().optional() })
 
 /** The customer named `id`; refuses with 404 `resource_missing`. */
 export function getCustomer(fake: Fake, id: string, param?: string): Stripe.Customer {

@@ -1,10 +1,15 @@
+import type Stripe from "stripe"
 import { z } from "zod"
 import { noSuch } from "./errors"
 import { page } from "./lists"
-import { expandable, list, paging, readParams } from "./params"
+import { expandable, list, paging, paramsOf, readParams } from "./params"
 import type { Endpoints } from "./router"
 
-const listSchema = z.strictObject({ ...paging, type: z.string().optional(), types: list(z.string()).optional() })
+const listSchema = paramsOf<Stripe.EventListParams>()({
+	...paging,
+	type: z.string().optional(),
+	types: list(z.string()).optional(),
+})
 
 function matches(type: string, wanted: string): boolean {
 	return wanted.endsWith("*") ? type.startsWith(wanted.slice(0, -1)) : type === wanted

@@ -58,6 +58,16 @@ export type Paging = z.infer<z.ZodObject<typeof paging>>
 /** What every other endpoint takes. */
 export const expandable = { expand: list(z.string()).optional() }
 
+/**
+ * A schema for the parameters of one endpoint, named by the SDK's type for them: a name that the SDK no longer knows
+ * fails the compiler, a name that the fake does not know is refused when it is sent.
+ */
+export function paramsOf<Params>() {
+	return <Shape extends { [name: string]: z.ZodType }>(
+		shape: Shape & { [Name in Exclude<keyof Shape, keyof Params>]: never },
+	) => z.strictObject<Shape>(shape)
+}
+
 /** Adds `changes` to `before`, dropping the keys whose new value is empty. Null drops all. */
 export function mergeMetadata(
 	before: Record<string, string>,

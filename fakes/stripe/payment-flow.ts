@@ -20,7 +20,8 @@ export type GivenCard = { number: string; expMonth: number; expYear: number; nam
 export type IntentDraft = {
 	amount: number
 	currency: string
-	types: string[]
+	/** What the caller lets the payer use; null leaves it to Stripe, which for this fake means a card. */
+	allowedTypes: ("card" | "card_present")[] | null
 	captureMethod: "automatic" | "manual"
 	customer: string | null
 	description: string | null
@@ -35,7 +36,7 @@ export function openIntent(fake: Fake, draft: IntentDraft, cause: Cause): Stripe
 	const intent: Stripe.PaymentIntent = {
 		id,
 		object: "payment_intent",
-		allowed_payment_method_types: null,
+		allowed_payment_method_types: draft.allowedTypes,
 		amount: draft.amount,
 		amount_capturable: 0,
 		amount_received: 0,
@@ -63,7 +64,7 @@ export function openIntent(fake: Fake, draft: IntentDraft, cause: Cause): Stripe
 		payment_method: null,
 		payment_method_configuration_details: null,
 		payment_method_options: {},
-		payment_method_types: draft.types,
+		payment_method_types: draft.allowedTypes ?? ["card"],
 		payment_record: null,
 		processing: null,
 		receipt_email: draft.receiptEmail,

@@ -18,15 +18,17 @@ import {
 	mergeMetadata,
 	metadata,
 	paging,
+	paramsOf,
 	readParams,
 } from "./params"
 import { attempt, openIntent } from "./payment-flow"
 import type { Endpoints } from "./router"
 
 const confirmFields = { payment_method: z.string().optional(), return_url: z.string().optional() }
-const createSchema = z.strictObject({
+const createSchema = paramsOf<Stripe.PaymentIntentCreateParams>()({
 	...expandable,
 	...confirmFields,
+	allowed_payment_method_types: list(z.enum(["card", "card_present"])).optional(),
 	amount: integer,
 	currency,
 	automatic_payment_methods: z
@@ -37,23 +39,28 @@ const createSchema = z.strictObject({
 	customer: z.string().optional(),
 	description: z.string().optional(),
 	metadata: metadata.optional(),
-	payment_method_types: list(z.enum(["card", "card_present"])).optional(),
 	receipt_email: z.string().optional(),
 })
-const updateSchema = z.strictObject({
+const updateSchema = paramsOf<Stripe.PaymentIntentUpdateParams>()({
 	...expandable,
 	description: clearable.optional(),
 	metadata: metadata.optional(),
 	receipt_email: clearable.optional(),
 })
-const confirmSchema = z.strictObject({ ...expandable, ...confirmFields })
-const captureSchema = z.strictObject({ ...expandable, amount_to_capture: integer.optional() })
-const cancelSchema = z.strictObject({
+const confirmSchema = paramsOf<Stripe.PaymentIntentConfirmParams>()({ ...expandable, ...confirmFields })
+const captureSchema = paramsOf<Stripe.PaymentIntentCaptureParams>()({
+	...expandable,
+	amount_to_capture: integer.optional(),
+})
+const cancelSchema = paramsOf<Stripe.PaymentIntentCancelParams>()({
 	...expandable,
 	cancellation_reason: z.enum(["abandoned", "duplicate", "fraudulent", "requested_by_customer"]).optional(),
 })
-const listSchema = z.strictObject({ ...paging, customer: z.string().optional() })
-const retrieveSchema = z.strictObject({ ...expandable, client_secret: z.string().optional() })
+const listSchema = paramsOf<Stripe.PaymentIntentListParams>()({ ...paging, customer: z.string().optional() })
+const retrieveSchema = paramsOf<Stripe.PaymentIntentRetrieveParams>()({
+	...expandable,
+	client_secret: z.string().optional(),
+})
 
 /** The payment intent named `id`; refuses with 404 `resource_missing`. */
 export function getIntent(fake: Fake, id: string, param = "intent"): Stripe.PaymentIntent {
@@ -150,13 +157,13 @@ export const paymentIntentEndpoints: Endpoints = {
 		const draft = {
 			amount: given.amount,
 			currency: given.currency,
-			types: given.payment_method_types ?? ["card"],
+			allowedTypes: given.allowed_payment_method_types ?? null,
 			captureMethod: given.capture_method ?? "automatic",
 			customer: given.customer ?? null,
 			description: given.description ?? null,
 			metadata: mergeMetadata({}, given.metadata),
 			receiptEmail: given.receipt_email ?? null,
-			automatic: given.automatic_payment_methods?.enabled ?? given.payment_method_types === undefined,
+			automatic: given.automatic_payment_methods?.enabled ?? true,
 		}
 		const intent = openIntent(fake, draft, cause)
 		if (given.confirm) confirm(fake, intent, given, cause)

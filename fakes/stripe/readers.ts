@@ -4,26 +4,31 @@ import { invalidRequest, noSuch, unexpectedState } from "./errors"
 import type { Cause } from "./events"
 import type { Fake } from "./fake"
 import { page } from "./lists"
-import { expandable, flag, paging, readParams } from "./params"
+import { expandable, flag, paging, paramsOf, readParams } from "./params"
 import { attempt } from "./payment-flow"
 import { getIntent } from "./payment-intents"
 import type { Endpoints } from "./router"
 
-const processSchema = z.strictObject({
+const processSchema = paramsOf<Stripe.Terminal.ReaderProcessPaymentIntentParams>()({
 	...expandable,
 	payment_intent: z.string(),
 	process_config: z
 		.strictObject({ enable_customer_cancellation: flag.optional(), skip_tipping: flag.optional() })
 		.optional(),
 })
-const presentSchema = z.strictObject({
+type PresentParams = Parameters<Stripe["testHelpers"]["terminal"]["readers"]["presentPaymentMethod"]>[1] & object
+
+const presentSchema = paramsOf<PresentParams>()({
 	...expandable,
 	amount_tip: z.literal("0", "The payment fake knows no tips").optional(),
 	type: z.literal("card_present", "The payment fake presents cards only").optional(),
 	card_present: z.strictObject({ number: z.string() }).optional(),
 })
-const listSchema = z.strictObject({
-	...paging,
+// Readers are not listed by time.
+const { created: _, ...undatedPaging } = paging
+
+const listSchema = paramsOf<Stripe.Terminal.ReaderListParams>()({
+	...undatedPaging,
 	device_type: z.string().optional(),
 	location: z.string().optional(),
 	serial_number: z.string().optional(),

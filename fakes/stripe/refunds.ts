@@ -6,11 +6,11 @@ import { invalidRequest, noSuch, unexpectedState } from "./errors"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { page } from "./lists"
-import { expandable, integer, mergeMetadata, metadata, paging, readParams } from "./params"
+import { expandable, integer, mergeMetadata, metadata, paging, paramsOf, readParams } from "./params"
 import { getIntent } from "./payment-intents"
 import type { Endpoints } from "./router"
 
-const createSchema = z.strictObject({
+const createSchema = paramsOf<Stripe.RefundCreateParams>()({
 	...expandable,
 	payment_intent: z.string().optional(),
 	charge: z.string().optional(),
@@ -18,7 +18,7 @@ const createSchema = z.strictObject({
 	reason: z.enum(["duplicate", "fraudulent", "requested_by_customer"]).optional(),
 	metadata: metadata.optional(),
 })
-const listSchema = z.strictObject({
+const listSchema = paramsOf<Stripe.RefundListParams>()({
 	...paging,
 	payment_intent: z.string().optional(),
 	charge: z.string().optional(),

@@ -4,7 +4,12 @@ import { postForm, refusal, startFake, startFakeWithEndpoint } from "./harness"
 
 const READER = "tmr_demo_stall"
 const sale = (stripe: Stripe, changes: Partial<Stripe.PaymentIntentCreateParams> = {}) =>
-	stripe.paymentIntents.create({ amount: 2400, currency: "usd", payment_method_types: ["card_present"], ...changes })
+	stripe.paymentIntents.create({
+		amount: 2400,
+		currency: "usd",
+		allowed_payment_method_types: ["card_present"],
+		...changes,
+	})
 
 test("the two readers of the demo are there", async () => {
 	const { stripe } = await startFake()
@@ -82,12 +87,12 @@ test("a canceled action takes no card", async () => {
 	const { stripe, fake } = await startFake()
 	const intent = await sale(stripe)
 	await stripe.terminal.readers.processPaymentIntent(READER, { payment_intent: intent.id })
-	expect((await stripe.terminal.readers.cancelAction(READER)).action).toBeNull()
+	expect(await stripe.terminal.readers.cancelAction(READER)).toMatchObject({ id: READER, action: null })
 	expect(await refusal(stripe.testHelpers.terminal.readers.presentPaymentMethod(READER))).toMatchObject({
 		statusCode: 400,
 	})
 	expect(fake.state.charges.size).toBe(0)
-	expect((await stripe.terminal.readers.retrieve(READER)).action).toBeNull()
+	expect(await stripe.terminal.readers.retrieve(READER)).toMatchObject({ id: READER, action: null })
 })
 
 test("a reader takes no payment that is paid, canceled, or not meant for a reader", async () => {
