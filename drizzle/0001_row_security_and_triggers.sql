@@ -76,7 +76,11 @@ CREATE TRIGGER keep_stock_balance AFTER INSERT ON stock_moves FOR EACH ROW EXECU
 CREATE FUNCTION raise_shop_version() RETURNS trigger LANGUAGE plpgsql SECURITY DEFINER SET search_path = public, pg_temp AS $$
 DECLARE changed uuid;
 BEGIN
-	changed := CASE WHEN TG_TABLE_NAME = 'producers' THEN NEW.id WHEN TG_OP = 'DELETE' THEN OLD.producer_id ELSE NEW.producer_id END;
+	-- One statement for each case: in a single expression PL/pgSQL would look up every column named, also of the other tables.
+	IF TG_TABLE_NAME = 'producers' THEN changed := NEW.id;
+	ELSIF TG_OP = 'DELETE' THEN changed := OLD.producer_id;
+	ELSE changed := NEW.producer_id;
+	END IF;
 	IF current_setting('waxbill.shop_raised', true) = changed::text THEN RETURN NULL; END IF;
 	INSERT INTO shop_versions (producer_id) VALUES (changed)
 	ON CONFLICT (producer_id) DO UPDATE SET version = shop_versions.version + 1;
