@@ -1,0 +1,94 @@
+import type { invoiceLines, invoices } from "~/db/schema"
+import type { Day } from "~/domain/calendar"
+import { dueDates } from "~/domain/invoicing/terms"
+import { shortSentence } from "~/domain/orders/short-sentence"
+import { labelledGrams } from "~/domain/weight"
+import type { OrderOfSeason } from "./plan-orders"
+import type { Season } from "./season"
+
+export type InvoiceRow = typeof invoices.$inferInsert & { id: string; paidCents: number }
+
+export type Invoices = {
+	/** In the order of their numbers. */
+	invoices: { row: InvoiceRow; order: OrderOfSeason }[]
+	lines: (typeof invoiceLines.$inferInsert)[]
+}
+
+/** One invoice for each order that was sent, numbered without gaps within its year, as nothing has been paid yet. */
+export function planInvoices({ producerId, chance }: Season, orders: readonly OrderOfSeason[]): Invoices {
+	const plan: Invoices = { invoices: [], lines: [] }
+	const lastOfYear = new Map<number, number>()
+	const sent = orders.flatMap((order) => (order.sentAt ? { order, sentAt: order.sentAt } : []))
+	for (const { order, sentAt } of sent.toSorted((a, b) => a.sentAt.getTime() - b.sentAt.getTime())) {
+		const id = chance.id()
+		const year = Number(order.on.slice(0, 4))
+		const sequence = (lastOfYear.get(year) ?? 0) + 1
+		lastOfYear.set(year, sequence)
+		const lines = order.lines.map((line, position) =>
+			invoiceLine(line, { producerId, id: chance.id(), invoiceId: id, position }),
+		)
+		plan.lines.push(...lines)
+		const linesCents = lines.reduce((sum, line) => sum + line.lineCents, 0)
+		plan.invoices.push({
+			order,
+			row: {
+				producerId,
+				id,
+				year,
+				sequence,
+				storeId: order.store.id,
+				orderId: order.id,
+				issuedOn: order.on,
+				dueOn: dueOn(order),
+				linesCents,
+				deliveryCents: order.deliveryCents,
+				taxCents: 0,
+				totalCents: linesCents + order.deliveryCents,
+				paidCents: 0,
+				shortNote: shortNote(order),
+				createdAt: sentAt,
+			},
+		})
+	}
+	return plan
+}
+
+function dueOn({ store, on }: OrderOfSeason): Day {
+	const { termsKind: kind, termsDays: days, discount } = store
+	return dueDates(
+		{ kind, days, discountBasisPoints: discount?.basisPoints ?? 0, discountDays: discount?.days ?? 0 },
+		on,
+	).dueOn
+}
+
+function invoiceLine(
+	line: OrderOfSeason["lines"][number],
+	keys: { producerId: string; id: string; invoiceId: string; position: number },
+) {
+	const { product, asked, given, caseCents } = line
+	const sentCases = given ?? 0
+	return {
+		...keys,
+		position: keys.position + 1,
+		productId: product.id,
+		code: product.code,
+		name: product.name,
+		detail: `${product.detail}, case of ${product.piecesPerCase}`,
+		lotCodes: line.lots.map((lot) => lot.code).join(", "),
+		netGrams: labelledGrams(product.netOunces) * sentCases * product.piecesPerCase,
+		askedCases: asked,
+		sentCases,
+		caseCents,
+		lineCents: sentCases * caseCents,
+	}
+}
+
+function shortNote(order: OrderOfSeason): string {
+	return order.lines
+		.flatMap(({ product, asked, given }) =>
+			given !== null && given < asked
+				? shortSentence({ productName: product.name, asked, given, deliveryOn: order.on, keepsPrice: true })
+				: [],
+		)
+		.join(" ")
+}

@@ -1,0 +1,223 @@
+import type { expectedSupplies, lots, orderLineLots, stockMoves } from "~/db/schema"
+import { addDays, compareDays, type Day, dayInZone, instantAt } from "~/domain/calendar"
+import type { Catalogue, CatalogueProduct } from "./plan-catalogue"
+import type { MarketDayOfSeason } from "./plan-market-days"
+import type { OrderOfSeason } from "./plan-orders"
+import { named, notAfter, type Season } from "./season"
+import { openShelf, type Shelf, type Taken } from "./shelf"
+
+type Move = typeof stockMoves.$inferInsert & { movedAt: Date }
+
+export type Stock = {
+	lots: (typeof lots.$inferInsert)[]
+	/** In the order in which they happened, as no balance may fall below zero on the way. */
+	moves: Move[]
+	lineLots: (typeof orderLineLots.$inferInsert)[]
+	expected: (typeof expectedSupplies.$inferInsert)[]
+}
+
+type Plans = { catalogue: Catalogue; orders: readonly OrderOfSeason[]; marketDays: readonly MarketDayOfSeason[] }
+type Ledger = Stock & { season: Season; shelves: ReadonlyMap<string, Shelf> }
+
+const DAYS_TO_BEST_BEFORE = 300
+
+/**
+ * Lots and moves behind everything that was packed, sent and sold, and what is ready, held and expected now, so that
+ * the coming delivery day has the free cases the scenario names. Writes the lots of each packed line into `orders`.
+ */
+export function planStock(season: Season, { catalogue, orders, marketDays }: Plans): Stock {
+	const products = [...catalogue.products.values()]
+	const shelves = new Map(products.map((product) => [product.code, openShelf(season, product)]))
+	const ledger: Ledger = { season, shelves, lots: [], moves: [], lineLots: [], expected: [] }
+	const steps = [
+		...orders.map((order) => ({ at: order.packedAt, run: (at: Date) => pack(ledger, order, at) })),
+		...marketDays.flatMap((day) => marketSteps(ledger, day)),
+	]
+		.flatMap(({ at, run }) => (at ? { at, run } : []))
+		.toSorted((a, b) => a.at.getTime() - b.at.getTime())
+	for (const { at, run } of steps) run(at)
+
+	for (const product of products) {
+		const shelf = named(shelves, product.code)
+		shelf.settle(readyPieces(product, orders), season.today)
+		writeLots(ledger, shelf)
+		writeHeld(ledger, product, shelf.nextCode)
+		writeExpected(ledger, product)
+	}
+	const { lots, lineLots, expected } = ledger
+	return { lots, lineLots, expected, moves: ledger.moves.toSorted((a, b) => a.movedAt.getTime() - b.movedAt.getTime()) }
+}
+
+/** What must be ready: the free cases, everything promised and not yet packed, and the reserve. */
+function readyPieces(product: CatalogueProduct, orders: readonly OrderOfSeason[]): number {
+	const promisedCases = orders
+		.filter((order) => order.state === "placed" || order.state === "confirmed")
+		.flatMap((order) => order.lines)
+		.filter((line) => line.product === product)
+		.reduce((sum, line) => sum + (line.given ?? (line.isToShare ? 0 : line.asked)), 0)
+	return (product.freeCases + promisedCases) * product.piecesPerCase + product.reservePieces
+}
+
+function move(
+	ledger: Ledger,
+	taken: Taken,
+	at: Date,
+	rest: Pick<Move, "fromPlace" | "fromRef" | "toPlace" | "toRef" | "reason">,
+) {
+	const { producerId, chance, scenario, userId, now } = ledger.season
+	ledger.moves.push({
+		producerId,
+		id: chance.id(),
+		lotId: taken.lot.id,
+		pieces: taken.pieces,
+		movedAt: notAfter(now, at),
+		movedBy: userId(scenario.packerEmail),
+		...rest,
+	})
+}
+
+function pack(ledger: Ledger, order: OrderOfSeason, at: Date): void {
+	const { producerId, scenario } = ledger.season
+	for (const line of order.lines) {
+		const pieces = (line.given ?? 0) * line.product.piecesPerCase
+		const shelf = named(ledger.shelves, line.product.code)
+		for (const taken of shelf.take(pieces, dayInZone(at, scenario.timeZone))) {
+			const { id, code } = taken.lot
+			line.lots.push({ lotId: id, code, pieces: taken.pieces })
+			ledger.lineLots.push({ producerId, orderLineId: line.id, lotId: id, pieces: taken.pieces })
+			const reason = `packed for order ${order.number}`
+			move(ledger, taken, at, { fromPlace: "ready", toPlace: "packed", toRef: order.id, reason })
+			if (!order.sentAt) continue
+			move(ledger, taken, order.sentAt, {
+				fromPlace: "packed",
+				fromRef: order.id,
+				toPlace: "sold",
+				toRef: order.id,
+				reason: `sent with order ${order.number}`,
+			})
+		}
+	}
+}
+
+/** Load-out, sales and what came back, of one market day; the pieces on the table are kept by product in between. */
+function marketSteps(ledger: Ledger, day: MarketDayOfSeason) {
+	const { timeZone } = ledger.season.scenario
+	const table = new Map<string, Taken[]>()
+	const loadOut = (at: Date) => {
+		for (const { product, pieces } of day.load) {
+			const taken = named(ledger.shelves, product.code).take(pieces, dayInZone(at, timeZone))
+			table.set(product.code, taken)
+			for (const some of taken) {
+				move(ledger, some, at, { fromPlace: "ready", toPlace: "market", toRef: day.id, reason: "loaded out" })
+			}
+		}
+	}
+	const sell = (at: Date, product: CatalogueProduct, pieces: number) => {
+		let needed = pieces
+		for (const stack of named(table, product.code)) {
+			const some = Math.min(needed, stack.pieces)
+			if (some === 0) continue
+			stack.pieces -= some
+			needed -= some
+			const places = { fromPlace: "market", fromRef: day.id, toPlace: "sold", toRef: day.id } as const
+			move(ledger, { lot: stack.lot, pieces: some }, at, { ...places, reason: "sold at the stall" })
+		}
+	}
+	const bringBack = (at: Date) => {
+		for (const { lot, pieces } of [...table.values()].flat()) {
+			if (pieces === 0) continue
+			lot.ready += pieces
+			move(ledger, { lot, pieces }, at, {
+				fromPlace: "market",
+				fromRef: day.id,
+				toPlace: "ready",
+				reason: "brought back",
+			})
+		}
+	}
+	return [
+		{ at: day.state === "planned" ? null : day.loadedAt, run: loadOut },
+		...day.sales.flatMap((sale) =>
+			sale.lines.map((line) => ({ at: sale.at, run: (at: Date) => sell(at, line.product, line.pieces) })),
+		),
+		{ at: day.returnedAt, run: bringBack },
+	]
+}
+
+function writeLots(ledger: Ledger, shelf: Shelf): void {
+	for (const lot of shelf.lots) {
+		writeLot(ledger, lot, { state: "released", releaseOn: dayInZone(lot.releasedAt, ledger.season.scenario.timeZone) })
+		move(ledger, { lot, pieces: lot.pieces }, lot.releasedAt, {
+			fromPlace: "cold-room",
+			toPlace: "ready",
+			reason: "released",
+		})
+		if (lot.brokenPieces === 0) continue
+		move(ledger, { lot, pieces: lot.brokenPieces }, lot.releasedAt, {
+			fromPlace: "cold-room",
+			toPlace: "waste",
+			reason: "broken on weighing",
+		})
+	}
+}
+
+/** The lot row and its pieces coming off the hives. */
+function writeLot(
+	ledger: Ledger,
+	lot: Shelf["lots"][number],
+	{ state, releaseOn }: { state: "held" | "released"; releaseOn: Day },
+): void {
+	const { producerId, scenario } = ledger.season
+	const pieces = lot.pieces + lot.brokenPieces
+	ledger.lots.push({
+		producerId,
+		id: lot.id,
+		code: lot.code,
+		productId: lot.product.id,
+		state,
+		harvestedOn: lot.harvestedOn,
+		expectedReleaseOn: releaseOn,
+		bestBeforeOn: addDays(lot.harvestedOn, DAYS_TO_BEST_BEFORE),
+		piecesHarvested: pieces,
+		yard: lot.product.yard,
+		createdAt: instantAt(lot.harvestedOn, "16:00", scenario.timeZone),
+	})
+	const at = instantAt(lot.harvestedOn, "16:00", scenario.timeZone)
+	move(ledger, { lot, pieces }, at, { fromPlace: null, toPlace: "cold-room", reason: "off the hives" })
+}
+
+function writeHeld(ledger: Ledger, product: CatalogueProduct, nextCode: () => string): void {
+	const { chance, today, days } = ledger.season
+	const { held } = product
+	if (!held) return
+	const lot = {
+		id: chance.id(),
+		code: nextCode(),
+		product,
+		harvestedOn: addDays(today, -3),
+		releasedAt: days.closed.cutoffAt,
+		pieces: held.cases * product.piecesPerCase,
+		brokenPieces: 0,
+		ready: 0,
+	}
+	const wanted = addDays(today, held.inDays)
+	const firstOpenOn = days.open[0]?.on ?? wanted
+	writeLot(ledger, lot, { state: "held", releaseOn: compareDays(wanted, firstOpenOn) < 0 ? wanted : firstOpenOn })
+}
+
+function writeExpected(ledger: Ledger, product: CatalogueProduct): void {
+	const { producerId, chance, today, days } = ledger.season
+	const { expected } = product
+	if (!expected) return
+	const wanted = addDays(days.open[0]?.on ?? today, expected.afterDays)
+	const lowPieces = expected.cases * product.piecesPerCase
+	ledger.expected.push({
+		producerId,
+		id: chance.id(),
+		productId: product.id,
+		expectedOn: compareDays(wanted, today) > 0 ? wanted : today,
+		lowPieces,
+		likelyPieces: Math.round(lowPieces * 1.3),
+		highPieces: Math.round(lowPieces * 1.6),
+	})
+}
