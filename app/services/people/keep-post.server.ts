@@ -1,8 +1,11 @@
 import { eq, lt, sql } from "drizzle-orm"
 import { keptPosts, sessions } from "~/db/schema"
 import { withPlatform } from "~/db/transaction.server"
+import { clientNetwork } from "~/platform/client-network.server"
+import { takeFrom } from "~/platform/rate-limit.server"
 import { hashToken, readSessionToken } from "~/platform/session-cookie.server"
 import { keptPostCookie } from "./kept-post-cookie.server"
+import { KEPT_PER_NETWORK } from "./sign-in-limits.server"
 
 /** Larger posts are not kept: an order sheet of two hundred lines is a tenth of this. */
 const MOST_BYTES = 128 * 1024
@@ -10,8 +13,8 @@ const FORM_TYPES = ["application/x-www-form-urlencoded", "multipart/form-data"]
 
 /**
  * Keeps what was posted without a session for an hour, and answers the redirect to /sign-in with a cookie that finds it
- * again. Files are left out. A post that is too large, of unknown length or no form is not kept; the person is sent to
- * sign in all the same. What was posted is bound to whoever's session the browser last held, where that is known, so
+ * again. Files are left out. A post that is too large, of unknown length, no form, or one too many from its network is not
+ * kept; the person is sent to sign in all the same. What was posted is bound to whoever's session the browser last held, where that is known, so
  * that the next person at a shared desk is not shown it.
  */
 export async function keepPost(request: Request): Promise<Response> {
@@ -24,7 +27,7 @@ export async function keepPost(request: Request): Promise<Response> {
 		location: `/sign-in?${new URLSearchParams({ to: address.pathname + address.search })}`,
 		"cache-control": "no-store",
 	})
-	if (fields !== null) {
+	if (fields !== null && (await takeFrom([KEPT_PER_NETWORK, clientNetwork(request)])).ok) {
 		const kept = await store(postTo, fields, readSessionToken(request))
 		headers.append("set-cookie", keptPostCookie(kept))
 	}

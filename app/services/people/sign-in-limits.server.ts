@@ -12,3 +12,6 @@ export const TRIES_PER_NETWORK: Limit = { name: "tries-network", points: 100, se
 
 export const INVITATIONS_PER_ADDRESS: Limit = { name: "invitations-address", points: 5, seconds: DAY }
 export const INVITATIONS_PER_PRODUCER: Limit = { name: "invitations-producer", points: 100, seconds: DAY }
+
+/** Anyone can post without a session, so what is kept of it is bounded. */
+export const KEPT_PER_NETWORK: Limit = { name: "kept-network", points: 200, seconds: 60 * 60 }
