@@ -55,17 +55,15 @@ const valuesSchema = z.looseObject({
 /** The repository's own values. */
 export const ownValuesPath = new URL("published-values.json", import.meta.url).pathname
 
+export type PublishedValues = z.infer<typeof valuesSchema>
+
 /** Reads a file of published values; throws with the place of the first entry that has another shape. */
-export function readValues(path: string) {
+export function readValues(path: string): PublishedValues {
 	return valuesSchema.parse(JSON.parse(readFileSync(path, "utf8")))
 }
 
-/** The values the rules are held to in this run: the repository's own, or the file that CHECK_VALUES names. */
-export const valuesPath = process.env.CHECK_VALUES ?? ownValuesPath
-export const values = readValues(valuesPath)
-
 /**
- * What the tests beside this file read, by "topic.section": the fields of an entry that are checked. An empty list stands
+ * What the files beside this one read, by "topic.section": the fields of an entry that are checked. An empty list stands
  * for entries that are read whole.
  */
 export const heldTo: Record<string, readonly string[]> = {
