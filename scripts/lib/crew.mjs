@@ -106,6 +106,8 @@ async function endMember(member) {
 	const late = setTimeout(() => signalGroup(member.pid, "SIGKILL"), DEADLINE_MS)
 	await member.exited
 	clearTimeout(late)
+	// Whatever it had started and did not take along.
+	signalGroup(member.pid, "SIGKILL")
 }
 
 function readRun(folder) {

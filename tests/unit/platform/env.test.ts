@@ -98,13 +98,13 @@ describe("the environment", () => {
 	})
 
 	it("is explained in .env.example, each variable once and none besides", () => {
-		const text = readFileSync(new URL("../../.env.example", import.meta.url), "utf8")
+		const text = readFileSync(new URL("../../../.env.example", import.meta.url), "utf8")
 		const names = [...text.matchAll(/^([A-Z_]+)=/gm)].map((match) => match[1])
 		expect(names.toSorted()).toEqual(Object.keys(envSchema.shape).toSorted())
 	})
 
 	it("accepts .env.example once its secrets are filled in", () => {
-		const example = parseDotenv(readFileSync(new URL("../../.env.example", import.meta.url), "utf8"))
+		const example = parseDotenv(readFileSync(new URL("../../../.env.example", import.meta.url), "utf8"))
 		const { SESSION_SECRET, STRIPE_SECRET_KEY, STRIPE_WEBHOOK_SECRET } = complete
 		expect(faultsOf({ ...example, SESSION_SECRET, STRIPE_SECRET_KEY, STRIPE_WEBHOOK_SECRET })).toEqual([])
 	})
