@@ -14,7 +14,7 @@ export default defineConfig({
 				extends: true,
 				test: {
 					name: "unit",
-					include: ["tests/{domain,unit,ui,emails}/**/*.test.{ts,tsx}"],
+					include: ["tests/{domain,unit,ui,emails,structure}/**/*.test.{ts,tsx}"],
 					setupFiles: ["tests/setup/strict.ts"],
 				},
 			},

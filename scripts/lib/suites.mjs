@@ -54,7 +54,7 @@ export const suites = [
 	check("typecheck", "Types (tsc)", "typecheck"),
 	check("imports", "Direction of imports (dependency-cruiser)", "check:imports"),
 	check("unused", "Unused files and exports (knip)", "check:unused"),
-	vitest("unit", "Rules, parts and mails (vitest)", { covers: /^tests\/(domain|unit|ui|emails)\b/ }),
+	vitest("unit", "Rules, parts and mails (vitest)", { covers: /^tests\/(domain|unit|ui|emails|structure)\b/ }),
 	vitest("standards", "Published figures (vitest)", { covers: /^tests\/standards\b/ }),
 	vitest("services", "Services and database (vitest, PostgreSQL)", {
 		covers: /^tests\/(services|db)\b/,
