@@ -20,9 +20,9 @@ await supervise(
 		readDotenv()
 		const web = await webPort()
 		await ensureInstalled()
-		const databaseUrl = await chosenDatabase(crew)
+		const database = await chosenDatabase(crew)
 		const ports = await choosePorts(() => freePort(3001), web)
-		const env = productEnv({ databaseUrl, ports, nodeEnv: "development" })
+		const env = productEnv({ databaseUrl: database.url, ports, nodeEnv: "development" })
 		const fromSource = (file, sentence) => orRefuse(sentence, process.execPath, ["--import", "tsx", file], { env })
 		await fromSource("scripts/entries/migrate.ts", "The database could not be brought up to date.")
 		await fromSource("scripts/entries/seed.ts", "The demo data could not be written.")
@@ -32,7 +32,7 @@ await supervise(
 		const args = [reactRouter, "dev", "--host", "127.0.0.1", "--port", String(web), "--strictPort"]
 		const pages = crew.start("web server", process.execPath, args, printed("web"))
 		await untilItAnswers(`http://127.0.0.1:${web}/`, pages, { seconds: 120 })
-		welcome({ ports, own: !process.env.DATABASE_URL })
+		welcome({ ports, dataFolder: database.folder })
 		await crew.ended
 	},
 	{ signalCode: 0 },

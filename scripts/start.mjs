@@ -15,15 +15,15 @@ await supervise(
 		readDotenv()
 		const web = await webPort()
 		await ensureInstalled()
-		const databaseUrl = await chosenDatabase(crew)
+		const database = await chosenDatabase(crew)
 		await ensureBuilt()
 		const ports = await choosePorts(() => freePort(3001), web)
-		const env = productEnv({ databaseUrl, ports })
+		const env = productEnv({ databaseUrl: database.url, ports })
 		await runBuilt("migrate", "The database could not be brought up to date.", env)
 		await runBuilt("seed", "The demo data could not be written.", env)
 		await startStandIns(crew, { ports, env, folder: workFolder })
 		await startBuilt(crew, { env })
-		welcome({ ports, own: !process.env.DATABASE_URL })
+		welcome({ ports, dataFolder: database.folder })
 		await crew.ended
 	},
 	{ signalCode: 0 },

@@ -13,11 +13,14 @@ export function readDotenv() {
 	}
 }
 
-/** The address of the database to use: DATABASE_URL, or this checkout's own cluster, which stops along with the crew. */
+/**
+ * The database to use, as `{ url, folder }`: that of DATABASE_URL, or this checkout's own cluster, which stops along with
+ * the crew and keeps its data in `folder`.
+ */
 export async function chosenDatabase(crew) {
 	const given = process.env.DATABASE_URL?.trim()
-	if (given) return given
+	if (given) return { url: given }
 	const cluster = await startCluster({ folder: join(workFolder, "pg"), firstPort: FIRST_PORT })
 	crew.onStop(cluster.stop)
-	return cluster.url()
+	return { url: cluster.url(), folder: cluster.folder }
 }

@@ -1,10 +1,10 @@
 import { existsSync, readFileSync } from "node:fs"
 import { join } from "node:path"
-import { workFolder } from "./paths.mjs"
+import { root, workFolder } from "./paths.mjs"
 import { say } from "./say.mjs"
 
 /** Prints where everything is, whom the demo knows, and how to stop. */
-export function welcome({ ports, own }) {
+export function welcome({ ports, dataFolder }) {
 	const people = demoPeople()
 	const local = (port) => `http://127.0.0.1:${port}`
 	say()
@@ -24,7 +24,8 @@ export function welcome({ ports, own }) {
 		}
 	}
 	say()
-	say(`Ctrl-C stops all of it${own ? "; the data stay in .waxbill" : ""}. Logs are in .waxbill/log.`)
+	say(`Ctrl-C stops all of it. Logs are in .waxbill/log.`)
+	if (dataFolder) say(`The data stay in ${dataFolder.replace(`${root}/`, "")}; npm run reset begins anew.`)
 }
 
 function demoPeople() {
