@@ -1,5 +1,6 @@
 import type Stripe from "stripe"
 import { z } from "zod"
+import { blankSession } from "./blank-session"
 import { getCustomer } from "./customers"
 import { invalidRequest, noSuch } from "./errors"
 import { type Cause, fromPage } from "./events"
@@ -44,7 +45,7 @@ export function payUrl(fake: Fake, id: string): string {
 }
 
 /** The session named `id`; refuses with 404 `resource_missing`. */
-export function getSession(fake: Fake, id: string): Stripe.Checkout.Session {
+function getSession(fake: Fake, id: string): Stripe.Checkout.Session {
 	const session = fake.store.sessions.get(id)
 	if (!session) throw noSuch("checkout.session", id, "session")
 	return session
@@ -101,52 +102,6 @@ function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkou
 	})
 	return session
 }
-
-const blankSession = {
-	object: "checkout.session",
-	adaptive_pricing: null,
-	after_expiration: null,
-	allow_promotion_codes: null,
-	automatic_tax: { enabled: false, liability: null, provider: null, status: null },
-	billing_address_collection: null,
-	client_secret: null,
-	collected_information: null,
-	consent: null,
-	consent_collection: null,
-	currency_conversion: null,
-	custom_fields: [],
-	custom_text: { after_submit: null, shipping_address: null, submit: null, terms_of_service_acceptance: null },
-	customer_account: null,
-	customer_details: null,
-	discounts: [],
-	integration_identifier: null,
-	invoice: null,
-	invoice_creation: null,
-	livemode: false,
-	managed_payments: null,
-	mode: "payment",
-	origin_context: null,
-	// Made when somebody tries to pay, not before: an application must not count on it in an open session.
-	payment_intent: null,
-	payment_link: null,
-	payment_method_collection: "if_required",
-	payment_method_configuration_details: null,
-	payment_method_options: {},
-	payment_method_types: ["card"],
-	payment_status: "unpaid",
-	permissions: null,
-	recovered_from: null,
-	saved_payment_method_options: null,
-	setup_intent: null,
-	shipping_address_collection: null,
-	shipping_cost: null,
-	shipping_options: [],
-	status: "open",
-	subscription: null,
-	total_details: { amount_discount: 0, amount_shipping: 0, amount_tax: 0 },
-	ui_mode: "hosted_page",
-	wallet_options: null,
-} satisfies Partial<Stripe.Checkout.Session>
 
 /** Ends an open session and what was begun under it; emits checkout.session.expired. */
 function expire(fake: Fake, session: Stripe.Checkout.Session, cause: Cause): void {

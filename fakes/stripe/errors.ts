@@ -1,7 +1,7 @@
 import type Stripe from "stripe"
 
 /** The parts of Stripe's error body that this fake fills in; the SDK reads `type`, `code` and `param`. */
-export type ErrorBody = {
+type ErrorBody = {
 	type: "api_error" | "card_error" | "idempotency_error" | "invalid_request_error" | "rate_limit_error"
 	message: string
 	code?: string

@@ -17,7 +17,7 @@ export type Attempt =
 /** A card as it is given: the number is looked at once and never stored. */
 export type GivenCard = { number: string; expMonth: number; expYear: number; name: string | null; email: string | null }
 
-export type IntentDraft = {
+type IntentDraft = {
 	amount: number
 	currency: string
 	/** What the caller lets the payer use; null leaves it to Stripe, which for this fake means a card. */
@@ -84,7 +84,7 @@ export function openIntent(fake: Fake, draft: IntentDraft, cause: Cause): Stripe
 }
 
 /** Takes the money of an intent whose card is good: succeeded, or requires_capture when capture is manual. */
-export function succeed(fake: Fake, intent: Stripe.PaymentIntent, presented: Presented, cause: Cause): void {
+function succeed(fake: Fake, intent: Stripe.PaymentIntent, presented: Presented, cause: Cause): void {
 	const charge = recordCharge(fake, intent, presented)
 	intent.latest_charge = charge.id
 	intent.payment_method = charge.payment_method

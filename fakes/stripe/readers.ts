@@ -45,7 +45,7 @@ const troubles = {
 } as const
 
 /** The reader named `id`; refuses with 404 `resource_missing`. */
-export function getReader(fake: Fake, id: string): Stripe.Terminal.Reader {
+function getReader(fake: Fake, id: string): Stripe.Terminal.Reader {
 	const reader = fake.store.readers.get(id)
 	if (!reader) throw noSuch("terminal.reader", id, "reader")
 	return reader

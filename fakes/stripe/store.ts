@@ -9,7 +9,7 @@ export type KeptAnswer = { fingerprint: string; status: number; body: string; re
 export type Delivery = { event: string; type: string; status: number | null; at: number }
 
 /** A checkout session keeps its lines and the metadata of the payment to come beside the object that is answered. */
-export type SessionSecret = {
+type SessionSecret = {
 	lines: Stripe.LineItem[]
 	intentMetadata: Record<string, string>
 	intentDescription: string | null

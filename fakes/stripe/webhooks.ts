@@ -19,6 +19,11 @@ export type Courier = {
 	stop: () => void
 }
 
+/** The milliseconds to wait after the nth try (from 1) before the next: `firstMs`, then doubling up to `longestMs`. */
+export function pauseAfter(attempt: number, pause: RetryPause): number {
+	return Math.min(pause.firstMs * 2 ** (attempt - 1), pause.longestMs)
+}
+
 /**
  * A courier to `endpoint`. First tries go one after the other in the order of the events; a try that is not answered
  * 2xx within ten seconds is repeated after a pause that doubles each time, and holds up nobody else. An event counts as
@@ -70,11 +75,13 @@ export function createCourier(
 			return
 		}
 		if (attempt >= pause.tries) return
-		const wait = Math.min(pause.firstMs * 2 ** (attempt - 1), pause.longestMs)
-		const timer = setTimeout(() => {
-			timers.delete(timer)
-			void tryOnce(to, event, attempt + 1)
-		}, wait)
+		const timer = setTimeout(
+			() => {
+				timers.delete(timer)
+				void tryOnce(to, event, attempt + 1)
+			},
+			pauseAfter(attempt, pause),
+		)
 		timers.add(timer)
 	}
 

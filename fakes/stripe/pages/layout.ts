@@ -15,6 +15,8 @@ table{width:100%;border-collapse:collapse;margin:1rem 0}
 th,td{text-align:left;padding:.35rem .25rem;border-bottom:1px solid #dde3e9;font-variant-numeric:tabular-nums}
 td:last-child,th:last-child{text-align:right}
 .sum{font-size:1.8rem;font-weight:600}
+.sum .hint{display:inline;font-size:1rem}
+details{margin-top:1.5rem}
 label{display:block;margin-top:1rem;font-weight:600}
 .hint{display:block;font-weight:400;color:#4a5866}
 .wrong{display:block;color:#a1130f;font-weight:600}
