@@ -1,5 +1,7 @@
+import { readFileSync } from "node:fs"
 import { createRequire } from "node:module"
 import { Font } from "@react-pdf/renderer"
+import { plainFontOf } from "./woff"
 
 // Resolved from the installed packages when drawn, so that the paths hold in a bundled build as well.
 const require = createRequire(import.meta.url)
@@ -23,12 +25,9 @@ export function registerFonts(): void {
 	for (const { families, pkg, weight, style } of faces) {
 		for (const [index, subset] of ["latin", "latin-ext"].entries()) {
 			const file = `@fontsource/${pkg}/files/${pkg}-${subset}-${weight}-${style}.woff`
-			Font.register({
-				family: families[index] as string,
-				src: require.resolve(file),
-				fontWeight: weight,
-				fontStyle: style,
-			})
+			const font = plainFontOf(readFileSync(require.resolve(file)))
+			const src = `data:font/otf;base64,${font.toString("base64")}`
+			Font.register({ family: families[index] as string, src, fontWeight: weight, fontStyle: style })
 		}
 	}
 	// Names of products and stores are not to be broken at syllables guessed for English.
