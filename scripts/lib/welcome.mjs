@@ -13,14 +13,12 @@ export function welcome({ ports, dataFolder }) {
 	say(`  Its mail          ${local(ports.mail)}   (sign-in codes arrive here)`)
 	say(`  The payment fake  ${local(ports.stripe)}`)
 	if (people.length > 0) {
-		const width = (key) => Math.max(...people.map((person) => String(person[key] ?? "").length))
-		const [name, role, email] = [width("name"), width("role"), width("email")]
 		say()
 		say("Sign in as one of the demo people; the code comes by mail:")
-		for (const person of people) {
-			const columns = [person.name.padEnd(name), person.role.padEnd(role), person.email.padEnd(email)]
-			const url = person.url?.startsWith("/") ? `${local(ports.web)}${person.url}` : (person.url ?? "")
-			say(`  ${columns.join("  ")}  ${url}`.trimEnd())
+		const width = Math.max(...people.map((person) => person.email.length))
+		for (const { name, role, email, url } of people) {
+			say(`  ${name}, ${role}`)
+			say(`    ${email.padEnd(width)}  ${local(ports.web)}${url}`)
 		}
 	}
 	say()
