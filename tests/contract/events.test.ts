@@ -52,11 +52,11 @@ test("the pause before an event comes again doubles up to a limit", () => {
 })
 
 test("a redirect is no acceptance, and a later event does not wait for an earlier one that fails", async () => {
-	const { stripe, endpoint } = await startFakeWithEndpoint((nth) => (nth === 1 ? 302 : 200), {
-		retry: { firstMs: 50 },
-	})
+	const { stripe, fake, endpoint } = await startFakeWithEndpoint((nth) => (nth === 1 ? 302 : 200))
+	fake.switch({ holdEvents: true })
 	await stripe.customers.create({ name: "First" })
 	await stripe.customers.create({ name: "Second" })
+	await fake.flushEvents("created")
 	await endpoint.until(3)
 	const names = endpoint.received.map(({ event }) => (event.data.object as Stripe.Customer).name)
 	expect(names).toEqual(["First", "Second", "First"])
