@@ -10,7 +10,7 @@ export function isOverTls(): boolean {
  * The name of a cookie of ours. Over TLS the prefix makes the browser refuse one that was set for a wider domain, so
  * that a neighbouring host cannot plant it.
  */
-export function cookieName(name: string): string {
+function cookieName(name: string): string {
 	return isOverTls() ? `__Host-waxbill-${name}` : `waxbill-${name}`
 }
 

@@ -14,4 +14,4 @@ export const INVITATIONS_PER_ADDRESS: Limit = { name: "invitations-address", poi
 export const INVITATIONS_PER_PRODUCER: Limit = { name: "invitations-producer", points: 100, seconds: DAY }
 
 /** Anyone can post without a session, so what is kept of it is bounded. */
-export const KEPT_PER_NETWORK: Limit = { name: "kept-network", points: 200, seconds: 60 * 60 }
+export const KEPT_PER_NETWORK: Limit = { name: "kept-network", points: 60, seconds: 60 * 60 }
