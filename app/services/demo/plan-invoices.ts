@@ -1,6 +1,5 @@
 import type { invoiceLines, invoices } from "~/db/schema"
-import type { Day } from "~/domain/calendar"
-import { dueDates } from "~/domain/invoicing/terms"
+import { dueDates, type Terms, termsWords } from "~/domain/invoicing/terms"
 import { shortSentence } from "~/domain/orders/short-sentence"
 import { labelledGrams } from "~/domain/weight"
 import type { OrderOfSeason } from "./plan-orders"
@@ -39,7 +38,9 @@ export function planInvoices({ producerId, chance }: Season, orders: readonly Or
 				storeId: order.store.id,
 				orderId: order.id,
 				issuedOn: order.on,
-				dueOn: dueOn(order),
+				dueOn: dueDates(termsOf(order), order.on).dueOn,
+				termsWords: termsWords(termsOf(order)),
+				isForResale: order.store.hasCertificate,
 				linesCents,
 				deliveryCents: order.deliveryCents,
 				taxCents: 0,
@@ -53,12 +54,13 @@ export function planInvoices({ producerId, chance }: Season, orders: readonly Or
 	return plan
 }
 
-function dueOn({ store, on }: OrderOfSeason): Day {
-	const { termsKind: kind, termsDays: days, discount } = store
-	return dueDates(
-		{ kind, days, discountBasisPoints: discount?.basisPoints ?? 0, discountDays: discount?.days ?? 0 },
-		on,
-	).dueOn
+function termsOf({ store }: OrderOfSeason): Terms {
+	return {
+		kind: store.termsKind,
+		days: store.termsDays,
+		discountBasisPoints: store.discount?.basisPoints ?? 0,
+		discountDays: store.discount?.days ?? 0,
+	}
 }
 
 function invoiceLine(
