@@ -1,3 +1,12 @@
-import type { RouteConfigEntry } from "@react-router/dev/routes"
+import { type RouteConfigEntry, route } from "@react-router/dev/routes"
 
-export const buyRoutes: RouteConfigEntry[] = []
+export const buyRoutes: RouteConfigEntry[] = [
+	route("buy/:producer", "routes/buy/stores.tsx"),
+	route("buy/:producer/:store", "routes/buy/store.tsx"),
+	route("buy/:producer/:store/sheet", "routes/buy/next-sheet.tsx"),
+	route("buy/:producer/:store/sheet/:day", "routes/buy/sheet.tsx"),
+	route("buy/:producer/:store/orders/:number", "routes/buy/order.tsx"),
+	route("buy/:producer/:store/deliveries", "routes/buy/deliveries.tsx"),
+	route("buy/:producer/:store/standing", "routes/buy/standing.tsx"),
+	route("buy/:producer/:store/details", "routes/buy/details.tsx"),
+]

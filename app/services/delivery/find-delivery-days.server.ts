@@ -1,6 +1,6 @@
 import { sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
-import { addDays, type Day, dayInZone, type Weekday } from "~/domain/calendar"
+import { addDays, type Day, dayInZone } from "~/domain/calendar"
 import { type DeliveryDay, isOpen, nextDeliveryDays, type Round } from "~/domain/delivery/delivery-days"
 
 /** When the van comes: the rounds in the order of the week, and the days from `today` on that are shut. */
@@ -9,7 +9,7 @@ export type DeliverySchedule = { rounds: Round[]; shutDays: Day[]; zone: string;
 /** A delivery day as pages show it. */
 export type OpenOrClosedDay = DeliveryDay & { isOpen: boolean }
 
-type Row = { weekday: Weekday; cutoff_days_before: number; cutoff_time: string; shut_days: Day[] }
+type Row = { weekday: number; cutoff_days_before: number; cutoff_time: string; shut_days: Day[] }
 
 /**
  * The rounds that stop at `storeId` (all of the producer's where it is null, as the desk sees them) and the shut days.

@@ -1,4 +1,4 @@
-import type { Tx } from "~/db/transaction.server"
+import { readProducer } from "~/db/transaction.server"
 import { addDays, type Day, daysBetween, fortnight } from "~/domain/calendar"
 import {
 	type DeliverySchedule,
@@ -54,17 +54,22 @@ export function fortnightOf(facts: {
 	}))
 }
 
-/** The ribbon for a page that reads nothing else of it: the fortnight that shows `day`, or today's. */
-export async function findFortnight(
-	tx: Tx,
-	query: { producerId: string; storeId: string; now: Date; zone: string; day?: Day },
-): Promise<FortnightDay[]> {
+/** The ribbon of a store, for a page that reads nothing else of it: the fortnight that shows `day`, or today's. */
+export function findFortnight(query: {
+	producerId: string
+	storeId: string
+	now: Date
+	zone: string
+	day?: Day
+}): Promise<FortnightDay[]> {
 	const { producerId, storeId } = query
-	const schedule = await findDeliverySchedule(tx, query)
-	const from = ribbonStart(schedule.today, query.day ?? schedule.today)
-	const products = await findStorePrices(tx, { producerId, storeId, today: schedule.today })
-	const productIds = products.map((product) => product.productId)
-	const outlooks = await findOutlooks(tx, { producerId, today: schedule.today, productIds })
-	const ownLines = await findOwnLines(tx, { producerId, storeId, from, to: addDays(from, 13), lastBefore: from })
-	return fortnightOf({ schedule, from, outlooks: [...outlooks.values()], ownLines })
+	return readProducer(producerId, async (tx) => {
+		const schedule = await findDeliverySchedule(tx, query)
+		const from = ribbonStart(schedule.today, query.day ?? schedule.today)
+		const products = await findStorePrices(tx, { producerId, storeId, today: schedule.today })
+		const productIds = products.map((product) => product.productId)
+		const outlooks = await findOutlooks(tx, { producerId, today: schedule.today, productIds })
+		const ownLines = await findOwnLines(tx, { producerId, storeId, from, to: addDays(from, 13), lastBefore: from })
+		return fortnightOf({ schedule, from, outlooks: [...outlooks.values()], ownLines })
+	})
 }

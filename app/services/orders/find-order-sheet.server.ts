@@ -25,6 +25,8 @@ export type SheetRow = StoreProduct & {
 	lastCases: number
 	/** What it has already ordered for this day. */
 	orderedCases: number
+	/** Whether there is any supply by that day, so that asking, if only to be shared out, is of use. */
+	mayAsk: boolean
 }
 
 export type OrderSheet = {
@@ -68,25 +70,27 @@ async function readSheet(tx: Tx, query: SheetQuery): Promise<OrderSheet | null> 
 		rows: products.flatMap((product) => {
 			const outlook = outlooks.get(product.productId)
 			const [strip] = outlook ? caseStrips(outlook, [day.on]) : []
-			if (!strip) return []
+			if (!outlook || !strip) return []
 			return {
 				...product,
 				strip,
 				toShareCases: toShare.get(product.productId) ?? 0,
 				lastCases: casesOn(ownLines, lastOn, product.productId),
 				orderedCases: casesOn(ownLines, day.on, product.productId),
+				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && supply.on <= day.on),
 			}
 		}),
 		orders: ordersOn(ownLines, day.on),
 	}
 }
 
-/** The day of the store's next sheet: the first delivery day that still takes orders, or null when there is none. */
-export function findNextOpenDay(query: Omit<SheetQuery, "day">): Promise<Day | null> {
+/** The first delivery day that still takes the store's orders, on or after `from` where given; null when there is none. */
+export function findNextOpenDay(query: Omit<SheetQuery, "day"> & { from?: Day }): Promise<Day | null> {
 	return readProducer(query.producerId, async (tx) => {
 		const schedule = await findDeliverySchedule(tx, query)
+		const from = query.from && query.from > schedule.today ? query.from : schedule.today
 		// Cut-offs lie at most a fortnight ahead, so a day that takes orders is among the next fifteen.
-		return deliveryDaysOf(schedule, 15).find((day) => day.isOpen)?.on ?? null
+		return deliveryDaysOf(schedule, 15, from).find((day) => day.isOpen)?.on ?? null
 	})
 }
 

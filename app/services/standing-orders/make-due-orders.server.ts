@@ -2,7 +2,7 @@ import { createHash } from "node:crypto"
 import { sql } from "drizzle-orm"
 import { breaksConstraint } from "~/db/errors.server"
 import { readProducer, type Tx, withProducer } from "~/db/transaction.server"
-import type { Day, Weekday } from "~/domain/calendar"
+import type { Day } from "~/domain/calendar"
 import { type DeliverySchedule, findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { checkAsked } from "~/services/orders/check-asked.server"
 import { findPlacingFacts } from "~/services/orders/find-placing-facts.server"
@@ -63,8 +63,8 @@ async function findDue(tx: Tx, query: { producerId: string; now: Date }): Promis
 	})
 }
 
-async function findStoreWeekdays(tx: Tx, producerId: string): Promise<Map<string, Weekday[]>> {
-	const { rows } = await tx.execute<{ store_id: string; weekdays: Weekday[] }>(sql`
+async function findStoreWeekdays(tx: Tx, producerId: string): Promise<Map<string, number[]>> {
+	const { rows } = await tx.execute<{ store_id: string; weekdays: number[] }>(sql`
 		select s.store_id, array_agg(r.weekday::int) as weekdays
 		from store_rounds s
 		join delivery_rounds r on r.producer_id = s.producer_id and r.id = s.round_id

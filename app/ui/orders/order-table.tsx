@@ -1,4 +1,6 @@
 import type { ReactNode } from "react"
+import { FieldError, fieldId } from "~/ui/forms/field-error"
+import { QuantityField, type QuantityFieldProps } from "~/ui/forms/quantity-field"
 
 /** "1 or 2 cases": two short lines of a table head. */
 type TwoLines = readonly [string, string]
@@ -48,6 +50,12 @@ export function OrderTable({ breaks, day, children }: OrderTableProps) {
 	)
 }
 
+/** On a phone only the price in force is kept, also where nothing is asked yet. */
+function breakClass(isInForce: boolean, isChosen: boolean): string {
+	if (!isInForce) return "break"
+	return isChosen ? "break on" : "break max-desk:[display:block]! max-desk:[grid-area:1/2]!"
+}
+
 type OrderRowProps = {
 	no: ReactNode
 	name: string
@@ -56,13 +64,15 @@ type OrderRowProps = {
 	/** Pieces in a case, and what the case weighs: "6 lb". */
 	pieces: number
 	caseWeight: string
-	/** Prices of a case, in the order of the table's breaks; `on` is the one in force. */
-	prices: readonly { price: string; on: boolean }[]
+	/** Prices of a case, in the order of the table's breaks; `on` is the one in force, `isChosen` where the row has cases. */
+	prices: readonly { price: string; on: boolean; isChosen: boolean }[]
 	/** A fill strip with its words. */
 	stock: ReactNode
 	lastTime?: ReactNode
-	/** The quantity field, or a plain figure past the cut-off. */
-	field: ReactNode
+	/** The field for cases; its label is made from name and detail, and its error stands beside it, under the stock. */
+	quantity?: Omit<QuantityFieldProps, "label" | "errorId">
+	/** Stands in the place of the field past the cut-off. */
+	figure?: ReactNode
 	amount?: ReactNode
 	/** The reason, in the margin. */
 	note?: ReactNode
@@ -71,7 +81,8 @@ type OrderRowProps = {
 }
 
 /** One product of the order sheet. On a phone it keeps product, strip, the price in force and the field. */
-export function OrderRow({ name, detail, pieces, caseWeight, prices, stock, field, ...row }: OrderRowProps) {
+export function OrderRow({ name, detail, pieces, caseWeight, prices, stock, quantity, ...row }: OrderRowProps) {
+	const errorId = quantity && `${quantity.id ?? fieldId(quantity.name)}-error`
 	return (
 		<tr className={row.off ? "off" : undefined}>
 			<td className="no">{row.no}</td>
@@ -83,15 +94,24 @@ export function OrderRow({ name, detail, pieces, caseWeight, prices, stock, fiel
 				{pieces}
 				<span className="note">, {caseWeight}</span>
 			</td>
-			{prices.map(({ price, on }, index) => (
+			{prices.map(({ price, on, isChosen }, index) => (
 				// biome-ignore lint/suspicious/noArrayIndexKey: columns keep their order, and two may show the same price
-				<td key={index} className={on ? "break on" : "break"}>
+				<td key={index} className={breakClass(on, isChosen)}>
 					<span>{price}</span>
 				</td>
 			))}
-			<td className="stock">{stock}</td>
+			<td className="stock">
+				{stock}
+				{quantity?.error && errorId && <FieldError id={errorId}>{quantity.error}</FieldError>}
+			</td>
 			<td className="num fig last">{row.lastTime}</td>
-			<td className="num field-cell">{field}</td>
+			<td className="num field-cell fig">
+				{quantity ? (
+					<QuantityField {...quantity} label={`Cases of ${name}, ${detail}`} errorId={errorId} />
+				) : (
+					row.figure
+				)}
+			</td>
 			<td className="money amount">{row.amount}</td>
 			<td className="margin aside">{row.note}</td>
 		</tr>

@@ -1,0 +1,121 @@
+import { formatMoney, plainMoney } from "~/domain/money"
+import { casesWords } from "~/domain/quantity"
+import { Totals, TotalsRow } from "~/ui/layout/sheet"
+import { FillStrip } from "~/ui/stock/fill-strip"
+
+/** A line of an order as it was placed; `givenCases` is null until the producer has decided. */
+export type ShownLine = {
+	code: string
+	name: string
+	detail: string
+	askedCases: number
+	givenCases: number | null
+	isToShare: boolean
+	caseCents: number
+	piecesPerCase: number
+}
+
+/** Cases that are to be paid as things stand: given once decided, else asked unless it is still to be shared out. */
+function sureCases(line: ShownLine): number {
+	return line.givenCases ?? (line.isToShare ? 0 : line.askedCases)
+}
+
+const isOpenShare = (line: ShownLine) => line.isToShare && line.givenCases === null
+
+function GivenCell({ line }: { line: ShownLine }) {
+	if (isOpenShare(line)) return <span className="note">to be shared out</span>
+	if (line.givenCases === null) return <span className="note">not yet</span>
+	if (line.givenCases >= line.askedCases) return line.givenCases
+	return (
+		<>
+			<span className="short">
+				<b>{line.givenCases}</b> of {line.askedCases}
+			</span>
+			<FillStrip
+				size="sm"
+				countsThrough
+				runs={[
+					{ state: "promised", count: line.givenCases },
+					{ state: "short", count: line.askedCases - line.givenCases },
+				]}
+			/>
+		</>
+	)
+}
+
+/** The lines of a placed order: asked, given, price and amount as they were fixed. */
+export function OrderLines({ lines }: { lines: readonly ShownLine[] }) {
+	return (
+		<table className="sheet-table">
+			<thead>
+				<tr>
+					<th scope="col">No.</th>
+					<th scope="col">Product</th>
+					<th scope="col" className="num">
+						Asked, cases
+					</th>
+					<th scope="col" className="num">
+						Given
+					</th>
+					<th scope="col" className="num max-desk:hidden">
+						A case
+					</th>
+					<th scope="col" className="num pr-4! desk:pr-5!">
+						Amount
+					</th>
+				</tr>
+			</thead>
+			<tbody>
+				{lines.map((line) => (
+					<tr key={line.code}>
+						<td className="fig text-ink-faint">{line.code}</td>
+						<td>
+							<span className="name block text-body!">{line.name}</span>
+							<span className="note">{[line.detail, `case of ${line.piecesPerCase}`].filter(Boolean).join(", ")}</span>
+						</td>
+						<td className="num fig">{line.askedCases}</td>
+						<td className="num fig">
+							<GivenCell line={line} />
+						</td>
+						<td className="money max-desk:hidden">{plainMoney(line.caseCents)}</td>
+						<td className="money pr-4! desk:pr-5!">
+							{isOpenShare(line) ? (
+								<>
+									<i>up to</i> {plainMoney(line.askedCases * line.caseCents)}
+								</>
+							) : (
+								plainMoney(sureCases(line) * line.caseCents)
+							)}
+						</td>
+					</tr>
+				))}
+			</tbody>
+		</table>
+	)
+}
+
+/** The sums of a placed order: goods that are sure, what may come of the sharing out, the way, and what is to pay. */
+export function OrderSums({ lines, deliveryCents }: { lines: readonly ShownLine[]; deliveryCents: number }) {
+	const sum = (of: (line: ShownLine) => number) => lines.reduce((total, line) => total + of(line), 0)
+	const cases = sum(sureCases)
+	const goodsCents = sum((line) => sureCases(line) * line.caseCents)
+	const sharedCases = sum((line) => (isOpenShare(line) ? line.askedCases : 0))
+	const sharedCents = sum((line) => (isOpenShare(line) ? line.askedCases * line.caseCents : 0))
+	return (
+		<Totals>
+			<TotalsRow
+				label={sharedCases > 0 ? `${casesWords(cases)} sure` : casesWords(cases)}
+				value={formatMoney(goodsCents)}
+			/>
+			{sharedCases > 0 && (
+				<TotalsRow label={`${casesWords(sharedCases)} to be shared out`} value={`up to ${formatMoney(sharedCents)}`} />
+			)}
+			<TotalsRow label="Delivery" value={deliveryCents === 0 ? "free" : formatMoney(deliveryCents)} />
+			<TotalsRow
+				label={sharedCases > 0 ? "To pay, if all are met" : "To pay"}
+				value={formatMoney(goodsCents + sharedCents + deliveryCents)}
+				weight="sum"
+			/>
+		</Totals>
+	)
+}
