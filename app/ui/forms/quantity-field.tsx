@@ -1,12 +1,14 @@
 import type { ComponentProps, ReactNode } from "react"
 import { describedBy, FieldError, fieldId } from "./field-error"
 
-type QuantityFieldProps = Omit<ComponentProps<"input">, "type" | "value" | "name"> & {
+export type QuantityFieldProps = Omit<ComponentProps<"input">, "type" | "value" | "name"> & {
 	name: string
 	/** What is counted, in full: "Cases of round section, clover, 8 oz". Read out, not shown, in a table. */
 	label: string
 	showLabel?: boolean
 	error?: ReactNode
+	/** The id of an element elsewhere that says what is wrong, where a row is too narrow for the words. */
+	errorId?: string
 	/** Written on this device and not taken by the server yet. */
 	notSent?: boolean
 }
@@ -20,12 +22,13 @@ export function QuantityField({
 	label,
 	showLabel = false,
 	error,
+	errorId: elsewhere,
 	notSent,
 	id = fieldId(name),
 	className,
 	...input
 }: QuantityFieldProps) {
-	const errorId = `${id}-error`
+	const errorId = elsewhere ?? `${id}-error`
 	return (
 		<span className="inline-grid max-w-56 justify-items-end gap-1 text-left">
 			{showLabel && (
@@ -45,7 +48,7 @@ export function QuantityField({
 				aria-invalid={error ? true : undefined}
 				aria-describedby={describedBy(input["aria-describedby"], error ? errorId : undefined)}
 			/>
-			{error && <FieldError id={errorId}>{error}</FieldError>}
+			{error && !elsewhere && <FieldError id={errorId}>{error}</FieldError>}
 		</span>
 	)
 }

@@ -19,7 +19,7 @@ export function CutoffThreads({ threads, dayCount }: { threads: readonly CutoffT
 						{/* A label is cut off where the next thread begins rather than written over it. */}
 						{fromDay >= 0 && (
 							<svg x={percent(fromDay)} width={percent(nextStart - fromDay)} height={20} aria-hidden="true">
-								<text x={7} y={18}>
+								<text x={7} y={17}>
 									{label}
 								</text>
 							</svg>

@@ -21,7 +21,10 @@ type InvoicePaperProps = {
 	fine?: ReactNode
 }
 
-/** An invoice, credit or statement as a sheet of Letter paper. The screen and the printer show the same. */
+/**
+ * An invoice, credit or statement as a sheet of Letter paper. The screen and the printer show the same. Stands inside the
+ * main part of a page; a page of nothing else brings its own `main`.
+ */
 export function InvoicePaper({ yard, title, date, blocks, children, note, care, slip, fine }: InvoicePaperProps) {
 	return (
 		<article className="paper">

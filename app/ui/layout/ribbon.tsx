@@ -101,7 +101,10 @@ export function FortnightRibbon({
 
 	useEffect(() => {
 		const chosen = ribbon.current?.querySelector<HTMLElement>(`[data-day="${chosenOn}"]`)
-		if (ribbon.current && chosen) ribbon.current.scrollLeft = chosen.offsetLeft
+		// Which of the two boxes scrolls depends on the width; setting the other changes nothing.
+		for (const box of [ribbon.current, ribbon.current?.querySelector(".ribbon-scroll")]) {
+			if (box && chosen) box.scrollLeft = chosen.offsetLeft
+		}
 	}, [chosenOn])
 
 	const walk = (event: KeyboardEvent<HTMLElement>) => {
@@ -126,13 +129,15 @@ export function FortnightRibbon({
 
 	return (
 		<nav className="ribbon" aria-label={label} ref={ribbon} onKeyDown={walk}>
-			<div className="ribbon-track">
-				{threads.length > 0 && <CutoffThreads threads={threads} dayCount={days.length} />}
-				<ol className="ribbon-days">
-					{days.map((day) => (
-						<Day key={day.on} day={day} scale={scale} />
-					))}
-				</ol>
+			<div className="ribbon-scroll">
+				<div className="ribbon-track">
+					{threads.length > 0 && <CutoffThreads threads={threads} dayCount={days.length} />}
+					<ol className="ribbon-days">
+						{days.map((day) => (
+							<Day key={day.on} day={day} scale={scale} />
+						))}
+					</ol>
+				</div>
 			</div>
 			{(earlierHref || laterHref) && (
 				<div className="ribbon-turn">

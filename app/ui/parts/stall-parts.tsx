@@ -42,29 +42,33 @@ export function StallParts() {
 						fewer={BUTTON}
 					/>
 				</div>
-				<div className="stall min-h-0! border border-rule" data-mode="sun">
-					<GiveBack
-						total="$10.50"
-						pieces={[
-							{ cents: 1000, count: 1, words: "one $10 bill", amount: "10.00" },
-							{ cents: 25, count: 2, words: "two quarters", amount: "0.50" },
-						]}
-					/>
-					<StallPay
-						total="$49.50"
-						ways={
-							<>
-								<Button type="button" icon="cash" iconSize={26}>
-									Take cash
-								</Button>
-								<Button type="button" variant="primary" icon="card" iconSize={26} disabledReason="card needs signal">
-									Take card
-								</Button>
-							</>
-						}
-					>
-						3 pieces
-					</StallPay>
+				<div className="grid content-start gap-6">
+					<div className="stall min-h-0!" data-mode="sun">
+						<GiveBack
+							total="$10.50"
+							pieces={[
+								{ cents: 1000, count: 1, words: "one $10 bill", amount: "10.00" },
+								{ cents: 25, count: 2, words: "two quarters", amount: "0.50" },
+							]}
+						/>
+					</div>
+					<div className="stall min-h-0!" data-mode="sun">
+						<StallPay
+							total="$49.50"
+							ways={
+								<>
+									<Button type="button" icon="cash" iconSize={26}>
+										Take cash
+									</Button>
+									<Button type="button" variant="primary" icon="card" iconSize={26} disabledReason="card needs signal">
+										Take card
+									</Button>
+								</>
+							}
+						>
+							3 pieces
+						</StallPay>
+					</div>
 				</div>
 			</div>
 		</PartGroup>

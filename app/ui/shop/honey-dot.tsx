@@ -10,7 +10,7 @@ const GROUNDS: Record<HoneyTone, string> = {
 /** The colour of a honey as a small edged dot with its name: "light straw". */
 export function HoneyDot({ tone, name }: { tone: HoneyTone; name: string }) {
 	return (
-		<span className="whitespace-nowrap">
+		<span className="ml-2 whitespace-nowrap">
 			<span className={`honey-dot ${GROUNDS[tone]}`} /> {name}
 		</span>
 	)
