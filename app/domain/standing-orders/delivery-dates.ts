@@ -49,15 +49,17 @@ export function nextDeliveryDates(standing: StandingRule, from: Day, count: numb
 	const { deliveryWeekdays, shutDays, endsOn } = standing
 	const startsOn = anchor(standing.rule, standing.startsOn)
 	if (deliveryWeekdays.length === 0 || count <= 0) return []
-	// Dates lie a week or more apart: no date moves further than one week for each shut day and one more, so that many
-	// dates may lie before `from`; each shut day drops at most one; and one more says what comes next.
-	const weeksOfMove = shutDays.length + 1
+	// Dates lie a week or more apart, and only a shut day on which the van would come can bend one. A date from before
+	// `from` reaches past it only over shut days that lie before it; each shut day drops at most one date; and one date
+	// more says what comes next.
+	const bending = shutDays.filter((day) => deliveryWeekdays.includes(weekday(day)))
+	const weeksBack = bending.filter((day) => day < from).length + 1
 	const ruleDays = occurrences({
 		rule: standing.rule,
 		startsOn,
-		from: addDays(from, -7 * weeksOfMove),
+		from: addDays(from, -7 * weeksBack),
 		...(endsOn === null ? {} : { until: endsOn }),
-		count: count + weeksOfMove + shutDays.length + 2,
+		count: count + weeksBack + bending.length + 1,
 	})
 
 	const dates: StandingDate[] = []

@@ -66,6 +66,7 @@ describe("delivery days", () => {
 				const first = firstDeliveryDay({ from: start, deliveryWeekdays: on, shutDays })
 				if (count > 0) expect(first).toBe(days[0]?.on)
 			}),
+			{ numRuns: 50 },
 		)
 	})
 })
