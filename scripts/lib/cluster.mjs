@@ -87,8 +87,12 @@ function runningPort(bin, data) {
 		rmSync(pidFile, { force: true })
 		return undefined
 	}
+	return isRunning(bin, data) && Number(port) > 0 ? Number(port) : undefined
+}
+
+function isRunning(bin, data) {
 	const [program, args] = asDatabaseUser(join(bin, "pg_ctl"), ["-D", data, "status"])
-	return quietly(program, args, { cwd: "/" }).ok && Number(port) > 0 ? Number(port) : undefined
+	return existsSync(join(data, "postmaster.pid")) && quietly(program, args, { cwd: "/" }).ok
 }
 
 async function launch({ bin, folder, data, firstPort, throwaway }) {
@@ -133,8 +137,8 @@ function ensureOwner(bin, port, password) {
 
 /** Stops the server in `data`, ending what is connected; does nothing when it does not run. */
 function stopCluster(bin, data) {
-	if (!existsSync(join(data, "postmaster.pid"))) return
+	if (!isRunning(bin, data)) return
 	const [program, args] = asDatabaseUser(join(bin, "pg_ctl"), ["-D", data, "-m", "fast", "-w", "-t", "30", "stop"])
 	const { ok, output } = quietly(program, args, { cwd: "/" })
-	if (!ok && existsSync(join(data, "postmaster.pid"))) say(`The database could not be stopped: ${output}`)
+	if (!ok && isRunning(bin, data)) say(`The database could not be stopped: ${output}`)
 }
