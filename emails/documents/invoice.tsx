@@ -8,6 +8,7 @@ import { DoubleRule, Mark, NoteRule, TearLine } from "./drawings"
 import { registerFonts } from "./fonts"
 import { InvoiceLines, InvoiceSums } from "./invoice-lines"
 import { type InvoiceProps, openCents, sentLines } from "./invoice-props"
+import { legible } from "./legible"
 import { margin, paper } from "./paper"
 
 const LETTER_WIDTH = 612
@@ -18,8 +19,8 @@ const LETTER_WIDTH = 612
  * Throws when the fonts of the packages cannot be read.
  */
 export async function renderInvoicePdf(invoice: InvoiceProps): Promise<Buffer> {
-	registerFonts()
-	return renderToBuffer(<InvoiceDocument invoice={invoice} />)
+	const writable = registerFonts()
+	return renderToBuffer(<InvoiceDocument invoice={legible(invoice, writable)} />)
 }
 
 function InvoiceDocument({ invoice }: { invoice: InvoiceProps }) {

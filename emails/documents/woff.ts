@@ -40,3 +40,33 @@ export function plainFontOf(woff: Buffer): Buffer {
 	}
 	return Buffer.concat(parts)
 }
+
+/**
+ * The code points that a plain font maps to a glyph, by its Unicode map of the Basic Multilingual Plane ("cmap" format 4).
+ * Throws RangeError when the font has none. Source: OpenType, cmap.
+ */
+export function codePointsOf(font: Buffer): number[] {
+	const map = unicodeMapOf(font)
+	const segments = map.readUInt16BE(6) / 2
+	const [ends, starts] = [14, 16 + segments * 2]
+	const points: number[] = []
+	for (let index = 0; index < segments; index += 1) {
+		const end = map.readUInt16BE(ends + index * 2)
+		// The last segment only closes the table.
+		for (let point = map.readUInt16BE(starts + index * 2); point <= end && point < 0xffff; point += 1)
+			points.push(point)
+	}
+	return points
+}
+
+function unicodeMapOf(font: Buffer): Buffer {
+	const tables = Array.from({ length: font.readUInt16BE(4) }, (_, index) => SFNT_HEAD + index * SFNT_ENTRY)
+	const entry = tables.find((at) => font.toString("latin1", at, at + 4) === "cmap")
+	if (entry === undefined) throw new RangeError("the font maps no characters")
+	const cmap = font.subarray(font.readUInt32BE(entry + 8))
+	for (let index = 0; index < cmap.readUInt16BE(2); index += 1) {
+		const map = cmap.subarray(cmap.readUInt32BE(4 + index * 8 + 4))
+		if (map.readUInt16BE(0) === 4) return map
+	}
+	throw new RangeError("the font has no Unicode map of the usual form")
+}

@@ -72,6 +72,13 @@ describe("the printed invoice", () => {
 		expect(letters).toContain("ŽofieÅngström")
 	})
 
+	it("writes Greek, Cyrillic and Vietnamese, and a question mark for what no typeface here has", async () => {
+		const store = { name: "Μέλι Мёд Nguyễn \u0007蜂🐝 Shop", contactName: null, address: null }
+		const { pages } = readPdf(await renderInvoicePdf({ ...sampleInvoice, store }))
+
+		expect(pages.join("").replace(/\s+/g, "")).toContain("ΜέλιМёдNguyễn??Shop")
+	})
+
 	it("asks for nothing and has no slip once it is paid", async () => {
 		const { pages } = readPdf(await renderInvoicePdf({ ...sampleInvoice, paidCents: 92990 }))
 
