@@ -1,6 +1,7 @@
 import { sql } from "drizzle-orm"
 import { check, foreignKey, index, integer, pgTable, primaryKey, text, time, unique, uuid } from "drizzle-orm/pg-core"
 import { cents, day, id, instant, producerId } from "./columns"
+import { lots } from "./lots"
 import { users } from "./people"
 import { products } from "./pricing"
 import { producers } from "./producers"
@@ -130,5 +131,32 @@ export const saleLines = pgTable(
 			foreignColumns: [products.producerId, products.id],
 		}),
 		check("sale_lines_sane", sql`${t.pieces} > 0 and ${t.pieceCents} >= 0`),
+	],
+)
+
+/** Which pieces of which lot were sold: written with the sale, read by every trace and when a sale is given up. */
+export const saleLineLots = pgTable(
+	"sale_line_lots",
+	{
+		producerId: producerId().references(() => producers.id),
+		saleId: uuid("sale_id").notNull(),
+		productId: uuid("product_id").notNull(),
+		lotId: uuid("lot_id").notNull(),
+		pieces: integer("pieces").notNull(),
+	},
+	(t) => [
+		primaryKey({ name: "sale_line_lots_pk", columns: [t.producerId, t.saleId, t.productId, t.lotId] }),
+		foreignKey({
+			name: "sale_line_lots_line",
+			columns: [t.producerId, t.saleId, t.productId],
+			foreignColumns: [saleLines.producerId, saleLines.saleId, saleLines.productId],
+		}),
+		foreignKey({
+			name: "sale_line_lots_lot",
+			columns: [t.producerId, t.lotId],
+			foreignColumns: [lots.producerId, lots.id],
+		}),
+		index("sale_line_lots_by_lot").on(t.producerId, t.lotId),
+		check("sale_line_lots_positive", sql`${t.pieces} > 0`),
 	],
 )
