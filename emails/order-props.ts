@@ -12,7 +12,7 @@ export const orderFacts = z.object({
 })
 
 /** A line once cases have been given: `reason` is the sentence of the sharing out, where there was one. */
-export const givenLine = z.object({
+const givenLine = z.object({
 	productName: words,
 	productNote: words.nullish(),
 	casesAsked: cases,

@@ -3,7 +3,7 @@ import { z } from "zod"
 import { isTemplateName, type MailAttachment, type Template, templates } from "./templates"
 
 /** A letter ready to be sent; answers go to `replyTo`, the producer it speaks for. */
-export interface RenderedMail {
+interface RenderedMail {
 	subject: string
 	html: string
 	text: string

@@ -5,7 +5,7 @@ import { Strip } from "./strip"
 import { Row } from "./text"
 import { TotalFigure } from "./total-figure"
 
-export interface TableLine {
+interface TableLine {
 	name: string
 	/** Grade, size, lot: one line under the name. */
 	note?: string | null
