@@ -11,7 +11,11 @@ export function refuse(sentence) {
 	throw new Refusal(sentence)
 }
 
-/** Prints what ended the script: the sentence of a Refusal, or the whole error of anything that was not foreseen. */
+/**
+ * Prints what ended the script: the sentence of a Refusal, the faults of an environment that is not complete, or the
+ * whole error of anything that was not foreseen.
+ */
 export function explain(error) {
-	console.error(error instanceof Refusal ? error.message : error)
+	const isForeseen = error instanceof Refusal || error?.name === "EnvironmentError"
+	console.error(isForeseen ? error.message : error)
 }
