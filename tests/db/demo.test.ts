@@ -96,6 +96,13 @@ test("what was sold at the stall left the table, and the rest came back", async 
 			select s.id from sales s join sale_lines sl on sl.producer_id = s.producer_id and sl.sale_id = s.id
 			group by s.producer_id, s.id having s.total_cents <> sum(sl.pieces * sl.piece_cents)`),
 	).toEqual([])
+	expect(
+		await faults(`
+			select sl.sale_id from sale_lines sl
+			left join sale_line_lots x on x.producer_id = sl.producer_id and x.sale_id = sl.sale_id
+				and x.product_id = sl.product_id
+			group by sl.producer_id, sl.sale_id, sl.product_id having sum(x.pieces) is distinct from sl.pieces`),
+	).toEqual([])
 })
 
 test("invoices are what was sent, and paid with what came in", async () => {

@@ -1,4 +1,4 @@
-import type { expectedSupplies, lots, orderLineLots, stockMoves } from "~/db/schema"
+import type { expectedSupplies, lots, orderLineLots, saleLineLots, stockMoves } from "~/db/schema"
 import { addDays, compareDays, type Day, dayInZone, instantAt } from "~/domain/calendar"
 import type { Catalogue, CatalogueProduct } from "./plan-catalogue"
 import type { MarketDayOfSeason } from "./plan-market-days"
@@ -13,6 +13,7 @@ export type Stock = {
 	/** In the order in which they happened, as no balance may fall below zero on the way. */
 	moves: Move[]
 	lineLots: (typeof orderLineLots.$inferInsert)[]
+	saleLots: (typeof saleLineLots.$inferInsert)[]
 	expected: (typeof expectedSupplies.$inferInsert)[]
 }
 
@@ -28,7 +29,7 @@ const DAYS_TO_BEST_BEFORE = 300
 export function planStock(season: Season, { catalogue, orders, marketDays }: Plans): Stock {
 	const products = [...catalogue.products.values()]
 	const shelves = new Map(products.map((product) => [product.code, openShelf(season, product)]))
-	const ledger: Ledger = { season, shelves, lots: [], moves: [], lineLots: [], expected: [] }
+	const ledger: Ledger = { season, shelves, lots: [], moves: [], lineLots: [], saleLots: [], expected: [] }
 	const steps = [
 		...orders.map((order) => ({ at: order.packedAt, run: (at: Date) => pack(ledger, order, at) })),
 		...marketDays.flatMap((day) => marketSteps(ledger, day)),
@@ -44,8 +45,14 @@ export function planStock(season: Season, { catalogue, orders, marketDays }: Pla
 		writeHeld(ledger, product, shelf.nextCode)
 		writeExpected(ledger, product)
 	}
-	const { lots, lineLots, expected } = ledger
-	return { lots, lineLots, expected, moves: ledger.moves.toSorted((a, b) => a.movedAt.getTime() - b.movedAt.getTime()) }
+	const { lots, lineLots, saleLots, expected } = ledger
+	return {
+		lots,
+		lineLots,
+		saleLots,
+		expected,
+		moves: ledger.moves.toSorted((a, b) => a.movedAt.getTime() - b.movedAt.getTime()),
+	}
 }
 
 /** What must be ready: the free cases, everything promised and not yet packed, and the reserve. */
@@ -101,7 +108,8 @@ function pack(ledger: Ledger, order: OrderOfSeason, at: Date): void {
 
 /** Load-out, sales and what came back, of one market day; the pieces on the table are kept by product in between. */
 function marketSteps(ledger: Ledger, day: MarketDayOfSeason) {
-	const { timeZone } = ledger.season.scenario
+	const { producerId, scenario } = ledger.season
+	const { timeZone } = scenario
 	const table = new Map<string, Taken[]>()
 	const loadOut = (at: Date) => {
 		for (const { product, pieces } of day.load) {
@@ -112,13 +120,14 @@ function marketSteps(ledger: Ledger, day: MarketDayOfSeason) {
 			}
 		}
 	}
-	const sell = (at: Date, product: CatalogueProduct, pieces: number) => {
+	const sell = (at: Date, saleId: string, product: CatalogueProduct, pieces: number) => {
 		let needed = pieces
 		for (const stack of named(table, product.code)) {
 			const some = Math.min(needed, stack.pieces)
 			if (some === 0) continue
 			stack.pieces -= some
 			needed -= some
+			ledger.saleLots.push({ producerId, saleId, productId: product.id, lotId: stack.lot.id, pieces: some })
 			const places = { fromPlace: "market", fromRef: day.id, toPlace: "sold", toRef: day.id } as const
 			move(ledger, { lot: stack.lot, pieces: some }, at, { ...places, reason: "sold at the stall" })
 		}
@@ -138,7 +147,7 @@ function marketSteps(ledger: Ledger, day: MarketDayOfSeason) {
 	return [
 		{ at: day.state === "planned" ? null : day.loadedAt, run: loadOut },
 		...day.sales.flatMap((sale) =>
-			sale.lines.map((line) => ({ at: sale.at, run: (at: Date) => sell(at, line.product, line.pieces) })),
+			sale.lines.map((line) => ({ at: sale.at, run: (at: Date) => sell(at, sale.id, line.product, line.pieces) })),
 		),
 		{ at: day.returnedAt, run: bringBack },
 	]

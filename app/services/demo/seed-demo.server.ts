@@ -153,6 +153,7 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	await insertAll(tx, schema.cardPayments, payments.rows.cardPayments)
 	await insertAll(tx, schema.sales, markets.rows.sales)
 	await insertAll(tx, schema.saleLines, markets.rows.saleLines)
+	await insertAll(tx, schema.saleLineLots, stock.saleLots)
 	await insertAll(tx, schema.orderEvents, records.events)
 	await insertAll(tx, schema.auditEntries, records.audit)
 	await insertAll(tx, schema.outboxMails, records.mails)
