@@ -1,7 +1,7 @@
 import type { Result } from "./result"
 
 /** The most cases one line can ask for. */
-export const MAX_CASES = 999
+const MAX_CASES = 999
 
 /**
  * Reads what a person typed in a field for cases. Empty or blank is none, 0; a whole number from 0 to 999 is itself.
