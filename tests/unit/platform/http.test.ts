@@ -4,6 +4,7 @@ import type { AddressInfo } from "node:net"
 import express from "express"
 import { afterEach, beforeEach, expect, it, vi } from "vitest"
 import { bodyLimit, clientAddress, lastResort, securityHeaders } from "~/platform/http.server"
+import { log } from "~/platform/log.server"
 
 let server: Server
 let origin: string
@@ -87,9 +88,10 @@ it("only the proxies that are counted are believed about the client's address, a
 
 it("an error outside the pages tells nothing of its cause", async () => {
 	await serve()
-	const write = vi.spyOn(process.stdout, "write").mockReturnValue(true)
+	const logged = vi.spyOn(log, "error").mockReturnValue(undefined)
 	const response = await fetch(`${origin}/broken`)
-	write.mockRestore()
+	expect(logged).toHaveBeenCalledOnce()
+	logged.mockRestore()
 	expect(response.status).toBe(500)
 	expect(await response.text()).not.toContain("swordfish")
 })
