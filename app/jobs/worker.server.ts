@@ -2,6 +2,7 @@ import { run, type TaskList } from "graphile-worker"
 import { closePool, createPool, pool } from "~/db/client.server"
 import { env } from "~/platform/env.server"
 import { log } from "~/platform/log.server"
+import { closeMailer } from "~/platform/mailer.server"
 import type { Task } from "./task.server"
 
 /**
@@ -53,6 +54,7 @@ for (const signal of ["SIGINT", "SIGTERM"] as const) {
 		if (stopping) return
 		stopping = true
 		await runner.stop()
+		closeMailer()
 		await Promise.all([closePool(), queuePool.end()])
 		process.exit(0)
 	})

@@ -1,3 +1,7 @@
-import type { RouteConfigEntry } from "@react-router/dev/routes"
+import { index, type RouteConfigEntry, route } from "@react-router/dev/routes"
 
-export const shopRoutes: RouteConfigEntry[] = []
+export const shopRoutes: RouteConfigEntry[] = [
+	index("routes/shop/home.tsx"),
+	route("open-a-desk", "routes/shop/open-a-desk.tsx"),
+	route("shop/:producer", "routes/shop/front.tsx"),
+]

@@ -50,8 +50,9 @@ export const action = guard(admits.stall, async ({ params, request }: Route.Acti
 		const done = new URLSearchParams({ done: `Sold for ${formatMoney(taken.totalCents)} in cash.` })
 		return redirect(`/stall/${scope.producer.slug}/${params.day}?${done}`)
 	}
-	if (taken.reason === "no-such-day") throw notFound()
-	return data({ problem: saleRefusalWords(taken) }, { status: 422 })
+	const problem = saleRefusalWords(taken)
+	if (problem === null) throw notFound()
+	return data({ problem }, { status: 422 })
 })
 
 /** What did they give you, and what to give back. */

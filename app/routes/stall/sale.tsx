@@ -51,8 +51,9 @@ export const action = guard(admits.stall, async ({ params, request }: Route.Acti
 		const away = taken.ok ? "" : "?away=1"
 		return redirect(`/stall/${scope.producer.slug}/${params.day}/card/${saleId}${away}`)
 	}
-	if (taken.reason === "no-such-day" || taken.reason === "no-such-sale") throw notFound()
-	return data({ problem: saleRefusalWords(taken), sale: { saleId, items } }, { status: 422 })
+	const problem = saleRefusalWords(taken)
+	if (problem === null) throw notFound()
+	return data({ problem, sale: { saleId, items } }, { status: 422 })
 })
 
 /** The sale at the stall: the whole row adds one; card or cash at the foot. */

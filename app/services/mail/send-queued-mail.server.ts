@@ -1,13 +1,15 @@
 import { and, eq, isNull, sql } from "drizzle-orm"
 import { outboxMails } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
+import { log } from "~/platform/log.server"
 import { sendMail } from "~/platform/mailer.server"
-import { renderMail } from "~emails/render"
+import { renderMail, UnwritableMailError } from "~emails/render"
 
 /**
  * Sends one letter of the outbox, unless it is gone already or another worker has it in hand. The row stays locked
  * until the mail server has taken the letter, so that it is sent once; only a crash between the two sends it again,
- * under the same Message-ID. Throws what the mail server says: the job is then tried again after a growing pause.
+ * under the same Message-ID. Throws what the mail server says: the job is then tried again after a growing pause. A letter
+ * that cannot be written is not tried again; its row keeps the reason for a person to see.
  */
 export async function sendQueuedMail(query: { producerId: string; mailId: string }): Promise<void> {
 	const { producerId, mailId } = query
@@ -34,7 +36,9 @@ export async function sendQueuedMail(query: { producerId: string; mailId: string
 				.update(outboxMails)
 				.set({ attempts: mail.attempts + 1, lastError })
 				.where(isIt)
-			return error
+			if (!(error instanceof UnwritableMailError)) return error
+			log.error({ mailId, template: mail.template, lastError }, "a letter of the outbox cannot be written")
+			return null
 		}
 	})
 	if (failure) throw failure

@@ -47,7 +47,7 @@ export function TextField({ label, hint, error, name, id = fieldId(name), classN
 }
 
 type SelectFieldProps = Around &
-	Omit<ComponentProps<"select">, "name"> & { options: { value: string; label: string }[] }
+	Omit<ComponentProps<"select">, "name"> & { options: readonly { value: string; label: string }[] }
 
 /** One choice of a list, with its label above. */
 export function SelectField({ label, hint, error, name, id = fieldId(name), options, ...select }: SelectFieldProps) {
