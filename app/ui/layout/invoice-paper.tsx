@@ -33,7 +33,7 @@ export function InvoicePaper({ yard, title, date, blocks, children, note, care, 
 					<p className="paper-yard">{yard.name}</p>
 					<p>{yard.contact}</p>
 				</div>
-				<div className="desk:text-right">
+				<div className="desk:text-right print:text-right">
 					<h1>{title}</h1>
 					<p>{date}</p>
 				</div>

@@ -2,7 +2,7 @@ import type { ReactNode } from "react"
 import { Link } from "react-router"
 import { Icon } from "~/ui/icons"
 
-export type Signal = { state: "none" | "sending" | "sent" | "refused"; text: string; href?: string }
+type Signal = { state: "none" | "sending" | "sent" | "refused"; text: string; href?: string }
 
 type StallFrameProps = {
 	title: string

@@ -1,6 +1,7 @@
 import { Mark } from "~/ui/icons"
 import { ControlParts } from "./control-parts"
 import { LedgerParts } from "./ledger-parts"
+import { PageParts } from "./page-parts"
 import { RibbonParts } from "./ribbon-parts"
 import { StallParts } from "./stall-parts"
 import { StockParts } from "./stock-parts"
@@ -20,6 +21,7 @@ export function PartsPage() {
 				<RibbonParts />
 				<ControlParts />
 				<LedgerParts />
+				<PageParts />
 				<StallParts />
 				<ValueParts />
 			</main>

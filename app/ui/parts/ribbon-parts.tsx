@@ -13,7 +13,7 @@ const day = (dayOfMonth: number, weekday: string, more: Partial<RibbonDay> = {})
 })
 
 /** Two weeks of August, in every state of a day. */
-export const EXAMPLE_DAYS: RibbonDay[] = [
+const EXAMPLE_DAYS: RibbonDay[] = [
 	day(13, "Thursday", { isToday: true, caption: "6 to settle" }),
 	day(14, "Friday", { kind: "delivery", closed: true }),
 	day(15, "Saturday", { kind: "market", bar: { promised: 11, free: 3 }, caption: "11 of 14" }),
@@ -40,7 +40,7 @@ export const EXAMPLE_DAYS: RibbonDay[] = [
 	day(26, "Wednesday", { kind: "delivery", status: "not-known" }),
 ]
 
-export const EXAMPLE_THREADS = [
+const EXAMPLE_THREADS = [
 	{ fromDay: -1, toDay: 1.5, label: "Fri noon: last orders for Friday 14" },
 	{ fromDay: 1.6, toDay: 5.5, label: "Fri noon: last orders for Tuesday 18" },
 	{ fromDay: 6.5, toDay: 8.46, label: "Wed noon: for Friday 21" },

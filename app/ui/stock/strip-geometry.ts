@@ -2,7 +2,7 @@
 export type StockState = "free" | "held" | "promised" | "expected" | "short"
 export type StripRun = { state: StockState; count: number }
 export type StripSize = "sm" | "md" | "lg"
-export type StripDrawing = {
+type StripDrawing = {
 	width: number
 	height: number
 	/** Cases (or pieces) that one cell stands for: 1 up to 120, then the next round number that keeps it under 120 cells. */
