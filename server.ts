@@ -1,13 +1,18 @@
 import { createRequestHandler } from "@react-router/express"
 import compression from "compression"
-import express, { type Express } from "express"
-import type { ServerBuild } from "react-router"
+import express, { type Express, type RequestHandler } from "express"
+import { createRequestHandler as createPageHandler, type ServerBuild } from "react-router"
 import { closePool } from "~/db/client.server"
+import { shopStamp } from "~/db/shop-stamp.server"
 import { type Env, EnvironmentError, readEnv } from "~/platform/env.server"
 import { live, ready } from "~/platform/health.server"
 import { bodyLimit, clientAddress, lastResort, securityHeaders } from "~/platform/http.server"
 import { requestLog } from "~/platform/log.server"
+import { renderedCopies } from "~/platform/rendered-copy.server"
 import { inProcesses, listen } from "~/platform/serve.server"
+
+/** The address of a shop front, with the market day that was chosen. Any other query is answered by the page itself. */
+const SHOP_FRONT = /^\/shop\/([a-z0-9-]+)(?:\?day=[0-9a-f-]{36})?$/
 
 /** The web server's middleware; the order matters, and each step says what it relies on. */
 function createApp(env: Env, build: ServerBuild): Express {
@@ -22,7 +27,8 @@ function createApp(env: Env, build: ServerBuild): Express {
 	app.get("/health/live", live)
 	app.get("/health/ready", ready)
 	app.use(securityHeaders(env.BASE_URL.startsWith("https:")))
-	// 3. Rendered copies of public pages go here: behind the headers, ahead of compression and of the pages.
+	// 3. Behind the headers, ahead of compression: copies are compressed once, when they are made.
+	app.use(shopCopies(env, build))
 	// 4. Names under /assets change with their content; the rest of the folder keeps its names.
 	app.use(compression())
 	app.use("/assets", express.static("build/client/assets", { immutable: true, maxAge: "1y", index: false }))
@@ -32,6 +38,16 @@ function createApp(env: Env, build: ServerBuild): Express {
 	app.use(createRequestHandler({ build, mode: env.NODE_ENV }))
 	app.use(lastResort)
 	return app
+}
+
+/** The public shop fronts, which change only when stock or prices do. */
+function shopCopies(env: Env, build: ServerBuild): RequestHandler {
+	return renderedCopies({
+		keyOf: (request) => (SHOP_FRONT.test(request.url) ? request.url : null),
+		stampOf: (key) => shopStamp(SHOP_FRONT.exec(key)?.[1] ?? ""),
+		render: createPageHandler(build, env.NODE_ENV),
+		origin: env.BASE_URL,
+	})
 }
 
 /** The environment, or the end of the process with every fault named. */

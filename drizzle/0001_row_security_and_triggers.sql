@@ -2,10 +2,9 @@
 -- from the login that owns the schema. Roles belong to the cluster, so another database may have made them already.
 DO $$ BEGIN CREATE ROLE waxbill_app NOLOGIN; EXCEPTION WHEN duplicate_object OR unique_violation THEN NULL; END $$;--> statement-breakpoint
 DO $$ BEGIN CREATE ROLE waxbill_queue NOLOGIN; EXCEPTION WHEN duplicate_object OR unique_violation THEN NULL; END $$;--> statement-breakpoint
-DO $$ BEGIN
-	IF NOT pg_has_role(current_user, 'waxbill_app', 'MEMBER') THEN EXECUTE format('GRANT waxbill_app TO %I', current_user); END IF;
-	IF NOT pg_has_role(current_user, 'waxbill_queue', 'MEMBER') THEN EXECUTE format('GRANT waxbill_queue TO %I', current_user); END IF;
-END $$;--> statement-breakpoint
+-- From PostgreSQL 16 on, having made a role does not mean that one may enter it. Where another login made it, that login
+-- grants it, and entering it fails in plain words if it did not.
+DO $$ BEGIN EXECUTE format('GRANT waxbill_app, waxbill_queue TO %I', current_user); EXCEPTION WHEN insufficient_privilege THEN NULL; END $$;--> statement-breakpoint
 GRANT USAGE ON SCHEMA public TO waxbill_app;--> statement-breakpoint
 GRANT SELECT, INSERT, UPDATE, DELETE ON ALL TABLES IN SCHEMA public TO waxbill_app;--> statement-breakpoint
 ALTER DEFAULT PRIVILEGES IN SCHEMA public GRANT SELECT, INSERT, UPDATE, DELETE ON TABLES TO waxbill_app;--> statement-breakpoint

@@ -19,8 +19,12 @@ export function createPool(databaseUrl: string, role: string, max: number): pg.P
 		statement_timeout: 15_000,
 		idle_in_transaction_session_timeout: 15_000,
 	})
-	// Without a listener the error of an idle connection (the server went away) would end the process.
+	// Without listeners the error of a connection whose server went away would end the process: of an idle one on the
+	// pool, of one in use (the queue listens on one all the time) on the connection itself.
 	pool.on("error", (error) => log.error({ err: error }, "an idle database connection broke"))
+	pool.on("connect", (connection) => {
+		connection.on("error", (error) => log.error({ err: error }, "a database connection broke"))
+	})
 	return pool
 }
 
