@@ -118,7 +118,11 @@ const MS_PER_DAY = 86_400_000
 const WIDE_THREAD_DAYS = 3
 
 /** Ties each cut-off to its delivery: from its own hour to the middle of the day it closes. */
-function threadsOf(deliveries: readonly FortnightDay[], from: Day, zone: string): CutoffThread[] {
+export function threadsOf(
+	deliveries: readonly Pick<FortnightDay, "on" | "delivery">[],
+	from: Day,
+	zone: string,
+): CutoffThread[] {
 	return deliveries.flatMap(({ on, delivery }) => {
 		if (!delivery) return []
 		const cutoffOn = dayInZone(delivery.cutoffAt, zone)

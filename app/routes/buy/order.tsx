@@ -105,7 +105,7 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 				}
 			/>
 			<div className="desk:mr-[calc(var(--spacing-margin)-1px)]">
-				<OrderLines lines={order.lines} />
+				<OrderLines lines={order.lines} isCancelled={order.state === "cancelled"} />
 			</div>
 			<div className="order-foot">
 				<section aria-labelledby="timeline">
@@ -125,7 +125,11 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 					</ol>
 					{order.note && <p className="mt-3">Your note: {order.note}</p>}
 				</section>
-				<OrderSums lines={order.lines} deliveryCents={order.deliveryCents} />
+				{order.state === "cancelled" ? (
+					<p>Cancelled; nothing is to pay.</p>
+				) : (
+					<OrderSums lines={order.lines} deliveryCents={order.deliveryCents} />
+				)}
 				<div className="grid content-start gap-2">
 					{invoiceNumber && (
 						<Link className="btn" to={`${base}/invoices/${invoiceNumber}`}>

@@ -54,7 +54,7 @@ export async function loadStanding(scope: StoreScope, draft: PostedStanding | nu
 		weekdays: schedule.rounds.map((round) => round.weekday as Weekday),
 		starts: withDay(starts, standing?.startsOn),
 		ends: withDay(monthEnds(today), standing?.endsOn),
-		values: valuesOf(page, starts[0] ?? today),
+		values: valuesOf(page, firstOn(starts, schedule.rounds[0]?.weekday) ?? today),
 		products: page.products,
 		asked: lines.map((line) => line.productId),
 		dates: page.dates.map((date) => columnOf(date, page, { lines, zone, today })),
@@ -67,6 +67,10 @@ function draftOf(draft: PostedStanding | null) {
 	const { startsOn, endsOn, lines } = draft
 	const rule = { rule: ruleOf(draft.cadence), startsOn, endsOn, pausedFrom: null, skips: [] }
 	return { draft: { rule: { ...rule, createdAt: null, endedAt: null }, lines } }
+}
+
+function firstOn(days: readonly Day[], onWeekday: number | undefined): Day | undefined {
+	return days.find((day) => weekday(day) === onWeekday)
 }
 
 function withDay(days: Day[], day: Day | null | undefined): Day[] {

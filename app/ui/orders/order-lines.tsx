@@ -22,7 +22,8 @@ function sureCases(line: ShownLine): number {
 
 const isOpenShare = (line: ShownLine) => line.isToShare && line.givenCases === null
 
-function GivenCell({ line }: { line: ShownLine }) {
+function GivenCell({ line, isCancelled }: { line: ShownLine; isCancelled: boolean }) {
+	if (isCancelled) return <span className="note">none</span>
 	if (isOpenShare(line)) return <span className="note">to be shared out</span>
 	if (line.givenCases === null) return <span className="note">not yet</span>
 	if (line.givenCases >= line.askedCases) return line.givenCases
@@ -43,8 +44,8 @@ function GivenCell({ line }: { line: ShownLine }) {
 	)
 }
 
-/** The lines of a placed order: asked, given, price and amount as they were fixed. */
-export function OrderLines({ lines }: { lines: readonly ShownLine[] }) {
+/** The lines of a placed order: asked, given, price and amount as they were fixed. A cancelled one gives nothing. */
+export function OrderLines({ lines, isCancelled }: { lines: readonly ShownLine[]; isCancelled: boolean }) {
 	return (
 		<table className="sheet-table">
 			<thead>
@@ -75,7 +76,7 @@ export function OrderLines({ lines }: { lines: readonly ShownLine[] }) {
 						</td>
 						<td className="num fig">{line.askedCases}</td>
 						<td className="num fig">
-							<GivenCell line={line} />
+							<GivenCell line={line} isCancelled={isCancelled} />
 						</td>
 						<td className="money max-desk:hidden">{plainMoney(line.caseCents)}</td>
 						<td className="money pr-4! desk:pr-5!">

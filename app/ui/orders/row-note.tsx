@@ -1,10 +1,6 @@
 import { formatMoney } from "~/domain/money"
 import type { DeliveryTerms } from "~/domain/pricing/price-order"
-import { casesWords } from "~/domain/quantity"
 import { type PricedRow, type PricedSheet, priceSheet, type SheetProduct } from "./price-sheet"
-
-/** A next break is hinted at when no more than this many cases reach it. */
-const NEAR_BREAK_CASES = 2
 
 type RowNoteProps = {
 	row: PricedRow
@@ -48,12 +44,13 @@ export function RowNote({ row, sheet, products, typed, terms, isKept }: RowNoteP
 		)
 	}
 	const next = line?.nextBreak
-	if (next && next.addCases <= NEAR_BREAK_CASES) {
-		const more = priceSheet(products, { ...typed, [product.productId]: String(cases + next.addCases) }, terms)
+	// One case short of a break is worth a word; further off, the columns say it.
+	if (next?.addCases === 1) {
+		const more = priceSheet(products, { ...typed, [product.productId]: String(cases + 1) }, terms)
 		const passes = sheet.price.minimumShortCents > 0 && more.price.minimumShortCents === 0
 		return (
 			<>
-				{casesWords(next.addCases)} more makes each <b>{formatMoney(next.caseCents)}</b>:{" "}
+				One more case makes each <b>{formatMoney(next.caseCents)}</b>:{" "}
 				{formatMoney(Math.max(0, more.price.upToCents - sheet.price.upToCents))} more
 				{passes && `, past the ${formatMoney(terms.minimumCents)} minimum`}.
 			</>

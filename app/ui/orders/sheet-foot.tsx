@@ -8,7 +8,7 @@ import { StockKey } from "~/ui/stock/stock-key"
 import type { PricedRow, PricedSheet } from "./price-sheet"
 
 function Key({ children }: { children: ReactNode }) {
-	return <kbd className="keycap">{children}</kbd>
+	return <kbd className="keycap font-sans">{children}</kbd>
 }
 
 /** The keys of the sheet, for those who have a keyboard, and what the cells of the strips mean. */
