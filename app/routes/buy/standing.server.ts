@@ -65,7 +65,7 @@ export async function loadStanding(scope: StoreScope, draft: PostedStanding | nu
 function draftOf(draft: PostedStanding | null) {
 	if (!draft?.cadence || !draft.startsOn) return {}
 	const { startsOn, endsOn, lines } = draft
-	const rule = { rule: ruleOf(draft.cadence), startsOn, endsOn, pausedFrom: null, skips: [] }
+	const rule = { rule: ruleOf(draft.cadence), startsOn, endsOn, pausedFrom: null }
 	return { draft: { rule: { ...rule, createdAt: null, endedAt: null }, lines } }
 }
 

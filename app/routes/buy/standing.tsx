@@ -156,6 +156,7 @@ export default function Standing({ loaderData, actionData }: Route.ComponentProp
 										date.isOpen && (
 											<Button
 												size="small"
+												className="whitespace-nowrap px-2!"
 												form={datesForm}
 												name="intent"
 												value={`${date.isSkipped ? "back" : "skip"}:${date.ruleOn}`}

@@ -34,7 +34,7 @@ export function findStandingPage(query: {
 	storeId: string
 	now: Date
 	zone: string
-	draft?: { rule: DatedRule; lines: readonly StandingLine[] }
+	draft?: { rule: Omit<DatedRule, "skips">; lines: readonly StandingLine[] }
 }): Promise<StandingPage> {
 	const { producerId, storeId, draft } = query
 	return readProducer(producerId, async (tx) => {
@@ -51,7 +51,8 @@ export function findStandingPage(query: {
 			to: addDays(today, 13),
 			lastBefore: today,
 		})
-		const rule = draft?.rule ?? standing
+		// Saving takes over the dates skipped, so a draft shows them skipped too.
+		const rule = draft ? { ...draft.rule, skips: standing?.skips ?? [] } : standing
 		const lines = draft?.lines ?? standing?.lines ?? []
 		const dates = rule ? standingDates(rule, schedule, SHOWN_DATES) : []
 		const made = standing ? await findMadeOrders(tx, { producerId, standingOrderId: standing.id, dates }) : new Map()

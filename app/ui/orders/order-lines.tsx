@@ -50,8 +50,12 @@ export function OrderLines({ lines, isCancelled }: { lines: readonly ShownLine[]
 		<table className="sheet-table">
 			<thead>
 				<tr>
-					<th scope="col">No.</th>
-					<th scope="col">Product</th>
+					<th scope="col" className="max-desk:hidden">
+						No.
+					</th>
+					<th scope="col" className="max-desk:pl-4!">
+						Product
+					</th>
 					<th scope="col" className="num">
 						Asked, cases
 					</th>
@@ -69,8 +73,8 @@ export function OrderLines({ lines, isCancelled }: { lines: readonly ShownLine[]
 			<tbody>
 				{lines.map((line) => (
 					<tr key={line.code}>
-						<td className="fig text-ink-faint">{line.code}</td>
-						<td>
+						<td className="fig text-ink-faint max-desk:hidden">{line.code}</td>
+						<td className="max-desk:pl-4!">
 							<span className="name block text-body!">{line.name}</span>
 							<span className="note">{[line.detail, `case of ${line.piecesPerCase}`].filter(Boolean).join(", ")}</span>
 						</td>

@@ -79,6 +79,7 @@ export function OrderSheet(props: OrderSheetProps) {
 							products={products}
 							typed={typed}
 							terms={terms}
+							hasError={errors[casesName(row.product.productId)] !== undefined}
 							isKept={values[`keep-${row.product.productId}`] !== undefined}
 						/>
 					}

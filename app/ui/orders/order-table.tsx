@@ -102,7 +102,12 @@ export function OrderRow({ name, detail, pieces, caseWeight, prices, stock, quan
 			))}
 			<td className="stock">
 				{stock}
-				{quantity?.error && errorId && <FieldError id={errorId}>{quantity.error}</FieldError>}
+				{/* As wide as the strip and no wider: the columns keep their places when something is wrong. */}
+				{quantity?.error && errorId && (
+					<span className="block w-0 min-w-full">
+						<FieldError id={errorId}>{quantity.error}</FieldError>
+					</span>
+				)}
 			</td>
 			<td className="num fig last">{row.lastTime}</td>
 			<td className="num field-cell fig">

@@ -10,10 +10,12 @@ type RowNoteProps = {
 	terms: DeliveryTerms
 	/** Whether the buyer has said to keep what is more than free. */
 	isKept: boolean
+	/** The field's error says the same already; the box to keep it stays. */
+	hasError: boolean
 }
 
 /** The reason or the hint beside a row, one at most: to be shared out, the next break, or what was had last time. */
-export function RowNote({ row, sheet, products, typed, terms, isKept }: RowNoteProps) {
+export function RowNote({ row, sheet, products, typed, terms, isKept, hasError }: RowNoteProps) {
 	const { product, cases, line } = row
 	if (row.isBeyondFree) {
 		const free = product.strip.freeCases
@@ -29,7 +31,7 @@ export function RowNote({ row, sheet, products, typed, terms, isKept }: RowNoteP
 			)
 		return (
 			<>
-				{words}
+				{!hasError && words}
 				<label className="mt-1 flex min-h-6 items-center gap-2 font-sans text-table not-italic text-ink">
 					<input
 						type="checkbox"
