@@ -4,6 +4,7 @@ import { type ReactNode, use } from "react"
 import { Links, Meta, Outlet, Scripts, ScrollRestoration } from "react-router"
 import type { Route } from "./+types/root"
 import styles from "./app.css?url"
+import { nothingGuarded } from "./routes/guard.server"
 import { useHydrated } from "./ui/hydrated"
 import { ErrorPage } from "./ui/layout/error-page"
 import { NonceContext } from "./ui/nonce"
@@ -22,7 +23,7 @@ export const links: Route.LinksFunction = () => [
 export const meta: Route.MetaFunction = ({ error }) => (error ? [] : [{ title: "Waxbill" }])
 
 /** Middleware runs for a client navigation only where a loader does, so the root has one. */
-export const loader = () => null
+export const loader = nothingGuarded
 
 /** The document around every page, also around the pages that say what went wrong. */
 export function Layout({ children }: { children: ReactNode }) {

@@ -1,5 +1,6 @@
 import { redirect } from "react-router"
 import type { ProducerRole, StoreRole } from "~/domain/people/roles"
+import { isSameOrigin } from "~/platform/origin-check.server"
 import { hashToken, readSessionToken } from "~/platform/session-cookie.server"
 import { type Actor, findActor, type Person, type Producer, type Store } from "~/services/people/find-actor.server"
 import { keepPost } from "~/services/people/keep-post.server"
@@ -11,6 +12,8 @@ import { keepPost } from "~/services/people/keep-post.server"
 export type Policy<Scope> = {
 	readonly admits: string
 	readonly scope: (actor: Actor) => Scope | Refusal
+	/** Posts of our own pages only; false where the sender proves itself by other means. */
+	readonly isForOurPages: boolean
 }
 
 type Refusal = "sign-in" | "forbidden" | "not-found"
@@ -21,6 +24,9 @@ const STAFF: readonly ProducerRole[] = ["owner", "desk", "packer", "stall"]
 export const admits = {
 	/** Anyone, signed in or not; the address names no producer. */
 	anyone: policy("anyone", ({ person }) => ({ person })),
+
+	/** A machine that signs what it sends: the handler checks the signature. */
+	signer: { ...policy("signer", () => ({})), isForOurPages: false },
 
 	/** Anyone, on a page of the producer that the address names. */
 	visitor: policy("visitor", ({ person, producer }) => (producer ? { person, producer } : "not-found")),
@@ -62,18 +68,24 @@ export const admits = {
 export type DeskScope = { person: Person; producer: Producer; roles: ProducerRole[] }
 export type StoreScope = { person: Person; producer: Producer; store: Store; storeRoles: StoreRole[] }
 
+/** The loader of the root, which shows nothing of anyone: it looks nobody up. */
+export const nothingGuarded = Object.assign(() => null, { admits: "anyone" })
+
 type HandlerArgs = { request: Request; params: Record<string, string | undefined> }
 
 /**
  * Wraps a loader or action so that it runs only for whom `policy` admits, and carries the policy's words as `admits`.
  * A visitor is sent to sign in (and back); what they posted is kept until then. A stranger to the producer or store
- * gets 404, which tells nothing; a member without the role gets 403.
+ * gets 404, which tells nothing; a member without the role gets 403. A post that another site's page made is refused
+ * before anything is looked at.
  */
 export function guard<Scope, Args extends HandlerArgs, Answer>(
 	policy: Policy<Scope>,
 	handler: (args: Args, scope: Scope) => Answer | Promise<Answer>,
 ): ((args: Args) => Promise<Answer>) & { readonly admits: string } {
 	const guarded = async (args: Args): Promise<Answer> => {
+		const isPost = args.request.method !== "GET" && args.request.method !== "HEAD"
+		if (isPost && policy.isForOurPages && !isSameOrigin(args.request)) throw new Response(null, { status: 403 })
 		const token = readSessionToken(args.request)
 		const actor = await findActor({
 			tokenHash: token === null ? null : hashToken(token),
@@ -104,7 +116,7 @@ function pageAddress(url: string): URL {
 }
 
 function policy<Scope extends object>(words: string, scope: (actor: Actor) => Scope | Refusal): Policy<Scope> {
-	return { admits: words, scope }
+	return { admits: words, scope, isForOurPages: true }
 }
 
 function isRefusal(scope: unknown): scope is Refusal {
