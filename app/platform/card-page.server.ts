@@ -35,3 +35,15 @@ export async function openCardPage(visit: CardPageVisit): Promise<{ id: string; 
 	if (!session.url) throw new Error("an open card page has an address")
 	return { id: session.id, url: session.url }
 }
+
+/**
+ * How a visit to the card page stands now: `open` with its address, `complete` when the person has paid (the event may
+ * still be on its way), `expired` when nobody can pay there any more. Throws when the payment service does not answer.
+ */
+export async function findCardPage(
+	sessionId: string,
+): Promise<{ state: "open"; url: string } | { state: "complete" | "expired" }> {
+	const session = await stripe().checkout.sessions.retrieve(sessionId)
+	if (session.status === "open" && session.url) return { state: "open", url: session.url }
+	return { state: session.status === "complete" ? "complete" : "expired" }
+}

@@ -1,3 +1,16 @@
-import type { RouteConfigEntry } from "@react-router/dev/routes"
+import { type RouteConfigEntry, route } from "@react-router/dev/routes"
 
-export const deskRoutes: RouteConfigEntry[] = []
+export const deskRoutes: RouteConfigEntry[] = [
+	route("desk/:producer", "routes/desk/to-do.tsx"),
+	route("desk/:producer/orders", "routes/desk/orders.tsx"),
+	route("desk/:producer/orders/:number", "routes/desk/order.tsx"),
+	route("desk/:producer/packing", "routes/desk/packing.tsx"),
+	route("desk/:producer/lots", "routes/desk/lots.tsx"),
+	route("desk/:producer/lots/:code", "routes/desk/lot.tsx"),
+	route("desk/:producer/invoices", "routes/desk/invoices.tsx"),
+	route("desk/:producer/invoices/:invoice", "routes/desk/invoice.tsx"),
+	route("desk/:producer/invoices/:invoice.pdf", "routes/desk/invoice-pdf.tsx"),
+	route("desk/:producer/stores", "routes/desk/stores.tsx"),
+	route("desk/:producer/prices", "routes/desk/prices.tsx"),
+	route("desk/:producer/people", "routes/desk/people.tsx"),
+]

@@ -7,6 +7,7 @@ import { formatMoney } from "~/domain/money"
 import { weightWords } from "~/domain/weight"
 import { findYard, letterHead } from "~/services/producers/find-yard.server"
 import type { InvoiceProps } from "~emails/documents/invoice-props"
+import { KEEP_COMB, NOT_FOR_INFANTS } from "~emails/words"
 
 /** An invoice as its page shows it: the document itself, and what the buttons beside it need. */
 export type InvoicePage = {
@@ -15,8 +16,10 @@ export type InvoicePage = {
 	openCents: number
 	/** The bank's words when the last try to pay by card was refused and nothing has been paid since. */
 	declineMessage: string
-	/** Whether a visit to the card page is under way whose outcome is not known yet. */
-	isPaymentUnderWay: boolean
+	/** The visits to the card page that have not been paid, as far as is known: their ids. */
+	unpaidVisits: string[]
+	/** How to keep what was delivered, and the caution that belongs to it. */
+	care: string
 }
 
 /**
@@ -53,18 +56,19 @@ export async function readInvoice(
 		.where(and(eq(invoiceLines.producerId, producerId), eq(invoiceLines.invoiceId, invoice.id)))
 		.orderBy(asc(invoiceLines.position))
 	const yard = await findYard(tx, producerId)
-	const [visit] = await tx
-		.select({ state: cardPayments.state, declineMessage: cardPayments.declineMessage })
+	const visits = await tx
+		.select({ id: cardPayments.id, state: cardPayments.state, declineMessage: cardPayments.declineMessage })
 		.from(cardPayments)
 		.where(and(eq(cardPayments.producerId, producerId), eq(cardPayments.invoiceId, invoice.id)))
 		.orderBy(desc(cardPayments.createdAt))
-		.limit(1)
 	const openCents = invoice.totalCents - invoice.paidCents
+	const reasons = shortReasons(invoice.shortNote, lines)
 	return {
 		orderNumber: order.number,
 		openCents,
-		declineMessage: openCents > 0 && visit?.state === "declined" ? visit.declineMessage : "",
-		isPaymentUnderWay: openCents > 0 && visit?.state === "open",
+		declineMessage: openCents > 0 && visits[0]?.state === "declined" ? visits[0].declineMessage : "",
+		unpaidVisits: visits.filter(({ state }) => state !== "paid").map(({ id }) => id),
+		care: `${KEEP_COMB} ${NOT_FOR_INFANTS}`,
 		document: {
 			yard: letterHead(yard),
 			number,
@@ -90,6 +94,7 @@ export async function readInvoice(
 				casesSent: line.sentCases,
 				priceCents: line.caseCents,
 				amountCents: line.lineCents,
+				reason: reasons.get(line.id) ?? null,
 			})),
 			charges: [
 				{ label: deliveryLabel(invoice.deliveryCents, store.freeAboveCents), cents: invoice.deliveryCents },
@@ -97,7 +102,7 @@ export async function readInvoice(
 			],
 			totalCents: invoice.totalCents,
 			paidCents: invoice.paidCents,
-			notes: [invoice.shortNote, yard.invoiceNote].filter((note) => note !== ""),
+			notes: yard.invoiceNote === "" ? [] : [yard.invoiceNote],
 		},
 	}
 }
@@ -105,4 +110,19 @@ export async function readInvoice(
 function deliveryLabel(deliveryCents: number, freeAboveCents: number | null): string {
 	if (deliveryCents > 0 || freeAboveCents === null) return "Delivery"
 	return `Delivery, free from ${formatMoney(freeAboveCents)}`
+}
+
+/**
+ * Why each line is short, by line id: the note has one sentence to a line, in the order of the short lines. A note that
+ * was written as a whole stands for all of them.
+ */
+function shortReasons(
+	shortNote: string,
+	lines: readonly { id: string; askedCases: number; sentCases: number }[],
+): Map<string, string> {
+	if (shortNote === "") return new Map()
+	const short = lines.filter((line) => line.sentCases < line.askedCases)
+	const sentences = shortNote.split("\n")
+	const isOneToALine = sentences.length === short.length
+	return new Map(short.map((line, index) => [line.id, (isOneToALine && sentences[index]) || sentences.join(" ")]))
 }

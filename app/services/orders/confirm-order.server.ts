@@ -4,13 +4,14 @@ import { type Tx, withProducer } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
 import { canMove } from "~/domain/orders/order-states"
 import { shortSentence } from "~/domain/orders/short-sentence"
-import { freeToPromise } from "~/domain/promise/free-to-promise"
+import { priceOrder } from "~/domain/pricing/price-order"
 import { now } from "~/platform/clock.server"
 import { env } from "~/platform/env.server"
 import { queueMail } from "~/services/mail/queue-mail.server"
+import { findStorePrices } from "~/services/pricing/find-store-prices.server"
 import { findYard, letterHead } from "~/services/producers/find-yard.server"
-import { findOutlooks } from "~/services/promise/find-outlooks.server"
-import { type LockedOrder, lockOrder } from "./lock-order.server"
+import { findMostCases } from "./find-most-cases.server"
+import { type LockedLine, type LockedOrder, lockOrder } from "./lock-order.server"
 import { lockProducts } from "./lock-products.server"
 import { findStorePeople } from "./order-people.server"
 import { recordChange } from "./record-change.server"
@@ -22,12 +23,14 @@ export type Confirmation =
 	| { ok: true }
 	| { ok: false; reason: "no-such-order" | "nothing-given" }
 	| { ok: false; reason: "not-placed"; state: string }
-	| { ok: false; reason: "more-than-asked" | "more-than-free"; lineId: string; mostCases: number }
+	| { ok: false; reason: "lines"; refused: RefusedLine[] }
+
+/** A line that was given too much, and the most that it can get. */
+export type RefusedLine = { lineId: string; reason: "more-than-asked" | "more-than-free"; mostCases: number }
 
 /**
- * Confirms an order with what can be given of each line; lines not named get all that was asked. Refused, with the line
- * and the most that it can get, when more is given than was asked or than is free for the day besides all other
- * promises. Tells the store's people once, after the time in which the decision can be undone.
+ * Confirms an order with what can be given of each line; lines not named get all that was asked. Refused, with each
+ * line that is given more than was asked, or than is free for the day besides all other promises. Tells the store's people once, after the time in which the decision can be undone.
  */
 export async function confirmOrder(query: {
 	producer: { id: string; slug: string; timeZone: string }
@@ -45,17 +48,8 @@ export async function confirmOrder(query: {
 			return { ...line, cases: given?.cases ?? line.askedCases, reason: given?.reason ?? "" }
 		})
 		if (lines.every((line) => line.cases === 0)) return { ok: false, reason: "nothing-given" }
-		const over = lines.find((line) => line.cases > line.askedCases)
-		if (over) return { ok: false, reason: "more-than-asked", lineId: over.id, mostCases: over.askedCases }
-		const most = await mostCases(tx, { producer, order })
-		const beyond = lines.find((line) => line.cases > (most.get(line.id) ?? 0))
-		if (beyond)
-			return {
-				ok: false,
-				reason: "more-than-free",
-				lineId: beyond.id,
-				mostCases: Math.max(0, most.get(beyond.id) ?? 0),
-			}
+		const refused = await refuseLines(tx, { producer, order, lines })
+		if (refused.length > 0) return { ok: false, reason: "lines", refused }
 
 		await tx.execute(sql`
 			update order_lines set given_cases = given.cases
@@ -65,6 +59,7 @@ export async function confirmOrder(query: {
 			.update(orders)
 			.set({ state: "confirmed" })
 			.where(and(eq(orders.producerId, producer.id), eq(orders.id, order.id)))
+		const keepsPrice = await findKeptPrices(tx, { producer, order, lines })
 		const told = lines.map((line) => ({
 			productName: line.product.name,
 			productNote: line.product.detail || null,
@@ -80,10 +75,12 @@ export async function confirmOrder(query: {
 							given: line.cases,
 							deliveryOn: order.deliveryOn,
 							reason: line.reason,
+							keepsPrice: keepsPrice.has(line.productId),
 						})
 					: null,
 		}))
-		const shortNote = told.flatMap(({ reason }) => reason ?? []).join(" ")
+		// One sentence to a line: the invoice sets each beside its product.
+		const shortNote = told.flatMap(({ reason }) => reason ?? []).join("\n")
 		await recordChange(tx, {
 			producerId: producer.id,
 			orderId: order.id,
@@ -96,27 +93,45 @@ export async function confirmOrder(query: {
 	})
 }
 
-/** The most cases each line can get, by line id: what is free for the day with this order's own promises set aside. */
-async function mostCases(
-	tx: Tx,
-	query: { producer: { id: string; timeZone: string }; order: LockedOrder },
-): Promise<Map<string, number>> {
-	const { producer, order } = query
+type GivenOrder = {
+	producer: { id: string; timeZone: string }
+	order: LockedOrder
+	lines: readonly (LockedLine & { cases: number })[]
+}
+
+/** The lines that are given too much, with the products locked from here on. */
+async function refuseLines(tx: Tx, { producer, order, lines }: GivenOrder): Promise<RefusedLine[]> {
 	const productIds = order.lines.map((line) => line.productId)
 	await lockProducts(tx, { producerId: producer.id, productIds })
 	const today = dayInZone(now(), producer.timeZone)
-	const outlooks = await findOutlooks(tx, { producerId: producer.id, today, productIds })
-	return new Map(
-		order.lines.map((line) => {
-			const outlook = outlooks.get(line.productId)
-			if (!outlook) return [line.id, 0]
-			const own = (line.isToShare ? 0 : line.askedCases) * line.piecesPerCase
-			// ISO days sort as text; an overdue delivery counts as due today.
-			const [, on = today] = [order.deliveryOn, today].toSorted()
-			const promises = [...outlook.promises, { on, quantity: -own }]
-			const raw = freeToPromise({ ...outlook, promises, days: [on] })[0]?.raw ?? 0
-			return [line.id, Math.floor(raw / line.piecesPerCase)]
-		}),
+	const most = await findMostCases(tx, {
+		producerId: producer.id,
+		deliveryOn: order.deliveryOn,
+		today,
+		lines: order.lines,
+	})
+	return lines.flatMap((line) => {
+		const mostCases = most.get(line.id) ?? 0
+		if (line.cases <= mostCases) return []
+		const isBeyondAsked = line.cases > line.askedCases
+		return [{ lineId: line.id, reason: isBeyondAsked ? "more-than-asked" : "more-than-free", mostCases }]
+	})
+}
+
+/** The products cut short whose price is that of a break which the given cases alone would not reach. */
+async function findKeptPrices(tx: Tx, { producer, order, lines }: GivenOrder): Promise<Set<string>> {
+	const short = lines.filter((line) => line.cases < line.askedCases)
+	if (short.length === 0) return new Set()
+	const today = dayInZone(now(), producer.timeZone)
+	const products = await findStorePrices(tx, { producerId: producer.id, storeId: order.storeId, today })
+	const given = new Map(lines.map((line) => [line.productId, line.cases]))
+	const priced = priceOrder({
+		lines: products.map((product) => ({ ...product, cases: given.get(product.productId) ?? 0 })),
+		terms: order.store,
+	})
+	const caseCents = new Map(priced.lines.map((line) => [line.productId, line.caseCents]))
+	return new Set(
+		short.filter((line) => (caseCents.get(line.productId) ?? 0) > line.caseCents).map((line) => line.productId),
 	)
 }
 

@@ -1,10 +1,10 @@
-import { and, eq, sql } from "drizzle-orm"
+import { and, eq } from "drizzle-orm"
 import { orderLineLots, orders, stockMoves } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { canMove } from "~/domain/orders/order-states"
-import { assignLots } from "~/domain/promise/assign-lots"
 import { type LockedOrder, lockOrder } from "./lock-order.server"
 import { lockProducts } from "./lock-products.server"
+import { findShelves, pickShelves, type ShelfPick } from "./pick-shelves.server"
 import { recordChange } from "./record-change.server"
 
 export type Packing =
@@ -12,8 +12,6 @@ export type Packing =
 	| { ok: false; reason: "no-such-order" }
 	| { ok: false; reason: "not-confirmed"; state: string }
 	| { ok: false; reason: "lots-too-few"; productName: string; missingPieces: number }
-
-type Shelf = { lotId: string; place: "ready" | "cold-room"; bestBeforeOn: string; pieces: number }
 
 /**
  * Packs a confirmed order: takes what was given of each line from released lots, earliest best-before first, and within
@@ -40,47 +38,35 @@ export async function packOrder(query: { producerId: string; number: number; per
 }
 
 type Picked =
-	| { ok: true; lines: (typeof orderLineLots.$inferInsert)[]; shelves: Shelf[] }
+	| { ok: true; lines: (typeof orderLineLots.$inferInsert)[]; shelves: ShelfPick[] }
 	| { ok: false; reason: "lots-too-few"; productName: string; missingPieces: number }
 
 async function pickLots(tx: Tx, query: { producerId: string; order: LockedOrder }): Promise<Picked> {
 	const { producerId, order } = query
 	const productIds = order.lines.map((line) => line.productId)
 	await lockProducts(tx, { producerId, productIds })
-	const { rows } = await tx.execute<Shelf & { productId: string }>(sql`
-		select l.product_id as "productId", l.id as "lotId", b.place, l.best_before_on::text as "bestBeforeOn", b.pieces
-		from lots l
-		join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
-		where l.producer_id = ${producerId} and l.product_id = any(${sql.param(productIds)}::uuid[])
-			and l.state = 'released' and l.best_before_on >= ${order.deliveryOn}
-			and b.place in ('ready', 'cold-room') and b.pieces > 0`)
+	const shelves = await findShelves(tx, { producerId, productIds, on: order.deliveryOn })
 	const lines: (typeof orderLineLots.$inferInsert)[] = []
-	const taken: Shelf[] = []
+	const taken: ShelfPick[] = []
 	for (const line of order.lines) {
-		const needed = (line.givenCases ?? 0) * line.piecesPerCase
-		const shelves = rows.filter((shelf) => shelf.productId === line.productId)
-		const lots = [...new Map(shelves.map((shelf) => [shelf.lotId, shelf])).values()].map((shelf) => ({
-			lotId: shelf.lotId,
-			availableFrom: order.deliveryOn,
-			bestBefore: shelf.bestBeforeOn,
-			pieces: shelves.filter(({ lotId }) => lotId === shelf.lotId).reduce((sum, { pieces }) => sum + pieces, 0),
-		}))
-		const assigned = assignLots({ lots, orders: [{ orderId: order.id, on: order.deliveryOn, pieces: needed }] })
-		if (!assigned.ok) {
-			const missingPieces = assigned.missing.reduce((sum, { pieces }) => sum + pieces, 0)
-			return { ok: false, reason: "lots-too-few", productName: line.product.name, missingPieces }
-		}
-		for (const pick of assigned.picks) {
-			lines.push({ producerId, orderLineId: line.id, lotId: pick.lotId, pieces: pick.pieces })
-			taken.push(...takeFromShelves(shelves, pick))
-		}
+		const pieces = (line.givenCases ?? 0) * line.piecesPerCase
+		const { picks, missing } = pickShelves(
+			shelves.filter((shelf) => shelf.productId === line.productId),
+			[{ orderId: order.id, on: order.deliveryOn, pieces }],
+		)
+		if (missing > 0)
+			return { ok: false, reason: "lots-too-few", productName: line.product.name, missingPieces: missing }
+		const byLot = new Map<string, number>()
+		for (const pick of picks) byLot.set(pick.lotId, (byLot.get(pick.lotId) ?? 0) + pick.pieces)
+		for (const [lotId, pieces] of byLot) lines.push({ producerId, orderLineId: line.id, lotId, pieces })
+		taken.push(...picks)
 	}
 	return { ok: true, lines, shelves: taken }
 }
 
 /** The moves that bring what was taken to the order; what lies in the cold room goes by way of the ready shelf. */
 function movesToOrder(
-	taken: readonly Shelf[],
+	taken: readonly ShelfPick[],
 	order: LockedOrder,
 	movedBy: string,
 ): (typeof stockMoves.$inferInsert)[] {
@@ -103,18 +89,5 @@ function movesToOrder(
 				reason: "taken out to pack",
 			}
 			return place === "cold-room" ? [fetched, packed] : [packed]
-		})
-}
-
-/** Which shelf gives how much of a pick: the ready shelf first. */
-function takeFromShelves(shelves: readonly Shelf[], pick: { lotId: string; pieces: number }): Shelf[] {
-	let left = pick.pieces
-	return shelves
-		.filter(({ lotId }) => lotId === pick.lotId)
-		.sort((a) => (a.place === "ready" ? -1 : 1))
-		.flatMap((shelf) => {
-			const pieces = Math.min(left, shelf.pieces)
-			left -= pieces
-			return pieces > 0 ? { ...shelf, pieces } : []
 		})
 }

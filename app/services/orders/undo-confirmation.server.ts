@@ -1,22 +1,28 @@
 import { and, eq, isNull } from "drizzle-orm"
 import { orderLines, orders, outboxMails } from "~/db/schema"
-import { withProducer } from "~/db/transaction.server"
+import { type Tx, withProducer } from "~/db/transaction.server"
+import { dayInZone } from "~/domain/calendar"
+import { now } from "~/platform/clock.server"
 import { confirmationKey } from "./confirm-order.server"
-import { lockOrder } from "./lock-order.server"
+import { findMostCases } from "./find-most-cases.server"
+import { type LockedOrder, lockOrder } from "./lock-order.server"
+import { lockProducts } from "./lock-products.server"
 import { recordChange } from "./record-change.server"
 
 export type Undoing = { ok: true } | { ok: false; reason: "no-such-order" | "not-confirmed" | "already-told" }
 
 /**
  * Takes a confirmation back while none of its letters has gone: the order is placed again and the letters are taken out
- * of the outbox. Afterwards a change is a new decision with its own letter.
+ * of the outbox. A line whose asked cases have gone to others meanwhile is one to be shared out from then on, so that
+ * nothing is promised twice. Afterwards a change is a new decision with its own letter.
  */
 export async function undoConfirmation(query: {
-	producerId: string
+	producer: { id: string; timeZone: string }
 	number: number
 	personId: string
 }): Promise<Undoing> {
-	const { producerId, number, personId } = query
+	const { producer, number, personId } = query
+	const producerId = producer.id
 	return withProducer(producerId, async (tx) => {
 		const order = await lockOrder(tx, { producerId, number })
 		if (!order) return { ok: false, reason: "no-such-order" }
@@ -26,10 +32,7 @@ export async function undoConfirmation(query: {
 		const letters = await tx.select({ sentAt: outboxMails.sentAt }).from(outboxMails).where(isLetter).for("update")
 		if (letters.some(({ sentAt }) => sentAt !== null)) return { ok: false, reason: "already-told" }
 		await tx.delete(outboxMails).where(and(isLetter, isNull(outboxMails.sentAt)))
-		await tx
-			.update(orderLines)
-			.set({ givenCases: null })
-			.where(and(eq(orderLines.producerId, producerId), eq(orderLines.orderId, order.id)))
+		await takeBackGiven(tx, { producer, order })
 		await tx
 			.update(orders)
 			.set({ state: "placed" })
@@ -43,4 +46,22 @@ export async function undoConfirmation(query: {
 		})
 		return { ok: true }
 	})
+}
+
+async function takeBackGiven(
+	tx: Tx,
+	query: { producer: { id: string; timeZone: string }; order: LockedOrder },
+): Promise<void> {
+	const { producer, order } = query
+	const { lines, deliveryOn } = order
+	await lockProducts(tx, { producerId: producer.id, productIds: lines.map((line) => line.productId) })
+	const today = dayInZone(now(), producer.timeZone)
+	const most = await findMostCases(tx, { producerId: producer.id, deliveryOn, today, lines })
+	for (const line of lines) {
+		const isToShare = line.isToShare || (most.get(line.id) ?? 0) < line.askedCases
+		await tx
+			.update(orderLines)
+			.set({ givenCases: null, isToShare })
+			.where(and(eq(orderLines.producerId, producer.id), eq(orderLines.id, line.id)))
+	}
 }

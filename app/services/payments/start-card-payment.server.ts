@@ -1,89 +1,66 @@
-import { and, eq, gt, sql } from "drizzle-orm"
-import { cardPayments, invoices } from "~/db/schema"
-import { withProducer } from "~/db/transaction.server"
-import { parseInvoiceNumber } from "~/domain/invoicing/invoice-number"
-import { openCardPage } from "~/platform/card-page.server"
+import { findCardPage, openCardPage } from "~/platform/card-page.server"
 import { env } from "~/platform/env.server"
 import { log } from "~/platform/log.server"
+import { closeVisit, type OpenInvoice, storeSession, takeUpVisit } from "./card-visits.server"
 
 export type CardPaymentStart =
 	| { ok: true; url: string }
-	| { ok: false; reason: "no-such-invoice" | "nothing-open" | "no-answer" }
+	| { ok: false; reason: "no-such-invoice" | "nothing-open" | "under-way" | "no-answer" }
 
-/**
- * Sends a person to the hosted card page for what is open on an invoice. An open visit for the same amount is taken up
- * again under the same key, so that a double click, a second tab or a lost answer leads to one page and one charge.
- * `no-answer` when the payment service cannot be reached: nothing was charged, and trying again is safe.
- */
-export async function startCardPayment(query: {
+type Payer = {
 	producer: { id: string; slug: string; name: string }
 	store: { id: string; slug: string }
 	invoiceNumber: string
 	personId: string
 	personEmail: string
-}): Promise<CardPaymentStart> {
-	const { producer, store } = query
-	const named = parseInvoiceNumber(query.invoiceNumber)
-	if (!named) return { ok: false, reason: "no-such-invoice" }
-	const visit = await withProducer(producer.id, async (tx) => {
-		const [invoice] = await tx
-			.select()
-			.from(invoices)
-			.where(
-				and(
-					eq(invoices.producerId, producer.id),
-					eq(invoices.storeId, store.id),
-					eq(invoices.year, named.year),
-					eq(invoices.sequence, named.sequence),
-				),
-			)
-			.for("update")
-		if (!invoice) return { ok: false, reason: "no-such-invoice" } as const
-		const openCents = invoice.totalCents - invoice.paidCents
-		if (openCents <= 0) return { ok: false, reason: "nothing-open" } as const
-		const [open] = await tx
-			.select({ id: cardPayments.id })
-			.from(cardPayments)
-			.where(
-				and(
-					eq(cardPayments.producerId, producer.id),
-					eq(cardPayments.invoiceId, invoice.id),
-					eq(cardPayments.amountCents, openCents),
-					sql`${cardPayments.state} in ('open', 'declined')`,
-					// The card page itself closes after a day; a visit that old is not taken up again.
-					gt(cardPayments.createdAt, sql`now() - interval '23 hours'`),
-				),
-			)
-			.limit(1)
-		if (open) return { ok: true, id: open.id, openCents } as const
-		const [made] = await tx
-			.insert(cardPayments)
-			.values({ producerId: producer.id, invoiceId: invoice.id, amountCents: openCents, startedBy: query.personId })
-			.returning({ id: cardPayments.id })
-		if (!made) throw new Error("an insert returns its row")
-		return { ok: true, id: made.id, openCents } as const
+}
+
+/**
+ * Sends a person to the hosted card page for what is open on an invoice. A visit that is still open for the same amount
+ * is taken up again, so that a double click or a second tab leads to one page and one charge. `under-way` when that
+ * visit has been paid and the event is on its way; `no-answer` when the payment service cannot be reached: nothing was
+ * charged, and trying again is safe.
+ */
+export async function startCardPayment(payer: Payer): Promise<CardPaymentStart> {
+	const { producer } = payer
+	const found = await takeUpVisit({
+		producerId: producer.id,
+		storeId: payer.store.id,
+		invoiceNumber: payer.invoiceNumber,
+		personId: payer.personId,
 	})
-	if (!visit.ok) return visit
-	const page = `${env.BASE_URL}/buy/${producer.slug}/${store.slug}/invoices/${query.invoiceNumber}`
+	if (!found.ok) return found
+	const { visit, invoice } = found
 	try {
-		const session = await openCardPage({
-			key: visit.id,
-			amountCents: visit.openCents,
-			title: `${producer.name}, invoice ${query.invoiceNumber}`,
-			email: query.personEmail,
-			metadata: { producer_id: producer.id, card_payment_id: visit.id },
-			paidUrl: `${page}?paid=${visit.id}`,
-			backUrl: page,
-		})
-		await withProducer(producer.id, (tx) =>
-			tx
-				.update(cardPayments)
-				.set({ stripeSessionId: session.id })
-				.where(and(eq(cardPayments.producerId, producer.id), eq(cardPayments.id, visit.id))),
-		)
-		return { ok: true, url: session.url }
+		if (!visit.sessionId) return { ok: true, url: await openPage(payer, { visitId: visit.id, invoice }) }
+		const page = await findCardPage(visit.sessionId)
+		if (page.state === "open") return { ok: true, url: page.url }
+		if (page.state === "complete") return { ok: false, reason: "under-way" }
 	} catch (error) {
 		log.warn({ err: error, cardPaymentId: visit.id }, "the card page could not be opened")
+		// What failed under this key may be answered from memory for a day: the next try gets a key of its own.
+		if (!visit.sessionId) await closeVisit({ producerId: producer.id, visitId: visit.id })
 		return { ok: false, reason: "no-answer" }
 	}
+	await closeVisit({ producerId: producer.id, visitId: visit.id })
+	return startCardPayment(payer)
+}
+
+async function openPage(
+	payer: Payer,
+	{ visitId, invoice }: { visitId: string; invoice: OpenInvoice },
+): Promise<string> {
+	const { producer, store, invoiceNumber } = payer
+	const page = `${env.BASE_URL}/buy/${producer.slug}/${store.slug}/invoices/${invoiceNumber}`
+	const session = await openCardPage({
+		key: visitId,
+		amountCents: invoice.openCents,
+		title: `${producer.name}, invoice ${invoiceNumber}`,
+		email: payer.personEmail,
+		metadata: { producer_id: producer.id, card_payment_id: visitId },
+		paidUrl: `${page}?paid=${visitId}`,
+		backUrl: page,
+	})
+	await storeSession({ producerId: producer.id, visitId, sessionId: session.id })
+	return session.url
 }

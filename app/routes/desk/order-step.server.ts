@@ -1,0 +1,66 @@
+import { data } from "react-router"
+import { cancelFromDesk } from "~/services/orders/cancel-from-desk.server"
+import { confirmOrder } from "~/services/orders/confirm-order.server"
+import type { DeskOrder } from "~/services/orders/find-desk-order.server"
+import { markReceived } from "~/services/orders/mark-received.server"
+import { packOrder } from "~/services/orders/pack-order.server"
+import { sendOrder } from "~/services/orders/send-order.server"
+import { undoConfirmation } from "~/services/orders/undo-confirmation.server"
+import type { DeskScope } from "../guard.server"
+import { readConfirmation } from "./confirm-form"
+import { lineProblem, orderProblem } from "./order-words"
+
+type Refused = { errors: Record<string, string>; values: Record<string, string> }
+type Step = { ok: true; done: string } | { ok: false; status: number; refused: Refused }
+
+/** Takes the step that a form of the order page asks for. Throws 400 for a step there is none of. */
+export async function takeStep(query: { form: FormData; order: DeskOrder; scope: DeskScope }): Promise<Step> {
+	const { form, order, scope } = query
+	const { producer, person } = scope
+	const step = { producerId: producer.id, number: order.number, personId: person.id }
+	switch (form.get("intent")) {
+		case "confirm":
+			return confirm(query)
+		case "undo":
+			return answered(order.number, "undone", await undoConfirmation({ ...step, producer }))
+		case "pack":
+			return answered(order.number, "packed", await packOrder(step))
+		case "send":
+			return answered(order.number, "sent", await sendOrder({ ...step, producer }))
+		case "cancel":
+			return answered(order.number, "cancelled", await cancelFromDesk(step))
+		case "receive":
+			return (await markReceived(step))
+				? { ok: true, done: "received" }
+				: refuse({ "": `Order ${order.number} is not on its way. Nothing was changed.` })
+		default:
+			throw data(null, { status: 400 })
+	}
+}
+
+async function confirm({ form, order, scope }: { form: FormData; order: DeskOrder; scope: DeskScope }): Promise<Step> {
+	const posted = readConfirmation(form, order.lines)
+	if (Object.keys(posted.errors).length > 0) return refuse(posted.errors, posted.values)
+	const answer = await confirmOrder({
+		producer: scope.producer,
+		number: order.number,
+		personId: scope.person.id,
+		given: posted.given,
+	})
+	if (answer.ok) return { ok: true, done: "confirmed" }
+	if (answer.reason !== "lines") return answered(order.number, "confirmed", answer, posted.values)
+	const wrong = answer.refused.map((line) => [`given-${line.lineId}`, lineProblem(line)])
+	return refuse(Object.fromEntries(wrong), posted.values)
+}
+
+type Answer = { ok: true } | ({ ok: false } & Parameters<typeof orderProblem>[1])
+
+function answered(number: number, done: string, answer: Answer, values: Record<string, string> = {}): Step {
+	if (answer.ok) return { ok: true, done }
+	if (answer.reason === "no-such-order") throw data(null, { status: 404 })
+	return refuse({ "": orderProblem(number, answer) }, values)
+}
+
+function refuse(errors: Record<string, string>, values: Record<string, string> = {}): Step {
+	return { ok: false, status: 422, refused: { errors, values } }
+}

@@ -1,0 +1,44 @@
+import { casesWords } from "~/domain/quantity"
+
+type Refusal =
+	| { reason: "no-such-order" | "nothing-given" | "not-confirmed" | "already-told" }
+	| { reason: "not-placed" | "too-late" | "not-packed"; state: string }
+	| { reason: "not-confirmed"; state: string }
+	| { reason: "lines"; refused: { reason: "more-than-asked" | "more-than-free"; mostCases: number }[] }
+	| { reason: "lots-too-few"; productName: string; missingPieces: number }
+
+/** Why a step of an order was refused, as one sentence for the head of the page. */
+export function orderProblem(number: number, refusal: Refusal): string {
+	switch (refusal.reason) {
+		case "no-such-order":
+			return "There is no such order."
+		case "nothing-given":
+			return "Give at least one case, or cancel the order."
+		case "already-told":
+			return `The store has been told of order ${number}. A change is a new decision now.`
+		case "not-placed":
+		case "too-late":
+		case "not-packed":
+			return `Order ${number} is ${refusal.state} already. Nothing was changed.`
+		case "not-confirmed":
+			return "state" in refusal
+				? `Order ${number} is ${refusal.state}. Nothing was moved.`
+				: `Order ${number} is not confirmed any more. Nothing was changed.`
+		case "lines":
+			return `Order ${number} cannot be met in full any more. Open it and decide what it gets.`
+		case "lots-too-few":
+			return `${refusal.missingPieces} pieces of ${refusal.productName.toLowerCase()} are missing on the shelves: no released lot has them. Nothing was moved.`
+	}
+}
+
+/** Why a line was refused, for the side of its field. */
+export function lineProblem({
+	reason,
+	mostCases,
+}: {
+	reason: "more-than-asked" | "more-than-free"
+	mostCases: number
+}): string {
+	if (reason === "more-than-asked") return "That is more than was asked for."
+	return mostCases === 0 ? "None can be given." : `${casesWords(mostCases)} can be given.`
+}

@@ -1,0 +1,91 @@
+import { data, Link, redirect } from "react-router"
+import { z } from "zod"
+import { dayWords, isDay, shortDay, shortMonthDay } from "~/domain/calendar"
+import { findPacking } from "~/services/desk/find-packing.server"
+import { packOrder } from "~/services/orders/pack-order.server"
+import { sendOrder } from "~/services/orders/send-order.server"
+import { FilterLinks } from "~/ui/desk/filter-links"
+import { counted, countHead } from "~/ui/desk/number-words"
+import { PackingOrders, PickTable } from "~/ui/desk/packing-sheet"
+import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
+import { admits, guard } from "../guard.server"
+import type { Route } from "./+types/packing"
+import { DeskBook } from "./desk-book"
+import { findDeskFrame } from "./frame.server"
+import { orderProblem } from "./order-words"
+
+export const meta: Route.MetaFunction = () => [{ title: "Packing · Waxbill" }]
+
+export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url }: Route.LoaderArgs, scope) => {
+	const asked = url.searchParams.get("day")
+	const { days, day, picks, orders } = await findPacking({
+		producerId: scope.producer.id,
+		day: asked && isDay(asked) ? asked : null,
+	})
+	return {
+		frame: await findDeskFrame(scope, { part: "packing", ...(day ? { day } : {}) }),
+		days: days.map((on) => ({ value: on, label: shortDay(on) })),
+		day,
+		picks: picks.map(({ bestBeforeOn, ...pick }) => ({ ...pick, bestBefore: shortMonthDay(bestBeforeOn) })),
+		orders,
+		done: url.searchParams.get("done"),
+	}
+})
+
+const step = z.object({
+	intent: z.enum(["pack", "send"]),
+	number: z.coerce.number().int().min(1).max(999_999_999),
+	day: z.string().refine(isDay),
+})
+
+export const action = guard(
+	admits.desk("owner", "desk", "packer"),
+	async ({ request, url }: Route.ActionArgs, { producer, person }) => {
+		const parsed = step.safeParse(Object.fromEntries(await request.formData()))
+		if (!parsed.success) throw data(null, { status: 400 })
+		const { intent, number, day } = parsed.data
+		const query = { producerId: producer.id, number, personId: person.id }
+		const answer = intent === "pack" ? await packOrder(query) : await sendOrder({ ...query, producer })
+		if (answer.ok) {
+			const done = `Order ${number} is ${intent === "pack" ? "packed" : "sent, and its invoice is on its way"}.`
+			throw redirect(`${url.pathname}?${new URLSearchParams({ day, done })}`)
+		}
+		if (answer.reason === "no-such-order") throw data(null, { status: 404 })
+		return data({ problem: orderProblem(number, answer) }, { status: 422 })
+	},
+)
+
+export default function Packing({ loaderData, actionData, params }: Route.ComponentProps) {
+	const { days, day, picks, orders, done } = loaderData
+	const packed = orders.filter((order) => order.state === "packed").length
+	const lead =
+		orders.length === 0
+			? "Nothing to pack."
+			: `${countHead(orders.length)} ${orders.length === 1 ? "stop" : "stops"}; ${packed === 0 ? "none packed yet" : `${counted(packed, "order")} packed`}.`
+	return (
+		<DeskBook frame={loaderData.frame}>
+			{actionData && (
+				<MessageLine tone="problem" title="That could not be done.">
+					{actionData.problem}
+				</MessageLine>
+			)}
+			{!actionData && done && <MessageLine tone="saved" title={done} />}
+			<SheetHead title={day ? `Packing for ${dayWords(day)}` : "Packing"} lead={lead} />
+			{days.length > 1 && (
+				<div className="no-print">
+					<FilterLinks label="Days with orders to pack" name="day" chosen={day ?? ""} options={days} />
+				</div>
+			)}
+			{orders.length === 0 || !day ? (
+				<EmptyLine action={<Link to={`/desk/${params.producer}`}>To do</Link>}>
+					No order of that day is confirmed and waiting to be packed.
+				</EmptyLine>
+			) : (
+				<>
+					{picks.length > 0 && <PickTable picks={picks} lotsHref={`/desk/${params.producer}/lots`} />}
+					<PackingOrders orders={orders} day={day} />
+				</>
+			)}
+		</DeskBook>
+	)
+}

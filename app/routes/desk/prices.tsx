@@ -1,0 +1,95 @@
+import { dayInZone } from "~/domain/calendar"
+import { formatMoney, plainMoney } from "~/domain/money"
+import { weightWords } from "~/domain/weight"
+import { now } from "~/platform/clock.server"
+import { findPriceList } from "~/services/desk/find-price-list.server"
+import { EmptyLine, SheetHead } from "~/ui/layout/sheet"
+import { admits, guard } from "../guard.server"
+import type { Route } from "./+types/prices"
+import { DeskBook } from "./desk-book"
+import { findDeskFrame } from "./frame.server"
+
+export const meta: Route.MetaFunction = () => [{ title: "Prices · Waxbill" }]
+
+export const loader = guard(admits.desk("owner", "desk"), async (_args: Route.LoaderArgs, scope) => {
+	const { producer } = scope
+	const at = now()
+	const products = await findPriceList({ producerId: producer.id, today: dayInZone(at, producer.timeZone) })
+	return {
+		frame: await findDeskFrame(scope, { part: "prices", now: at }),
+		products,
+		tiers: [...new Set(products.flatMap((product) => product.tiers.map((tier) => tier.tierName)))].toSorted(),
+	}
+})
+
+type Break = { minCases: number; caseCents: number }
+
+function Breaks({ breaks }: { breaks: readonly Break[] }) {
+	return breaks.map(({ minCases, caseCents }, index) => (
+		<span key={minCases} className={index === 0 ? "block" : "block text-ink-soft"}>
+			{index > 0 && <span className="note">from {minCases} </span>}
+			{plainMoney(caseCents)}
+		</span>
+	))
+}
+
+export default function Prices({ loaderData }: Route.ComponentProps) {
+	const { products, tiers } = loaderData
+	return (
+		<DeskBook frame={loaderData.frame}>
+			<SheetHead
+				title="Prices"
+				lead="What a case costs in each price tier, and from how many cases of its family it costs less."
+			/>
+			{products.length === 0 ? (
+				<EmptyLine>Nothing is for sale yet.</EmptyLine>
+			) : (
+				// biome-ignore lint/a11y/noNoninteractiveTabindex: a table wider than the screen is scrolled by keyboard too
+				<section className="overflow-x-auto" aria-label="Price list" tabIndex={0}>
+					<table className="sheet-table">
+						<thead>
+							<tr>
+								<th scope="col">No.</th>
+								<th scope="col">Product</th>
+								<th scope="col" className="max-desk:hidden">
+									A case
+								</th>
+								{tiers.map((tier) => (
+									<th key={tier} scope="col" className="num">
+										{tier}
+									</th>
+								))}
+								<th scope="col" className="num pr-4! desk:pr-8!">
+									One piece, to the public
+								</th>
+							</tr>
+						</thead>
+						<tbody>
+							{products.map((product) => (
+								<tr key={product.code}>
+									<td className="fig text-ink-faint">{product.code}</td>
+									<td className="py-2!">
+										<span className="name block text-body!">{product.name}</span>
+										<span className="note">{product.detail}</span>
+									</td>
+									<td className="max-desk:hidden">
+										{product.piecesPerCase} pieces
+										<span className="note block">{weightWords(product.pieceNetGrams * product.piecesPerCase)} net</span>
+									</td>
+									{tiers.map((tier) => (
+										<td key={tier} className="money py-2!">
+											<Breaks breaks={product.tiers.find((one) => one.tierName === tier)?.breaks ?? []} />
+										</td>
+									))}
+									<td className="money pr-4! desk:pr-8!">
+										{product.pieceCents === null ? "not sold singly" : formatMoney(product.pieceCents)}
+									</td>
+								</tr>
+							))}
+						</tbody>
+					</table>
+				</section>
+			)}
+		</DeskBook>
+	)
+}

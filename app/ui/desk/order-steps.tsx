@@ -1,0 +1,49 @@
+import { Form, Link } from "react-router"
+import type { OrderState } from "~/domain/orders/order-states"
+import { Button } from "~/ui/forms/button"
+
+type Order = { number: number; state: OrderState; storeName: string; invoiceNumber: string | null; canUndo: boolean }
+
+/** The next step of each state: its intent, and the words on its button. */
+const NEXT: Partial<Record<OrderState, { intent: string; words: string }>> = {
+	confirmed: { intent: "pack", words: "Packed" },
+	packed: { intent: "send", words: "Sent, issue the invoice" },
+	sent: { intent: "receive", words: "It has arrived" },
+}
+
+/** What can be done with an order now: the next step as the one filled button, and the ways back. */
+export function OrderSteps({ order, base }: { order: Order; base: string }) {
+	const next = NEXT[order.state]
+	const canCancel = order.state === "placed" || order.state === "confirmed" || order.state === "packed"
+	return (
+		<div className="grid content-start gap-3">
+			{next && (
+				<Form method="post">
+					<Button variant="primary" size="big" name="intent" value={next.intent} className="w-full">
+						{next.words}
+					</Button>
+				</Form>
+			)}
+			{order.invoiceNumber && (
+				<Link className="btn" to={`${base}/invoices/${order.invoiceNumber}`}>
+					Invoice {order.invoiceNumber}
+				</Link>
+			)}
+			{order.canUndo && (
+				<Form method="post">
+					<Button name="intent" value="undo" className="w-full">
+						Undo the confirmation
+					</Button>
+				</Form>
+			)}
+			{canCancel && (
+				<Form method="post" className="grid gap-1">
+					<Button name="intent" value="cancel">
+						Cancel this order
+					</Button>
+					<p className="note">No letter goes out: tell {order.storeName} yourself.</p>
+				</Form>
+			)}
+		</div>
+	)
+}

@@ -1,0 +1,138 @@
+import type { ReactNode } from "react"
+import { Form, Link } from "react-router"
+import { Button, ButtonLink } from "~/ui/forms/button"
+import { LedgerGroup, LedgerRow } from "~/ui/layout/ledger"
+import { FillStrip } from "~/ui/stock/fill-strip"
+import type { StripRun } from "~/ui/stock/strip-geometry"
+
+/** One order that waits, below the row of its day. */
+type WaitingOrderRow = {
+	number: number
+	storeName: string
+	to: string
+	line: string
+	money: string
+	/** All of it can be given, so that it can be confirmed from here. */
+	isWhole: boolean
+}
+
+/** One thing to settle. */
+export type ToDoRow = {
+	key: string
+	name: string
+	line?: string
+	/** A line whose second part is in the colour of what is late. */
+	lateLine?: { text: string; late: string }
+	money?: string
+	strip?: { runs: StripRun[]; caption: string; short?: string }
+	link?: { to: string; label: string; about: string }
+	/** One button that confirms all orders of a day that can be met in full. */
+	confirmAll?: { day: string; label: string }
+	orders?: WaitingOrderRow[]
+}
+
+export type ToDoGroup = { when: string; note?: string; rows: ToDoRow[] }
+
+/** What there is to settle, by when; every button works without a script. */
+export function ToDoGroups({ groups }: { groups: readonly ToDoGroup[] }) {
+	return groups.map((group, index) => (
+		<LedgerGroup key={group.when} when={group.when} note={group.note}>
+			{group.rows.map((row, at) => (
+				<Row key={row.key} row={row} isFirst={index === 0 && at === 0} />
+			))}
+		</LedgerGroup>
+	))
+}
+
+/** The first thing to do has the one filled button of the page. */
+function Row({ row, isFirst }: { row: ToDoRow; isFirst: boolean }) {
+	const variant = isFirst ? "primary" : "second"
+	const action = row.confirmAll ? (
+		<Form method="post" preventScrollReset>
+			<input type="hidden" name="day" value={row.confirmAll.day} />
+			<Button variant={variant} name="intent" value="confirm-whole">
+				{row.confirmAll.label}
+			</Button>
+		</Form>
+	) : (
+		row.link && (
+			<ButtonLink variant={variant} to={row.link.to} aria-label={`${row.link.label}: ${row.link.about}`}>
+				{row.link.label}
+			</ButtonLink>
+		)
+	)
+	return (
+		<LedgerRow name={row.name} line={row.line} strip={stripOf(row)} action={action}>
+			{row.orders && (
+				<ul className="waiting-orders">
+					{row.orders.map((order, index) => (
+						<WaitingOrder key={order.number} order={order} isFirst={isFirst && !row.confirmAll && index === 0} />
+					))}
+				</ul>
+			)}
+		</LedgerRow>
+	)
+}
+
+function stripOf({ strip, lateLine, money }: ToDoRow): ReactNode {
+	if (strip) {
+		const caption = (
+			<>
+				{strip.caption}
+				{strip.short && (
+					<>
+						, <span className="short">{strip.short}</span>
+					</>
+				)}
+			</>
+		)
+		return <FillStrip runs={strip.runs} caption={caption} />
+	}
+	if (!lateLine) return undefined
+	return (
+		<span className="flex flex-wrap justify-between gap-x-4">
+			<span>
+				{lateLine.text} <span className="short">{lateLine.late}</span>
+			</span>
+			<span className="money">{money}</span>
+		</span>
+	)
+}
+
+function WaitingOrder({ order, isFirst }: { order: WaitingOrderRow; isFirst: boolean }) {
+	const variant = isFirst ? "primary" : "second"
+	return (
+		<li className="waiting-order">
+			<Link className="waiting-store" to={order.to}>
+				{order.storeName}
+			</Link>
+			<span className="waiting-line">{order.line}</span>
+			<span className="money waiting-money">{order.money}</span>
+			{order.isWhole ? (
+				<Form method="post" preventScrollReset className="waiting-action">
+					<input type="hidden" name="number" value={order.number} />
+					<Button
+						variant={variant}
+						size="small"
+						name="intent"
+						value="confirm"
+						aria-label={`Confirm order ${order.number} of ${order.storeName}`}
+					>
+						Confirm
+					</Button>
+				</Form>
+			) : (
+				<span className="waiting-action">
+					<ButtonLink
+						variant={variant}
+						size="small"
+						to={order.to}
+						aria-label={`Decide what order ${order.number} of ${order.storeName} gets`}
+					>
+						Decide
+					</ButtonLink>
+				</span>
+			)}
+		</li>
+	)
+}
