@@ -38,11 +38,14 @@ async function signIn(client, email) {
 
 async function take({ browser, client, web, folder }, [name, email, path, viewport]) {
 	const context = await browser.newContext({ viewport })
-	if (email) await context.addCookies([{ name: "session", value: await signIn(client, email), url: web }])
+	if (email) await context.addCookies([{ name: "waxbill-session", value: await signIn(client, email), url: web }])
 	const page = await context.newPage()
 	await page.goto(`${web}${path}`)
 	// The stall opens on the list of days; the picture is of the first one that sells.
-	if (name === "stall") await page.locator("a[aria-current=date]").first().click()
+	if (name === "stall") {
+		await page.locator("a[aria-current=date]").first().click()
+		await page.waitForURL(`${web}${path}/*`)
+	}
 	await page.evaluate(() => document.fonts.ready)
 	await page.waitForLoadState("networkidle")
 	await page.screenshot({ path: join(folder, `${name}.png`) })
