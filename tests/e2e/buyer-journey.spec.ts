@@ -116,6 +116,7 @@ test("a buyer signs in by the mailed code, orders by keyboard, and reads the ack
 	await expect(page.getByRole("status")).toContainText(`Larkmoor Bee Yard has your order`)
 	await expect(page.getByRole("row", { name: /Round section, clover/ })).toContainText("324.90")
 	await expect(page.getByRole("main")).toContainText(`For ${day}, waiting for Larkmoor Bee Yard to confirm.`)
+	await expectNoFaults(page)
 	const number = /Order (\d+)/.exec((await page.getByRole("heading", { level: 1 }).textContent()) ?? "")?.[1]
 	const letter = await letterTo(page.request, ROSA, /We have your order/)
 	expect(letter.subject).toBe(`We have your order ${number} for ${day}`)

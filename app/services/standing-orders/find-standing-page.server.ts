@@ -12,7 +12,7 @@ import { readStoreStandingOrder, type StandingLine, type StandingOrder } from ".
 import { type DatedRule, type DueDate, standingDates } from "./standing-dates.server"
 
 /** How many dates ahead the page shows. */
-export const SHOWN_DATES = 6
+const SHOWN_DATES = 6
 
 /** A date as the page shows it; `orderNumber` once it has become an order. */
 export type ShownDate = DueDate & { orderNumber: number | null; forecast: LineForecast[] }

@@ -35,16 +35,19 @@ export function SheetRow({ row, columns, today, isClosed, value, error, note }: 
 				on: index === inForce,
 				isChosen: line !== null,
 			}))}
+			// Nothing can be promised any more for a day that is closed.
 			stock={
-				<FillStrip
-					size="sm"
-					runs={[
-						{ state: "free", count: shown.free },
-						{ state: "held", count: shown.held },
-						{ state: "expected", count: shown.expected },
-					]}
-					caption={stripWords(product, today)}
-				/>
+				isClosed ? null : (
+					<FillStrip
+						size="sm"
+						runs={[
+							{ state: "free", count: shown.free },
+							{ state: "held", count: shown.held },
+							{ state: "expected", count: shown.expected },
+						]}
+						caption={stripWords(product, today)}
+					/>
+				)
 			}
 			lastTime={product.lastCases || null}
 			quantity={
