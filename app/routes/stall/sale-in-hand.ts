@@ -1,10 +1,14 @@
-import { z } from "zod"
-
 /** More of one product than this is not sold in one go. */
 const MOST_PIECES = 99
 
 /** What is in the sale at hand: it lives in the address, so that Back, reload and a page without script keep it. */
 export type SaleInHand = { saleId: string; items: { productId: string; pieces: number }[] }
+
+/** The id of the sale that an address or a form names, or null. */
+export function saleIdIn(fields: URLSearchParams | FormData): string | null {
+	const saleId = fields.get("sale")
+	return isId(saleId) ? saleId : null
+}
 
 /**
  * Reads the sale at hand from an address or a form: `sale` is its id, `n-<product>` the pieces of a product. `add` and
@@ -13,15 +17,13 @@ export type SaleInHand = { saleId: string; items: { productId: string; pieces: n
 export function readSale(fields: URLSearchParams | FormData, newId: string): SaleInHand {
 	const counts = new Map<string, number>()
 	for (const [name, value] of fields.entries()) {
-		const productId = /^n-(.+)$/.exec(name)?.[1]
-		const pieces = z.coerce.number().int().min(0).max(MOST_PIECES).safeParse(value)
-		if (productId && isId(productId) && pieces.success) counts.set(productId, pieces.data)
+		const productId = name.startsWith("n-") ? name.slice(2) : null
+		if (isId(productId) && typeof value === "string" && /^\d{1,2}$/.test(value)) counts.set(productId, Number(value))
 	}
 	step(counts, fields.get("add"), 1)
 	step(counts, fields.get("fewer"), -1)
-	const saleId = fields.get("sale")
 	return {
-		saleId: isId(saleId) ? saleId : newId,
+		saleId: saleIdIn(fields) ?? newId,
 		items: [...counts].flatMap(([productId, pieces]) => (pieces > 0 ? { productId, pieces } : [])),
 	}
 }
@@ -44,6 +46,7 @@ function step(counts: Map<string, number>, pressed: FormDataEntryValue | null, b
 	counts.set(pressed, Math.min(MOST_PIECES, Math.max(0, (counts.get(pressed) ?? 0) + by)))
 }
 
+// No schema library here: this runs on the phone too, where every kilobyte waits for the signal of a market square.
 function isId(value: unknown): value is string {
-	return z.uuid().safeParse(value).success
+	return typeof value === "string" && /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/.test(value)
 }

@@ -1,30 +1,37 @@
-import { and, asc, eq, sql } from "drizzle-orm"
-import { saleLines, sales } from "~/db/schema"
-import { readProducer, type Tx } from "~/db/transaction.server"
-import { type DayTotals, dayTotals } from "~/domain/stall/sale-totals"
+import { and, eq, sql } from "drizzle-orm"
+import { sales } from "~/db/schema"
+import { readProducer } from "~/db/transaction.server"
+import { type EarlierSale, findEarlierSale } from "./find-earlier-sale.server"
 import { findMarketDay, type MarketDay, type StallViewer } from "./find-market-days.server"
 import { findTable, type TableItem } from "./find-table.server"
 
 type StallQuery = { producerId: string; dayId: string; viewer: StallViewer }
 
-/** What a volunteer sells from; null when they are not named on the day. */
-export function findStallPage(query: StallQuery): Promise<{ day: MarketDay; table: TableItem[] } | null> {
-	return readProducer(query.producerId, (tx) => readStall(tx, query))
-}
-
-async function readStall(tx: Tx, query: StallQuery): Promise<{ day: MarketDay; table: TableItem[] } | null> {
-	const day = await findMarketDay(tx, query)
-	return day ? { day, table: await findTable(tx, query) } : null
+/**
+ * What a volunteer sells from; null when they are not named on the day. With `saleId` also the sale that is written under
+ * that id already, as after going back to one that is over.
+ */
+export function findStallPage(
+	query: StallQuery & { saleId: string | null },
+): Promise<{ day: MarketDay; table: TableItem[]; earlier: EarlierSale | null } | null> {
+	const { producerId, saleId } = query
+	return readProducer(producerId, async (tx) => {
+		const day = await findMarketDay(tx, query)
+		if (!day) return null
+		const earlier = saleId === null ? null : await findEarlierSale(tx, { producerId, saleId })
+		return { day, table: await findTable(tx, query), earlier }
+	})
 }
 
 export type SalePage = {
 	day: MarketDay
 	sale: {
-		id: string
 		state: "open" | "paid" | "given-up"
 		totalCents: number
 		declineMessage: string
-		isAtReader: boolean
+		/** The number of the try that is on, or failed. */
+		attempt: number
+		hasPayment: boolean
 	}
 }
 
@@ -36,11 +43,11 @@ export function findSalePage(query: StallQuery & { saleId: string }): Promise<Sa
 		if (!day) return null
 		const [sale] = await tx
 			.select({
-				id: sales.id,
 				state: sales.state,
 				totalCents: sales.totalCents,
 				declineMessage: sales.declineMessage,
-				isAtReader: sql<boolean>`${sales.stripePaymentIntentId} is not null`,
+				attempt: sales.attempt,
+				hasPayment: sql<boolean>`${sales.stripePaymentIntentId} is not null`,
 			})
 			.from(sales)
 			.where(
@@ -52,43 +59,5 @@ export function findSalePage(query: StallQuery & { saleId: string }): Promise<Sa
 				),
 			)
 		return sale ? { day, sale } : null
-	})
-}
-
-export type TotalsPage = {
-	day: MarketDay
-	table: TableItem[]
-	totals: DayTotals
-	openSales: { id: string; totalCents: number }[]
-}
-
-/** What a day took and where its pieces are: sold and still on the table make what was brought. */
-export function findDayTotals(query: StallQuery): Promise<TotalsPage | null> {
-	const { producerId, dayId } = query
-	return readProducer(producerId, async (tx) => {
-		const stall = await readStall(tx, query)
-		if (!stall) return null
-		const rows = await tx
-			.select({
-				id: sales.id,
-				state: sales.state,
-				method: sales.method,
-				totalCents: sales.totalCents,
-				pieces: sql`sum(${saleLines.pieces})`.mapWith(Number),
-			})
-			.from(sales)
-			.innerJoin(saleLines, and(eq(saleLines.producerId, sales.producerId), eq(saleLines.saleId, sales.id)))
-			.where(and(eq(sales.producerId, producerId), eq(sales.marketDayId, dayId)))
-			.groupBy(sales.producerId, sales.id)
-			.orderBy(asc(sales.soldAt))
-		return {
-			...stall,
-			totals: dayTotals({
-				sales: rows.filter(({ state }) => state === "paid"),
-				floatCents: stall.day.floatCents,
-				paidOutCents: 0,
-			}),
-			openSales: rows.filter(({ state }) => state === "open").map(({ id, totalCents }) => ({ id, totalCents })),
-		}
 	})
 }

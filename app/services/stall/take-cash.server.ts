@@ -11,9 +11,9 @@ export function takeCash(query: {
 	items: readonly SaleItem[]
 	givenCents: number
 }): Promise<{ ok: true; totalCents: number } | SaleRefusal | { ok: false; reason: "no-such-day" }> {
-	const { producerId, dayId, viewer, saleId, items, givenCents } = query
+	const { producerId, viewer, saleId, items, givenCents } = query
 	return withProducer(producerId, async (tx) => {
-		const day = await findMarketDay(tx, { producerId, dayId, viewer })
+		const day = await findMarketDay(tx, query)
 		if (!day) return { ok: false, reason: "no-such-day" }
 		const paid = { method: "cash", givenCents } as const
 		return writeSale(tx, { producerId, saleId, day, personId: viewer.personId, items, paid })

@@ -4,6 +4,7 @@ import type { Tx } from "~/db/transaction.server"
 import { assignLots } from "~/domain/promise/assign-lots"
 import { saleTotals } from "~/domain/stall/sale-totals"
 import { lockProducts } from "~/services/orders/lock-products.server"
+import { type EarlierSale, findEarlierSale, findSaleItems } from "./find-earlier-sale.server"
 import type { MarketDay } from "./find-market-days.server"
 import { findTable } from "./find-table.server"
 
@@ -21,27 +22,31 @@ export type NewSale = {
 }
 
 export type SaleRefusal =
-	| { ok: false; reason: "nothing-sold" | "day-not-open" }
+	| { ok: false; reason: "nothing-sold" }
+	| { ok: false; reason: "day-not-open" }
+	| { ok: false; reason: "written-before"; earlier: EarlierSale }
 	| { ok: false; reason: "not-so-many"; productName: string; left: number }
 	| { ok: false; reason: "too-little-given"; totalCents: number }
 
 /**
  * Writes a sale and takes its pieces from the table, earliest best-before first: a cash sale is paid at once, a card sale
  * is open until the card is. Its pieces are gone from the table either way, so that nobody else sells them meanwhile.
- * A sale of this id that is there already is answered as it is.
+ * Sent again, the same sale is answered as before and nothing more is sold. Another sale under its id is refused
+ * (`written-before`), as is one that was given up.
  */
 export async function writeSale(tx: Tx, sale: NewSale): Promise<{ ok: true; totalCents: number } | SaleRefusal> {
 	const { producerId, saleId, day, personId, items, paid } = sale
 	if (items.length === 0) return { ok: false, reason: "nothing-sold" }
-	if (day.state !== "open") return { ok: false, reason: "day-not-open" }
 	await lockProducts(tx, { producerId, productIds: items.map(({ productId }) => productId) })
-	const [earlier] = (
-		await tx.execute<{ total_cents: number }>(
-			sql`select total_cents from sales where producer_id = ${producerId} and id = ${saleId}`,
-		)
-	).rows
-	if (earlier) return { ok: true, totalCents: earlier.total_cents }
+	const earlier = await findEarlierSale(tx, { producerId, saleId })
+	if (earlier) {
+		const isSame = earlier.state !== "given-up" && earlier.dayId === day.id && earlier.method === paid.method
+		if (isSame && isSameItems(items, await findSaleItems(tx, { producerId, saleId })))
+			return { ok: true, totalCents: earlier.totalCents }
+		return { ok: false, reason: "written-before", earlier }
+	}
 
+	if (day.state !== "open") return { ok: false, reason: "day-not-open" }
 	const table = new Map((await findTable(tx, { producerId, dayId: day.id })).map((item) => [item.productId, item]))
 	for (const { productId, pieces } of items) {
 		const item = table.get(productId)
@@ -87,6 +92,11 @@ export async function writeSale(tx: Tx, sale: NewSale): Promise<{ ok: true; tota
 			})),
 	)
 	return { ok: true, totalCents }
+}
+
+function isSameItems(items: readonly SaleItem[], written: readonly SaleItem[]): boolean {
+	const pieces = new Map(written.map((item) => [item.productId, item.pieces]))
+	return items.length === written.length && items.every((item) => pieces.get(item.productId) === item.pieces)
 }
 
 async function pickFromTable(
