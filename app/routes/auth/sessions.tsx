@@ -43,7 +43,7 @@ export default function Sessions({ loaderData: { sessions, zone } }: Route.Compo
 	return (
 		<PlainPage
 			title="Where you are signed in"
-			lead={`Each lasts 30 days from signing in. End one that you do not know or use no more. Times are for ${zone}.`}
+			lead={`Each lasts 30 days from signing in. End one that you do not know or use no more. Times are for ${zone.replaceAll("_", " ")}.`}
 		>
 			<ul className="border-t border-ink">
 				{sessions.map((session) => (

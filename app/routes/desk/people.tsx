@@ -6,22 +6,29 @@ import { type InviteRefusal, invitePerson } from "~/services/people/invite-perso
 import { listPeople } from "~/services/people/list-people.server"
 import { withdrawInvitation } from "~/services/people/withdraw-invitation.server"
 import { ErrorSummary } from "~/ui/forms/error-summary"
+import { MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { waitWords } from "../auth/sign-in-fields"
 import { admits, type DeskScope, guard } from "../guard.server"
 import type { Route } from "./+types/people"
+import { DeskBook } from "./desk-book"
+import { findDeskFrame } from "./frame.server"
 import { invitationForm } from "./people-form"
 import { InvitePersonForm, type TypedInvitation } from "./people-invite"
 import { MemberRows, WaitingRows } from "./people-rows"
 
 export const meta: Route.MetaFunction = () => [{ title: "People · Waxbill" }]
 
-export const loader = guard(admits.desk("owner"), async ({ url }: Route.LoaderArgs, { producer }) => {
+export const loader = guard(admits.desk("owner"), async ({ url }: Route.LoaderArgs, scope) => {
+	const { producer } = scope
 	const people = await listPeople(producer.id)
 	const waiting = people.waiting.map(({ expiresAt, ...invitation }) => ({
 		...invitation,
 		until: dayWords(dayInZone(expiresAt, producer.timeZone)),
 	}))
-	return { ...people, waiting, invited: url.searchParams.get("invited") }
+	const frame = await findDeskFrame(scope, { part: "people" })
+	// Only what the list bears out is said, whatever stands in the address.
+	const invited = waiting.find(({ email }) => email === url.searchParams.get("invited"))?.email ?? null
+	return { frame, ...people, waiting, invited }
 })
 
 export const action = guard(admits.desk("owner"), async ({ request, url }: Route.ActionArgs, scope) => {
@@ -68,22 +75,17 @@ export default function People({ loaderData, actionData }: Route.ComponentProps)
 	const { members, waiting, stores, invited } = loaderData
 	const errors = actionData?.errors ?? []
 	return (
-		<>
-			<header className="sheet-head">
-				<div>
-					<h1 className="title">People</h1>
-					<p className="lead">Who works at the desk, the cold room and the stall, and who buys for a store.</p>
-				</div>
-			</header>
+		<DeskBook frame={loaderData.frame}>
+			<SheetHead title="People" lead="Who works at the desk, the cold room and the stall, and who buys for a store." />
 			<ErrorSummary errors={errors} />
 			{invited !== null && errors.length === 0 && (
-				<p className="message-line saved" role="status">
-					The invitation to {invited} is on its way.
-				</p>
+				<MessageLine tone="saved" title={`The invitation to ${invited} is on its way.`}>
+					It is good for two weeks.
+				</MessageLine>
 			)}
 			<MemberRows members={members} />
 			<WaitingRows waiting={waiting} />
 			<InvitePersonForm stores={stores} typed={actionData?.typed ?? null} errors={errors} />
-		</>
+		</DeskBook>
 	)
 }

@@ -27,6 +27,7 @@ export class Browser {
 			body,
 			headers: {
 				...this.headers(),
+				origin,
 				"content-type": "application/x-www-form-urlencoded",
 				"content-length": String(Buffer.byteLength(body)),
 			},
