@@ -95,7 +95,10 @@ export default function Lots({ loaderData, params }: Route.ComponentProps) {
 						{lots.map((lot) => (
 							<tr key={lot.code}>
 								<td>
-									<Link className="name inline-block py-1 text-body!" to={`/desk/${params.producer}/lots/${lot.code}`}>
+									<Link
+										className="name inline-block py-1 text-body! whitespace-nowrap"
+										to={`/desk/${params.producer}/lots/${lot.code}`}
+									>
 										{lot.code}
 									</Link>
 								</td>

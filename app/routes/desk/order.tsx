@@ -113,7 +113,9 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 					<Timeline events={timeline} />
 					{order.note && <p className="mt-3">Their note: {order.note}</p>}
 				</div>
-				<OrderSums lines={order.lines} deliveryCents={order.deliveryCents} />
+				<div>
+					<OrderSums lines={order.lines} deliveryCents={order.deliveryCents} />
+				</div>
 				<OrderSteps order={order} base={base} />
 			</div>
 		</DeskBook>

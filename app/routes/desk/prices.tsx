@@ -68,7 +68,7 @@ export default function Prices({ loaderData }: Route.ComponentProps) {
 							{products.map((product) => (
 								<tr key={product.code}>
 									<td className="fig text-ink-faint">{product.code}</td>
-									<td className="py-2!">
+									<td className="min-w-44 py-2!">
 										<span className="name block text-body!">{product.name}</span>
 										<span className="note">{product.detail}</span>
 									</td>

@@ -13,10 +13,10 @@ import {
 import { formatMoney } from "~/domain/money"
 import { casesWords } from "~/domain/quantity"
 import type { OpenOrder } from "~/services/desk/find-open-orders.server"
-import type { HeldLot, PackingDay, ToDo, WaitingDay } from "~/services/desk/find-to-do.server"
+import type { HeldLot, OverdueInvoice, PackingDay, ToDo, WaitingDay } from "~/services/desk/find-to-do.server"
 import type { Shortage } from "~/services/desk/shortages.server"
 import { counted, countHead, countWords } from "~/ui/desk/number-words"
-import type { ToDoGroup, ToDoRow } from "~/ui/desk/to-do-rows"
+import type { OwedRow, ToDoGroup, ToDoRow } from "~/ui/desk/to-do-rows"
 import type { StripRun } from "~/ui/stock/strip-geometry"
 
 type Moment = { now: Date; zone: string; today: Day; base: string }
@@ -24,8 +24,8 @@ type Moment = { now: Date; zone: string; today: Day; base: string }
 /** A row, when its group is named, and where it stands among the others. */
 type Placed = { when: string; at: string; order: number; row: ToDoRow; note?: string }
 
-/** The rows of the To do page in words, in groups by when they close; what is owed comes last. */
-export function toDoGroups(toDo: Omit<ToDo, "settled">, moment: Moment): ToDoGroup[] {
+/** The rows of the To do page in words, in groups by when they close. */
+export function toDoGroups(toDo: Omit<ToDo, "settled" | "overdue">, moment: Moment): ToDoGroup[] {
 	const placed = [
 		...toDo.waiting.map((day) => confirmRow(day, moment)),
 		...toDo.packing.map((day) => packingRow(day, moment)),
@@ -40,22 +40,27 @@ export function toDoGroups(toDo: Omit<ToDo, "settled">, moment: Moment): ToDoGro
 			group.note ??= note
 		} else groups.push({ when, rows: [row], ...(note ? { note } : {}) })
 	}
-	const owed = toDo.overdue.map((invoice): ToDoRow => {
-		const late = daysBetween(invoice.dueOn, moment.today)
+	return groups
+}
+
+/** The invoices past their day, in words. */
+export function owedRows(overdue: readonly OverdueInvoice[], { today, base }: Moment): OwedRow[] {
+	return overdue.map(({ number, storeName, dueOn, openCents }) => {
+		const late = daysBetween(dueOn, today)
 		return {
-			key: `invoice ${invoice.number}`,
-			name: invoice.storeName,
-			lateLine: { text: `Invoice ${invoice.number}, due ${monthDay(invoice.dueOn)}`, late: `${late} days late` },
-			money: formatMoney(invoice.openCents),
-			link: { to: `${moment.base}/invoices/${invoice.number}`, label: "Open it", about: `invoice ${invoice.number}` },
+			number,
+			storeName,
+			to: `${base}/invoices/${number}`,
+			due: monthDay(dueOn),
+			late: late === 1 ? "1 day late" : `${late} days late`,
+			money: formatMoney(openCents),
 		}
 	})
-	return owed.length === 0 ? groups : [...groups, { when: "Owed", rows: owed }]
 }
 
 /** The packing rows alone, for a packer. */
-export function packingGroups(days: readonly PackingDay[], moment: Moment): ToDoGroup[] {
-	return days.map((day) => packingRow(day, moment)).map(({ when, row }) => ({ when, rows: [row] }))
+export function packingGroups(packing: PackingDay[], moment: Moment): ToDoGroup[] {
+	return toDoGroups({ waiting: [], packing, heldLots: [], shortages: [] }, moment)
 }
 
 /** "Before noon tomorrow", "Before noon on Wednesday"; an instant that has passed is "Orders closed". */
@@ -162,13 +167,18 @@ function packingRow(day: PackingDay, { today, zone, base }: Moment): Placed {
 	return {
 		when: ahead <= 1 ? "Today" : `For ${nearDay(deliveryOn, today)}`,
 		at: instantAt(ahead <= 1 ? today : deliveryOn, "00:00", zone).toISOString(),
-		order: 2,
+		order: 1,
 		row: {
 			key: `pack ${deliveryOn}`,
 			name: isAllPacked ? `Send off ${name}` : `Pack for ${name}`,
 			line: `${countHead(orders)} ${orders === 1 ? "stop" : "stops"}, ${casesWords(cases)}.`,
 			strip: { runs, caption: `${packedCases} of ${casesWords(cases)} packed` },
-			link: { to: `${base}/packing?day=${deliveryOn}`, label: "Packing sheet", about: `for ${dayWords(deliveryOn)}` },
+			link: {
+				to: `${base}/packing?day=${deliveryOn}`,
+				label: "Packing sheet",
+				icon: "printer",
+				about: `for ${dayWords(deliveryOn)}`,
+			},
 		},
 	}
 }
@@ -179,7 +189,7 @@ function lotRow(lot: HeldLot, { today, zone, base }: Moment): Placed {
 	return {
 		when: ahead <= 0 ? "Today" : `By ${nearDay(lot.expectedReleaseOn, today)}`,
 		at: instantAt(ahead <= 0 ? today : lot.expectedReleaseOn, "00:00", zone).toISOString(),
-		order: 1,
+		order: 2,
 		row: {
 			key: `lot ${lot.code}`,
 			name: `Lot ${lot.code} is held: ${lot.productName.toLowerCase()}`,

@@ -7,8 +7,8 @@ import { confirmWhole } from "~/services/desk/confirm-whole.server"
 import { findPackingDays, findToDo } from "~/services/desk/find-to-do.server"
 import { confirmOrder } from "~/services/orders/confirm-order.server"
 import { undoConfirmation } from "~/services/orders/undo-confirmation.server"
-import { counted, countHead } from "~/ui/desk/number-words"
-import { ToDoGroups } from "~/ui/desk/to-do-rows"
+import { countHead } from "~/ui/desk/number-words"
+import { Owed, ToDoGroups } from "~/ui/desk/to-do-rows"
 import { Button } from "~/ui/forms/button"
 import { LedgerGroup, LedgerRow } from "~/ui/layout/ledger"
 import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
@@ -18,7 +18,7 @@ import type { Route } from "./+types/to-do"
 import { DeskBook } from "./desk-book"
 import { findDeskFrame } from "./frame.server"
 import { orderProblem } from "./order-words"
-import { packingGroups, toDoGroups } from "./to-do.server"
+import { owedRows, packingGroups, toDoGroups } from "./to-do.server"
 
 export const meta: Route.MetaFunction = () => [{ title: "To do · Waxbill" }]
 
@@ -32,13 +32,15 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 	const groups = toDo
 		? toDoGroups(toDo, moment)
 		: packingGroups(await findPackingDays({ producerId: producer.id }), moment)
-	const toSettle = groups.reduce((sum, group) => sum + group.rows.length, 0)
+	const owed = toDo ? owedRows(toDo.overdue, moment) : []
+	const toSettle = groups.reduce((sum, group) => sum + group.rows.length, owed.length)
 	const from = url.searchParams.get("from")
 	const doneMany = Number(url.searchParams.get("confirmed"))
 	return {
 		frame: await findDeskFrame(scope, { part: "", now, toSettle, ...(from && isDay(from) ? { from } : {}) }),
 		title: `${weekdayName(weekday(moment.today))} ${partOfDay(now, zone)}`,
 		groups,
+		owed,
 		toSettle,
 		settled: toDo && {
 			...toDo.settled,
@@ -87,7 +89,7 @@ function partOfDay(now: Date, zone: string): string {
 }
 
 export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
-	const { groups, toSettle, settled, title, done, isUndone } = loaderData
+	const { groups, owed, toSettle, settled, title, done, isUndone } = loaderData
 	const things = `${countHead(toSettle)} ${toSettle === 1 ? "thing" : "things"} to settle.`
 	return (
 		<DeskBook frame={loaderData.frame} ruled>
@@ -110,10 +112,13 @@ export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
 				</MessageLine>
 			)}
 			<SheetHead title={title} lead={toSettle === 0 ? "Nothing to settle." : things} />
-			{groups.length === 0 ? (
+			{toSettle === 0 ? (
 				<EmptyLine>Nothing to settle. New orders appear here as stores send them.</EmptyLine>
 			) : (
-				<ToDoGroups groups={groups} />
+				<>
+					<ToDoGroups groups={groups} />
+					<Owed invoices={owed} />
+				</>
 			)}
 			{settled && <Settled settled={settled} />}
 			<div className="px-4 py-4 desk:pl-[132px]">
@@ -128,10 +133,10 @@ type SettledProps = NonNullable<Route.ComponentProps["loaderData"]["settled"]>
 function Settled({ settled }: { settled: SettledProps }) {
 	const { undoable, confirmed, packed, sent, paid } = settled
 	const done = [
-		confirmed > 0 && `${counted(confirmed, "order")} confirmed`,
-		packed > 0 && `${counted(packed, "order")} packed`,
-		sent > 0 && `${counted(sent, "invoice")} sent`,
-		paid > 0 && `${counted(paid, "payment")} in`,
+		confirmed > 0 && `${countHead(confirmed)} ${confirmed === 1 ? "order" : "orders"} confirmed`,
+		packed > 0 && `${countHead(packed)} ${packed === 1 ? "order" : "orders"} packed`,
+		sent > 0 && `${countHead(sent)} ${sent === 1 ? "invoice" : "invoices"} sent`,
+		paid > 0 && `${countHead(paid)} ${paid === 1 ? "payment" : "payments"} in`,
 	].filter((words) => words !== false)
 	if (undoable.length === 0 && done.length === 0) return null
 	return (

@@ -78,17 +78,17 @@ function ConfirmLine({ line, values, errors }: { line: Line } & Omit<ConfirmLine
 	return (
 		<tr>
 			<td className="no fig text-ink-faint">{code}</td>
-			<td className="product">
+			<td className="cell-product">
 				<span className="name block text-body!">{name}</span>
 				<span className="note">
 					{line.detail}, case of {line.piecesPerCase}
 					{isToShare && ", to be shared out"}
 				</span>
 			</td>
-			<td className="num fig asked">
+			<td className="num fig cell-asked">
 				{askedCases} <span className="note desk:hidden">asked</span>
 			</td>
-			<td className="can">
+			<td className="cell-can">
 				<FillStrip
 					size="sm"
 					countsThrough
@@ -109,8 +109,8 @@ function ConfirmLine({ line, values, errors }: { line: Line } & Omit<ConfirmLine
 				/>
 				{errors[given] && <FieldError id={errorId}>{errors[given]}</FieldError>}
 			</td>
-			<td className="money price">{plainMoney(line.caseCents)}</td>
-			<td className="num given">
+			<td className="money cell-price">{plainMoney(line.caseCents)}</td>
+			<td className="num cell-given">
 				<QuantityField
 					name={given}
 					label={`Cases of ${name} given`}

@@ -23,8 +23,8 @@ export function FilterLinks({
 					key={option.value}
 					className={
 						option.value === chosen
-							? "inline-block py-1 font-semibold no-underline shadow-[inset_0_-2px_0_var(--color-clover)]"
-							: "inline-block py-1"
+							? "inline-block py-1 first-letter:uppercase font-semibold no-underline shadow-[inset_0_-2px_0_var(--color-clover)]"
+							: "inline-block py-1 first-letter:uppercase"
 					}
 					aria-current={option.value === chosen ? "true" : undefined}
 					to={`?${new URLSearchParams(option.value === "" ? keep : { ...keep, [name]: option.value })}`}

@@ -21,11 +21,8 @@ export type ToDoRow = {
 	key: string
 	name: string
 	line?: string
-	/** A line whose second part is in the colour of what is late. */
-	lateLine?: { text: string; late: string }
-	money?: string
 	strip?: { runs: StripRun[]; caption: string; short?: string }
-	link?: { to: string; label: string; about: string }
+	link?: { to: string; label: string; about: string; icon?: "printer" }
 	/** One button that confirms all orders of a day that can be met in full. */
 	confirmAll?: { day: string; label: string }
 	orders?: WaitingOrderRow[]
@@ -56,7 +53,12 @@ function Row({ row, isFirst }: { row: ToDoRow; isFirst: boolean }) {
 		</Form>
 	) : (
 		row.link && (
-			<ButtonLink variant={variant} to={row.link.to} aria-label={`${row.link.label}: ${row.link.about}`}>
+			<ButtonLink
+				variant={variant}
+				icon={row.link.icon}
+				to={row.link.to}
+				aria-label={`${row.link.label}: ${row.link.about}`}
+			>
 				{row.link.label}
 			</ButtonLink>
 		)
@@ -74,29 +76,19 @@ function Row({ row, isFirst }: { row: ToDoRow; isFirst: boolean }) {
 	)
 }
 
-function stripOf({ strip, lateLine, money }: ToDoRow): ReactNode {
-	if (strip) {
-		const caption = (
-			<>
-				{strip.caption}
-				{strip.short && (
-					<>
-						, <span className="short">{strip.short}</span>
-					</>
-				)}
-			</>
-		)
-		return <FillStrip runs={strip.runs} caption={caption} />
-	}
-	if (!lateLine) return undefined
-	return (
-		<span className="flex flex-wrap justify-between gap-x-4">
-			<span>
-				{lateLine.text} <span className="short">{lateLine.late}</span>
-			</span>
-			<span className="money">{money}</span>
-		</span>
+function stripOf({ strip }: ToDoRow): ReactNode {
+	if (!strip) return undefined
+	const caption = (
+		<>
+			{strip.caption}
+			{strip.short && (
+				<>
+					, <span className="short">{strip.short}</span>
+				</>
+			)}
+		</>
 	)
+	return <FillStrip runs={strip.runs} caption={caption} />
 }
 
 function WaitingOrder({ order, isFirst }: { order: WaitingOrderRow; isFirst: boolean }) {
@@ -134,5 +126,33 @@ function WaitingOrder({ order, isFirst }: { order: WaitingOrderRow; isFirst: boo
 				</span>
 			)}
 		</li>
+	)
+}
+
+/** An invoice past its due day. */
+export type OwedRow = { number: string; storeName: string; to: string; due: string; late: string; money: string }
+
+/** What is owed past its day, the one due first. */
+export function Owed({ invoices }: { invoices: readonly OwedRow[] }) {
+	if (invoices.length === 0) return null
+	return (
+		<LedgerGroup when="Owed">
+			<ul className="waiting-orders owed">
+				{invoices.map(({ number, storeName, to, due, late, money }) => (
+					<li className="waiting-order" key={number}>
+						<span className="waiting-store">{storeName}</span>
+						<span className="waiting-line">
+							Invoice {number}, due {due} <span className="short">{late}</span>
+						</span>
+						<span className="money waiting-money">{money}</span>
+						<span className="waiting-action">
+							<ButtonLink size="small" to={to} aria-label={`Open invoice ${number} of ${storeName}`}>
+								Open it
+							</ButtonLink>
+						</span>
+					</li>
+				))}
+			</ul>
+		</LedgerGroup>
 	)
 }

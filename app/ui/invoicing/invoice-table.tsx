@@ -75,7 +75,7 @@ function InvoiceRow({
 	return (
 		<tr className={standing.state === "paid" ? "text-ink-soft" : undefined}>
 			<td>
-				<Link className="inline-block py-1 fig" to={`${base}/invoices/${invoice.number}`}>
+				<Link className="inline-block py-1 fig whitespace-nowrap" to={`${base}/invoices/${invoice.number}`}>
 					{invoice.number}
 				</Link>
 			</td>

@@ -1,0 +1,148 @@
+import { createServer } from "node:http"
+import type { AddressInfo } from "node:net"
+import { eq } from "drizzle-orm"
+import { cardPayments, invoices, orders, paymentParts, payments } from "~/db/schema"
+import { readProducer, withProducer } from "~/db/transaction.server"
+import { invoiceNumber } from "~/domain/invoicing/invoice-number"
+import { applyStripeEvent } from "~/services/payments/apply-stripe-event.server"
+import { receiveStripeEvent } from "~/services/payments/receive-stripe-event.server"
+import { startCardPayment } from "~/services/payments/start-card-payment.server"
+import { type StripeFake, startStripeFake } from "../../../fakes/stripe/start"
+import { producerOf } from "../desk/desk-steps"
+import type { Shop, Yard } from "../orders/place-yard"
+
+/** A payment fake that posts its events to an endpoint which takes them in as the product does. */
+export type PaymentService = {
+	fake: StripeFake
+	/** Ids of the events taken in, one for each delivery, oldest first. */
+	taken: string[]
+	close: () => Promise<void>
+}
+
+/** Starts the fake and points the product at it. Call it before anything reads the environment. */
+export async function startPaymentService(): Promise<PaymentService> {
+	const taken: string[] = []
+	const server = createServer(async (request, response) => {
+		let body = ""
+		for await (const part of request) body += part
+		const isTaken = await receiveStripeEvent(body, String(request.headers["stripe-signature"]))
+		if (isTaken) taken.push((JSON.parse(body) as { id: string }).id)
+		response.writeHead(isTaken ? 200 : 400).end()
+	})
+	await new Promise<void>((resolve) => server.listen(0, "127.0.0.1", resolve))
+	const { port } = server.address() as AddressInfo
+	const secret = process.env.STRIPE_WEBHOOK_SECRET ?? ""
+	const fake = await startStripeFake({ webhook: { url: `http://127.0.0.1:${port}/webhooks/stripe`, secret } })
+	process.env.STRIPE_API_BASE = fake.url
+	return {
+		fake,
+		taken,
+		close: async () => {
+			await fake.close()
+			await new Promise<void>((resolve) => {
+				server.close(() => resolve())
+				server.closeAllConnections()
+			})
+		},
+	}
+}
+
+/** Applies every event that was taken in, in the order of the deliveries, or in the opposite one. */
+export async function applyAll(
+	{ fake, taken }: PaymentService,
+	order: "as-taken" | "reverse" = "as-taken",
+): Promise<void> {
+	await fake.idle()
+	const ids = taken.splice(0)
+	for (const eventId of order === "reverse" ? ids.reverse() : ids) await applyStripeEvent({ eventId })
+}
+
+/** An order of the store with an issued invoice of so many cents, due on that day; answers its printed number. */
+export async function addInvoice(
+	yard: Yard,
+	shop: Shop,
+	invoice: { sequence: number; totalCents: number; dueOn?: string },
+): Promise<string> {
+	const { producerId } = yard
+	const { sequence, totalCents, dueOn = "2026-08-27" } = invoice
+	await withProducer(producerId, async (tx) => {
+		const [order] = await tx
+			.insert(orders)
+			.values({ producerId, number: sequence, storeId: shop.storeId, deliveryOn: "2026-08-13", state: "sent" })
+			.returning({ id: orders.id })
+		await tx.insert(invoices).values({
+			producerId,
+			year: 2026,
+			sequence,
+			storeId: shop.storeId,
+			orderId: order?.id ?? "",
+			issuedOn: "2026-07-30",
+			dueOn,
+			linesCents: totalCents,
+			deliveryCents: 0,
+			taxCents: 0,
+			totalCents,
+		})
+	})
+	return invoiceNumber(2026, sequence)
+}
+
+/** Opens the card page for an invoice, as the store's person. */
+export const startPaying = (yard: Yard, shop: Shop, number: string) =>
+	startCardPayment({
+		producer: producerOf(yard),
+		store: { id: shop.storeId, slug: shop.slug },
+		invoiceNumber: number,
+		personId: shop.person.id,
+		personEmail: shop.person.email,
+	})
+
+/** Opens the card page and answers its address. Throws when there is none. */
+export async function openCardPage(yard: Yard, shop: Shop, number: string): Promise<string> {
+	const started = await startPaying(yard, shop, number)
+	if (!started.ok) throw new Error(`no card page: ${started.reason}`)
+	return started.url
+}
+
+export const GOOD_CARD = "4242424242424242"
+export const DECLINED_CARD = "4000000000000002"
+
+/** Types a card on the hosted page and sends it, as a browser does. Answers the page's status. */
+export async function typeCard(url: string, number: string): Promise<number> {
+	const body = new URLSearchParams({ number, expiry: "12/34", cvc: "123", name: "Rosa Quill" })
+	const answer = await fetch(url, { method: "POST", body, redirect: "manual" })
+	await answer.arrayBuffer()
+	return answer.status
+}
+
+/** What the producer's books say: invoices by sequence, payments with what they settle, visits by state. */
+export function readBooks(yard: Yard) {
+	return readProducer(yard.producerId, async (tx) => {
+		const ofYard = (table: { producerId: typeof invoices.producerId }) => eq(table.producerId, yard.producerId)
+		const paid = await tx
+			.select({ paidCents: invoices.paidCents })
+			.from(invoices)
+			.where(ofYard(invoices))
+			.orderBy(invoices.sequence)
+		const money = await tx
+			.select({ method: payments.method, amountCents: payments.amountCents })
+			.from(payments)
+			.where(eq(payments.producerId, yard.producerId))
+			.orderBy(payments.receivedAt, payments.id)
+		const parts = await tx
+			.select({ amountCents: paymentParts.amountCents })
+			.from(paymentParts)
+			.where(eq(paymentParts.producerId, yard.producerId))
+		const visits = await tx
+			.select({ state: cardPayments.state })
+			.from(cardPayments)
+			.where(eq(cardPayments.producerId, yard.producerId))
+			.orderBy(cardPayments.createdAt)
+		return {
+			paid: paid.map(({ paidCents }) => paidCents),
+			payments: money.map(({ method, amountCents }) => `${method} ${amountCents}`),
+			settledCents: parts.reduce((sum, { amountCents }) => sum + amountCents, 0),
+			visits: visits.map(({ state }) => state),
+		}
+	})
+}
