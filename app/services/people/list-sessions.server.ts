@@ -2,7 +2,7 @@ import { and, desc, eq, gt, isNull, sql } from "drizzle-orm"
 import { sessions } from "~/db/schema"
 import { withPlatform } from "~/db/transaction.server"
 
-export type OpenSession = { id: string; userAgent: string; createdAt: Date; lastSeenAt: Date; expiresAt: Date }
+export type OpenSession = { id: string; userAgent: string; createdAt: Date; expiresAt: Date }
 
 /** The person's open sessions, the newest first. */
 export function listSessions(userId: string): Promise<OpenSession[]> {
@@ -12,7 +12,6 @@ export function listSessions(userId: string): Promise<OpenSession[]> {
 				id: sessions.id,
 				userAgent: sessions.userAgent,
 				createdAt: sessions.createdAt,
-				lastSeenAt: sessions.lastSeenAt,
 				expiresAt: sessions.expiresAt,
 			})
 			.from(sessions)

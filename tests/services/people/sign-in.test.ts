@@ -156,6 +156,16 @@ describe("an address that nobody uses here", () => {
 })
 
 describe("the worker", () => {
+	test("clears codes away a day after they expired", async () => {
+		const [person, other] = [await addUser(), await addUser()]
+		await askForCode(new Browser(), person.email)
+		await askForCode(new Browser(), other.email)
+		await asOwner("update login_codes set expires_at = now() - interval '25 hours' where email = $1", [person.email])
+		for (const job of (await queuedSealed()).slice(-1)) await sendSignInMail(job)
+		const left = await asOwner("select email from login_codes where email = any($1)", [[person.email, other.email]])
+		expect(left).toEqual([{ email: other.email }])
+	})
+
 	test("sends nothing for a code that has expired or a job that was made up", async () => {
 		const person = await addUser()
 		await askForCode(new Browser(), person.email)
