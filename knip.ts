@@ -14,6 +14,10 @@ export default {
 		// Started by name from scripts: a preview in tsx, a build by Vite.
 		"scripts/email-preview.tsx",
 		"vite.node.config.ts",
+		// The bench builds these by their path.
+		"tests/bench/vite.config.ts",
+		"tests/bench/reference-*.{ts,tsx}",
+		"tests/bench/minimal-app/{*,app/*}.{ts,tsx}",
 		// Types of the scripts, for the tests that import them.
 		"scripts/lib/*.d.mts",
 	],

@@ -1,0 +1,73 @@
+import "./lib/node-version.mjs"
+import { writeFileSync } from "node:fs"
+import { cpus, loadavg } from "node:os"
+import { join } from "node:path"
+import { actFor, openDatabase, signIn } from "../tests/bench/database.mjs"
+import { measureOrderSheet, orderSheetStatements } from "../tests/bench/order-sheet.mjs"
+import { measurePlacing } from "../tests/bench/place-order.mjs"
+import { tableOf } from "../tests/bench/report.mjs"
+import { buildReferences, startReferences, startWeb } from "../tests/bench/servers.mjs"
+import { measureShopFront, mustNeverBeStale } from "../tests/bench/shop-front.mjs"
+import { ensureBuilt } from "./lib/build.mjs"
+import { startCluster } from "./lib/cluster.mjs"
+import { supervise } from "./lib/crew.mjs"
+import { ensureInstalled } from "./lib/install.mjs"
+import { root, workFolder } from "./lib/paths.mjs"
+import { anyPort } from "./lib/ports.mjs"
+import { choosePorts, productEnv, runBuilt } from "./lib/product.mjs"
+import { refuse, say } from "./lib/say.mjs"
+
+const folder = join(workFolder, "bench")
+const result = join(root, "tests/bench/last.json")
+
+/** How long each measurement takes, and how often it is taken. */
+const PACES = {
+	full: { rounds: 5, seconds: 6, warmUpSeconds: 6, orders: 800, warmUpOrders: 400 },
+	quick: { rounds: 3, seconds: 2, warmUpSeconds: 2, orders: 200, warmUpOrders: 80 },
+}
+const BUYER = { email: "rosa@pantryandplume.example.test", producer: "larkmoor", store: "pantry-and-plume" }
+
+/**
+ * Measures the built product beside the reference programs of tests/bench, in one run and on the demo data, on a cluster
+ * of its own that keeps what is committed. Prints a table and writes tests/bench/last.json. No figure makes it fail; a
+ * wrong answer does.
+ */
+await supervise(folder, async (crew) => {
+	const [name = "full"] = process.argv.slice(2)
+	const pace = PACES[name] ?? refuse(`There is no bench "${name}": it is npm run bench, or npm run bench -- quick.`)
+	await ensureInstalled()
+	const cluster = await startCluster({ folder: join(folder, "pg") })
+	crew.onStop(cluster.stop)
+	await ensureBuilt()
+	await buildReferences()
+	const env = productEnv({ databaseUrl: cluster.url(), ports: await choosePorts(anyPort) })
+	await runBuilt("reset", "The database could not be emptied.", env)
+	await runBuilt("migrate", "The database could not be brought up to date.", env)
+	await runBuilt("seed", "The demo data could not be written.", env)
+
+	const database = await openDatabase(cluster)
+	crew.onStop(() => database.client.end())
+	await actFor(database, BUYER.producer)
+	await database.client.query("vacuum (analyze)")
+	await startWeb(crew, env)
+	const sheet = await openSheet(env.BASE_URL, await signIn(database, BUYER.email))
+	const statements = await orderSheetStatements({ database, sheet })
+	const references = await startReferences(crew, { env, folder, statements })
+	const bench = { database, sheet, references, pace, say, folder, web: env.BASE_URL, producer: BUYER.producer }
+
+	say(`Measuring on ${cpus().length} processors, load ${loadavg()[0].toFixed(1)}`)
+	const rows = [...(await measureOrderSheet(bench)), ...(await measureShopFront(bench))]
+	say(await mustNeverBeStale({ ...bench, seconds: pace.seconds }))
+	rows.push(...(await measurePlacing(bench)))
+
+	writeFileSync(result, `${JSON.stringify(rows, null, "\t")}\n`)
+	say(`\n${tableOf(rows)}\n\nA ratio above 1 says that ours is better.`)
+})
+
+/** The order sheet of the next delivery day that takes orders. */
+async function openSheet(web, cookie) {
+	const address = `${web}/buy/${BUYER.producer}/${BUYER.store}/sheet`
+	const response = await fetch(address, { headers: { cookie }, redirect: "manual" })
+	const path = response.headers.get("location") ?? refuse(`${address} answers ${response.status} and no day.`)
+	return { url: new URL(path, web).href, cookie }
+}

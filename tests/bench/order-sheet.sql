@@ -1,0 +1,92 @@
+-- What the order sheet asks of the database for one answer, in the order in which it is asked. The bench holds this file
+-- against the server's log before it measures: when the product asks otherwise, this file must follow it.
+
+-- Who asks, and what they are here.
+select * from identify(:token_hash, :producer_slug, :store_slug);
+
+begin isolation level repeatable read read only; set local waxbill.producer_id = :producer_id;
+
+-- When the van comes.
+select r.weekday, r.cutoff_days_before, r.cutoff_time::text, array(
+	select d.shut_on::text from shut_days d
+	where d.producer_id = :producer_id and d.shut_on >= :shut_since
+	order by d.shut_on
+) as shut_days
+from delivery_rounds r
+join store_rounds s on s.producer_id = r.producer_id and s.round_id = r.id and s.store_id = :store_id
+where r.producer_id = :producer_id
+order by r.weekday;
+
+-- On which terms.
+select "address", "receiving_note", "minimum_cents", "delivery_charge_cents", "free_above_cents"
+from "stores" where ("stores"."producer_id" = :producer_id and "stores"."id" = :store_id);
+
+-- What the store may buy, and its prices.
+with sold as materialized (
+	select p.id, p.code, p.name, p.detail, p.piece_net_grams, p.pieces_per_case, p.break_family
+	from products p
+	where p.producer_id = :producer_id and p.is_active
+	order by p.id
+), in_force as (
+	select distinct on (r.product_id, r.min_cases) r.product_id, r.min_cases, r.case_cents
+	from stores s
+	join prices r on r.producer_id = s.producer_id and r.tier_id = s.tier_id
+	where s.producer_id = :producer_id and s.id = :store_id and r.valid_from <= :today
+	order by r.product_id, r.min_cases, r.valid_from desc
+), breaks as (
+	select product_id, array_agg(min_cases order by min_cases) as min_cases,
+		array_agg(case_cents order by min_cases) as case_cents
+	from in_force group by product_id
+)
+select sold.*, breaks.min_cases, breaks.case_cents
+from sold join breaks on breaks.product_id = sold.id
+order by length(sold.code), sold.code;
+
+-- What can be promised of each product.
+select p.id, p.pieces_per_case, p.reserve_pieces from products p
+where p.producer_id = :producer_id and p.id = any(:product_ids::uuid[]);
+
+select l.product_id, case l.state when 'released' then 'free' else 'held' end as kind,
+	case l.state when 'released' then :today::date else greatest(l.expected_release_on, :today::date) end::text as on,
+	sum(b.pieces)::int as pieces
+from lots l
+join products p on p.producer_id = l.producer_id and p.id = l.product_id and p.id = any(:product_ids::uuid[])
+join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
+where l.producer_id = :producer_id and l.state in ('released', 'held') and l.best_before_on >= :today
+	and b.place in ('cold-room', 'ready') and b.pieces > 0
+group by 1, 2, 3
+union all
+select e.product_id, 'expected', e.expected_on::text, e.low_pieces
+from expected_supplies e
+join products p on p.producer_id = e.producer_id and p.id = e.product_id and p.id = any(:product_ids::uuid[])
+where e.producer_id = :producer_id and e.expected_on >= :today and e.low_pieces > 0
+union all
+select ol.product_id, 'promised', greatest(o.delivery_on, :today::date)::text,
+	sum(coalesce(ol.given_cases, case when ol.is_to_share then 0 else ol.asked_cases end) * ol.pieces_per_case)::int
+from orders o
+join order_lines ol on ol.producer_id = o.producer_id and ol.order_id = o.id
+join products p on p.producer_id = ol.producer_id and p.id = ol.product_id and p.id = any(:product_ids::uuid[])
+where o.producer_id = :producer_id and o.state in ('placed', 'confirmed')
+group by 1, 3;
+
+-- What the store has ordered on the days of the ribbon, and the last time before.
+select o.number, o.delivery_on::text, o.state, l.product_id, coalesce(l.given_cases, l.asked_cases)::int as cases
+from orders o
+join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id
+where o.producer_id = :producer_id and o.store_id = :store_id and o.state <> 'cancelled' and (
+	o.delivery_on between :ribbon_from and :ribbon_to
+	or o.delivery_on = (
+		select max(e.delivery_on) from orders e
+		where e.producer_id = :producer_id and e.store_id = :store_id and e.state <> 'cancelled'
+			and e.delivery_on < :delivery_on))
+order by o.delivery_on, o.number;
+
+-- What all stores together want shared out.
+select l.product_id, sum(l.asked_cases)::int as cases
+from orders o
+join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id
+where o.producer_id = :producer_id and o.delivery_on = :delivery_on
+	and o.state in ('placed', 'confirmed') and l.is_to_share and l.given_cases is null
+group by l.product_id;
+
+commit;
