@@ -6,7 +6,7 @@ import { closePool } from "~/db/client.server"
 import { shopStamp } from "~/db/shop-stamp.server"
 import { type Env, EnvironmentError, readEnv } from "~/platform/env.server"
 import { live, ready } from "~/platform/health.server"
-import { bodyLimit, clientAddress, lastResort, securityHeaders } from "~/platform/http.server"
+import { bodyLimit, clientAddress, lastResort, privatePages, securityHeaders } from "~/platform/http.server"
 import { requestLog } from "~/platform/log.server"
 import { renderedCopies } from "~/platform/rendered-copy.server"
 import { inProcesses, listen } from "~/platform/serve.server"
@@ -34,7 +34,7 @@ function createApp(env: Env, build: ServerBuild): Express {
 	app.use("/assets", express.static("build/client/assets", { immutable: true, maxAge: "1y", index: false }))
 	app.use(express.static("build/client", { maxAge: "1h", index: false, redirect: false }))
 	// 5. The pages, behind the limit on what may be sent to them.
-	app.use(bodyLimit)
+	app.use(bodyLimit, privatePages)
 	app.use(createRequestHandler({ build, mode: env.NODE_ENV }))
 	app.use(lastResort)
 	return app

@@ -11,6 +11,7 @@ import type { Task } from "./task.server"
  */
 const tasks: Record<string, () => Promise<{ default: Task }>> = {
 	"apply-stripe-event": () => import("./apply-stripe-event.job.server"),
+	"clear-expired": () => import("./clear-expired.job.server"),
 	"free-stuck-jobs": () => import("./free-stuck-jobs.job.server"),
 	"make-standing-orders": () => import("./make-standing-orders.job.server"),
 	"send-mail": () => import("./send-mail.job.server"),
@@ -19,6 +20,7 @@ const tasks: Record<string, () => Promise<{ default: Task }>> = {
 }
 
 const everyMinute = ["free-stuck-jobs", "sweep-standing-orders"]
+const everyNight = ["clear-expired"]
 
 const taskList: TaskList = Object.fromEntries(
 	Object.entries(tasks).map(([name, load]) => [
@@ -39,7 +41,10 @@ const runner = await run({
 	pollInterval: 1_000,
 	noHandleSignals: true,
 	taskList,
-	crontab: everyMinute.map((name) => `* * * * * ${name} ?max=3`).join("\n"),
+	crontab: [
+		...everyMinute.map((name) => `* * * * * ${name} ?max=3`),
+		...everyNight.map((name) => `17 8 * * * ${name} ?max=3`),
+	].join("\n"),
 })
 runner.events.on("job:error", ({ job, error }) => {
 	log.warn({ job: job.task_identifier, attempt: job.attempts, err: error }, "a job failed and is tried again later")

@@ -51,6 +51,12 @@ export const bodyLimit: RequestHandler = (request, response, next) => {
 	else plainPage(response.status(411), "Length required", "The length of what is sent must be told first.")
 }
 
+/** Pages are made for the person who asks: no cache between may keep one. What a page says itself is added to this. */
+export const privatePages: RequestHandler = (_request, response, next) => {
+	response.set("Cache-Control", "private, no-cache")
+	next()
+}
+
 /** The last resort when even the error page could not be made; tells nothing of the cause, which is in the log. */
 export const lastResort: ErrorRequestHandler = (error, request, response, next) => {
 	log.error({ err: error, requestId: request.headers["x-request-id"] }, "a request failed outside the routes")

@@ -1,9 +1,11 @@
 import { redirect } from "react-router"
 import type { ProducerRole, StoreRole } from "~/domain/people/roles"
+import { now } from "~/platform/clock.server"
 import { isSameOrigin } from "~/platform/origin-check.server"
 import { hashToken, readSessionToken } from "~/platform/session-cookie.server"
 import { type Actor, findActor, type Person, type Producer, type Store } from "~/services/people/find-actor.server"
 import { keepPost } from "~/services/people/keep-post.server"
+import { SEEN_MINUTES, touchSession } from "~/services/people/touch-session.server"
 
 /**
  * Whom a loader or action admits. `admits` says it in words for the test that walks every route; `scope` narrows who
@@ -93,11 +95,19 @@ export function guard<Scope, Args extends HandlerArgs, Answer>(
 			storeSlug: args.params.store ?? null,
 		})
 		const scope = policy.scope(actor)
-		if (!isRefusal(scope)) return handler(args, scope)
+		if (!isRefusal(scope)) {
+			await noteUse(actor.person)
+			return handler(args, scope)
+		}
 		if (scope === "sign-in") throw await toSignIn(args.request)
 		throw scope === "forbidden" ? new Response(null, { status: 403 }) : new Response(null, { status: 404 })
 	}
 	return Object.assign(guarded, { admits: policy.admits })
+}
+
+async function noteUse(person: Person | null): Promise<void> {
+	if (person && now().getTime() - person.lastSeenAt.getTime() > SEEN_MINUTES * 60_000)
+		await touchSession(person.sessionId)
 }
 
 async function toSignIn(request: Request): Promise<Response> {

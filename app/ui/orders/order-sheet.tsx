@@ -91,6 +91,15 @@ export function OrderSheet(props: OrderSheetProps) {
 	return (
 		<Form method="post" action={props.action} ref={form} onInput={readForm} onKeyDown={onKeyDown} noValidate>
 			<input type="hidden" name="idempotencyKey" value={props.idempotencyKey} />
+			{/* Should the session end before it is sent, the page that keeps the order names its lines by these. */}
+			{products.map(({ productId, code, name, detail }) => (
+				<input
+					key={productId}
+					type="hidden"
+					name={`label-${casesName(productId)}`}
+					value={`${code} ${name}, ${detail}, cases`}
+				/>
+			))}
 			{table}
 			<div className="order-foot">
 				<div>
