@@ -32,7 +32,10 @@ export function renderedCopies(options: {
 		const stamp = await stampOf(key)
 		if (stamp === null) return null
 		const kept = copies.get(key)
-		if (kept?.stamp === stamp) return kept
+		if (kept?.stamp === stamp) {
+			keep(key, kept)
+			return kept
+		}
 		const name = `${key} ${stamp}`
 		let made = making.get(name)
 		if (!made) {
@@ -55,13 +58,18 @@ export function renderedCopies(options: {
 			html,
 			brotli: await compress(html, { params: { [constants.BROTLI_PARAM_QUALITY]: 5 } }),
 		}
+		keep(key, copy)
+		return copy
+	}
+
+	/** Puts the copy last in line: a map is in the order of its entries' making. */
+	function keep(key: string, copy: Copy): void {
 		copies.delete(key)
 		copies.set(key, copy)
 		for (const oldest of copies.keys()) {
 			if (copies.size <= MOST_COPIES) break
 			copies.delete(oldest)
 		}
-		return copy
 	}
 
 	return async (request, response, next) => {

@@ -1,5 +1,7 @@
 import { dayWords, monthDay } from "~/domain/calendar"
 import { formatMoney } from "~/domain/money"
+import { piecesWords } from "~/domain/quantity"
+import { marketHours } from "~/domain/stall/market-hours"
 import { findShopFront } from "~/services/shop/find-shop-front.server"
 import { EmptyLine } from "~/ui/layout/sheet"
 import { ShopFrame, ShopSpread } from "~/ui/layout/shop-frame"
@@ -7,6 +9,7 @@ import { ART_OF_FORM } from "~/ui/shop/art-of-form"
 import { CombShelf } from "~/ui/shop/comb-shelf"
 import { DayTabs } from "~/ui/shop/day-tabs"
 import { EatingComb } from "~/ui/shop/eating-comb"
+import { ShopClose } from "~/ui/shop/shop-close"
 import { ShopRow } from "~/ui/shop/shop-row"
 import { FillStrip } from "~/ui/stock/fill-strip"
 import { admits, guard } from "../guard.server"
@@ -63,17 +66,17 @@ export default function ShopFrontPage({ loaderData }: Route.ComponentProps) {
 						tabs={front.days.map((day) => ({
 							to: `${home}?day=${day.id}`,
 							title: dayWords(day.on),
-							detail: `${day.marketName}, ${hours(day)}`,
-							current: day.on === front.chosenOn,
+							detail: `${day.marketName}, ${marketHours(day)}`,
+							current: day.id === front.chosen?.id,
 						}))}
 					/>
 				) : (
-					<p className="shop-lead">No market day is set for the next two weeks. Write or call for what there is.</p>
+					<p className="shop-lead">No market day is set for the next two weeks.</p>
 				)}
 				{front.items.length === 0 ? (
 					<EmptyLine>Nothing is in season just now. Comb comes off the hives in summer.</EmptyLine>
 				) : (
-					<ul className="shop-rows">
+					<ul>
 						{front.items.map((item) => (
 							<ShopRow
 								key={item.productId}
@@ -84,14 +87,14 @@ export default function ShopFrontPage({ loaderData }: Route.ComponentProps) {
 								picture={ART_OF_FORM[item.form].src}
 								price={formatMoney(item.pieceCents)}
 								stock={<StockLeft item={item} />}
-								field={
-									<span className="note">
-										{item.left > 0 ? "at the stall" : item.nextOn ? "not yet" : "none for this day"}
-									</span>
-								}
 							/>
 						))}
 					</ul>
+				)}
+				{front.items.length > 0 && (
+					<ShopClose hasMore={front.items.some(({ left, nextOn }) => left === 0 && nextOn !== null)}>
+						<WhereToBuy chosen={front.chosen} />
+					</ShopClose>
 				)}
 			</ShopSpread>
 		</ShopFrame>
@@ -101,33 +104,44 @@ export default function ShopFrontPage({ loaderData }: Route.ComponentProps) {
 type Item = Route.ComponentProps["loaderData"]["front"]["items"][number]
 
 function StockLeft({ item }: { item: Item }) {
-	if (item.left === 0 && item.nextOn) {
-		const words = item.nextPieces > 0 ? `${item.nextPieces} more` : "more"
+	const { left, kept, nextOn, nextPieces } = item
+	if (left > 0) {
+		const words = kept === left ? `${left} left` : `${left} of ${kept} left`
 		return (
 			<FillStrip
-				runs={[{ state: "expected", count: item.nextPieces }]}
-				caption={`none left for this day; ${words} from ${monthDay(item.nextOn)}`}
+				runs={[
+					{ state: "free", count: left },
+					{ state: "promised", count: kept - left },
+				]}
+				label={words}
+				caption={words}
 			/>
 		)
 	}
+	if (nextOn) {
+		const words = `none left for this day; ${piecesWords(nextPieces)} from ${monthDay(nextOn)}`
+		return <FillStrip runs={[{ state: "expected", count: nextPieces }]} label={words} caption={words} />
+	}
+	return <FillStrip runs={[{ state: "promised", count: kept }]} label="none left" caption="none left" />
+}
+
+type Front = Route.ComponentProps["loaderData"]["front"]
+
+function WhereToBuy({ chosen }: Pick<Front, "chosen">) {
+	if (!chosen) return <p>Write or call the yard for what there is.</p>
+	const where = [chosen.marketName, chosen.address].filter(Boolean).join(", ")
 	return (
-		<FillStrip
-			runs={[
-				{ state: "free", count: item.left },
-				{ state: "promised", count: Math.max(0, item.kept - item.left) },
-			]}
-			caption={item.kept === item.left ? `${item.left} left` : `${item.left} of ${item.kept} left`}
-		/>
+		<>
+			<p>
+				<b>
+					{dayWords(chosen.on)}, {marketHours(chosen)}:
+				</b>{" "}
+				{where}
+			</p>
+			<p className="note">
+				{chosen.state === "open" ? "The stall is open: this is what stands on its table." : "Come early for the best."}{" "}
+				Pay there, by card or in cash.
+			</p>
+		</>
 	)
-}
-
-function hours({ opensAt, closesAt }: { opensAt: string; closesAt: string }): string {
-	return `${clock(opensAt)} to ${clock(closesAt)}`
-}
-
-/** "09:00:00" → "9", "13:30:00" → "1:30". */
-function clock(time: string): string {
-	const [hour = 0, minute = 0] = time.split(":").map(Number)
-	const twelve = hour % 12 || 12
-	return minute === 0 ? String(twelve) : `${twelve}:${String(minute).padStart(2, "0")}`
 }

@@ -1,7 +1,7 @@
 import { Link } from "react-router"
 import { findPlaces } from "~/services/people/find-places.server"
 import { ButtonLink } from "~/ui/forms/button"
-import { PlainPage } from "~/ui/layout/plain-page"
+import { FrontDoor } from "~/ui/shop/front-door"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/home"
 
@@ -19,17 +19,15 @@ export const loader = guard(admits.anyone, async (_args: Route.LoaderArgs, { per
 export default function Home({ loaderData }: Route.ComponentProps) {
 	const { places, personName } = loaderData
 	return (
-		<PlainPage
+		<FrontDoor
 			title="The order desk for comb honey"
-			lead="Stores order by the case for their delivery day, the yard promises only what comes off the hives, and the stall sells the rest by the piece."
+			lead="Comb comes off the hives for a few weeks and breaks if it is dropped. Stores, market stall and shop all buy from one short crop here, and nothing is promised that will not come off."
 		>
 			{personName ? (
-				<>
+				<div className="front-ways">
 					<h2 className="head-italic">{personName}, you are at home here</h2>
 					{places.length === 0 ? (
-						<p className="mt-2">
-							At no desk, stall or store yet. An invitation by e-mail, or a desk of your own, opens one.
-						</p>
+						<p>At no desk, stall or store yet. An invitation by e-mail, or a desk of your own, opens one.</p>
 					) : (
 						<nav className="front-places" aria-label="Your places">
 							{places.map((place) => (
@@ -39,15 +37,15 @@ export default function Home({ loaderData }: Route.ComponentProps) {
 							))}
 						</nav>
 					)}
-					<p className="mt-6 flex flex-wrap gap-4">
+					<p className="flex flex-wrap gap-4">
 						<ButtonLink to="/open-a-desk">Open a desk for your yard</ButtonLink>
 						<ButtonLink to="/account" variant="plain">
 							Your account
 						</ButtonLink>
 					</p>
-				</>
+				</div>
 			) : (
-				<p className="flex flex-wrap gap-4">
+				<p className="front-ways flex flex-wrap gap-4">
 					<ButtonLink to="/sign-in" variant="primary" size="big">
 						Sign in
 					</ButtonLink>
@@ -56,6 +54,6 @@ export default function Home({ loaderData }: Route.ComponentProps) {
 					</ButtonLink>
 				</p>
 			)}
-		</PlainPage>
+		</FrontDoor>
 	)
 }

@@ -1,7 +1,7 @@
 import { Form, Link, useNavigation } from "react-router"
 import { Button } from "~/ui/forms/button"
-import { Icon } from "~/ui/icons"
 import { MessageLine } from "~/ui/layout/sheet"
+import { CardState } from "~/ui/stall/card-state"
 
 /** What the reader does: asks for the card; is away; asks for another sale; asks for nothing any more. */
 export type Reader = "asks" | "away" | "busy" | "off"
@@ -38,13 +38,11 @@ export function CardWaiting({ figure, attempt, declined, reader, problem, totals
 	return (
 		<>
 			<CardWords declined={declined} reader={reader} problem={problem} />
-			{isWaiting && (
-				<div className="card-asked" role="status">
-					<Icon name="card" size={72} />
-					<p>Hold out the reader. It asks for</p>
-					<b>{figure}</b>
-				</div>
-			)}
+			<CardState
+				icon="card"
+				words={isWaiting ? "Hold out the reader. It asks for" : "Still to be paid"}
+				figure={figure}
+			/>
 			{reader === "busy" && !declined && (
 				<p className="stall-words">
 					<Link to={totalsHref}>See which sale is open</Link>

@@ -7,8 +7,8 @@ import { findSalePage } from "~/services/stall/find-stall-page.server"
 import { giveUpSale } from "~/services/stall/give-up-sale.server"
 import { retryCard } from "~/services/stall/take-card.server"
 import { ButtonLink } from "~/ui/forms/button"
-import { MessageLine } from "~/ui/layout/sheet"
 import { StallFrame } from "~/ui/layout/stall-frame"
+import { CardState } from "~/ui/stall/card-state"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/card"
 import { CardWaiting, type Reader } from "./card-waiting"
@@ -71,7 +71,7 @@ export default function StallCard({ loaderData, actionData }: Route.ComponentPro
 	useLookAgain(sale.state === "open")
 	const figure = formatMoney(sale.totalCents)
 	return (
-		<StallFrame title="Card" figure={figure}>
+		<StallFrame title="Card">
 			{sale.state === "open" ? (
 				<CardWaiting
 					figure={figure}
@@ -83,10 +83,11 @@ export default function StallCard({ loaderData, actionData }: Route.ComponentPro
 				/>
 			) : (
 				<>
-					<MessageLine
-						tone={sale.state === "paid" ? "saved" : "signal"}
-						title={sale.state === "paid" ? `Paid: ${figure} by card.` : "This sale was given up. Nothing was charged."}
-					/>
+					{sale.state === "paid" ? (
+						<CardState icon="tick" words="Paid by card" figure={figure} />
+					) : (
+						<CardState icon="cross" words="Given up. Nothing was charged of" figure={figure} />
+					)}
 					<div className="stall-done">
 						<ButtonLink variant="primary" to={base}>
 							Next sale

@@ -1,5 +1,6 @@
 import { Link } from "react-router"
 import { dayInZone, dayWords } from "~/domain/calendar"
+import { marketHours } from "~/domain/stall/market-hours"
 import { now } from "~/platform/clock.server"
 import { listMarketDays } from "~/services/stall/find-market-days.server"
 import { StallFrame } from "~/ui/layout/stall-frame"
@@ -18,34 +19,44 @@ export const loader = guard(admits.stall, async (_args: Route.LoaderArgs, scope)
 	return { yardName: producer.name, slug: producer.slug, today, days }
 })
 
-const STATE_WORDS = { planned: "not loaded yet", open: "open", closed: "closed" }
-
-/** The market days that a person is named on: today's first in mind, the others to look at. */
+/** The market days that a person is named on: those to come first, then those that are over. */
 export default function StallDays({ loaderData }: Route.ComponentProps) {
 	const { yardName, slug, today, days } = loaderData
+	const list = (shown: typeof days) => <DayList days={shown} base={`/stall/${slug}`} today={today} />
+	const over = days.filter(({ state }) => state === "closed")
+	const ahead = days.filter(({ state }) => state !== "closed")
 	return (
 		<StallFrame title={`Market days of ${yardName}`}>
-			{days.length === 0 ? (
-				<p className="p-4 text-figure">You are not named on a market day yet. The yard does that.</p>
-			) : (
-				<ul>
-					{days.map((day) => (
-						<li key={day.id} className="border-b border-rule">
-							<Link
-								className="stall-day"
-								to={`/stall/${slug}/${day.id}`}
-								aria-current={day.on === today ? "date" : undefined}
-							>
-								<b className="name">{day.on === today ? `Today, ${dayWords(day.on)}` : dayWords(day.on)}</b>
-								<span>
-									{day.marketName}, {day.opensAt.slice(0, 5)} to {day.closesAt.slice(0, 5)}
-								</span>
-								<span>{STATE_WORDS[day.state]}</span>
-							</Link>
-						</li>
-					))}
-				</ul>
+			{days.length === 0 && <p className="stall-words">You are not named on a market day yet. The yard does that.</p>}
+			{ahead.length > 0 && list(ahead)}
+			{over.length > 0 && (
+				<>
+					<h2 className="stall-head">Over</h2>
+					{list(over)}
+				</>
 			)}
 		</StallFrame>
+	)
+}
+
+const STATE_WORDS = { planned: "not loaded yet", open: "open", closed: "closed" }
+
+type DayListProps = { days: Route.ComponentProps["loaderData"]["days"]; base: string; today: string }
+
+function DayList({ days, base, today }: DayListProps) {
+	return (
+		<ul>
+			{days.map((day) => (
+				<li key={day.id}>
+					<Link className="stall-day" to={`${base}/${day.id}`} aria-current={day.on === today ? "date" : undefined}>
+						<b className="name">{day.on === today ? `Today, ${dayWords(day.on)}` : dayWords(day.on)}</b>
+						<span>
+							{day.marketName}, {marketHours(day)}
+						</span>
+						<span>{STATE_WORDS[day.state]}</span>
+					</Link>
+				</li>
+			))}
+		</ul>
 	)
 }

@@ -1,12 +1,14 @@
 import { randomUUID } from "node:crypto"
+import { and, eq, isNull } from "drizzle-orm"
 import { breaksConstraint } from "~/db/errors.server"
 import { auditEntries, deliveryRounds, memberships, priceTiers, producerSettings, producers } from "~/db/schema"
-import { withProducer } from "~/db/transaction.server"
+import { readPerson, withProducer } from "~/db/transaction.server"
 import type { Result } from "~/domain/result"
 
 /**
  * Opens a desk for a new producer: its name and address in the URL, its settings, one price tier and one weekly round to
- * begin with, and the person as its owner. Refuses a name in the URL that another producer has.
+ * begin with, and the person as its owner. Refuses a name in the URL that another producer has; sent again by its owner,
+ * it is the desk that is there.
  */
 export async function openDesk(desk: {
 	person: { id: string; name: string; email: string }
@@ -46,8 +48,28 @@ export async function openDesk(desk: {
 			})
 		})
 	} catch (error) {
-		if (breaksConstraint(error, "producers_slug_once")) return { ok: false, reason: "slug-taken" }
-		throw error
+		if (!breaksConstraint(error, "producers_slug_once")) throw error
+		if (!(await isOwnDesk(desk))) return { ok: false, reason: "slug-taken" }
 	}
 	return { ok: true, slug: desk.slug }
+}
+
+/** Whether the producer of this name in the URL is the person's own, under the same name. */
+async function isOwnDesk(desk: { person: { id: string }; slug: string; name: string }): Promise<boolean> {
+	const found = await readPerson(desk.person.id, (tx) =>
+		tx
+			.select({ id: producers.id })
+			.from(producers)
+			.innerJoin(memberships, eq(memberships.producerId, producers.id))
+			.where(
+				and(
+					eq(producers.slug, desk.slug),
+					eq(producers.name, desk.name),
+					eq(memberships.userId, desk.person.id),
+					eq(memberships.role, "owner"),
+					isNull(memberships.endedAt),
+				),
+			),
+	)
+	return found.length > 0
 }

@@ -5,9 +5,18 @@ import { addDays, type Day, dayInZone } from "~/domain/calendar"
 import { freeToPromise } from "~/domain/promise/free-to-promise"
 import { now } from "~/platform/clock.server"
 import { findOutlooks, type ProductOutlook } from "~/services/promise/find-outlooks.server"
+import { findTable } from "~/services/stall/find-table.server"
 
 /** A market day on which the public can buy. */
-export type PickUpDay = { id: string; on: Day; marketName: string; address: string; opensAt: string; closesAt: string }
+export type PickUpDay = {
+	id: string
+	on: Day
+	state: "planned" | "open" | "closed"
+	marketName: string
+	address: string
+	opensAt: string
+	closesAt: string
+}
 
 /** One product of the shop, in pieces, as it stands for the chosen day. */
 export type ShopItem = {
@@ -18,11 +27,11 @@ export type ShopItem = {
 	colour: "straw" | "light" | "amber" | "dark"
 	form: (typeof products.$inferSelect)["form"]
 	pieceCents: number
-	/** Pieces kept for stall and shop. */
+	/** Pieces kept for stall and shop; on a market day that is open, those that were brought. */
 	kept: number
 	/** How many of them can still be had on the day; never more than are kept. */
 	left: number
-	/** The next supply after the day, where none is left. */
+	/** When there is more, where none is left, and how much. */
 	nextOn: Day | null
 	nextPieces: number
 }
@@ -32,18 +41,19 @@ export type ShopFront = {
 	words: string
 	contact: { address: string; email: string; phone: string }
 	days: PickUpDay[]
-	/** The day that the figures are of: a market day, or today where none is ahead. */
-	chosenOn: Day
+	/** The market day that the figures are of; null where none is ahead, and they are of today. */
+	chosen: PickUpDay | null
 	items: ShopItem[]
 }
 
 const DAYS_AHEAD = 14
-const MOST_DAYS = 4
+/** As many as fit side by side. */
+const MOST_DAYS = 3
 
 /**
- * What the public sees: what is in season and how much is left for a market day. Stores' promises come first, and of
- * what remains the public gets what the producer keeps for stall and shop. `day` is the id of a market day; an unknown one
- * is answered with the next.
+ * What the public sees: what is in season and how much is left for a market day. While that day is open, it is what
+ * stands on its table. Before, stores' promises come first, and of what remains the public gets what the producer keeps for
+ * stall and shop. `dayId` is the id of a market day; an unknown one is answered with the next.
  */
 export function findShopFront(query: {
 	producer: { id: string; timeZone: string }
@@ -54,19 +64,26 @@ export function findShopFront(query: {
 	return readProducer(producer.id, async (tx) => {
 		const [settings] = await tx.select().from(producerSettings).where(eq(producerSettings.producerId, producer.id))
 		const days = await findPickUpDays(tx, { producerId: producer.id, today })
-		const chosenOn = (days.find((day) => day.id === dayId) ?? days[0])?.on ?? today
+		const chosen = days.find((day) => day.id === dayId) ?? days[0] ?? null
 		const sold = await tx
 			.select()
 			.from(products)
 			.where(and(eq(products.producerId, producer.id), eq(products.isActive, true), isNotNull(products.pieceCents)))
 			.orderBy(asc(products.code))
 		const outlooks = await findOutlooks(tx, { producerId: producer.id, today })
+		const table = chosen?.state === "open" ? await findTable(tx, { producerId: producer.id, dayId: chosen.id }) : null
+		const stockOf = (product: { id: string; reservePieces: number }) => {
+			const onTable = table?.find(({ productId }) => productId === product.id)
+			const ahead = stockAhead(outlooks.get(product.id), chosen?.on ?? today)
+			if (!table) return { ...ahead, kept: product.reservePieces }
+			return { ...ahead, kept: onTable?.brought ?? 0, left: onTable?.left ?? 0 }
+		}
 		return {
 			headline: settings?.shopHeadline ?? "",
 			words: settings?.shopWords ?? "",
 			contact: { address: settings?.address ?? "", email: settings?.email ?? "", phone: settings?.phone ?? "" },
 			days,
-			chosenOn,
+			chosen,
 			items: sold.map((product) => ({
 				productId: product.id,
 				code: product.code,
@@ -75,8 +92,7 @@ export function findShopFront(query: {
 				colour: product.colour,
 				form: product.form,
 				pieceCents: product.pieceCents ?? 0,
-				kept: product.reservePieces,
-				...leftOn(outlooks.get(product.id), chosenOn),
+				...stockOf(product),
 			})),
 		}
 	})
@@ -87,6 +103,7 @@ function findPickUpDays(tx: Tx, query: { producerId: string; today: Day }): Prom
 		.select({
 			id: marketDays.id,
 			on: marketDays.marketOn,
+			state: marketDays.state,
 			marketName: markets.name,
 			address: markets.address,
 			opensAt: markets.opensAt,
@@ -102,18 +119,27 @@ function findPickUpDays(tx: Tx, query: { producerId: string; today: Day }): Prom
 				lte(marketDays.marketOn, addDays(query.today, DAYS_AHEAD)),
 			),
 		)
-		.orderBy(asc(marketDays.marketOn), asc(markets.name))
+		.orderBy(asc(marketDays.marketOn), asc(markets.name), asc(marketDays.id))
 		.limit(MOST_DAYS)
 }
 
-function leftOn(outlook: ProductOutlook | undefined, day: Day): Pick<ShopItem, "left" | "nextOn" | "nextPieces"> {
+/**
+ * What is free for the public on `day` without breaking a promise to a store, and when there is more: sure supply counts
+ * for what is left, expected supply only for what is to come.
+ */
+function stockAhead(outlook: ProductOutlook | undefined, day: Day): Pick<ShopItem, "left" | "nextOn" | "nextPieces"> {
 	if (!outlook) return { left: 0, nextOn: null, nextPieces: 0 }
 	const sure = outlook.supplies.filter((supply) => supply.kind !== "expected")
 	const [free] = freeToPromise({ ...outlook, supplies: sure, reserve: 0, days: [day] })
-	const next = outlook.supplies.filter((supply) => supply.on > day).toSorted((a, b) => (a.on < b.on ? -1 : 1))[0]
+	const later = outlook.supplies
+		.map(({ on }) => on)
+		.filter((on) => on > day)
+		.toSorted()
+	const next = freeToPromise({ ...outlook, reserve: 0, days: later }).find((entry) => entry.free > 0)
+	const nextPieces = Math.min(outlook.reserve, next?.free ?? 0)
 	return {
 		left: Math.min(outlook.reserve, free?.free ?? 0),
-		nextOn: next?.on ?? null,
-		nextPieces: Math.min(outlook.reserve, next?.quantity ?? 0),
+		nextOn: nextPieces > 0 ? (next?.day ?? null) : null,
+		nextPieces,
 	}
 }

@@ -1,25 +1,32 @@
 import type { Form } from "~/domain/stall/short-names"
 import { ART_OF_FORM } from "./art-of-form"
 
-type ShelfItem = { code: string; name: string; form: Form }
+type ShelfItem = { code?: string; name: string; form: Form }
 
-/** The forms that are sold, drawn side by side on a shelf with their numbers. Repeats the list, so it is not read out. */
+/**
+ * The forms that are sold, drawn side by side on a shelf with their numbers, and what the bees flew to between them.
+ * Repeats the list, so it is not read out.
+ */
 export function CombShelf({ items }: { items: readonly ShelfItem[] }) {
-	const firstOfForm = items.filter((item, at) => items.findIndex((other) => other.form === item.form) === at)
-	if (firstOfForm.length === 0) return null
+	const firstOfDrawing = items.filter(
+		(item, at) => items.findIndex((other) => ART_OF_FORM[other.form].src === ART_OF_FORM[item.form].src) === at,
+	)
+	if (firstOfDrawing.length === 0) return null
 	return (
 		<div className="comb-shelf" aria-hidden="true">
-			{firstOfForm.map(({ code, name, form }) => {
-				const art = ART_OF_FORM[form]
-				return (
-					<figure key={code}>
-						<img {...art} alt="" />
-						<figcaption>
-							<b>{code}</b> {name.split(",")[0]}
-						</figcaption>
-					</figure>
-				)
-			})}
+			{firstOfDrawing.map(({ code, name, form }, at) => (
+				<figure key={form} className={`shelf-${form}`}>
+					<span className="shelf-art">
+						<img {...ART_OF_FORM[form]} alt="" />
+						{at === 0 && <img className="shelf-plant" src="/art/sainfoin.svg" alt="" width={140} height={204} />}
+						{at === 2 && <img className="shelf-plant" src="/art/clover.svg" alt="" width={124} height={180} />}
+					</span>
+					<figcaption>
+						{code && <b>{code} </b>}
+						{name.split(",")[0]}
+					</figcaption>
+				</figure>
+			))}
 		</div>
 	)
 }

@@ -14,8 +14,8 @@ type ShopRowProps = {
 	price: string
 	/** A fill strip with its words. */
 	stock: ReactNode
-	/** A stepper; or words where there is nothing to choose: "none for this day", "not yet". */
-	field: ReactNode
+	/** A stepper; or words where there is nothing to choose: "none for this day", "not yet". Left out where nothing is sold. */
+	field?: ReactNode
 }
 
 /** One product in the shop, an item of a list. */
@@ -30,7 +30,7 @@ export function ShopRow({ no, name, href, detail, honey, picture, price, stock, 
 			</span>
 			{stock}
 			<span className="money">{price}</span>
-			<span className="row-field">{field}</span>
+			{field && <span className="row-field">{field}</span>}
 		</li>
 	)
 }
