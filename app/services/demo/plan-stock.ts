@@ -1,26 +1,13 @@
-import type { expectedSupplies, lots, orderLineLots, saleLineLots, stockMoves } from "~/db/schema"
-import { addDays, compareDays, type Day, dayInZone, instantAt } from "~/domain/calendar"
+import { dayInZone } from "~/domain/calendar"
+import { type Ledger, move, type Stock } from "./ledger"
 import type { Catalogue, CatalogueProduct } from "./plan-catalogue"
 import type { MarketDayOfSeason } from "./plan-market-days"
 import type { OrderOfSeason } from "./plan-orders"
-import { named, notAfter, type Season } from "./season"
-import { openShelf, type Shelf, type Taken } from "./shelf"
-
-type Move = typeof stockMoves.$inferInsert & { movedAt: Date }
-
-export type Stock = {
-	lots: (typeof lots.$inferInsert)[]
-	/** In the order in which they happened, as no balance may fall below zero on the way. */
-	moves: Move[]
-	lineLots: (typeof orderLineLots.$inferInsert)[]
-	saleLots: (typeof saleLineLots.$inferInsert)[]
-	expected: (typeof expectedSupplies.$inferInsert)[]
-}
+import { named, type Season } from "./season"
+import { openShelf, type Taken } from "./shelf"
+import { writeExpected, writeHeld, writeLots } from "./stock-lots"
 
 type Plans = { catalogue: Catalogue; orders: readonly OrderOfSeason[]; marketDays: readonly MarketDayOfSeason[] }
-type Ledger = Stock & { season: Season; shelves: ReadonlyMap<string, Shelf> }
-
-const DAYS_TO_BEST_BEFORE = 300
 
 /**
  * Lots and moves behind everything that was packed, sent and sold, and what is ready, held and expected now, so that
@@ -63,24 +50,6 @@ function readyPieces(product: CatalogueProduct, orders: readonly OrderOfSeason[]
 		.filter((line) => line.product === product)
 		.reduce((sum, line) => sum + (line.given ?? (line.isToShare ? 0 : line.asked)), 0)
 	return (product.freeCases + promisedCases) * product.piecesPerCase + product.reservePieces
-}
-
-function move(
-	ledger: Ledger,
-	taken: Taken,
-	at: Date,
-	rest: Pick<Move, "fromPlace" | "fromRef" | "toPlace" | "toRef" | "reason">,
-) {
-	const { producerId, chance, scenario, userId, now } = ledger.season
-	ledger.moves.push({
-		producerId,
-		id: chance.id(),
-		lotId: taken.lot.id,
-		pieces: taken.pieces,
-		movedAt: notAfter(now, at),
-		movedBy: userId(scenario.packerEmail),
-		...rest,
-	})
 }
 
 function pack(ledger: Ledger, order: OrderOfSeason, at: Date): void {
@@ -151,82 +120,4 @@ function marketSteps(ledger: Ledger, day: MarketDayOfSeason) {
 		),
 		{ at: day.returnedAt, run: bringBack },
 	]
-}
-
-function writeLots(ledger: Ledger, shelf: Shelf): void {
-	for (const lot of shelf.lots) {
-		writeLot(ledger, lot, { state: "released", releaseOn: dayInZone(lot.releasedAt, ledger.season.scenario.timeZone) })
-		move(ledger, { lot, pieces: lot.pieces }, lot.releasedAt, {
-			fromPlace: "cold-room",
-			toPlace: "ready",
-			reason: "released",
-		})
-		if (lot.brokenPieces === 0) continue
-		move(ledger, { lot, pieces: lot.brokenPieces }, lot.releasedAt, {
-			fromPlace: "cold-room",
-			toPlace: "waste",
-			reason: "broken on weighing",
-		})
-	}
-}
-
-/** The lot row and its pieces coming off the hives. */
-function writeLot(
-	ledger: Ledger,
-	lot: Shelf["lots"][number],
-	{ state, releaseOn }: { state: "held" | "released"; releaseOn: Day },
-): void {
-	const { producerId, scenario } = ledger.season
-	const pieces = lot.pieces + lot.brokenPieces
-	ledger.lots.push({
-		producerId,
-		id: lot.id,
-		code: lot.code,
-		productId: lot.product.id,
-		state,
-		harvestedOn: lot.harvestedOn,
-		expectedReleaseOn: releaseOn,
-		bestBeforeOn: addDays(lot.harvestedOn, DAYS_TO_BEST_BEFORE),
-		piecesHarvested: pieces,
-		yard: lot.product.yard,
-		createdAt: instantAt(lot.harvestedOn, "16:00", scenario.timeZone),
-	})
-	const at = instantAt(lot.harvestedOn, "16:00", scenario.timeZone)
-	move(ledger, { lot, pieces }, at, { fromPlace: null, toPlace: "cold-room", reason: "off the hives" })
-}
-
-function writeHeld(ledger: Ledger, product: CatalogueProduct, nextCode: () => string): void {
-	const { chance, today, days } = ledger.season
-	const { held } = product
-	if (!held) return
-	const lot = {
-		id: chance.id(),
-		code: nextCode(),
-		product,
-		harvestedOn: addDays(today, -3),
-		releasedAt: days.closed.cutoffAt,
-		pieces: held.cases * product.piecesPerCase,
-		brokenPieces: 0,
-		ready: 0,
-	}
-	const wanted = addDays(today, held.inDays)
-	const firstOpenOn = days.open[0]?.on ?? wanted
-	writeLot(ledger, lot, { state: "held", releaseOn: compareDays(wanted, firstOpenOn) < 0 ? wanted : firstOpenOn })
-}
-
-function writeExpected(ledger: Ledger, product: CatalogueProduct): void {
-	const { producerId, chance, today, days } = ledger.season
-	const { expected } = product
-	if (!expected) return
-	const wanted = addDays(days.open[0]?.on ?? today, expected.afterDays)
-	const lowPieces = expected.cases * product.piecesPerCase
-	ledger.expected.push({
-		producerId,
-		id: chance.id(),
-		productId: product.id,
-		expectedOn: compareDays(wanted, today) > 0 ? wanted : today,
-		lowPieces,
-		likelyPieces: Math.round(lowPieces * 1.3),
-		highPieces: Math.round(lowPieces * 1.6),
-	})
 }

@@ -1,0 +1,97 @@
+import { WALKED_ORDER } from "./yard"
+
+/** What a request may be answered with for those who are admitted; the default is any page, redirect or form refusal. */
+type Answer = {
+	/** Statuses for those who are admitted, where a page or redirect (GET) or a form's refusal (POST) is not what comes. */
+	admitted?: readonly number[]
+}
+
+/** Whom a route admits: the words of its policy (app/routes/guard.server.ts) for its loader and, if any, its action. */
+export type Admission = {
+	loader: string
+	get?: Answer
+	action?: string
+	/** `fields` are posted by everyone and change nothing of the demo; `effective` ones only by those not admitted. */
+	post?: Answer & { fields?: Record<string, string>; effective?: Record<string, string> }
+}
+
+const STORE = "store: buyer, payer"
+const OFFICE = "desk: owner, desk"
+const COLD_ROOM = "desk: owner, desk, packer"
+const GONE = { admitted: [410] }
+const storePage: Admission = { loader: STORE }
+const stallPage: Admission = { loader: "stall" }
+
+/** A step that is asked for the walked store's order, which has been through all of them. */
+function onOrder(intent: string): Record<string, string> {
+	return { intent, number: WALKED_ORDER, day: "2001-02-06" }
+}
+
+/**
+ * Whom each route of the site map admits, by the route's id. A route that is not here fails the walk, and so does one
+ * here that is gone. Say it by the person's job (design.md, "The people"), not by copying what the route declares.
+ */
+export const admissions: Record<string, Admission> = {
+	// Around every page
+	root: { loader: "anyone" },
+
+	// The public
+	"routes/shop/home": { loader: "anyone" },
+	"routes/shop/open-a-desk": { loader: "signed-in", action: "signed-in" },
+	"routes/shop/front": { loader: "visitor" },
+	"routes/parts": { loader: "anyone" },
+	// Called by Stripe alone, and only by POST; what is not signed is refused, whoever sends it.
+	"routes/webhooks/stripe": { loader: "anyone", get: { admitted: [405] }, action: "signer", post: { admitted: [400] } },
+
+	// Signing in
+	"routes/auth/sign-in": { loader: "anyone", action: "anyone" },
+	"routes/auth/sign-in-code": { loader: "anyone", action: "anyone" },
+	// A link that was never sent is gone, for everyone.
+	"routes/auth/sign-in-link": { loader: "anyone", get: GONE, action: "anyone" },
+	"routes/auth/go-on": { loader: "signed-in", action: "signed-in" },
+	"routes/auth/sign-out": { loader: "anyone", action: "anyone" },
+	"routes/auth/account": { loader: "signed-in" },
+	// Without naming a session of one's own there is none to end.
+	"routes/auth/sessions": { loader: "signed-in", action: "signed-in", post: { admitted: [404] } },
+	"routes/auth/invitation": { loader: "anyone", get: GONE, action: "anyone" },
+
+	// A store's people
+	"routes/buy/stores": { loader: "any-buyer" },
+	"routes/buy/store": storePage,
+	"routes/buy/next-sheet": storePage,
+	"routes/buy/sheet": { loader: STORE, action: STORE },
+	"routes/buy/order": { loader: STORE, action: STORE, post: { fields: { intent: "cancel" } } },
+	"routes/buy/deliveries": storePage,
+	"routes/buy/standing": { loader: STORE, action: STORE },
+	"routes/buy/invoices": storePage,
+	// A buyer reads what is to pay; paying is the payer's.
+	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
+	"routes/buy/invoice-pdf": storePage,
+	"routes/buy/details": storePage,
+
+	// The desk: no stall volunteer; the packer sees what is packed and from which lots, and no money
+	"routes/desk/to-do": { loader: COLD_ROOM, action: OFFICE, post: { fields: onOrder("confirm") } },
+	"routes/desk/orders": { loader: OFFICE },
+	"routes/desk/order": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "confirm" } } },
+	"routes/desk/packing": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: onOrder("pack") } },
+	"routes/desk/lots": { loader: COLD_ROOM },
+	"routes/desk/lot": { loader: COLD_ROOM },
+	"routes/desk/invoices": { loader: OFFICE },
+	"routes/desk/invoice": {
+		loader: OFFICE,
+		action: OFFICE,
+		post: { effective: { method: "cash", amount: "5.00", paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
+	},
+	"routes/desk/invoice-pdf": { loader: OFFICE },
+	"routes/desk/stores": { loader: OFFICE },
+	"routes/desk/prices": { loader: OFFICE },
+	// People are the owner's alone.
+	"routes/desk/people": { loader: "desk: owner", action: "desk: owner", post: { fields: { intent: "invite" } } },
+
+	// The stall
+	"routes/stall/days": stallPage,
+	"routes/stall/sale": { loader: "stall", action: "stall" },
+	"routes/stall/cash": { loader: "stall", action: "stall" },
+	"routes/stall/card": { loader: "stall", action: "stall" },
+	"routes/stall/totals": stallPage,
+}

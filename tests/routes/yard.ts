@@ -1,0 +1,194 @@
+import { randomUUID } from "node:crypto"
+import type pg from "pg"
+
+/** What the walk asks for: a store of its own at the demo's main producer, with papers on which nothing can be done. */
+export type Yard = {
+	ours: { producerId: string; storeId: string; otherStoreId: string; marketDayId: string }
+	theirs: { producerId: string; storeId: string }
+	/** What stands in an address for each of its parts. */
+	params: Record<string, string>
+	/** One piece sold, or a sale given up, as the stall's forms post it. */
+	saleFields: Record<string, string>
+	clear: () => Promise<void>
+}
+
+/** Runs `work` in a transaction that sees this producer's rows. */
+export async function asProducer<T>(client: pg.Client, producerId: string, work: () => Promise<T>): Promise<T> {
+	await client.query("begin")
+	try {
+		await client.query("select set_config('waxbill.producer_id', $1, true)", [producerId])
+		const result = await work()
+		await client.query("commit")
+		return result
+	} catch (error) {
+		await client.query("rollback")
+		throw error
+	}
+}
+
+const STORE_SLUG = "walked-store"
+/** The number of that order. */
+export const WALKED_ORDER = "900900"
+const LONG_AGO = "2001-02-06"
+
+/**
+ * Opens the yard: a store whose one order has been received and paid, and a market day that is closed with one card sale.
+ * Whoever is admitted finds pages there, and can change nothing that another test relies on.
+ */
+export async function openYard(owner: pg.Client): Promise<Yard> {
+	const idOf = async (query: string, values: unknown[] = []) => {
+		const { rows } = await owner.query<{ id: string }>(query, values)
+		if (!rows[0]) throw new Error(`the demo has no row for: ${query}`)
+		return rows[0].id
+	}
+	const ourId = await idOf("select id from producers where slug = 'larkmoor'")
+	const theirId = await idOf("select id from producers where slug = 'tansy-knoll'")
+	const theirStoreId = await asProducer(owner, theirId, () => idOf("select id from stores order by slug limit 1"))
+	const storeId = randomUUID()
+	const orderId = randomUUID()
+	const invoiceId = randomUUID()
+	const marketDayId = randomUUID()
+	const saleId = randomUUID()
+	const insert = async (table: string, row: Record<string, unknown>) => {
+		const columns = Object.keys(row)
+		const places = columns.map((_, index) => `$${index + 2}`)
+		await owner.query(`insert into ${table} (producer_id, ${columns.join(", ")}) values ($1, ${places.join(", ")})`, [
+			ourId,
+			...Object.values(row),
+		])
+	}
+	const otherStoreId = await asProducer(owner, ourId, async () => {
+		const tierId = await idOf("select id from price_tiers order by name limit 1")
+		const productId = await idOf("select id from products where code = '11'")
+		const marketId = await idOf("select id from markets order by name limit 1")
+		const sellerId = await idOf("select id from users order by email limit 1")
+		await insert("stores", { id: storeId, slug: STORE_SLUG, name: "The Walked Store", tier_id: tierId })
+		await owner.query(
+			"insert into store_rounds (producer_id, store_id, round_id) select producer_id, $1, id from delivery_rounds",
+			[storeId],
+		)
+		await insert("orders", {
+			id: orderId,
+			number: WALKED_ORDER,
+			store_id: storeId,
+			delivery_on: LONG_AGO,
+			state: "received",
+		})
+		await insert("order_lines", {
+			order_id: orderId,
+			product_id: productId,
+			asked_cases: 1,
+			given_cases: 1,
+			case_cents: 1000,
+			pieces_per_case: 12,
+		})
+		await insert("invoices", {
+			id: invoiceId,
+			year: 2001,
+			sequence: 1,
+			store_id: storeId,
+			order_id: orderId,
+			issued_on: LONG_AGO,
+			due_on: LONG_AGO,
+			lines_cents: 1000,
+			delivery_cents: 0,
+			tax_cents: 0,
+			total_cents: 1000,
+			paid_cents: 1000,
+		})
+		await insert("invoice_lines", {
+			invoice_id: invoiceId,
+			position: 1,
+			product_id: productId,
+			code: "11",
+			name: "Round section",
+			detail: "Fancy, 8 oz, case of 12",
+			net_grams: 2712,
+			asked_cases: 1,
+			sent_cases: 1,
+			case_cents: 1000,
+			line_cents: 1000,
+		})
+		await insert("market_days", { id: marketDayId, market_id: marketId, market_on: LONG_AGO, state: "closed" })
+		await insert("sales", {
+			id: saleId,
+			market_day_id: marketDayId,
+			method: "card",
+			state: "paid",
+			total_cents: 1400,
+			stripe_payment_intent_id: `pi_walk_${saleId}`,
+			sold_by: sellerId,
+			paid_at: new Date(),
+		})
+		await insert("sale_lines", { sale_id: saleId, product_id: productId, pieces: 1, piece_cents: 1400 })
+		return idOf("select id from stores where slug = 'mossgate-grocers'")
+	})
+	const [openDay, lotCode, placed, otherMarketDay, productId] = await asProducer(owner, ourId, async () => [
+		await idOf("select max(delivery_on)::text as id from orders where state = 'placed'"),
+		await idOf("select code as id from lots order by code limit 1"),
+		await idOf("select number::text as id from orders where state = 'placed' order by number limit 1"),
+		await idOf("select id from market_days where state = 'open' limit 1"),
+		await idOf("select id from products where code = '11'"),
+	])
+	return {
+		ours: { producerId: ourId, storeId, otherStoreId, marketDayId },
+		theirs: { producerId: theirId, storeId: theirStoreId },
+		params: {
+			producer: "larkmoor",
+			store: STORE_SLUG,
+			number: WALKED_ORDER,
+			invoice: "2001-0001",
+			day: openDay,
+			code: lotCode,
+			placed,
+			otherMarketDay,
+			marketDay: marketDayId,
+			sale: saleId,
+			// The token of no link that was ever sent.
+			token: "w".repeat(43),
+		},
+		saleFields: { [`n-${productId}`]: "1", given: "100.00", intent: "give-up" },
+		clear: () =>
+			asProducer(owner, ourId, async () => {
+				const del = (table: string, where: string, id: string) =>
+					owner.query(`delete from ${table} where producer_id = $1 and ${where} = $2`, [ourId, id])
+				await del("sale_lines", "sale_id", saleId)
+				await del("sales", "id", saleId)
+				await del("market_day_people", "market_day_id", marketDayId)
+				await del("market_days", "id", marketDayId)
+				await del("invoice_lines", "invoice_id", invoiceId)
+				await del("invoices", "id", invoiceId)
+				await del("order_events", "order_id", orderId)
+				await del("order_lines", "order_id", orderId)
+				await del("orders", "id", orderId)
+				await del("store_rounds", "store_id", storeId)
+				await del("memberships", "store_id", storeId)
+				await del("stores", "id", storeId)
+			}),
+	}
+}
+
+/** A mark of all that the product keeps, but for sessions, what was typed without one, and counted tries. */
+export async function fingerprint(owner: pg.Client): Promise<Record<string, string>> {
+	const { rows: tables } = await owner.query<{ name: string; hasProducer: boolean }>(`
+		select relname as name, exists (
+			select from pg_attribute a where a.attrelid = c.oid and a.attname = 'producer_id' and not a.attisdropped
+		) as "hasProducer"
+		from pg_class c where relnamespace = 'public'::regnamespace and relkind = 'r'
+			and relname not in ('sessions', 'kept_posts', 'rate_limits')`)
+	const { rows: producers } = await owner.query<{ id: string; slug: string }>("select id, slug from producers")
+	const marks: Record<string, string> = {}
+	const mark = async (name: string, table: string) => {
+		const { rows } = await owner.query<{ mark: string | null }>(
+			`select md5(string_agg(t::text, ',' order by t::text)) as mark from ${table} t`,
+		)
+		marks[name] = rows[0]?.mark ?? "empty"
+	}
+	for (const { name } of tables.filter(({ hasProducer }) => !hasProducer)) await mark(name, name)
+	for (const { id, slug } of producers) {
+		await asProducer(owner, id, async () => {
+			for (const { name } of tables.filter(({ hasProducer }) => hasProducer)) await mark(`${slug} ${name}`, name)
+		})
+	}
+	return marks
+}
