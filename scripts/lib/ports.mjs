@@ -5,7 +5,7 @@ const HIGHEST = 65535
 const given = new Set()
 
 /** Whether nothing listens on `port` of `host`. Refuses when the port may not be used at all. */
-export function isFree(port, host = "127.0.0.1") {
+function isFree(port, host = "127.0.0.1") {
 	return new Promise((resolve, reject) => {
 		const server = createServer()
 		server.once("error", (error) => {

@@ -3,9 +3,6 @@ import { outboxMails } from "~/db/schema"
 import type { Tx } from "~/db/transaction.server"
 import type { Letter } from "~emails/templates"
 
-/** Decisions can be undone for this long before their mail goes. */
-export const DECISION_DELAY_SECONDS = 120
-
 /**
  * Puts a letter into the outbox in the transaction that it tells of: gone on rollback, sent by the worker after commit.
  * `onceKey` names the event; a second letter of the same event to the same person is not written. `delaySeconds` holds
