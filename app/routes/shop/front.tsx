@@ -74,7 +74,9 @@ export default function ShopFrontPage({ loaderData }: Route.ComponentProps) {
 					<p className="shop-lead">No market day is set for the next two weeks.</p>
 				)}
 				{front.items.length === 0 ? (
-					<EmptyLine>Nothing is in season just now. Comb comes off the hives in summer.</EmptyLine>
+					<EmptyLine>
+						Nothing is in season just now. Comb comes off the hives in summer; write or call to ask when.
+					</EmptyLine>
 				) : (
 					<ul>
 						{front.items.map((item) => (
@@ -122,7 +124,8 @@ function StockLeft({ item }: { item: Item }) {
 		const words = `none left for this day; ${piecesWords(nextPieces)} from ${monthDay(nextOn)}`
 		return <FillStrip runs={[{ state: "expected", count: nextPieces }]} label={words} caption={words} />
 	}
-	return <FillStrip runs={[{ state: "promised", count: kept }]} label="none left" caption="none left" />
+	const words = kept > 0 ? "none left" : "none for this day"
+	return <FillStrip runs={[{ state: "promised", count: kept }]} label={words} caption={words} />
 }
 
 type Front = Route.ComponentProps["loaderData"]["front"]
@@ -139,8 +142,7 @@ function WhereToBuy({ chosen }: Pick<Front, "chosen">) {
 				{where}
 			</p>
 			<p className="note">
-				{chosen.state === "open" ? "The stall is open: this is what stands on its table." : "Come early for the best."}{" "}
-				Pay there, by card or in cash.
+				{chosen.state === "open" && "The stall is open: this is what stands on its table."} Pay at the stall.
 			</p>
 		</>
 	)
