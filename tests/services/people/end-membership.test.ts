@@ -1,7 +1,7 @@
 import { expect, test } from "vitest"
 import { endMembership } from "~/services/people/end-membership.server"
 import { listPeople } from "~/services/people/list-people.server"
-import { addMembership, addProducer, addUser, asOwner } from "./people-rows"
+import { addMembership, addProducer, addUser, asOwnerOf } from "./people-rows"
 
 test("a role that is ended is gone from the list, and the audit trail says who ended it", async () => {
 	const producer = await addProducer()
@@ -11,7 +11,7 @@ test("a role that is ended is gone from the list, and the audit trail says who e
 	expect(await endMembership(producer.id, owner.id, membershipId)).toEqual({ ok: true })
 	expect((await listPeople(producer.id)).members.map(({ name }) => name)).toEqual(["Ida Marsh"])
 	expect(await endMembership(producer.id, owner.id, membershipId)).toEqual({ ok: false, reason: "not-found" })
-	const trail = await asOwner("select user_id, action from audit_entries where producer_id = $1", [producer.id])
+	const trail = await asOwnerOf(producer.id, "select user_id, action from audit_entries")
 	expect(trail).toEqual([{ user_id: owner.id, action: "role ended" }])
 })
 

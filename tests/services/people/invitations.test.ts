@@ -9,7 +9,7 @@ import { withdrawInvitation } from "~/services/people/withdraw-invitation.server
 import { renderMail } from "~emails/render"
 import { action as answerInvitation } from "../../../app/routes/auth/invitation"
 import { Browser } from "./browser"
-import { addMembership, addProducer, addUser, asOwner, newestMail, tokenOf } from "./people-rows"
+import { addMembership, addProducer, addUser, asOwner, asOwnerOf, newestMail, tokenOf } from "./people-rows"
 import { signIn, someNetwork } from "./sign-in-steps"
 
 const asPerson = (user: { id: string; name: string; email: string }): Person => ({
@@ -29,9 +29,9 @@ const freshAddress = () => `${someNetwork()}@quillandrye.example.test`
 
 /** Letters that wait in the producer's outbox. */
 const outbox = (producerId: string) =>
-	asOwner<{ recipient: string; template: string; props: { link: string } }>(
-		"select recipient, template, props from outbox_mails where producer_id = $1 order by created_at",
-		[producerId],
+	asOwnerOf<{ recipient: string; template: string; props: { link: string } }>(
+		producerId,
+		"select recipient, template, props from outbox_mails order by created_at",
 	)
 
 /** Invites and answers the token of the letter. */
@@ -120,12 +120,13 @@ describe("an invitation", () => {
 		const from = await addOwner()
 		const email = freshAddress()
 		const token = await invite(from, { email, name: "Rosa Fenn", role: "packer", storeId: null })
-		const [row] = await asOwner<{ days: number }>(
+		const [row] = await asOwnerOf<{ days: number }>(
+			from.producer.id,
 			"select extract(day from expires_at - created_at)::int as days from invitations where email = $1",
 			[email],
 		)
 		expect(row?.days).toBe(14)
-		await asOwner("update invitations set expires_at = now() where email = $1", [email])
+		await asOwnerOf(from.producer.id, "update invitations set expires_at = now() where email = $1", [email])
 		expect(await acceptInvitation(token, await personAt(email))).toBe(false)
 	})
 
@@ -133,7 +134,7 @@ describe("an invitation", () => {
 		const from = await addOwner()
 		const user = await addUser()
 		await addMembership(from.producer.id, user.id, "packer")
-		await asOwner("update memberships set ended_at = now() where user_id = $1", [user.id])
+		await asOwnerOf(from.producer.id, "update memberships set ended_at = now() where user_id = $1", [user.id])
 		const token = await invite(from, { email: user.email, name: "Rosa Fenn", role: "packer", storeId: null })
 		expect(await acceptInvitation(token, asPerson(user))).toBe(true)
 		expect((await findPlaces(user.id)).map(({ href }) => href)).toEqual([`/desk/${from.producer.slug}`])

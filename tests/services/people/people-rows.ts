@@ -40,11 +40,21 @@ export async function addMembership(producerId: string, userId: string, role: Ro
 	return row.id
 }
 
-/** Runs one statement as the login that owns the schema, past every right and row rule. */
+/** Runs one statement as the login that owns the schema, past the rights of the product; row rules bind it all the same. */
 export async function asOwner<Row extends pg.QueryResultRow>(text: string, values: unknown[] = []): Promise<Row[]> {
+	return asOwnerOf(null, text, values)
+}
+
+/** The same on the rows of one producer. */
+export async function asOwnerOf<Row extends pg.QueryResultRow>(
+	producerId: string | null,
+	text: string,
+	values: unknown[] = [],
+): Promise<Row[]> {
 	const client = new pg.Client({ connectionString: testDatabaseUrl() })
 	await client.connect()
 	try {
+		await client.query("select set_config('waxbill.producer_id', $1, false)", [producerId ?? ""])
 		return (await client.query<Row>(text, values)).rows
 	} finally {
 		await client.end()
