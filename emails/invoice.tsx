@@ -64,7 +64,7 @@ export default function Invoice(props: Props) {
 			<Lead>{deliverySentence(invoice)}</Lead>
 			<Button
 				href={payUrl}
-				words={open > 0 ? "Pay by card or bank" : "Open the invoice"}
+				words={open > 0 ? "Pay by card" : "Open the invoice"}
 				beside={{ href: pdfUrl, words: "Printed page (PDF)" }}
 			/>
 			<GivenTable

@@ -4,7 +4,6 @@ import * as invitation from "./invitation"
 import * as invoice from "./invoice"
 import * as orderConfirmed from "./order-confirmed"
 import * as orderReceived from "./order-received"
-import * as orderSent from "./order-sent"
 import * as paymentReceived from "./payment-received"
 import * as signInCode from "./sign-in-code"
 import * as signInUnknown from "./sign-in-unknown"
@@ -35,7 +34,6 @@ export const templates = {
 	invitation: letter(invitation),
 	"order-received": letter(orderReceived),
 	"order-confirmed": letter(orderConfirmed),
-	"order-sent": letter(orderSent),
 	invoice: letter(invoice),
 	"payment-received": letter(paymentReceived),
 	"standing-order-set": letter(standingOrderSet),

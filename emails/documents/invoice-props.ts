@@ -76,7 +76,7 @@ export const sampleInvoice = {
 		signedBy: "Rosa Quill",
 	},
 	due: { on: "2026-09-01", termsWords: "14 days" },
-	waysToPay: "Card, bank or check",
+	waysToPay: "Card or check",
 	lines: sampleGivenLines.lines.map(({ casesGiven, ...line }, index) => ({
 		...line,
 		casesSent: casesGiven,

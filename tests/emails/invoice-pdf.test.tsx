@@ -30,7 +30,7 @@ describe("the printed invoice", () => {
 		const page = flat(pages[0])
 		expect(page).toContain("Larkmoor Bee Yard Invoice 1203")
 		expect(page).toContain("Pantry & Plume Rosa Quill 12 Carder Street, Teasel County Your order of August 13")
-		expect(page).toContain("Tuesday, September 1 14 days Card, bank or check Quote 1203")
+		expect(page).toContain("Tuesday, September 1 14 days Card or check Quote 1203")
 		expect(page).toContain(
 			"21 Basswood section, clover Fancy, 13 oz, case of 12 B11 19 lb 10 oz 2 sent of 4 asked 142.50 285.00",
 		)
