@@ -2,6 +2,7 @@ import { drizzle, type NodePgDatabase } from "drizzle-orm/node-postgres"
 import type { PoolClient } from "pg"
 import { pool } from "./client.server"
 import { isWorthRepeating } from "./errors.server"
+import { preparing } from "./prepared.server"
 
 declare const inTransaction: unique symbol
 
@@ -64,7 +65,7 @@ async function inOneTransaction<T, H>(begin: string, work: (tx: H) => Promise<T>
 	let broken: Error | undefined
 	try {
 		await client.query(begin)
-		const result = await work(drizzle({ client }) as H)
+		const result = await work(drizzle({ client: preparing(client) }) as H)
 		await client.query("commit")
 		return result
 	} catch (error) {
