@@ -117,30 +117,32 @@ for (const width of [1440, 390]) {
 test("long names, nothing left and nothing in season leave a page that fits and says so", async ({ page }) => {
 	await page.setViewportSize({ width: 390, height: 844 })
 	const shop = `${e2eAddresses().web}/shop/tansy-knoll`
+	const askTheirs = <Row extends Record<string, unknown>>(text: string, values: unknown[]) =>
+		ask<Row>(text, values, "tansy-knoll")
 	const [yard] = await ask<{ id: string; name: string }>("select id, name from producers where slug = 'tansy-knoll'")
-	const before = await ask<{ id: string; name: string; reserve_pieces: number }>(
+	const before = await askTheirs<{ id: string; name: string; reserve_pieces: number }>(
 		"select id, name, reserve_pieces from products where producer_id = $1",
 		[yard?.id],
 	)
 	const long = "Zwischenwabenhonigrundscheibe".repeat(3).slice(0, 80)
 	try {
-		await ask("update producers set name = $2 where id = $1", [yard?.id, long])
-		await ask("update products set name = $2, reserve_pieces = 0 where producer_id = $1", [yard?.id, long])
+		await askTheirs("update producers set name = $2 where id = $1", [yard?.id, long])
+		await askTheirs("update products set name = $2, reserve_pieces = 0 where producer_id = $1", [yard?.id, long])
 		await page.goto(shop)
 		await untilHydrated(page)
 		await expect(page.getByText("none for this day").first()).toBeVisible()
 		await expectNoFaults(page)
 		await page.setViewportSize({ width: 1440, height: 900 })
 		await expectFits(page)
-		await ask("update products set is_active = false where producer_id = $1", [yard?.id])
+		await askTheirs("update products set is_active = false where producer_id = $1", [yard?.id])
 		await page.reload()
 		await untilHydrated(page)
 		await expect(page.getByText("Nothing is in season just now.")).toBeVisible()
 		await expectFits(page)
 	} finally {
-		await ask("update producers set name = $2 where id = $1", [yard?.id, yard?.name])
+		await askTheirs("update producers set name = $2 where id = $1", [yard?.id, yard?.name])
 		for (const { id, name, reserve_pieces } of before)
-			await ask("update products set name = $2, reserve_pieces = $3, is_active = true where id = $1", [
+			await askTheirs("update products set name = $2, reserve_pieces = $3, is_active = true where id = $1", [
 				id,
 				name,
 				reserve_pieces,

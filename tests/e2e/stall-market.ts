@@ -6,12 +6,19 @@ import { e2eAddresses } from "../setup/e2e-addresses"
 
 export const READER = "tmr_demo_stall"
 
-/** Asks the product's database, as the login that owns the schema. */
-export async function ask<Row extends pg.QueryResultRow>(text: string, values: unknown[] = []): Promise<Row[]> {
+/** Asks the product's database for a producer, as the login that owns the schema; row security binds that one too. */
+export async function ask<Row extends pg.QueryResultRow>(
+	text: string,
+	values: unknown[] = [],
+	producer = "larkmoor",
+): Promise<Row[]> {
 	const client = new pg.Client({ connectionString: e2eAddresses().databaseUrl })
 	await client.connect()
 	try {
-		await client.query("set row_security = off")
+		await client.query(
+			"select set_config('waxbill.producer_id', (select id::text from producers where slug = $1), false)",
+			[producer],
+		)
 		return (await client.query<Row>(text, values)).rows
 	} finally {
 		await client.end()
