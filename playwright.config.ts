@@ -9,16 +9,14 @@ export default defineConfig({
 	retries: 0,
 	fullyParallel: false,
 	forbidOnly: true,
-	// For a machine that has other work to do; a page that hangs fails by the limit on what is expected of it.
-	timeout: 120_000,
+	timeout: 60_000,
 	expect: { timeout: 10_000 },
 	reporter: "list",
 	use: {
 		browserName: "chromium",
 		viewport: { width: 1440, height: 900 },
 		locale: "en-US",
-		// Recording doubles the time of a run: E2E_TRACE=1 turns it on to look into a failure.
-		trace: process.env.E2E_TRACE ? "retain-on-failure" : "off",
+		trace: "retain-on-failure",
 		screenshot: "only-on-failure",
 		launchOptions: {
 			executablePath: "/usr/bin/chromium",
