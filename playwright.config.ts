@@ -1,4 +1,7 @@
+import { readdirSync } from "node:fs"
 import { defineConfig } from "@playwright/test"
+
+const specs = readdirSync("tests/e2e").filter((name) => name.endsWith(".spec.ts"))
 
 export default defineConfig({
 	testDir: "tests/e2e",
@@ -12,6 +15,8 @@ export default defineConfig({
 	timeout: 60_000,
 	expect: { timeout: 10_000 },
 	reporter: "list",
+	// A project for each file: it begins with a browser of its own, since one that has served a hundred tests can hang.
+	projects: specs.map((file) => ({ name: file.replace(".spec.ts", ""), testMatch: file })),
 	use: {
 		browserName: "chromium",
 		viewport: { width: 1440, height: 900 },

@@ -80,12 +80,18 @@ export function salesOf(dayId: string) {
 	)
 }
 
-/** Holds a card to the stall's reader, by the button on the payment fake's page of readers. */
-export async function presentCard(page: Page, button: RegExp): Promise<void> {
-	const readers = await page.context().newPage()
-	await readers.goto(`${e2eAddresses().stripe}/readers`)
-	await readers.getByRole("region", { name: "Stall reader", exact: true }).getByRole("button", { name: button }).click()
-	await readers.close()
+const CARDS = {
+	good: "Present a good card",
+	declined: "Present a declined card",
+	insufficient: "Present a card without funds",
+}
+
+/** Holds a card to the stall's reader, by the form on the stand-in's page of readers; the phone's own page stays in front. */
+export async function presentCard(page: Page, card: keyof typeof CARDS): Promise<void> {
+	const readers = `${e2eAddresses().stripe}/readers`
+	expect(await (await page.request.get(readers)).text()).toContain(CARDS[card])
+	const answer = await page.request.post(`${readers}/${READER}/present`, { form: { card } })
+	expect(answer.ok()).toBe(true)
 }
 
 /** Turns switches of the payment fake. */
