@@ -16,7 +16,7 @@ export default defineConfig({
 	expect: { timeout: 10_000 },
 	reporter: "list",
 	// A project for each file: it begins with a browser of its own, since one that has served a hundred tests can hang.
-	projects: specs.map((file) => ({ name: file.replace(".spec.ts", ""), testMatch: file })),
+	projects: specs.map((file) => ({ name: file.replace(".spec.ts", ""), testMatch: `**/${file}` })),
 	use: {
 		browserName: "chromium",
 		viewport: { width: 1440, height: 900 },
