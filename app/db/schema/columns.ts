@@ -1,4 +1,4 @@
-import { date, integer, timestamp, uuid } from "drizzle-orm/pg-core"
+import { customType, date, integer, timestamp, uuid } from "drizzle-orm/pg-core"
 
 /** A calendar day in the producer's zone, as "2026-08-18". */
 export const day = (name: string) => date(name, { mode: "string" })
@@ -11,6 +11,9 @@ export const cents = (name: string) => integer(name)
 
 /** Weight in whole grams. */
 export const grams = (name: string) => integer(name)
+
+/** A file kept beside its row. */
+export const bytes = customType<{ data: Buffer }>({ dataType: () => "bytea" })
 
 /** The tenant of a row; first in every key, so that a distributed PostgreSQL can place rows by it. */
 export const producerId = () => uuid("producer_id").notNull()

@@ -1,5 +1,5 @@
 import { sql } from "drizzle-orm"
-import { bigint, check, integer, pgTable, primaryKey, text, unique, uuid } from "drizzle-orm/pg-core"
+import { bigint, check, integer, pgTable, primaryKey, smallint, text, unique, uuid } from "drizzle-orm/pg-core"
 import { instant, producerId } from "./columns"
 
 /** What anyone may know of a producer: the name in the URL and above the shop. All else is in `producer_settings`. */
@@ -19,29 +19,51 @@ export const producers = pgTable(
 	],
 )
 
-export const producerSettings = pgTable("producer_settings", {
-	producerId: producerId()
-		.primaryKey()
-		.references(() => producers.id),
-	address: text("address").notNull().default(""),
-	email: text("email").notNull(),
-	phone: text("phone").notNull().default(""),
-	/** Headline and words of the public shop. */
-	shopHeadline: text("shop_headline").notNull().default(""),
-	shopWords: text("shop_words").notNull().default(""),
-	/** Stands at the foot of invoices: what to do about broken comb, how the comb was frozen. */
-	invoiceNote: text("invoice_note").notNull().default(""),
-	contactName: text("contact_name").notNull().default(""),
-	/** Charged on taxable products to stores without a valid resale certificate. */
-	salesTaxBasisPoints: integer("sales_tax_basis_points").notNull().default(0),
-})
+export const producerSettings = pgTable(
+	"producer_settings",
+	{
+		producerId: producerId()
+			.primaryKey()
+			.references(() => producers.id),
+		address: text("address").notNull().default(""),
+		email: text("email").notNull(),
+		phone: text("phone").notNull().default(""),
+		/** Headline and words of the public shop. */
+		shopHeadline: text("shop_headline").notNull().default(""),
+		shopWords: text("shop_words").notNull().default(""),
+		/** Stands at the foot of invoices: what to do about broken comb, how the comb was frozen. */
+		invoiceNote: text("invoice_note").notNull().default(""),
+		contactName: text("contact_name").notNull().default(""),
+		/** Charged on taxable products to stores without a valid resale certificate. */
+		salesTaxBasisPoints: integer("sales_tax_basis_points").notNull().default(0),
+		/** A super is ready at this capped share; common practice, no source. */
+		readyCappedPercent: smallint("ready_capped_percent").notNull().default(90),
+		/** Which figure of the crop counts as supply. */
+		cropFigure: text("crop_figure", { enum: ["low", "likely"] })
+			.notNull()
+			.default("low"),
+		/** "{product}{yy}-{nnn}": the tokens are explained in domain/lots/lot-code.ts. */
+		lotCodePattern: text("lot_code_pattern").notNull().default("{product}{yy}-{nnn}"),
+		/** Days from harvest to best before. */
+		bestBeforeDays: smallint("best_before_days").notNull().default(300),
+		/** Who carries what is delivered; named in the records that an inspector may ask for. */
+		carrier: text("carrier").notNull().default("own van"),
+	},
+	(t) => [
+		check(
+			"producer_settings_crop_sane",
+			sql`${t.readyCappedPercent} between 1 and 100 and ${t.cropFigure} in ('low','likely')`,
+		),
+		check("producer_settings_best_before_sane", sql`${t.bestBeforeDays} between 1 and 1500`),
+	],
+)
 
 /** Gapless numbers: one row for each series and year; its lock makes two transactions wait, so none is skipped. */
 export const counters = pgTable(
 	"counters",
 	{
 		producerId: producerId().references(() => producers.id),
-		series: text("series", { enum: ["order", "invoice"] }).notNull(),
+		series: text("series", { enum: ["order", "invoice", "lot", "load", "withdrawal"] }).notNull(),
 		year: integer("year").notNull(),
 		last: integer("last").notNull().default(0),
 	},

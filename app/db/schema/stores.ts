@@ -26,6 +26,9 @@ export const stores = pgTable(
 		name: text("name").notNull(),
 		tierId: uuid("tier_id").notNull(),
 		address: text("address").notNull().default(""),
+		/** How the store is reached; stands in the records of what was delivered to whom. */
+		phone: text("phone").notNull().default(""),
+		email: text("email").notNull().default(""),
 		/** Where and until when goods are taken in: "To the back door, before 10 am." */
 		receivingNote: text("receiving_note").notNull().default(""),
 		minimumCents: cents("minimum_cents").notNull().default(0),

@@ -16,6 +16,7 @@ const PARTS = [
 	["orders", "Orders", (roles: Roles) => roles.some(mayRunDesk)],
 	["packing", "Packing", () => true],
 	["lots", "Lots", () => true],
+	["crop", "Crop", () => true],
 	["invoices", "Invoices", (roles: Roles) => roles.some(mayRunDesk)],
 	["stores", "Stores", (roles: Roles) => roles.some(mayRunDesk)],
 	["prices", "Prices", (roles: Roles) => roles.some(mayRunDesk)],

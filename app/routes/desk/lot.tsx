@@ -21,6 +21,8 @@ const PLACE_WORDS: Record<Place, string> = {
 	sold: "Sold",
 	waste: "Waste",
 	"cut-up": "Cut up",
+	"other-lot": "In another lot",
+	missing: "Missing at a count",
 }
 
 export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ params }: Route.LoaderArgs, scope) => {
