@@ -119,18 +119,29 @@ export function shortDay(day: Day): string {
 	return `${weekdayName(weekday(day)).slice(0, 3)} ${partsOf(day).date}`
 }
 
+/** Making a clock costs a hundred times what reading it does; there are as many as zones in use. */
+const clocks = new Map<string, Intl.DateTimeFormat>()
+
+function clockOf(zone: string): Intl.DateTimeFormat {
+	const made =
+		clocks.get(zone) ??
+		new Intl.DateTimeFormat("en-CA", {
+			timeZone: zone,
+			calendar: "gregory",
+			numberingSystem: "latn",
+			hourCycle: "h23",
+			year: "numeric",
+			month: "2-digit",
+			day: "2-digit",
+			hour: "2-digit",
+			minute: "2-digit",
+		})
+	clocks.set(zone, made)
+	return made
+}
+
 function wallClock(instant: Date, zone: string): { day: Day; hour: number; minute: number } {
-	const parts = new Intl.DateTimeFormat("en-CA", {
-		timeZone: zone,
-		calendar: "gregory",
-		numberingSystem: "latn",
-		hourCycle: "h23",
-		year: "numeric",
-		month: "2-digit",
-		day: "2-digit",
-		hour: "2-digit",
-		minute: "2-digit",
-	}).formatToParts(instant)
+	const parts = clockOf(zone).formatToParts(instant)
 	const of = (type: Intl.DateTimeFormatPartTypes) => parts.find((part) => part.type === type)?.value ?? ""
 	return {
 		day: `${of("year").padStart(4, "0")}-${of("month")}-${of("day")}`,
