@@ -5,6 +5,7 @@ import { holdLabelling } from "./labelling"
 import { holdPlanning } from "./planning"
 import { heldTo, ownValuesPath, readValues } from "./published-values"
 import { holdTerms } from "./terms"
+import { holdTraceability } from "./traceability"
 
 /** Fields that describe an entry and hold no figure to check. */
 const DESCRIPTIVE = ["id", "name", "description", "labels", "source", "status", "note", "product", "half_even"]
@@ -54,7 +55,8 @@ const values = readValues(valuesPath)
 const lines = notYetRuled(values)
 console.info([`Published values from ${valuesPath.split("/").at(-1)}`, ...lines].join("\n"))
 
-for (const hold of [holdTerms, holdPlanning, holdCalendar, holdLabelling, holdAllocation]) hold(values)
+for (const hold of [holdTerms, holdPlanning, holdCalendar, holdLabelling, holdAllocation, holdTraceability])
+	hold(values)
 
 test("every rule held to published values has values in the repository's own file", () => {
 	const own = readValues(ownValuesPath) as Record<string, Sections | undefined>

@@ -50,6 +50,17 @@ const valuesSchema = z.looseObject({
 				.optional(),
 		})
 		.optional(),
+	traceability: z
+		.looseObject({
+			receive_1_337: z.array(text).optional(),
+			release_1_345: z.array(text).optional(),
+			retention_1_360: z.array(z.looseObject({ spoils_or_loses_value: text, keep: text })).optional(),
+			availability_1_361: text.optional(),
+			exclusions_1_327: z.looseObject({ direct_to_consumer_sales: text.optional() }).optional(),
+			retail_food_establishment: z.looseObject({ test: text, counts_as_direct: z.array(text) }).optional(),
+			food_traceability_list: z.looseObject({ honey_listed: z.boolean(), categories: z.array(text) }).optional(),
+		})
+		.optional(),
 })
 
 /** The repository's own values. */
@@ -74,4 +85,10 @@ export const heldTo: Record<string, readonly string[]> = {
 	"labelling.computed_price": ["weight", "unit_price", "half_up"],
 	"labelling.declarations": ["net_oz", "text (its grams)"],
 	"allocation.largest_remainder": ["weights", "total", "result"],
+	"traceability.receive_1_337": [],
+	"traceability.release_1_345": [],
+	"traceability.retention_1_360": ["spoils_or_loses_value", "keep"],
+	"traceability.exclusions_1_327": ["direct_to_consumer_sales"],
+	"traceability.retail_food_establishment": [],
+	"traceability.food_traceability_list": [],
 }
