@@ -4,6 +4,12 @@ import { log } from "./log.server"
 
 /** The largest body taken: forms and events are far smaller. */
 const BODY_LIMIT_BYTES = 1024 * 1024
+
+/** Pages that take a file, with the most that may be sent to them: the file and the form around it. */
+const LARGER_BODIES: readonly [page: RegExp, bytes: number][] = [
+	// A check of a super with its photo of up to 10 MB.
+	[/^\/desk\/[^/]+\/crop\/(checks|yards\/[^/]+|supers\/[^/]+)$/, 11 * 1024 * 1024],
+]
 const DRAIN_MS = 5_000
 
 /**
@@ -39,7 +45,7 @@ export const clientAddress: RequestHandler = (request, _response, next) => {
 /** Refuses bodies over the limit (413), and those whose length is not told before they are sent (411). */
 export const bodyLimit: RequestHandler = (request, response, next) => {
 	const length = request.headers["content-length"]
-	const isTooLarge = Number(length ?? 0) > BODY_LIMIT_BYTES
+	const isTooLarge = Number(length ?? 0) > mostBytes(request.path)
 	const isUnmeasured = request.headers["transfer-encoding"] !== undefined
 	if (!isTooLarge && !isUnmeasured) return next()
 	// The rest is read and thrown away for a moment: a browser that is cut off while sending shows no answer at all.
@@ -49,6 +55,12 @@ export const bodyLimit: RequestHandler = (request, response, next) => {
 	if (isTooLarge)
 		plainPage(response.status(413), "Too large", "What was sent is too large. Go back and send less at once.")
 	else plainPage(response.status(411), "Length required", "The length of what is sent must be told first.")
+}
+
+/** A navigation of a page that runs asks for the same address with ".data" after it. */
+function mostBytes(path: string): number {
+	const page = path.replace(/\.data$/, "")
+	return LARGER_BODIES.find(([one]) => one.test(page))?.[1] ?? BODY_LIMIT_BYTES
 }
 
 /** Pages are made for the person who asks: no cache between may keep one. What a page says itself is added to this. */

@@ -63,6 +63,19 @@ it("a body over the limit gets a plain page and reaches nothing", async () => {
 	expect((await fetch(origin, { method: "POST", body: "a".repeat(1024 * 1024) })).status).toBe(200)
 })
 
+it("a check of a super may bring a photo of 10 MB, and no more", async () => {
+	await serve()
+	const megabyte = 1024 * 1024
+	for (const path of ["crop/checks", "crop/checks.data", "crop/yards/a", "crop/supers/a"]) {
+		const send = (bytes: number) =>
+			fetch(`${origin}/desk/larkmoor/${path}`, { method: "POST", body: "a".repeat(bytes) })
+		expect([path, (await send(11 * megabyte)).status]).toEqual([path, 200])
+		expect([path, (await send(11 * megabyte + 1)).status]).toEqual([path, 413])
+	}
+	const elsewhere = await fetch(`${origin}/desk/larkmoor/crop`, { method: "POST", body: "a".repeat(megabyte + 1) })
+	expect(elsewhere.status).toBe(413)
+})
+
 it("a body whose length is not told is refused, since it could grow without end", async () => {
 	await serve()
 	const outgoing = request(origin, { method: "POST", headers: { "transfer-encoding": "chunked" } })
