@@ -26,7 +26,7 @@ export type SuperFacts = {
 export const CHECKS_LOOKED_AT = 4
 
 /** Days between two checks that tell whether the flow still brings honey; common practice, no source. */
-const FLOW_DAYS = 7
+export const FLOW_DAYS = 7
 
 /** The latest look into a super, or null when nobody has looked yet. */
 export function latestCheck(facts: Pick<SuperFacts, "checks">): SuperCheck | null {
@@ -42,12 +42,12 @@ export function checkBefore({ checks }: Pick<SuperFacts, "checks">, daysEarlier 
 
 /**
  * Whether the flow has stopped for this super: its filled share did not rise between the latest check and the last one
- * at least seven days before it. A super that is filled through and one that is empty tell nothing of the flow.
+ * at least seven days before it. A super that is filled through tells nothing of it.
  */
 export function isFlowCutOff(facts: Pick<SuperFacts, "checks">): boolean {
 	const latest = latestCheck(facts)
 	const before = checkBefore(facts, FLOW_DAYS)
-	if (!latest || !before || latest.filledPercent === 0 || latest.filledPercent === 100) return false
+	if (!latest || !before || latest.filledPercent === 100) return false
 	return latest.filledPercent <= before.filledPercent
 }
 
