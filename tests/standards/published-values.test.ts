@@ -1,6 +1,8 @@
 import { expect, test } from "vitest"
 import { holdAllocation } from "./allocation"
 import { holdCalendar } from "./calendar"
+import { holdGrades } from "./grades"
+import { holdKeeping } from "./keeping"
 import { holdLabelling } from "./labelling"
 import { holdPlanning } from "./planning"
 import { heldTo, ownValuesPath, readValues } from "./published-values"
@@ -55,7 +57,16 @@ const values = readValues(valuesPath)
 const lines = notYetRuled(values)
 console.info([`Published values from ${valuesPath.split("/").at(-1)}`, ...lines].join("\n"))
 
-for (const hold of [holdTerms, holdPlanning, holdCalendar, holdLabelling, holdAllocation, holdTraceability])
+for (const hold of [
+	holdTerms,
+	holdPlanning,
+	holdCalendar,
+	holdLabelling,
+	holdAllocation,
+	holdTraceability,
+	holdGrades,
+	holdKeeping,
+])
 	hold(values)
 
 test("every rule held to published values has values in the repository's own file", () => {

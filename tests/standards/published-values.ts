@@ -1,5 +1,6 @@
 import { readFileSync } from "node:fs"
 import { z } from "zod"
+import { combGradesShape, keepingShape } from "./grade-shapes"
 
 const day = z.iso.date()
 const text = z.string()
@@ -7,6 +8,8 @@ const amounts = z.array(z.number())
 
 /** The shapes of the values that a rule of the product is held to; keys beside these are let through and reported. */
 const valuesSchema = z.looseObject({
+	comb_grades: combGradesShape.optional(),
+	storage_and_freezing: z.looseObject({ ...keepingShape }).optional(),
 	terms: z
 		.looseObject({ due_dates: z.array(z.record(text, day)).optional(), ageing: z.array(text).optional() })
 		.optional(),
@@ -91,4 +94,12 @@ export const heldTo: Record<string, readonly string[]> = {
 	"traceability.exclusions_1_327": ["direct_to_consumer_sales"],
 	"traceability.retail_food_establishment": [],
 	"traceability.food_traceability_list": [],
+	"comb_grades.wisconsin": [],
+	"comb_grades.usda_comb_1967": [],
+	"comb_grades.usda_colour_mm_pfund": [],
+	"comb_grades.historic": [],
+	"comb_grades.california": [],
+	"storage_and_freezing.fermentation": ["moisture_pct", "risk"],
+	"storage_and_freezing.granulation": [],
+	"storage_and_freezing.usda_moisture_max": [],
 }
