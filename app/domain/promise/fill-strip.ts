@@ -1,12 +1,12 @@
 import { compareDays, type Day } from "~/domain/calendar"
-import { freeToPromise, type Outlook, type SupplyKind } from "./free-to-promise"
+import { canServe, freeToPromise, type Outlook, type SupplyKind } from "./free-to-promise"
 
 /** What a fill strip shows for one day; the three parts sum to what is free to promise. */
 export type StripOnDay = {
 	day: Day
 	/** Free on released stock alone. */
 	free: number
-	/** What held lots add, and the day by which the last of them is to be released. */
+	/** What held lots add, and the day by which the last of those that keep until the day is to be released. */
 	held: number
 	heldUntil: Day | null
 	/** What the low figure from the hives adds, and the day on which the last of it is due. */
@@ -42,7 +42,8 @@ export function fillStrips(outlook: Outlook & { days: readonly Day[] }): StripOn
 		const free = onFree[index]?.free ?? 0
 		const held = (onHeld[index]?.free ?? 0) - free
 		const expected = (onAll[index]?.free ?? 0) - free - held
-		const lastOn = (kind: SupplyKind) => supplies.findLast((supply) => supply.kind === kind && supply.on <= day)?.on
+		const lastOn = (kind: SupplyKind) =>
+			supplies.findLast((supply) => supply.kind === kind && canServe(supply, day))?.on
 		const next = supplies.find((supply) => supply.on > day)
 		return {
 			day,

@@ -23,7 +23,7 @@ export type Origin = Place | null
  * Moves that make sense. Pieces come off the hives into the cold room and are released to ready; they are packed, loaded
  * and sold, or go to a market day and are sold there; what does not sell comes back to ready; an undone sale at the stall
  * goes back to its market day; broken pieces are waste or are cut up from wherever they are. What lies on the shelves can
- * be regrouped into another lot, can be missed at a count, and can be found again.
+ * be regrouped into another lot; what a count does not find there or on a market's table is missing, and can be found.
  */
 const MOVES: Record<Place | "hive", readonly Place[]> = {
 	hive: ["cold-room"],
@@ -31,12 +31,12 @@ const MOVES: Record<Place | "hive", readonly Place[]> = {
 	ready: ["cold-room", "packed", "market", "sold", "waste", "cut-up", "other-lot", "missing"],
 	packed: ["ready", "van", "sold", "waste", "cut-up"],
 	van: ["packed", "ready", "sold", "waste"],
-	market: ["ready", "sold", "waste", "cut-up"],
+	market: ["ready", "sold", "waste", "cut-up", "missing"],
 	sold: ["market", "ready", "waste"],
 	waste: [],
 	"cut-up": [],
 	"other-lot": [],
-	missing: ["cold-room", "ready", "waste"],
+	missing: ["cold-room", "ready", "market", "waste"],
 }
 
 /** Whether pieces may go from one place to another. This product's own rule. */

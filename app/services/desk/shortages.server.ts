@@ -1,4 +1,5 @@
 import type { Day } from "~/domain/calendar"
+import { unkeptPromises } from "~/domain/promise/unkept-promises"
 import { type CaseStrip, caseStrips } from "~/services/orders/cases-on-day.server"
 import { promiseDay } from "~/services/orders/find-most-cases.server"
 import type { ProductOutlook } from "~/services/promise/find-outlooks.server"
@@ -14,7 +15,7 @@ export type Shortage = {
 	stores: number
 	/** What can be ready for them. */
 	strip: CaseStrip
-	/** What has been promised beyond all that will be there. */
+	/** What has been promised for the day beyond all that will be there. */
 	overPromisedCases: number
 	shortCases: number
 }
@@ -64,17 +65,7 @@ function blank(
 		toShareCases: 0,
 		stores: 0,
 		strip,
-		overPromisedCases: overPromised(outlook, deliveryOn),
+		overPromisedCases: Math.ceil((unkeptPromises(outlook).get(deliveryOn) ?? 0) / outlook.piecesPerCase),
 		shortCases: 0,
 	}
-}
-
-/** Cases promised for `on` that nothing covers, those that were missing on an earlier day left out. */
-function overPromised(outlook: ProductOutlook, on: Day): number {
-	const until = (entries: readonly { on: Day; quantity: number }[], isCounted: (day: Day) => boolean) =>
-		entries.reduce((sum, entry) => sum + (isCounted(entry.on) ? entry.quantity : 0), 0)
-	const missing = (isCounted: (day: Day) => boolean) =>
-		Math.max(0, until(outlook.promises, isCounted) - until(outlook.supplies, isCounted))
-	const pieces = missing((day) => day <= on) - missing((day) => day < on)
-	return Math.max(0, Math.ceil(pieces / outlook.piecesPerCase))
 }

@@ -4,6 +4,7 @@ import { readProducer, type Tx } from "~/db/transaction.server"
 import { addDays, type Day } from "~/domain/calendar"
 import type { OrderState } from "~/domain/orders/order-states"
 import type { DeliveryTerms } from "~/domain/pricing/price-order"
+import { canServe } from "~/domain/promise/free-to-promise"
 import {
 	deliveryDayOn,
 	deliveryDaysOf,
@@ -77,7 +78,7 @@ async function readSheet(tx: Tx, query: SheetQuery): Promise<OrderSheet | null> 
 				toShareCases: toShare.get(product.productId) ?? 0,
 				lastCases: casesOn(ownLines, lastOn, product.productId),
 				orderedCases: casesOn(ownLines, day.on, product.productId),
-				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && supply.on <= day.on),
+				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && canServe(supply, day.on)),
 			}
 		}),
 		orders: ordersOn(ownLines, day.on),

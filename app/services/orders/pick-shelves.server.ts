@@ -1,6 +1,7 @@
 import { sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
+import { CULLS } from "~/domain/lots/count-harvest"
 import { type AssignableLot, type AssignableOrder, assignLots } from "~/domain/promise/assign-lots"
 
 /** Pieces of a released lot in one place. */
@@ -16,7 +17,7 @@ export type Shelf = {
 /** So much of a shelf for one order. */
 export type ShelfPick = Shelf & { orderId: string }
 
-/** What lies released in the cold room and on the ready shelf, of these products, and keeps until `on`. One statement. */
+/** What lies released in the cold room and on the ready shelf, of these products, no culls, and keeps until `on`. */
 export async function findShelves(
 	tx: Tx,
 	query: { producerId: string; productIds: readonly string[]; on: Day },
@@ -27,7 +28,7 @@ export async function findShelves(
 		from lots l
 		join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
 		where l.producer_id = ${query.producerId} and l.product_id = any(${sql.param(query.productIds)}::uuid[])
-			and l.state = 'released' and l.best_before_on >= ${query.on}
+			and l.state = 'released' and l.best_before_on >= ${query.on} and l.grade <> ${CULLS}
 			and b.place in ('ready', 'cold-room') and b.pieces > 0
 		order by l.id, b.place`)
 	return rows

@@ -3,6 +3,7 @@ import { describe, expect, test } from "vitest"
 import { addDays } from "~/domain/calendar"
 import { fillStrips } from "~/domain/promise/fill-strip"
 import { freeToPromise, type Outlook } from "~/domain/promise/free-to-promise"
+import { mostServed } from "./most-served"
 
 const nothing: Outlook = { supplies: [], promises: [], reserve: 0 }
 
@@ -95,13 +96,89 @@ describe("free to promise", () => {
 		)
 	})
 
-	test("what is free never falls from one day to the next", () => {
+	test("where nothing expires, what is free never falls from one day to the next", () => {
 		fc.assert(
 			fc.property(anyOutlook, (outlook) => {
 				const figures = freeToPromise({ ...outlook, days }).map((on) => on.raw)
 				for (const [index, figure] of figures.entries())
 					expect(figure).toBeGreaterThanOrEqual(figures[index - 1] ?? figure)
 			}),
+		)
+	})
+
+	test("a lot serves no day after its best-before", () => {
+		const outlook: Outlook = {
+			supplies: [{ on: "2026-08-13", until: "2026-08-20", quantity: 20, kind: "free" }],
+			promises: [],
+			reserve: 0,
+		}
+		const days = ["2026-08-20", "2026-08-21"]
+		expect(freeToPromise({ ...outlook, days }).map((on) => on.free)).toEqual([20, 0])
+	})
+
+	test("a lot that is soon over serves the earlier promise, and takes nothing from later days", () => {
+		const outlook: Outlook = {
+			supplies: [
+				{ on: "2026-08-13", until: "2026-08-20", quantity: 10, kind: "free" },
+				{ on: "2026-08-13", until: "2026-12-01", quantity: 10, kind: "free" },
+			],
+			promises: [{ on: "2026-08-18", quantity: 8 }],
+			reserve: 0,
+		}
+		const days = ["2026-08-18", "2026-08-25"]
+		expect(freeToPromise({ ...outlook, days }).map((on) => on.free)).toEqual([12, 10])
+	})
+
+	test("what cannot be kept by a lot that is over is taken from the lot that keeps longer", () => {
+		const outlook: Outlook = {
+			supplies: [
+				{ on: "2026-08-13", until: "2026-08-20", quantity: 10, kind: "free" },
+				{ on: "2026-08-13", until: "2026-12-01", quantity: 10, kind: "free" },
+			],
+			promises: [
+				{ on: "2026-08-18", quantity: 14 },
+				{ on: "2026-08-25", quantity: 2 },
+			],
+			reserve: 1,
+		}
+		const days = ["2026-08-18", "2026-08-25"]
+		expect(freeToPromise({ ...outlook, days }).map((on) => on.free)).toEqual([3, 3])
+	})
+
+	test("with lots that expire, it is the largest quantity that any search finds room for", () => {
+		const date = fc.integer({ min: 10, max: 16 })
+		const lot = fc.tuple(date, date, fc.nat(3)).map(([a, b, quantity]) => ({
+			on: `2026-08-${Math.min(a, b)}`,
+			until: `2026-08-${Math.max(a, b)}`,
+			quantity,
+			kind: "free" as const,
+		}))
+		const promise = fc.record({ on: date.map((on) => `2026-08-${on}`), quantity: fc.nat(2) })
+		fc.assert(
+			fc.property(
+				fc.array(lot, { maxLength: 4 }),
+				fc.array(promise, { maxLength: 3 }),
+				date,
+				(supplies, promises, on) => {
+					const day = `2026-08-${on}`
+					const lots = supplies.map((supply, index) => ({
+						lotId: `L${index}`,
+						availableFrom: supply.on,
+						bestBefore: supply.until,
+						pieces: supply.quantity,
+					}))
+					const asked = promises.map((one, index) => ({ orderId: `O${index}`, on: one.on, pieces: one.quantity }))
+					const fits = (extra: number) => {
+						const orders = [...asked, { orderId: "more", on: day, pieces: extra }]
+						return mostServed(lots, orders) === orders.reduce((sum, order) => sum + order.pieces, 0)
+					}
+					if (!fits(0)) return
+					const [answer] = freeToPromise({ supplies, promises, reserve: 0, days: [day] })
+					expect(fits(answer?.raw ?? -1)).toBe(true)
+					expect(fits((answer?.raw ?? -1) + 1)).toBe(false)
+				},
+			),
+			{ numRuns: 500 },
 		)
 	})
 
@@ -157,6 +234,18 @@ describe("the fill strip of a day", () => {
 			reserve: 0,
 		}
 		expect(fillStrips({ ...outlook, days: ["2026-08-18"] })[0]).toMatchObject({ free: 0, held: 8, expected: 0 })
+	})
+
+	test("a held lot that is over by the day is not named as what the day waits for", () => {
+		const outlook: Outlook = {
+			supplies: [
+				{ on: "2026-08-14", until: "2026-12-01", quantity: 6, kind: "held" },
+				{ on: "2026-08-20", until: "2026-08-22", quantity: 6, kind: "held" },
+			],
+			promises: [],
+			reserve: 0,
+		}
+		expect(fillStrips({ ...outlook, days: ["2026-08-25"] })[0]).toMatchObject({ held: 6, heldUntil: "2026-08-14" })
 	})
 
 	test("the parts are never negative and sum to what is free to promise", () => {

@@ -6,8 +6,13 @@ test("pieces come off the hives into the cold room and nowhere else", () => {
 	expect(places.filter((to) => mayGo(null, to))).toEqual(["cold-room"])
 })
 
-test("a held lot leaves the cold room only by being released, or as waste or cut comb", () => {
-	expect(places.filter((to) => mayGo("cold-room", to))).toEqual(["ready", "waste", "cut-up"])
+test("pieces leave the cold room for the ready shelf, as waste or cut comb, for another lot, or unfound at a count", () => {
+	expect(places.filter((to) => mayGo("cold-room", to))).toEqual(["ready", "waste", "cut-up", "other-lot", "missing"])
+})
+
+test("what a count did not find can be found again where counts are made, and is never sold from there", () => {
+	expect(places.filter((to) => mayGo("missing", to))).toEqual(["cold-room", "ready", "market", "waste"])
+	expect(places.filter((from) => mayGo(from, "missing"))).toEqual(["cold-room", "ready", "market"])
 })
 
 test("what a market day does not sell comes back, and an undone sale goes back to its market day", () => {
@@ -16,8 +21,9 @@ test("what a market day does not sell comes back, and an undone sale goes back t
 	expect(mayGo("sold", "market")).toBe(true)
 })
 
-test("what is waste or cut up never becomes comb to sell again, and nothing moves to where it is", () => {
+test("what is waste, cut up or another lot's never becomes comb to sell again, and nothing moves to where it is", () => {
 	for (const place of places) {
+		expect(mayGo("other-lot", place)).toBe(false)
 		expect(mayGo("waste", place)).toBe(false)
 		expect(mayGo("cut-up", place)).toBe(false)
 		expect(mayGo(place, place)).toBe(false)
