@@ -8,6 +8,7 @@ import * as paymentReceived from "./payment-received"
 import * as signInCode from "./sign-in-code"
 import * as signInUnknown from "./sign-in-unknown"
 import * as standingOrderSet from "./standing-order-set"
+import * as withdrawal from "./withdrawal"
 
 /** A file that goes with a letter. */
 export interface MailAttachment {
@@ -37,6 +38,7 @@ export const templates = {
 	invoice: letter(invoice),
 	"payment-received": letter(paymentReceived),
 	"standing-order-set": letter(standingOrderSet),
+	withdrawal: letter(withdrawal),
 }
 
 export type TemplateName = keyof typeof templates

@@ -5,6 +5,7 @@ type Refusal =
 	| { reason: "not-placed" | "too-late" | "not-packed"; state: string }
 	| { reason: "not-confirmed"; state: string }
 	| { reason: "lines"; refused: { reason: "more-than-asked" | "more-than-free"; mostCases: number }[] }
+	| { reason: "lot-withdrawn"; lotCode: string }
 	| { reason: "lots-too-few"; productName: string; missingPieces: number }
 
 /** Why a step of an order was refused, as one sentence for the head of the page. */
@@ -26,6 +27,8 @@ export function orderProblem(number: number, refusal: Refusal): string {
 				: `Order ${number} is not confirmed any more. Nothing was changed.`
 		case "lines":
 			return `Order ${number} cannot be met in full any more. Open it and decide what it gets.`
+		case "lot-withdrawn":
+			return `Order ${number} was packed from lot ${refusal.lotCode}, which is withdrawn. It must not leave: cancel it and put its pieces back.`
 		case "lots-too-few":
 			return `${refusal.missingPieces} pieces of ${refusal.productName.toLowerCase()} are missing on the shelves: no released lot has them. Nothing was moved.`
 	}

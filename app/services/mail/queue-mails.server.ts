@@ -1,0 +1,36 @@
+import { sql } from "drizzle-orm"
+import { outboxMails } from "~/db/schema"
+import type { Tx } from "~/db/transaction.server"
+import type { Letter } from "~emails/templates"
+
+/** More rows than this in one statement would come near the number of values that the protocol takes. */
+const AT_ONCE = 1_000
+
+/**
+ * Puts many letters of one event into the outbox, as `queueMail` does with one, in a statement for each thousand. Gone on
+ * rollback; what is written under its key already is not written again.
+ */
+export async function queueMails(
+	tx: Tx,
+	producerId: string,
+	mails: readonly (Letter & { to: string; onceKey: string })[],
+): Promise<void> {
+	for (let from = 0; from < mails.length; from += AT_ONCE) {
+		const rows = await tx
+			.insert(outboxMails)
+			.values(
+				mails.slice(from, from + AT_ONCE).map(({ to, template, props, onceKey }) => ({
+					producerId,
+					recipient: to,
+					template,
+					props,
+					onceKey,
+				})),
+			)
+			.onConflictDoNothing()
+			.returning({ id: outboxMails.id })
+		await tx.execute(sql`
+			select jobs.enqueue('send-mail', json_build_object('producerId', ${producerId}::uuid, 'mailId', m.id), now())
+			from unnest(${sql.param(rows.map(({ id }) => id))}::uuid[]) as m (id)`)
+	}
+}
