@@ -15,11 +15,15 @@ export type TableItem = {
 
 type Row = { id: string; code: string; form: Form; flora: string; piece_cents: number; left: number; brought: number }
 
-/** What stands on the table on a market day, in the order of the price list. Products that were not brought are left out. */
+/**
+ * What stands on the table on a market day, in the order of the price list. Products that were not brought are left
+ * out, and pieces of a withdrawn lot are none that can be sold.
+ */
 export async function findTable(tx: Tx, query: { producerId: string; dayId: string }): Promise<TableItem[]> {
 	const { rows } = await tx.execute<Row>(sql`
 		select p.id, p.code, p.form, p.flora, p.piece_cents,
-			coalesce(sum(b.pieces) filter (where b.place = 'market'), 0)::int as "left", sum(b.pieces)::int as brought
+			coalesce(sum(b.pieces) filter (where b.place = 'market' and l.state <> 'withdrawn'), 0)::int as "left",
+			sum(b.pieces)::int as brought
 		from stock_balances b
 		join lots l on l.producer_id = b.producer_id and l.id = b.lot_id
 		join products p on p.producer_id = l.producer_id and p.id = l.product_id

@@ -108,7 +108,8 @@ async function pickFromTable(
 		select l.product_id, b.lot_id, l.best_before_on::text, b.pieces
 		from stock_balances b
 		join lots l on l.producer_id = b.producer_id and l.id = b.lot_id
-		where b.producer_id = ${producerId} and b.place = 'market' and b.place_ref = ${day.id} and b.pieces > 0`)
+		where b.producer_id = ${producerId} and b.place = 'market' and b.place_ref = ${day.id} and b.pieces > 0
+			and l.state <> 'withdrawn'`)
 	return items.flatMap(({ productId, pieces }) => {
 		const lots = rows
 			.filter((row) => row.product_id === productId)
