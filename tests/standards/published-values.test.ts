@@ -1,9 +1,11 @@
 import { expect, test } from "vitest"
 import { holdAllocation } from "./allocation"
+import { holdBarcodes } from "./barcodes"
 import { holdCalendar } from "./calendar"
 import { holdGrades } from "./grades"
 import { holdKeeping } from "./keeping"
 import { holdLabelling } from "./labelling"
+import { holdNetContents } from "./net-contents"
 import { holdPlanning } from "./planning"
 import { heldTo, ownValuesPath, readValues } from "./published-values"
 import { holdTerms } from "./terms"
@@ -62,6 +64,8 @@ for (const hold of [
 	holdPlanning,
 	holdCalendar,
 	holdLabelling,
+	holdNetContents,
+	holdBarcodes,
 	holdAllocation,
 	holdTraceability,
 	holdGrades,
@@ -91,11 +95,11 @@ test("every entry of the repository's own file names its source and how sure it 
 test("a topic without a rule and a column that nothing reads are both told", () => {
 	const told = notYetRuled({
 		meta: { title: "not a topic" },
-		barcodes: { check_digit: { rule: "…" }, source: "GS1" },
+		routing: { tours: { rule: "…" }, source: "a book" },
 		planning: { atp: [{ id: "X", on_hand: 1, discrete_raw: [1] }], newsvendor: [{ id: "NV" }] },
 	})
 	expect(told).toEqual([
-		"No rule yet for barcodes: check_digit",
+		"No rule yet for routing: tours",
 		"No rule yet for planning: newsvendor",
 		"No rule yet for part of planning.atp: discrete_raw",
 	])

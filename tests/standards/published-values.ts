@@ -1,6 +1,7 @@
 import { readFileSync } from "node:fs"
 import { z } from "zod"
 import { combGradesShape, keepingShape } from "./grade-shapes"
+import { barcodesShape, labellingShape, netContentsShape, scaleHeldTo } from "./scale-shapes"
 
 const day = z.iso.date()
 const text = z.string()
@@ -38,14 +39,9 @@ const valuesSchema = z.looseObject({
 				.optional(),
 		})
 		.optional(),
-	labelling: z
-		.looseObject({
-			computed_price: z
-				.looseObject({ examples: z.array(z.looseObject({ weight: text, unit_price: text, half_up: text })) })
-				.optional(),
-			declarations: z.array(z.looseObject({ net_oz: z.number(), text })).optional(),
-		})
-		.optional(),
+	net_contents: netContentsShape.optional(),
+	barcodes: barcodesShape.optional(),
+	labelling: labellingShape.optional(),
 	allocation: z
 		.looseObject({
 			largest_remainder: z
@@ -85,8 +81,7 @@ export const heldTo: Record<string, readonly string[]> = {
 	"terms.ageing": [],
 	"planning.atp": ["on_hand", "mps", "orders", "cumulative_without_lookahead", "cumulative_with_lookahead"],
 	"calendar.rrule": ["dtstart", "tzid", "rrule", "dates"],
-	"labelling.computed_price": ["weight", "unit_price", "half_up"],
-	"labelling.declarations": ["net_oz", "text (its grams)"],
+	...scaleHeldTo,
 	"allocation.largest_remainder": ["weights", "total", "result"],
 	"traceability.receive_1_337": [],
 	"traceability.release_1_345": [],
