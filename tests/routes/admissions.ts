@@ -74,6 +74,13 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/orders": { loader: OFFICE },
 	"routes/desk/order": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "confirm" } } },
 	"routes/desk/packing": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: onOrder("pack") } },
+	// The crop: whoever works in the yard sees it.
+	"routes/desk/crop": { loader: COLD_ROOM },
+	// In the yard: whoever works for the producer looks into supers. A check of no super is a refusal in words.
+	"routes/desk/check": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/yard-round": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/super": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/super-photo": { loader: COLD_ROOM },
 	"routes/desk/lots": { loader: COLD_ROOM },
 	"routes/desk/lot": { loader: COLD_ROOM },
 	"routes/desk/invoices": { loader: OFFICE },

@@ -1,7 +1,8 @@
+import type { SectionState } from "~/domain/crop/super-drawing"
 import { FillStrip } from "~/ui/stock/fill-strip"
 import { StockKey } from "~/ui/stock/stock-key"
 import type { StockState } from "~/ui/stock/strip-geometry"
-import { type SectionState, SuperBlock } from "~/ui/stock/super-block"
+import { SuperBlock } from "~/ui/stock/super-block"
 import { PartGroup, State, States } from "./shown"
 
 const MEANINGS: [StockState, string, string][] = [
@@ -126,7 +127,13 @@ export function StockParts() {
 						<SuperBlock sections={row(["bare", 40])} label="Just set on" />
 					</State>
 					<State caption="Not looked at for 10 days: last seen August 3.">
-						<SuperBlock sections={[]} label="Last seen August 3" />
+						<SuperBlock sections={AT_WORK} isUnseen label="Last seen August 3" />
+					</State>
+					<State caption="A large box keeps its width.">
+						<SuperBlock sections={row(["capped", 30], ["full", 30], ["bare", 60])} label="120 sections, 25 % capped" />
+					</State>
+					<State caption="Not read yet: the box alone.">
+						<SuperBlock sections={[]} label="Not read yet" />
 					</State>
 				</States>
 			</PartGroup>
