@@ -4,7 +4,7 @@ import { type Tx, withProducer } from "~/db/transaction.server"
 import { canMove } from "~/domain/orders/order-states"
 import { type LockedOrder, lockOrder } from "./lock-order.server"
 import { lockProducts } from "./lock-products.server"
-import { findShelves, pickShelves, type ShelfPick } from "./pick-shelves.server"
+import { lockShelves, pickShelves, type ShelfPick } from "./pick-shelves.server"
 import { recordChange } from "./record-change.server"
 
 export type Packing =
@@ -45,7 +45,7 @@ async function pickLots(tx: Tx, query: { producerId: string; order: LockedOrder 
 	const { producerId, order } = query
 	const productIds = order.lines.map((line) => line.productId)
 	await lockProducts(tx, { producerId, productIds })
-	const shelves = await findShelves(tx, { producerId, productIds, on: order.deliveryOn })
+	const shelves = await lockShelves(tx, { producerId, productIds, on: order.deliveryOn })
 	const lines: (typeof orderLineLots.$inferInsert)[] = []
 	const taken: ShelfPick[] = []
 	for (const line of order.lines) {

@@ -35,6 +35,27 @@ export async function findShelves(
 }
 
 /**
+ * The same shelves, their lots locked in the order of their ids until the transaction ends: nobody moves, releases or
+ * withdraws what is about to be packed. Lock the products first.
+ */
+export async function lockShelves(
+	tx: Tx,
+	query: { producerId: string; productIds: readonly string[]; on: Day },
+): Promise<Shelf[]> {
+	await tx.execute(sql`
+		select l.id from lots l
+		where l.producer_id = ${query.producerId} and l.product_id = any(${sql.param(query.productIds)}::uuid[])
+			and l.state = 'released' and l.best_before_on >= ${query.on}
+			and exists (
+				select from stock_balances b
+				where b.producer_id = l.producer_id and b.lot_id = l.id and b.place in ('ready', 'cold-room') and b.pieces > 0
+			)
+		order by l.id for update`)
+	// Read after the locks are held: moves that were waited for are seen.
+	return findShelves(tx, query)
+}
+
+/**
  * Which shelves of one product serve which order: earliest best-before first, and within a lot the ready shelf before
  * the cold room. `missing` is how many pieces no lot can give.
  */
