@@ -1,5 +1,6 @@
 import { describe, expect, test } from "vitest"
 import { splitByLargestRemainder } from "~/domain/money"
+import { exactShares } from "~/domain/sharing/share-out"
 import type { PublishedValues } from "./published-values"
 
 /** Weights as whole numbers in the same proportion: decimals are moved until none is left. */
@@ -8,9 +9,36 @@ function wholeWeights(weights: readonly number[]): number[] {
 	return weights.map((weight) => Math.round(weight * 10 ** places))
 }
 
-/** Makes one test of each split by largest remainder. */
+/** The columns of the published tables, and the rule of the product that each is of. */
+const RULES = [
+	["proportional", "in-proportion"],
+	["constrained_equal_awards", "equal-shares"],
+	["constrained_equal_losses", "equal-shortfall"],
+] as const
+
+/** Makes one test of each column of a table of the claims problem, and of each split by largest remainder. */
 export function holdAllocation({ allocation }: PublishedValues): void {
 	const examples = allocation?.largest_remainder ?? []
+	const columns = (allocation?.tables ?? []).flatMap((table) =>
+		RULES.flatMap(([column, rule]) => {
+			const shares = table[column]
+			return shares ? [{ ...table, column, rule, shares }] : []
+		}),
+	)
+
+	if (columns.length > 0) {
+		describe("claims on an estate", () => {
+			test.each(columns)("$column of $estate over $claims", ({ estate, claims, rule, shares }) => {
+				const ours = exactShares(
+					estate,
+					claims.map((asked) => ({ asked, weight: 1 })),
+					rule,
+				)
+				expect(ours).toHaveLength(shares.length)
+				for (const [index, { decimal }] of shares.entries()) expect(ours[index]).toBeCloseTo(decimal, 5)
+			})
+		})
+	}
 
 	if (examples.length > 0) {
 		describe("largest remainder", () => {

@@ -21,7 +21,7 @@ function isSections(value: unknown): value is Sections {
 }
 
 /** Sections that say in words what another section's figures mean. */
-const EXPLAINING = /_status$|^atp_definitions$|^remainder_rule$/
+const EXPLAINING = /_status$|definitions$|^remainder_rule$/
 
 /** The sections of one topic that hold something to check; notes about them are text. */
 function sectionsOf(topic: unknown): string[] {

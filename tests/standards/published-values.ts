@@ -7,6 +7,9 @@ const day = z.iso.date()
 const text = z.string()
 const amounts = z.array(z.number())
 
+/** A share of an estate, as a fraction and as a decimal. */
+const shareShape = z.looseObject({ exact: text.optional(), decimal: z.number() })
+
 /** The shapes of the values that a rule of the product is held to; keys beside these are let through and reported. */
 const valuesSchema = z.looseObject({
 	comb_grades: combGradesShape.optional(),
@@ -44,6 +47,17 @@ const valuesSchema = z.looseObject({
 	labelling: labellingShape.optional(),
 	allocation: z
 		.looseObject({
+			tables: z
+				.array(
+					z.looseObject({
+						estate: z.number(),
+						claims: amounts,
+						proportional: z.array(shareShape).optional(),
+						constrained_equal_awards: z.array(shareShape).optional(),
+						constrained_equal_losses: z.array(shareShape).optional(),
+					}),
+				)
+				.optional(),
 			largest_remainder: z
 				.array(z.looseObject({ id: text, weights: amounts, total: z.number(), result: amounts }))
 				.optional(),
@@ -82,6 +96,7 @@ export const heldTo: Record<string, readonly string[]> = {
 	"planning.atp": ["on_hand", "mps", "orders", "cumulative_without_lookahead", "cumulative_with_lookahead"],
 	"calendar.rrule": ["dtstart", "tzid", "rrule", "dates"],
 	...scaleHeldTo,
+	"allocation.tables": ["estate", "claims", "proportional", "constrained_equal_awards", "constrained_equal_losses"],
 	"allocation.largest_remainder": ["weights", "total", "result"],
 	"traceability.receive_1_337": [],
 	"traceability.release_1_345": [],
