@@ -2,6 +2,7 @@ import { expect, test } from "vitest"
 import { holdAllocation } from "./allocation"
 import { holdBarcodes } from "./barcodes"
 import { holdCalendar } from "./calendar"
+import { holdFreezing } from "./freezing"
 import { holdGrades } from "./grades"
 import { holdKeeping } from "./keeping"
 import { holdLabelling } from "./labelling"
@@ -70,6 +71,7 @@ for (const hold of [
 	holdTraceability,
 	holdGrades,
 	holdKeeping,
+	holdFreezing,
 ])
 	hold(values)
 

@@ -1,5 +1,6 @@
 import { readFileSync } from "node:fs"
 import { z } from "zod"
+import { freezingHeldTo, freezingShape } from "./freezing"
 import { combGradesShape, keepingShape } from "./grade-shapes"
 import { barcodesShape, labellingShape, netContentsShape, scaleHeldTo } from "./scale-shapes"
 
@@ -13,7 +14,7 @@ const shareShape = z.looseObject({ exact: text.optional(), decimal: z.number() }
 /** The shapes of the values that a rule of the product is held to; keys beside these are let through and reported. */
 const valuesSchema = z.looseObject({
 	comb_grades: combGradesShape.optional(),
-	storage_and_freezing: z.looseObject({ ...keepingShape }).optional(),
+	storage_and_freezing: z.looseObject({ ...keepingShape, ...freezingShape }).optional(),
 	terms: z
 		.looseObject({ due_dates: z.array(z.record(text, day)).optional(), ageing: z.array(text).optional() })
 		.optional(),
@@ -109,6 +110,7 @@ export const heldTo: Record<string, readonly string[]> = {
 	"comb_grades.usda_colour_mm_pfund": [],
 	"comb_grades.historic": [],
 	"comb_grades.california": [],
+	...freezingHeldTo,
 	"storage_and_freezing.fermentation": ["moisture_pct", "risk"],
 	"storage_and_freezing.granulation": [],
 	"storage_and_freezing.usda_moisture_max": [],
