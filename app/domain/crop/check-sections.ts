@@ -1,19 +1,16 @@
-/** One section of a super, from bare comb foundation to fully capped; its place in the list is its code. */
-export const SECTION_STATES = ["bare", "begun", "filling", "full", "capped"] as const
-
-export type SectionState = (typeof SECTION_STATES)[number]
-
 const ROWS = 4
-const MOST_ACROSS = 20
+const FEWEST = 12
+const MOST = 48
 
 /**
  * How the sections of a super lie, seen from above: four rows of as many as its capacity gives, which is ten for the usual
- * forty. Null where the capacity does not make four even rows of at most twenty; such a super is checked by shares alone.
- * Common practice, no source.
+ * forty. Null where they lie in no four even rows (under 12, over 48, or odd ones over); such a super is checked by shares
+ * alone. Common practice, no source.
  */
 export function layoutOf(capacityPieces: number): { rows: number; across: number } | null {
 	const across = capacityPieces / ROWS
-	return Number.isInteger(across) && across <= MOST_ACROSS ? { rows: ROWS, across } : null
+	if (!Number.isInteger(across) || capacityPieces < FEWEST || capacityPieces > MOST) return null
+	return { rows: ROWS, across }
 }
 
 /** How many taps fill a row from the middle: each lays one section on either side; in an odd row the first lays one. */
@@ -50,9 +47,4 @@ export function sharesOfSections(sections: string): SectionShares {
 	const percent = (of: number) => Math.round((of * 100) / sections.length)
 	const capped = count("4")
 	return { filledPercent: percent(capped + count("3") + count("2") / 2), cappedPercent: percent(capped) }
-}
-
-/** The sections of a stored check in words for its drawing, row by row; empty when only shares were noted. */
-export function statesOfSections(sections: string): SectionState[] {
-	return [...sections].map((code) => SECTION_STATES[Number(code)] ?? "bare")
 }

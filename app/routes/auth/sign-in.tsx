@@ -1,9 +1,11 @@
+import { useEffect } from "react"
 import { data, Form, redirect } from "react-router"
 import { clientNetwork } from "~/platform/client-network.server"
 import { findLanding } from "~/services/people/find-landing.server"
 import { readKeptPostTicket } from "~/services/people/kept-post-cookie.server"
 import { requestCode } from "~/services/people/request-code.server"
 import { safeTarget } from "~/services/people/safe-target.server"
+import { forgetKeptPages } from "~/ui/crop/yard-offline"
 import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
 import { TextField } from "~/ui/forms/fields"
@@ -39,6 +41,8 @@ export const action = guard(admits.anyone, async ({ request, url }: Route.Action
 
 export default function SignIn({ loaderData, actionData }: Route.ComponentProps) {
 	const error = actionData?.error
+	// Signing out leads here; what the last person could open without signal goes with their session.
+	useEffect(forgetKeptPages, [])
 	return (
 		<PlainPage title="Sign in" lead="We send a six-digit code to your e-mail address. There is no password.">
 			{error && <ErrorSummary errors={[error]} />}

@@ -1,7 +1,8 @@
 import fc from "fast-check"
 import { describe, expect, test } from "vitest"
 import { judgeCheck, NOTE_LENGTH, type TypedCheck } from "~/domain/crop/check-rules"
-import { layoutOf, rowFromMiddle, sharesOfSections, statesOfSections, tapsOfRow } from "~/domain/crop/check-sections"
+import { layoutOf, rowFromMiddle, sharesOfSections, tapsOfRow } from "~/domain/crop/check-sections"
+import { superGrid } from "~/domain/crop/super-drawing"
 
 const FACTS = { capacityPieces: 40, setOn: "2026-07-01", today: "2026-08-13" }
 const TYPED: TypedCheck = { by: "shares", rows: [], filled: "60", capped: "20", note: "", checkedOn: "2026-08-13" }
@@ -45,9 +46,16 @@ describe("a row of sections", () => {
 		)
 	})
 
+	test("lies in the drawing as it was tapped", () => {
+		for (let pieces = 1; pieces <= 400; pieces++) {
+			const layout = layoutOf(pieces)
+			if (layout) expect([pieces, superGrid(pieces)]).toEqual([pieces, layout])
+		}
+	})
+
 	test("is a fourth of a super of 40, 32, 28 or 24; others lie in no four rows", () => {
 		expect([40, 32, 28, 24].map((pieces) => layoutOf(pieces)?.across)).toEqual([10, 8, 7, 6])
-		expect([1, 30, 84, 400].map(layoutOf)).toEqual([null, null, null, null])
+		expect([1, 8, 30, 60, 400].map(layoutOf)).toEqual([null, null, null, null, null])
 	})
 })
 
@@ -72,11 +80,6 @@ describe("the shares of a super", () => {
 				expect(filledPercent).toBeLessThanOrEqual(100)
 			}),
 		)
-	})
-
-	test("are drawn section by section", () => {
-		expect(statesOfSections("01234")).toEqual(["bare", "begun", "filling", "full", "capped"])
-		expect(statesOfSections("")).toEqual([])
 	})
 })
 
