@@ -49,6 +49,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const invoiceId = randomUUID()
 	const marketDayId = randomUUID()
 	const saleId = randomUUID()
+	const [beeYardId, hiveId, superId, photoId] = [randomUUID(), randomUUID(), randomUUID(), randomUUID()]
 	const insert = async (table: string, row: Record<string, unknown>) => {
 		const columns = Object.keys(row)
 		const places = columns.map((_, index) => `$${index + 2}`)
@@ -121,6 +122,18 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			paid_at: new Date(),
 		})
 		await insert("sale_lines", { sale_id: saleId, product_id: productId, pieces: 1, piece_cents: 1400 })
+		await insert("yards", { id: beeYardId, name: "The Walked Yard" })
+		await insert("hives", { id: hiveId, yard_id: beeYardId, label: "Walked" })
+		// It has come off, so that no check of it is taken.
+		await insert("supers", {
+			id: superId,
+			hive_id: hiveId,
+			product_id: productId,
+			set_on: LONG_AGO,
+			state: "off",
+			off_on: LONG_AGO,
+		})
+		await insert("uploads", { id: photoId, media_type: "image/jpeg", content: Buffer.from("a photo") })
 		return idOf("select id from stores where slug = 'mossgate-grocers'")
 	})
 	const [openDay, lotCode, placed, otherMarketDay, productId] = await asProducer(owner, ourId, async () => [
@@ -143,6 +156,9 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			placed,
 			otherMarketDay,
 			marketDay: marketDayId,
+			yard: beeYardId,
+			super: superId,
+			photo: photoId,
 			sale: saleId,
 			// The token of no link that was ever sent.
 			token: "w".repeat(43),
@@ -161,6 +177,10 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("order_events", "order_id", orderId)
 				await del("order_lines", "order_id", orderId)
 				await del("orders", "id", orderId)
+				await del("uploads", "id", photoId)
+				await del("supers", "id", superId)
+				await del("hives", "id", hiveId)
+				await del("yards", "id", beeYardId)
 				await del("store_rounds", "store_id", storeId)
 				await del("memberships", "store_id", storeId)
 				await del("stores", "id", storeId)
