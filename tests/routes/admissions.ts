@@ -39,6 +39,9 @@ export const admissions: Record<string, Admission> = {
 	"routes/shop/home": { loader: "anyone" },
 	"routes/shop/open-a-desk": { loader: "signed-in", action: "signed-in" },
 	"routes/shop/front": { loader: "visitor" },
+	"routes/shop/lot": { loader: "visitor" },
+	// A link that was never sent is gone, for everyone.
+	"routes/shop/notice": { loader: "visitor", get: GONE, action: "visitor" },
 	"routes/parts": { loader: "anyone" },
 	// Called by Stripe alone, and only by POST; what is not signed is refused, whoever sends it.
 	"routes/webhooks/stripe": { loader: "anyone", get: { admitted: [405] }, action: "signer", post: { admitted: [400] } },
@@ -76,6 +79,11 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/packing": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: onOrder("pack") } },
 	// The crop: whoever works in the yard sees it.
 	"routes/desk/crop": { loader: COLD_ROOM },
+	// Nothing chosen, nothing changed.
+	"routes/desk/crop-mark": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: { intent: "escape-in" } } },
+	"routes/desk/crop-set-up": { loader: COLD_ROOM, action: OFFICE, post: { fields: { intent: "yard" } } },
+	"routes/desk/crop-set-up-yard": { loader: COLD_ROOM, action: OFFICE, post: { fields: { intent: "retire" } } },
+	"routes/desk/crop-settings": { loader: "desk: owner", action: "desk: owner", post: { fields: { figure: "none" } } },
 	// In the yard: whoever works for the producer looks into supers. A check of no super is a refusal in words.
 	"routes/desk/check": { loader: COLD_ROOM, action: COLD_ROOM },
 	"routes/desk/yard-round": { loader: COLD_ROOM, action: COLD_ROOM },
@@ -83,6 +91,27 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/super-photo": { loader: COLD_ROOM },
 	"routes/desk/lots": { loader: COLD_ROOM },
 	"routes/desk/lot": { loader: COLD_ROOM },
+	"routes/desk/lot-trace": { loader: COLD_ROOM },
+	"routes/desk/lot-label": { loader: COLD_ROOM },
+	"routes/desk/lot-qr": { loader: COLD_ROOM },
+	"routes/desk/order-lots": { loader: OFFICE },
+	"routes/desk/trace": { loader: COLD_ROOM },
+	"routes/desk/withdrawals": { loader: OFFICE },
+	// Without the lot in question there is nothing to withdraw.
+	"routes/desk/withdrawal-new": { loader: OFFICE, get: { admitted: [404] }, action: OFFICE },
+	"routes/desk/withdrawal": { loader: OFFICE },
+	"routes/desk/withdrawal-poster": { loader: OFFICE },
+	"routes/desk/records": { loader: OFFICE },
+	"routes/desk/records-csv": { loader: OFFICE },
+	// What is posted here lacks its check's own id.
+	"routes/desk/scale": { loader: COLD_ROOM, action: COLD_ROOM, post: { admitted: [400] } },
+	"routes/desk/scale-check": { loader: COLD_ROOM, get: { admitted: [404] } },
+	"routes/desk/move-pieces": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/stock-takes": { loader: COLD_ROOM },
+	// Without a place in the address there is nothing to count.
+	"routes/desk/stock-take": { loader: COLD_ROOM, action: COLD_ROOM, post: { admitted: [400] } },
+	"routes/desk/stock-take-result": { loader: COLD_ROOM },
+	"routes/desk/why-free": { loader: COLD_ROOM },
 	"routes/desk/invoices": { loader: OFFICE },
 	"routes/desk/invoice": {
 		loader: OFFICE,

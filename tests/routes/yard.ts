@@ -110,6 +110,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			case_cents: 1000,
 			line_cents: 1000,
 		})
+		await insert("withdrawals", { number: WALKED_ORDER, reason: "walked", instructions: "walked" })
 		await insert("market_days", { id: marketDayId, market_id: marketId, market_on: LONG_AGO, state: "closed" })
 		await insert("sales", {
 			id: saleId,
@@ -172,6 +173,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("sales", "id", saleId)
 				await del("market_day_people", "market_day_id", marketDayId)
 				await del("market_days", "id", marketDayId)
+				await del("withdrawals", "number", WALKED_ORDER)
 				await del("invoice_lines", "invoice_id", invoiceId)
 				await del("invoices", "id", invoiceId)
 				await del("order_events", "order_id", orderId)

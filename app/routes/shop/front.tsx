@@ -9,6 +9,7 @@ import { ART_OF_FORM } from "~/ui/shop/art-of-form"
 import { CombShelf } from "~/ui/shop/comb-shelf"
 import { DayTabs } from "~/ui/shop/day-tabs"
 import { EatingComb } from "~/ui/shop/eating-comb"
+import { HONEY_NAMES } from "~/ui/shop/honey-dot"
 import { ShopClose } from "~/ui/shop/shop-close"
 import { ShopRow } from "~/ui/shop/shop-row"
 import { FillStrip } from "~/ui/stock/fill-strip"
@@ -25,8 +26,6 @@ export const loader = guard(admits.visitor, async ({ url }: Route.LoaderArgs, { 
 	const front = await findShopFront({ producer, dayId: url.searchParams.get("day") })
 	return { slug: producer.slug, yardName: producer.name, county: producer.county, front }
 })
-
-const HONEY_NAMES = { straw: "light straw", light: "light amber", amber: "amber", dark: "dark amber" }
 
 /** The public shop: what is in season, and what is left for each market day. */
 export default function ShopFrontPage({ loaderData }: Route.ComponentProps) {

@@ -7,6 +7,14 @@ const GROUNDS: Record<HoneyTone, string> = {
 	dark: "bg-honey-dark",
 }
 
+/** The colour of a honey in words, as shop and label name it. */
+export const HONEY_NAMES: Record<HoneyTone, string> = {
+	straw: "light straw",
+	light: "light amber",
+	amber: "amber",
+	dark: "dark amber",
+}
+
 /** The colour of a honey as a small edged dot with its name: "light straw". */
 export function HoneyDot({ tone, name }: { tone: HoneyTone; name: string }) {
 	return (
