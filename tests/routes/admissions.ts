@@ -81,8 +81,8 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/crop": { loader: COLD_ROOM },
 	// Nothing chosen, nothing changed.
 	"routes/desk/crop-mark": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: { intent: "escape-in" } } },
-	"routes/desk/crop-set-up": { loader: COLD_ROOM, action: OFFICE, post: { fields: { intent: "yard" } } },
-	"routes/desk/crop-set-up-yard": { loader: COLD_ROOM, action: OFFICE, post: { fields: { intent: "retire" } } },
+	"routes/desk/crop-set-up": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "yard" } } },
+	"routes/desk/crop-set-up-yard": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "retire" } } },
 	"routes/desk/crop-settings": { loader: "desk: owner", action: "desk: owner", post: { fields: { figure: "none" } } },
 	// In the yard: whoever works for the producer looks into supers. A check of no super is a refusal in words.
 	"routes/desk/check": { loader: COLD_ROOM, action: COLD_ROOM },

@@ -19,6 +19,8 @@ export type HiveFacts = {
 export type BoardSuper = {
 	id: string
 	productName: string
+	/** Place in the stack; 1 is next to the brood. */
+	level: number
 	capacityPieces: number
 	latest: SuperCheck | null
 	/** The bee escape is in. */
@@ -58,6 +60,7 @@ function boardSuper(
 	return {
 		id: one.id,
 		productName: one.productName,
+		level: one.level,
 		capacityPieces: one.capacityPieces,
 		latest: latestCheck(one),
 		isClearing: one.state === "clearing",

@@ -1,6 +1,7 @@
 import { Link } from "react-router"
 import { addDays, dayInZone, daysBetween, weekday, weekdayName } from "~/domain/calendar"
 import { mondayOf } from "~/domain/crop/forecast"
+import { mayRunDesk } from "~/domain/people/roles"
 import { now as askClock } from "~/platform/clock.server"
 import { findBoard } from "~/services/crop/find-board.server"
 import { YardBoard } from "~/ui/crop/board"
@@ -34,6 +35,7 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 		nextOff,
 		nextWeek: mondayOf(addDays(today, 1)),
 		maySet: roles.includes("owner"),
+		maySetUp: roles.some(mayRunDesk),
 	}
 })
 
@@ -56,7 +58,7 @@ export default function Crop({ loaderData, params }: Route.ComponentProps) {
 			<CropLinks
 				links={[
 					{ to: `${base}/mark`, label: "Mark several supers" },
-					{ to: `${base}/set-up`, label: "Yards and hives" },
+					...(loaderData.maySetUp ? [{ to: `${base}/set-up`, label: "Yards and hives" }] : []),
 					{ to: `${base}/forecasts`, label: "Forecasts and what came off" },
 					...(loaderData.maySet ? [{ to: `${base}/settings`, label: "Crop settings" }] : []),
 				]}
@@ -81,7 +83,7 @@ export default function Crop({ loaderData, params }: Route.ComponentProps) {
 						<YardBoard key={yard.id} yard={yard} base={base} />
 					))}
 					{yards.length === 0 && (
-						<EmptyLine action={<Link to={`${base}/set-up`}>Enter yards and hives</Link>}>
+						<EmptyLine action={loaderData.maySetUp && <Link to={`${base}/set-up`}>Enter yards and hives</Link>}>
 							{after ? "No more hives." : "No hives are entered here yet."}
 						</EmptyLine>
 					)}

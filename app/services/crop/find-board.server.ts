@@ -75,7 +75,7 @@ export function findBoard(query: {
 }
 
 /** Which figure counts as supply, and the capped share at which a super is ready. */
-export async function findCropSettings(
+async function findCropSettings(
 	tx: Tx,
 	producerId: string,
 ): Promise<{ figure: CropFigure; readyCappedPercent: number }> {
@@ -83,6 +83,11 @@ export async function findCropSettings(
 		select crop_figure as figure, ready_capped_percent as "readyCappedPercent"
 		from producer_settings where producer_id = ${producerId}`)
 	return rows[0] ?? { figure: "low", readyCappedPercent: 90 }
+}
+
+/** The same, read by itself. */
+export function readCropSettings(producerId: string): Promise<{ figure: CropFigure; readyCappedPercent: number }> {
+	return readProducer(producerId, (tx) => findCropSettings(tx, producerId))
 }
 
 const UUID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i

@@ -6,7 +6,8 @@ import { rowOfLabels } from "~/domain/crop/hive-labels"
 import type { Result } from "~/domain/result"
 
 export type SetUpHivesRefusal =
-	| { ok: false; reason: "no-such-yard" | "no-number" }
+	| { ok: false; reason: "no-such-yard" }
+	| { ok: false; reason: "no-number" }
 	/** These labels are painted on other hives already, in use or not. */
 	| { ok: false; reason: "labels-taken"; labels: string[] }
 
