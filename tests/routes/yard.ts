@@ -49,6 +49,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const invoiceId = randomUUID()
 	const marketDayId = randomUUID()
 	const saleId = randomUUID()
+	const takeId = randomUUID()
 	const [beeYardId, hiveId, superId, photoId] = [randomUUID(), randomUUID(), randomUUID(), randomUUID()]
 	const insert = async (table: string, row: Record<string, unknown>) => {
 		const columns = Object.keys(row)
@@ -134,6 +135,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			state: "off",
 			off_on: LONG_AGO,
 		})
+		await insert("stock_takes", { id: takeId, place: "ready", taken_on: LONG_AGO })
 		await insert("uploads", { id: photoId, media_type: "image/jpeg", content: Buffer.from("a photo") })
 		return idOf("select id from stores where slug = 'mossgate-grocers'")
 	})
@@ -161,6 +163,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			super: superId,
 			photo: photoId,
 			sale: saleId,
+			take: takeId,
+			product: "11",
 			// A check of a lot that was never made.
 			check: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a12",
 			// The token of no link that was ever sent.
@@ -181,6 +185,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("order_events", "order_id", orderId)
 				await del("order_lines", "order_id", orderId)
 				await del("orders", "id", orderId)
+				await del("stock_takes", "id", takeId)
 				await del("uploads", "id", photoId)
 				await del("supers", "id", superId)
 				await del("hives", "id", hiveId)

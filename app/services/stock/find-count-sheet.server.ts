@@ -30,13 +30,15 @@ export type CountSheet = {
 const MOST_LOTS = 400
 
 /**
- * The lots that the ledger has at a place, by product and best-before, at most 400, and those of `codes` besides, whether
- * they are there or not. Null for a market day that there is none of.
+ * The lots that the ledger has at a place, by product and best-before, at most 400, and those named by code or id besides,
+ * whether they are there or not. Null for a market day that there is none of.
  */
 export function findCountSheet(
-	query: CountPlace & { producerId: string; codes?: readonly string[] },
+	query: CountPlace & { producerId: string; codes?: readonly string[]; lotIds?: readonly string[] },
 ): Promise<CountSheet | null> {
 	const { producerId, place, ref } = query
+	const codes = sql.param([...(query.codes ?? [])])
+	const lotIds = sql.param([...(query.lotIds ?? [])])
 	return readProducer(producerId, async (tx) => {
 		let of: string | null = null
 		if (place === "market") {
@@ -50,7 +52,7 @@ export function findCountSheet(
 		const { rows } = await tx.execute<SheetLot & { isNamed: boolean }>(sql`
 			select l.id as "lotId", l.code, p.name as "productName", p.detail, l.best_before_on::text as "bestBeforeOn",
 				coalesce(b.pieces, 0) as ledger, coalesce(gone.pieces, 0) as missing,
-				l.code = any(${sql.param([...(query.codes ?? [])])}::text[]) as "isNamed"
+				(l.code = any(${codes}::text[]) or l.id = any(${lotIds}::uuid[])) as "isNamed"
 			from lots l
 			join products p on p.producer_id = l.producer_id and p.id = l.product_id
 			left join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
@@ -62,7 +64,8 @@ export function findCountSheet(
 				where here.producer_id = ${producerId} and here.place = ${place} and here.place_ref = ${ref} and here.pieces > 0
 				union
 				select named.id from lots named
-				where named.producer_id = ${producerId} and named.code = any(${sql.param([...(query.codes ?? [])])}::text[])
+				where named.producer_id = ${producerId}
+					and (named.code = any(${codes}::text[]) or named.id = any(${lotIds}::uuid[]))
 			)
 			order by length(p.code), p.code, l.best_before_on, l.code`)
 		const others = rows.filter((row) => !row.isNamed)

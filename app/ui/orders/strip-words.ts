@@ -12,7 +12,7 @@ function nearDay(on: Day, today: Day): string {
  * The words under the strip of a product: "16 free, 6 held until Friday", "18 for all stores, 31 asked". Held or expected
  * stock that comes after the day backs later promises, and so frees released stock for this one: it has no date then.
  */
-export function stripWords({ strip, toShareCases }: SheetProduct, today: Day): string {
+export function stripWords({ strip, toShareCases }: Pick<SheetProduct, "strip" | "toShareCases">, today: Day): string {
 	if (toShareCases > 0) return `${strip.freeCases} for all stores, ${toShareCases} asked`
 	const parts = [
 		strip.free > 0 && `${strip.free} free`,
