@@ -14,13 +14,15 @@ const tasks: Record<string, () => Promise<{ default: Task }>> = {
 	"clear-expired": () => import("./clear-expired.job.server"),
 	"free-stuck-jobs": () => import("./free-stuck-jobs.job.server"),
 	"make-standing-orders": () => import("./make-standing-orders.job.server"),
+	"refresh-expected": () => import("./refresh-expected.job.server"),
 	"send-mail": () => import("./send-mail.job.server"),
 	"send-sign-in-mail": () => import("./send-sign-in-mail.job.server"),
+	"sweep-expected": () => import("./sweep-expected.job.server"),
 	"sweep-standing-orders": () => import("./sweep-standing-orders.job.server"),
 }
 
 const everyMinute = ["free-stuck-jobs", "sweep-standing-orders"]
-const everyNight = ["clear-expired"]
+const everyNight = ["clear-expired", "sweep-expected"]
 
 const taskList: TaskList = Object.fromEntries(
 	Object.entries(tasks).map(([name, load]) => [

@@ -83,12 +83,20 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/crop-mark": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: { intent: "escape-in" } } },
 	"routes/desk/crop-set-up": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "yard" } } },
 	"routes/desk/crop-set-up-yard": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "retire" } } },
+	"routes/desk/crop-forecasts": { loader: COLD_ROOM },
 	"routes/desk/crop-settings": { loader: "desk: owner", action: "desk: owner", post: { fields: { figure: "none" } } },
 	// In the yard: whoever works for the producer looks into supers. A check of no super is a refusal in words.
 	"routes/desk/check": { loader: COLD_ROOM, action: COLD_ROOM },
 	"routes/desk/yard-round": { loader: COLD_ROOM, action: COLD_ROOM },
 	"routes/desk/super": { loader: COLD_ROOM, action: COLD_ROOM },
 	"routes/desk/super-photo": { loader: COLD_ROOM },
+	// Whoever works in the cold room brings in, grades and regroups; an empty form is refused.
+	"routes/desk/harvest": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/grade": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/grade-sheet": { loader: COLD_ROOM, get: { admitted: [404] } },
+	"routes/desk/regroup": { loader: COLD_ROOM, action: COLD_ROOM },
+	// What grades ask and how lots are named is the owner's.
+	"routes/desk/grades": { loader: "desk: owner", action: "desk: owner" },
 	"routes/desk/lots": { loader: COLD_ROOM },
 	"routes/desk/lot": { loader: COLD_ROOM },
 	"routes/desk/lot-trace": { loader: COLD_ROOM },

@@ -10,6 +10,7 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/crop/mark", "routes/desk/crop-mark.tsx"),
 	route("desk/:producer/crop/set-up", "routes/desk/crop-set-up.tsx"),
 	route("desk/:producer/crop/set-up/:yard", "routes/desk/crop-set-up-yard.tsx"),
+	route("desk/:producer/crop/forecasts", "routes/desk/crop-forecasts.tsx"),
 	route("desk/:producer/crop/settings", "routes/desk/crop-settings.tsx"),
 	route("desk/:producer/crop/checks", "routes/desk/check.ts"),
 	route("desk/:producer/crop/yards/:yard", "routes/desk/yard-round.tsx"),
