@@ -34,13 +34,18 @@ export class CurveFold {
 		if (index >= this.#used) this.#used = index + 1
 	}
 
-	/** The stretches that hold a reading, the earliest first. */
-	buckets(): CurveBucket[] {
+	/**
+	 * The stretches that hold a reading, the first read first. `direction` is -1 when times were given below zero so that
+	 * they rise; the beginning of a stretch is then its other end.
+	 */
+	buckets(direction: 1 | -1): CurveBucket[] {
 		const buckets: CurveBucket[] = []
 		for (let index = 0; index < this.#used; index += 1) {
 			const lowest = this.#lowest[index] as number
 			const highest = this.#highest[index] as number
-			if (lowest <= highest) buckets.push([this.#from + index * this.#width, lowest, highest])
+			if (lowest > highest) continue
+			const at = this.#from + index * this.#width
+			buckets.push([direction === 1 ? at : -(at + this.#width), lowest, highest])
 		}
 		return buckets
 	}

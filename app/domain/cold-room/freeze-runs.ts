@@ -1,4 +1,4 @@
-import { CurveFold } from "./curve"
+import { type CurveBucket, CurveFold } from "./curve"
 import { FREEZE_TABLE, limitOf, type TemperatureUnit } from "./freezing"
 
 /** A stretch of time in milliseconds; `from` is never after `to`. */
@@ -31,7 +31,8 @@ export type FreezeRuns = {
 	outside: number
 	/** The first reading that is earlier than the one before and is no step of the clock: its number from 1, and when. */
 	unsorted: { reading: number; at: number } | null
-	curve: CurveFold
+	/** The curve in stretches of equal length; each is named by the earlier of its ends. */
+	buckets: CurveBucket[]
 	/** Whether the file gives the latest reading first. */
 	isBackwards: boolean
 }
@@ -96,7 +97,7 @@ export class FreezeRunFold {
 			repeated: this.#repeated,
 			outside: this.#outside,
 			unsorted: this.#unsorted,
-			curve: this.#curve,
+			buckets: this.#curve.buckets(this.#direction),
 			isBackwards: this.#direction === -1,
 		}
 	}

@@ -53,6 +53,8 @@ export type FreezeVerdict = {
 	isProven: boolean
 	/** The row that decided, or that came nearest to it. */
 	row: FreezeRow
+	/** Where that row stands in the table. */
+	rowIndex: number
 	/** Minutes at or below the row that count: without the allowance, never below zero. */
 	countedMinutes: number
 	/** Minutes that are still missing at that row; zero when it is proven. */
@@ -72,13 +74,14 @@ export function judgeFreezing(runMinutes: readonly number[], allowanceMinutes = 
 		const counted = Math.max(0, Math.floor(runMinutes[index] ?? 0) - allowanceMinutes)
 		// What is missing of a run that is shorter than the allowance includes the rest of the allowance.
 		const missing = row.minutes + allowanceMinutes - Math.floor(runMinutes[index] ?? 0)
-		return { row, counted, missing }
+		return { row, index, counted, missing }
 	})
 	if (!first) throw new Error("the table has no rows")
 	const nearest = others.reduce((best, one) => (one.missing <= best.missing ? one : best), first)
 	return {
 		isProven: nearest.missing <= 0,
 		row: nearest.row,
+		rowIndex: nearest.index,
 		countedMinutes: nearest.counted,
 		missingMinutes: Math.max(0, nearest.missing),
 	}

@@ -40,7 +40,7 @@ export async function findReleaseState(tx: Tx, query: LotQuery): Promise<Release
 	const { facts, proofs, openLoads } = await findFreezing(tx, query)
 	const { piecesOnShelves, check, release } = await findLotFacts(tx, query)
 	const piecesFrozen = frozenPieces(query.lotId, facts)
-	const isFrozen = piecesFrozen > 0 && piecesFrozen >= piecesOnShelves
+	const isFrozen = proofs.length > 0 && piecesFrozen > 0 && piecesFrozen >= piecesOnShelves
 	const missing = [...(isFrozen ? [] : (["freezing"] as const)), ...(check?.hasPassed ? [] : (["weighing"] as const))]
 	return {
 		missing: release ? [] : missing,

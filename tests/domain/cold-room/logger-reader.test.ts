@@ -90,7 +90,7 @@ describe("the forms a logger writes", () => {
 		const answer = read(`Time,Temp (°F)\n${rows(60, (at) => `${iso(at)},20.0`)}`)
 		expect(answer.unit).toBe("F")
 		expect(minutesOf(answer)).toEqual([295, null, null])
-		expect(answer.runs.curve.buckets()[0]?.[1]).toBe(-67)
+		expect(answer.runs.buckets[0]?.[1]).toBe(-67)
 	})
 
 	test("a temperature in a second probe is named and not read", () => {
@@ -272,7 +272,7 @@ describe("reading as it comes", () => {
 			reader.feed(`${iso(new Date(from + index * 30_000))},${(-17 + Math.sin(index / 500)).toFixed(2)}\n`)
 		const answer = reader.finish()
 		if (!answer.ok) throw new Error(answer.reason)
-		const buckets = answer.runs.curve.buckets()
+		const buckets = answer.runs.buckets
 		expect(answer.runs.readings).toBe(100_000)
 		expect(buckets.length).toBeLessThanOrEqual(600)
 		expect(buckets.length).toBeGreaterThan(250)
@@ -289,7 +289,7 @@ describe("reading as it comes", () => {
 				const answer = readIn(text, {}, length)
 				if (!answer.ok || !whole.ok) throw new Error("refused")
 				expect(answer.runs.longest).toEqual(whole.runs.longest)
-				expect(answer.runs.curve.buckets()).toEqual(whole.runs.curve.buckets())
+				expect(answer.runs.buckets).toEqual(whole.runs.buckets)
 			}),
 		)
 	})
