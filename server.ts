@@ -11,8 +11,11 @@ import { requestLog } from "~/platform/log.server"
 import { renderedCopies } from "~/platform/rendered-copy.server"
 import { inProcesses, listen } from "~/platform/serve.server"
 
-/** The address of a shop front, with the market day that was chosen. Any other query is answered by the page itself. */
-const SHOP_FRONT = /^\/shop\/([a-z0-9-]+)(?:\?day=[0-9a-f-]{36})?$/
+/**
+ * The address of a shop front, with the market day that was chosen, or of the public page of a lot. Any other query is
+ * answered by the page itself.
+ */
+const SHOP_FRONT = /^\/shop\/([a-z0-9-]+)(?:\?day=[0-9a-f-]{36}|\/lots\/[\w.~%-]{1,120})?$/
 
 /** The web server's middleware; the order matters, and each step says what it relies on. */
 function createApp(env: Env, build: ServerBuild): Express {
@@ -40,7 +43,7 @@ function createApp(env: Env, build: ServerBuild): Express {
 	return app
 }
 
-/** The public shop fronts, which change only when stock or prices do. */
+/** The public shop fronts and lot pages, which change only when stock, prices or lots do. */
 function shopCopies(env: Env, build: ServerBuild): RequestHandler {
 	return renderedCopies({
 		keyOf: (request) => (SHOP_FRONT.test(request.url) ? request.url : null),
