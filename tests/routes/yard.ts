@@ -166,6 +166,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			take: takeId,
 			product: "11",
 			// A check of a lot that was never made.
+			// No lot was graded under this id.
+			grading: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a31",
 			check: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a12",
 			// The token of no link that was ever sent.
 			token: "w".repeat(43),

@@ -9,8 +9,7 @@ export const CALIFORNIA_BELOW_PERCENT = 5
 /** Granulated comb must be marked as such. Source: Cal. Food & Agric. Code 29587. */
 const CRYSTALLISED: Caution = {
 	title: "Crystallized comb is marked",
-	words:
-		"Comb that has crystallized is sold with a placard beside it that says “crystallized”. Other places have other rules.",
+	words: "Comb that has crystallized is sold with a placard beside it that says “crystallized”.",
 	source: "Cal. Food & Agric. Code 29587",
 }
 

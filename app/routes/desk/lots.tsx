@@ -1,10 +1,12 @@
 import { Link } from "react-router"
 import { dayInZone, shortMonthDay } from "~/domain/calendar"
+import { mayManagePeople } from "~/domain/people/roles"
 import { wholeCases } from "~/domain/quantity"
 import { now as askClock } from "~/platform/clock.server"
 import { type ListedLot, type LotState, listLots } from "~/services/desk/list-lots.server"
 import { FilterLinks } from "~/ui/desk/filter-links"
 import { ListPages } from "~/ui/desk/list-pages"
+import { ButtonLink } from "~/ui/forms/button"
 import { EmptyLine, SheetHead } from "~/ui/layout/sheet"
 import { listDay } from "~/ui/orders/state-words"
 import { FillStrip } from "~/ui/stock/fill-strip"
@@ -19,7 +21,7 @@ export const meta: Route.MetaFunction = () => [{ title: "Lots · Waxbill" }]
 const STATES: readonly LotState[] = ["held", "released", "withdrawn"]
 
 export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url }: Route.LoaderArgs, scope) => {
-	const { producer } = scope
+	const { producer, roles } = scope
 	const now = askClock()
 	const state = STATES.find((one) => one === url.searchParams.get("state")) ?? null
 	const after = url.searchParams.get("after")
@@ -31,8 +33,22 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 		after,
 		lots,
 		next,
+		mayChangeGrades: roles.some(mayManagePeople),
 	}
 })
+
+const MISSING_WORDS: Record<ListedLot["missing"][number], string> = {
+	freezing: "freezing not proven",
+	weighing: "not weighed",
+}
+
+/** What a held lot waits for. */
+function heldWords({ missing, expectedReleaseOn }: ListedLot): string {
+	const until = `until ${shortMonthDay(expectedReleaseOn)}`
+	return missing.length === 0
+		? "ready to be released"
+		: `${until}: ${missing.map((one) => MISSING_WORDS[one]).join(", ")}`
+}
 
 function LotStrip({ lot }: { lot: ListedLot }) {
 	const left = wholeCases(lot.leftPieces, lot.piecesPerCase)
@@ -56,10 +72,29 @@ function LotStrip({ lot }: { lot: ListedLot }) {
 }
 
 export default function Lots({ loaderData, params }: Route.ComponentProps) {
-	const { lots, next, state, after, today } = loaderData
+	const { lots, next, state, after, today, mayChangeGrades } = loaderData
+	const base = `/desk/${params.producer}`
 	return (
 		<DeskBook frame={loaderData.frame}>
-			<SheetHead title="Lots" lead="Pieces of one product from one harvest, the latest first. Strips are in cases." />
+			<SheetHead
+				title="Lots"
+				lead="Pieces of one product from one harvest, the latest first. Strips are in cases."
+				action={
+					<>
+						<Link className="py-1" to={`${base}/cold-room`}>
+							Cold room
+						</Link>
+						{mayChangeGrades && (
+							<Link className="py-1" to={`${base}/grades`}>
+								Grades and lot codes
+							</Link>
+						)}
+						<ButtonLink variant="primary" to={`${base}/crop/harvest`}>
+							Bring a harvest in
+						</ButtonLink>
+					</>
+				}
+			/>
 			<FilterLinks
 				label="Lots by state"
 				name="state"
@@ -67,7 +102,7 @@ export default function Lots({ loaderData, params }: Route.ComponentProps) {
 				options={[{ value: "", label: "All" }, ...STATES.map((one) => ({ value: one, label: one }))]}
 			/>
 			{lots.length === 0 ? (
-				<EmptyLine action={<Link to={`/desk/${params.producer}/lots`}>All lots</Link>}>
+				<EmptyLine action={<Link to={`${base}/lots`}>All lots</Link>}>
 					{after ? "Nothing earlier." : state ? `No lot is ${state}.` : "Nothing has come off the hives yet."}
 				</EmptyLine>
 			) : (
@@ -97,23 +132,25 @@ export default function Lots({ loaderData, params }: Route.ComponentProps) {
 								<td>
 									<Link
 										className="name inline-block py-1 text-body! whitespace-nowrap"
-										to={`/desk/${params.producer}/lots/${lot.code}`}
+										to={`${base}/lots/${encodeURIComponent(lot.code)}`}
 									>
 										{lot.code}
 									</Link>
 								</td>
 								<td>
 									{lot.productName}
-									<span className="note block">{lot.detail}</span>
+									<span className="note block">
+										{lot.detail}
+										{lot.grade && `, graded ${lot.grade}`}
+									</span>
+									{lot.state === "held" && <span className="note block desk:hidden">{heldWords(lot)}</span>}
 								</td>
 								<td>
 									<LotStrip lot={lot} />
 								</td>
 								<td className="max-desk:hidden">
 									{lot.state}
-									{lot.state === "held" && (
-										<span className="note block">until {shortMonthDay(lot.expectedReleaseOn)}</span>
-									)}
+									{lot.state === "held" && <span className="note block">{heldWords(lot)}</span>}
 								</td>
 								<td className="max-desk:hidden">{listDay(lot.harvestedOn, today)}</td>
 								<td className="max-desk:hidden">{listDay(lot.bestBeforeOn, today)}</td>
