@@ -101,7 +101,12 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 			/>
 			<ErrorSummary title="Nothing was changed" errors={wrong} />
 			{order.state === "placed" ? (
-				<ConfirmLines order={order} values={actionData?.values ?? {}} errors={errors} />
+				<ConfirmLines
+					order={order}
+					whyHref={(code) => `${base}/promise/${encodeURIComponent(code)}?day=${order.deliveryOn}`}
+					values={actionData?.values ?? {}}
+					errors={errors}
+				/>
 			) : (
 				<div className="desk:mr-[calc(var(--spacing-margin)-1px)]">
 					<OrderLines lines={order.lines} isCancelled={order.state === "cancelled"} />

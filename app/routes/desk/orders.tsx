@@ -5,10 +5,12 @@ import { type OrderState, orderStates } from "~/domain/orders/order-states"
 import { casesWords } from "~/domain/quantity"
 import { now as askClock } from "~/platform/clock.server"
 import { type DeskOrderRow, listDeskOrders } from "~/services/orders/list-desk-orders.server"
+import { listFreeOnDay } from "~/services/promise/list-free-on-day.server"
 import { FilterLinks } from "~/ui/desk/filter-links"
 import { ListPages } from "~/ui/desk/list-pages"
 import { EmptyLine, SheetHead } from "~/ui/layout/sheet"
 import { listDay } from "~/ui/orders/state-words"
+import { FreeOnDay } from "~/ui/stock/free-on-day"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/orders"
 import { DeskBook } from "./desk-book"
@@ -36,9 +38,11 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ url }: Route.
 	const day = dayText && isDay(dayText) ? dayText : null
 	const after = url.searchParams.get("after")
 	const { orders, next } = await listDeskOrders({ producerId: producer.id, state, day, after })
+	const today = dayInZone(now, producer.timeZone)
 	return {
 		frame: await findDeskFrame(scope, { part: "orders", now, ...(day ? { day } : {}) }),
-		today: dayInZone(now, producer.timeZone),
+		today,
+		free: day && day >= today ? await listFreeOnDay({ producerId: producer.id, day, today }) : [],
 		state,
 		day,
 		after,
@@ -54,7 +58,7 @@ function howMany({ askedCases, cases, toShareCases }: DeskOrderRow): string {
 }
 
 export default function Orders({ loaderData, params }: Route.ComponentProps) {
-	const { orders, next, today, state, day, after } = loaderData
+	const { orders, next, today, free, state, day, after } = loaderData
 	const base = `/desk/${params.producer}`
 	const keep: Record<string, string> = day ? { day } : {}
 	return (
@@ -132,6 +136,11 @@ export default function Orders({ loaderData, params }: Route.ComponentProps) {
 				params={{ ...keep, ...(state ? { state } : {}), ...(after ? { after } : {}) }}
 				next={next}
 				laterWords="Earlier orders"
+			/>
+			<FreeOnDay
+				products={free}
+				today={today}
+				whyHref={(code) => `${base}/promise/${encodeURIComponent(code)}?day=${day}`}
 			/>
 		</DeskBook>
 	)

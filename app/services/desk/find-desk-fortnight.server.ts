@@ -23,7 +23,7 @@ export type DeskDay = {
 	freeCases: number
 	/** What is wanted for it and cannot be there. */
 	shortCases: number
-	/** To come off the hives that day, at the low figure. */
+	/** To come off the hives that day, at the figure that the producer chose. */
 	expectedCases: number
 }
 
@@ -79,8 +79,11 @@ async function figuresByDay(tx: Tx, query: { producerId: string; from: Day }): P
 			where o.producer_id = ${producerId} and o.state <> 'cancelled' and o.delivery_on between ${from} and ${to}
 			group by o.delivery_on
 			union all
-			select e.expected_on, e.low_pieces / p.pieces_per_case, null, 0
-			from expected_supplies e join products p on p.producer_id = e.producer_id and p.id = e.product_id
+			select e.expected_on,
+				(case s.crop_figure when 'likely' then e.likely_pieces else e.low_pieces end) / p.pieces_per_case, null, 0
+			from expected_supplies e
+			join products p on p.producer_id = e.producer_id and p.id = e.product_id
+			left join producer_settings s on s.producer_id = e.producer_id
 			where e.producer_id = ${producerId} and e.expected_on between ${from} and ${to}
 			union all
 			select d.market_on, 0, m.name, 0

@@ -1,4 +1,4 @@
-import { Form, useNavigation } from "react-router"
+import { Form, Link, useNavigation } from "react-router"
 import { plainMoney } from "~/domain/money"
 import { Button } from "~/ui/forms/button"
 import { FieldError, fieldId } from "~/ui/forms/field-error"
@@ -19,6 +19,8 @@ type Line = {
 
 type ConfirmLinesProps = {
 	order: { storeName: string; lines: readonly Line[] }
+	/** Where it is explained how much of a product can be given. */
+	whyHref: (code: string) => string
 	/** What was typed, by field, where it was refused. */
 	values: Record<string, string>
 	errors: Record<string, string>
@@ -28,7 +30,7 @@ type ConfirmLinesProps = {
  * The lines of an order that waits: asked, how much of it there is, and a field for what each gets, filled with the most
  * that can be given. One button says what happens.
  */
-export function ConfirmLines({ order, values, errors }: ConfirmLinesProps) {
+export function ConfirmLines({ order, whyHref, values, errors }: ConfirmLinesProps) {
 	const isSending = useNavigation().formMethod === "POST"
 	return (
 		<Form method="post" noValidate>
@@ -56,7 +58,7 @@ export function ConfirmLines({ order, values, errors }: ConfirmLinesProps) {
 				</thead>
 				<tbody>
 					{order.lines.map((line) => (
-						<ConfirmLine key={line.id} line={line} values={values} errors={errors} />
+						<ConfirmLine key={line.id} line={line} whyHref={whyHref} values={values} errors={errors} />
 					))}
 				</tbody>
 			</table>
@@ -69,7 +71,7 @@ export function ConfirmLines({ order, values, errors }: ConfirmLinesProps) {
 	)
 }
 
-function ConfirmLine({ line, values, errors }: { line: Line } & Omit<ConfirmLinesProps, "order">) {
+function ConfirmLine({ line, whyHref, values, errors }: { line: Line } & Omit<ConfirmLinesProps, "order">) {
 	const { id, code, name, askedCases, mostCases, isToShare } = line
 	const given = `given-${id}`
 	const reason = `reason-${id}`
@@ -100,7 +102,10 @@ function ConfirmLine({ line, values, errors }: { line: Line } & Omit<ConfirmLine
 						mostCases < askedCases ? (
 							<>
 								{mostCases === 0 ? "none" : mostCases} of {askedCases},{" "}
-								<span className="short">{askedCases - mostCases} short</span>
+								<span className="short">{askedCases - mostCases} short</span>.{" "}
+								<Link to={whyHref(code)} aria-label={`Why so many of ${name}`}>
+									Why
+								</Link>
 							</>
 						) : (
 							"all of it"
