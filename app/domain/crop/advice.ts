@@ -19,7 +19,7 @@ export type Advice =
 	| { kind: "not-looked-at"; lastOn: Day; days: number; wasSeen: boolean }
 
 /** Days since anybody last looked into a super, or since it was set on when nobody has. */
-export function daysUnseen({ checks, setOn }: Pick<SuperFacts, "checks" | "setOn">, today: Day): number {
+function daysUnseen({ checks, setOn }: Pick<SuperFacts, "checks" | "setOn">, today: Day): number {
 	return Math.max(0, daysBetween(latestCheck({ checks })?.checkedOn ?? setOn, today))
 }
 

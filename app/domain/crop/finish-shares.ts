@@ -25,7 +25,7 @@ const USUAL: readonly FinishShares[] = [
 ]
 
 /** Common practice counts as much as so many supers of one's own. */
-export const USUAL_COUNTS_AS = 10
+const USUAL_COUNTS_AS = 10
 
 /** The stage of a super, 0 to 4, by its latest check; a super that nobody has looked into is at the first. */
 export function stageOf(facts: Pick<SuperFacts, "checks">): number {

@@ -18,7 +18,7 @@ const CLEARING_DAYS = 2
 const FARTHEST_DAYS = 60
 
 /** What the forecast of a super rests on besides its checks. */
-export type ForecastFacts = { today: Day; readyCappedPercent: number }
+type ForecastFacts = { today: Day; readyCappedPercent: number }
 
 /**
  * The day a super should come off, tomorrow at the earliest: the straight line through the capped shares of its last two
@@ -71,7 +71,7 @@ export function expectedPieces(facts: SuperFacts, sharesByStage: readonly Finish
 }
 
 /** Whole pieces, rounded once and carefully: low down, likely to the nearest, high up. The order is kept. */
-export function wholePieces({ low, likely, high }: ExpectedPieces): ExpectedPieces {
+function wholePieces({ low, likely, high }: ExpectedPieces): ExpectedPieces {
 	// A millionth of a piece either way is what adding fractions leaves, not a piece.
 	return { low: Math.floor(low + 1e-6), likely: Math.round(likely), high: Math.ceil(high - 1e-6) }
 }

@@ -14,7 +14,7 @@ export type ForecastWeek = {
 }
 
 /** How forecasts fared over the weeks for which there is one: counts of weeks. */
-export type Fared = { weeks: number; within: number; under: number; over: number }
+type Fared = { weeks: number; within: number; under: number; over: number }
 
 /**
  * How often what came off lay between the low and the high figure, below the low one or above the high one. A week without a

@@ -6,7 +6,7 @@ import { now as askClock } from "~/platform/clock.server"
 import { findBoard } from "~/services/crop/find-board.server"
 import { listSuperProducts } from "~/services/crop/find-set-up.server"
 import { type MarkRefusal, markSupers } from "~/services/crop/mark-supers.server"
-import { adviceGroupWords } from "~/ui/crop/advice-words"
+import { adviceWords } from "~/ui/crop/advice-words"
 import { ChooseBox, ChosenDeed } from "~/ui/crop/choose-list"
 import { NextSuperFields } from "~/ui/crop/next-super-fields"
 import { FilterLinks } from "~/ui/desk/filter-links"
@@ -284,9 +284,7 @@ function MarkTable({
 										: "nobody has looked"}
 								</Link>
 							</td>
-							<td className="max-desk:hidden aside">
-								{one.advice.map(({ kind }) => adviceGroupWords(kind).head.toLowerCase()).join(", ")}
-							</td>
+							<td className="max-desk:hidden aside">{one.advice.map(adviceWords).join(" ")}</td>
 						</tr>
 					)
 				})}

@@ -40,8 +40,6 @@ export const supersForm = z.object({
 	idempotencyKey: z.uuid("Open the page again and send the form once more."),
 })
 
-export const placesForm = z.object({ hives: chosen, toYardId: z.string() })
-
 /** The day on which many supers were marked. */
 export const marksForm = z.object({ on: day })
 

@@ -4,9 +4,9 @@ import type { Day } from "~/domain/calendar"
 import type { ForecastWeek } from "~/domain/crop/hindsight"
 
 /** A product of which something was expected or came off. */
-export type ForecastProduct = { id: string; name: string; detail: string; piecesPerCase: number }
+type ForecastProduct = { id: string; name: string; detail: string; piecesPerCase: number }
 
-export type ForecastComparison = {
+type ForecastComparison = {
 	products: ForecastProduct[]
 	years: number[]
 	/** The product and year shown; null when nothing was ever expected. */

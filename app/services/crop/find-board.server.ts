@@ -17,7 +17,7 @@ import { lastChecksOf } from "./last-checks.server"
 const PAGE = 60
 
 /** A yard in use, with what stands in it. */
-export type YardSummary = {
+type YardSummary = {
 	id: string
 	name: string
 	hives: number
@@ -27,7 +27,7 @@ export type YardSummary = {
 }
 
 /** The crop as it stands on the hives. */
-export type CropBoard = {
+type CropBoard = {
 	/** One page of hives, by yard and label. */
 	yards: BoardYard[]
 	/** Every yard in use, whatever the page shows. */

@@ -2,7 +2,7 @@ import { sql } from "drizzle-orm"
 import { readProducer, type Tx } from "~/db/transaction.server"
 import { labelOrder } from "./find-board.server"
 
-export type YardInUse = { id: string; name: string; flora: string; hives: number; supersOn: number }
+type YardInUse = { id: string; name: string; flora: string; hives: number; supersOn: number }
 
 /** The producer's yards in use with what stands in them, by name. */
 export function listYards(producerId: string): Promise<YardInUse[]> {
@@ -23,7 +23,7 @@ async function readYards(tx: Tx, producerId: string): Promise<YardInUse[]> {
 
 export type HiveInYard = { id: string; label: string; isActive: boolean; supersOn: number; pieces: number }
 
-export type YardSetUp = {
+type YardSetUp = {
 	yard: YardInUse
 	/** All yards, to move hives to. */
 	yards: YardInUse[]

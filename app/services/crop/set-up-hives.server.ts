@@ -5,7 +5,7 @@ import { withProducer } from "~/db/transaction.server"
 import { rowOfLabels } from "~/domain/crop/hive-labels"
 import type { Result } from "~/domain/result"
 
-export type SetUpHivesRefusal =
+type SetUpHivesRefusal =
 	| { ok: false; reason: "no-such-yard" }
 	| { ok: false; reason: "no-number" }
 	/** These labels are painted on other hives already, in use or not. */

@@ -4,7 +4,7 @@ import { auditEntries, yards } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import type { Result } from "~/domain/result"
 
-export type SetUpYardRefusal = { ok: false; reason: "name-taken" | "not-found" }
+type SetUpYardRefusal = { ok: false; reason: "name-taken" | "not-found" }
 
 /** Enters a yard, or changes the words of the one that `yardId` names. Two yards cannot have one name. */
 export async function setUpYard(given: {

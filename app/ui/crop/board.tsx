@@ -20,6 +20,9 @@ export function YardBoard({ yard, base }: { yard: BoardYard; base: string }) {
 					{yard.flora && `${yard.flora}, `}
 					{counted(yard.hives.length, "hive")}
 				</p>
+				<Link className="inline-block py-1" to={`${base}/yards/${yard.id}`}>
+					Look into them
+				</Link>
 			</div>
 			<div className="min-w-0">
 				<div className="crop-hives">
@@ -57,7 +60,7 @@ function SuperLink({ one, base }: { one: BoardSuper; base: string }) {
 				sections={sectionsOf({ capacityPieces: one.capacityPieces, checks })}
 				isReady={isReady}
 				isUnseen={isUnseen}
-				label={latest ? `${one.productName}, ${latest.filledPercent}% filled,` : `${one.productName},`}
+				label={`Super ${one.level}, ${one.productName}${latest ? `, ${latest.filledPercent}% filled` : ""},`}
 			/>
 			<span className="crop-caption">
 				<span>{left}</span> <span>{right}</span>

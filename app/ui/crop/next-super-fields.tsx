@@ -1,6 +1,6 @@
 import { SelectField, TextField } from "~/ui/forms/fields"
 
-export type SuperProduct = { id: string; name: string; detail: string }
+type SuperProduct = { id: string; name: string; detail: string }
 
 /** What the next super is for, how much it holds, and the day it goes on. */
 export function NextSuperFields({
