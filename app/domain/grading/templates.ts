@@ -1,14 +1,15 @@
-import { type Fault, GOOD_QUALITY_EXCLUDES } from "./faults"
+import { type Fault, faultNames, GOOD_QUALITY_EXCLUDES } from "./faults"
 import type { GradeRule, GradeScheme, SchemeColour } from "./grade-comb"
 
 /** A published scheme to start from. `isVerified` says whether its limits were read at the source. */
 export type SchemeTemplate = { name: string; isVerified: boolean; scheme: GradeScheme }
 
-const rule = (name: string, more: Partial<GradeRule> = {}): GradeRule => ({
+const rule = (name: string, { excludes = [], ...more }: Partial<GradeRule> = {}): GradeRule => ({
 	name,
 	limits: {},
 	outsideRowMayBeOpen: true,
-	excludes: [],
+	// In the order of the form, so that a scheme that is kept unchanged stays the same.
+	excludes: faultNames.filter((fault) => excludes.includes(fault)),
 	colours: [],
 	...more,
 })
@@ -30,7 +31,7 @@ const WISCONSIN_SOURCE =
 
 const sectionScheme = (source: string, grades: GradeRule[], more: Partial<GradeScheme> = {}): GradeScheme => ({
 	source,
-	forms: ["basswood", "round", "clear-box"],
+	forms: ["round", "basswood", "clear-box"],
 	grades,
 	colours: [],
 	caseRule: null,
@@ -121,7 +122,7 @@ const usda: SchemeTemplate = {
 			"Names of the United States Standards for Grades of Comb Honey (1967), from memory. Their limits were not verified and are left open: read the standard, then write them here.",
 			["U.S. Fancy", "U.S. No. 1", "U.S. No. 1 Mixed Color", "U.S. No. 2"].map((name) => rule(name)),
 		),
-		forms: ["basswood", "round", "clear-box", "cut-comb", "frame"],
+		forms: ["round", "basswood", "clear-box", "cut-comb", "frame"],
 	},
 }
 
