@@ -1,11 +1,16 @@
 import { addDays, type Day, daysBetween } from "~/domain/calendar"
-import { checkBefore, FLOW_DAYS, isFlowCutOff, isReady, latestCheck, type SuperFacts } from "./super-facts"
+import {
+	CAPPING_BEGUN,
+	checkBefore,
+	FLOW_DAYS,
+	isFlowCutOff,
+	isReady,
+	latestCheck,
+	type SuperFacts,
+} from "./super-facts"
 
 /** The next super is given when the last one is filled to this share; common practice, no source. */
 const NEXT_SUPER_FILLED = 60
-
-/** Below this capped share capping has hardly begun; common practice, no source. */
-const CAPPING_BEGUN = 25
 
 /** A super that nobody has looked into for so many days is out of sight. */
 const UNSEEN_DAYS = 10

@@ -74,7 +74,7 @@ function boardSuper(
 /** Pieces of a product expected on a day, with how many make a case. */
 export type ExpectedDay = ExpectedPieces & { productId: string; on: Day; piecesPerCase: number }
 
-/** Whole cases expected in the week that begins on Monday `on`; `days` at the figure that counts, those with none left out. */
+/** Whole cases expected in the week that begins on Monday `on`; `days` at the figure that counts, by the day a case comes full. */
 export type CropWeek = ExpectedPieces & { on: Day; days: { on: Day; cases: number }[] }
 
 /**
@@ -92,10 +92,13 @@ export function weeksOf(expected: readonly ExpectedDay[], figure: CropFigure): C
 			likely: casesOf(ofWeek, "likely"),
 			high: casesOf(ofWeek, "high"),
 			days: days.flatMap((on) => {
-				const cases = casesOf(
-					ofWeek.filter((one) => one.on === on),
-					figure,
-				)
+				// The cases that come full on this day: those of the days together are those of the week.
+				const until = (isCounted: (day: Day) => boolean) =>
+					casesOf(
+						ofWeek.filter((one) => isCounted(one.on)),
+						figure,
+					)
+				const cases = until((day) => day <= on) - until((day) => day < on)
 				return cases > 0 ? { on, cases } : []
 			}),
 		}

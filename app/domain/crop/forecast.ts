@@ -1,6 +1,6 @@
 import { addDays, type Day, daysBetween, weekday } from "~/domain/calendar"
 import { type FinishShares, stageOf } from "./finish-shares"
-import { checkBefore, isFlowCutOff, isReady, latestCheck, type SuperFacts } from "./super-facts"
+import { CAPPING_BEGUN, checkBefore, isFlowCutOff, isReady, latestCheck, type SuperFacts } from "./super-facts"
 
 /** Pieces of one super or of many; fractions until `wholePieces` rounds them. low <= likely <= high. */
 export type ExpectedPieces = { low: number; likely: number; high: number }
@@ -22,8 +22,8 @@ type ForecastFacts = { today: Day; readyCappedPercent: number }
 
 /**
  * The day a super should come off, tomorrow at the earliest: the straight line through the capped shares of its last two
- * checks (of different days), carried on to the ready share and rounded up to a day. Where capping has not risen between
- * them, or there is one check or none, the usual pace of filling and capping from the last check, or from the day it was
+ * checks (of different days), carried on to the ready share and rounded up to a day. Where capping has hardly begun (under
+ * 25 %) or has not risen between them, or there is one check or none, the usual pace of filling and capping from the last check, or from the day it was
  * set on. With the bee escape in, two days after that. At most 60 days ahead.
  */
 export function readyDay(facts: SuperFacts, { today, readyCappedPercent }: ForecastFacts): Day {
@@ -43,7 +43,7 @@ function wayToReady(facts: SuperFacts, ready: number): [from: Day, days: number]
 	}
 	const before = checkBefore(facts)
 	const risen = before ? latest.cappedPercent - before.cappedPercent : 0
-	if (!before || risen <= 0) {
+	if (!before || risen <= 0 || latest.cappedPercent < CAPPING_BEGUN) {
 		return [latest.checkedOn, usualDays(latest.filledPercent, latest.cappedPercent, ready)]
 	}
 	const daily = risen / daysBetween(before.checkedOn, latest.checkedOn)

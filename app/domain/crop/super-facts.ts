@@ -28,6 +28,9 @@ export const CHECKS_LOOKED_AT = 4
 /** Days between two checks that tell whether the flow still brings honey; common practice, no source. */
 export const FLOW_DAYS = 7
 
+/** Below this capped share capping has hardly begun; common practice, no source. */
+export const CAPPING_BEGUN = 25
+
 /** The latest look into a super, or null when nobody has looked yet. */
 export function latestCheck(facts: Pick<SuperFacts, "checks">): SuperCheck | null {
 	return facts.checks[0] ?? null

@@ -168,7 +168,7 @@ export default function CropMark({ loaderData, actionData, params }: Route.Compo
 							{ value: "clearing", label: "All with the bee escape in" },
 						]}
 					/>
-					<Form method="post" noValidate>
+					<Form method="post" key={loaderData.idempotencyKey} noValidate>
 						<input
 							type="hidden"
 							name="idempotencyKey"

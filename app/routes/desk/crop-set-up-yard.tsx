@@ -113,7 +113,7 @@ export default function CropSetUpYard({ loaderData, actionData, params }: Route.
 				}
 			/>
 			<ErrorSummary errors={errors} title="Nothing was changed" />
-			<Form method="post" noValidate>
+			<Form method="post" key={loaderData.idempotencyKey} noValidate>
 				<input type="hidden" name="idempotencyKey" value={values.idempotencyKey ?? loaderData.idempotencyKey} />
 				{hives.length === 0 ? (
 					<EmptyLine action={<Link to={`${base}/set-up`}>Enter hives</Link>}>No hive stands here yet.</EmptyLine>

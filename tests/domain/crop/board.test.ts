@@ -13,7 +13,7 @@ const day = (productId: string, on: string, low: number, piecesPerCase = 12): Ex
 describe("cases expected, by week", () => {
 	test("pieces of a product are gathered over the week before they make cases", () => {
 		expect(weeksOf([day("a", "2026-08-18", 6), day("a", "2026-08-20", 6), day("b", "2026-08-20", 11)], "low")).toEqual([
-			{ on: "2026-08-17", low: 1, likely: 3, high: 4, days: [] },
+			{ on: "2026-08-17", low: 1, likely: 3, high: 4, days: [{ on: "2026-08-20", cases: 1 }] },
 		])
 	})
 

@@ -56,6 +56,11 @@ describe("the day a super comes off", () => {
 		expect(readyDay(superWith(look("2026-08-13", 100, 69), look("2026-08-05", 90, 29)), FACTS)).toBe("2026-08-18")
 	})
 
+	test("follows the usual pace while capping has hardly begun, however slowly it began", () => {
+		// 46 % to fill takes 6.44 days, 82 % to cap 8.2; the line through 3 % and 8 % would never arrive.
+		expect(readyDay(superWith(look("2026-08-13", 54, 8), look("2026-08-05", 32, 3)), FACTS)).toBe("2026-08-28")
+	})
+
 	test("is tomorrow at the earliest, however long it has been ready", () => {
 		expect(readyDay(superWith(look("2026-07-30", 100, 95)), FACTS)).toBe("2026-08-14")
 	})
