@@ -16,7 +16,8 @@ export function ForecastPicture({ weeks, productName }: { weeks: readonly Foreca
 	const y = (pieces: number) => Math.round(HEIGHT - (pieces / top) * (HEIGHT - 10))
 	const width = LEFT + weeks.length * STEP + 8
 	return (
-		<div className="overflow-x-auto px-4 desk:px-8">
+		// biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls sideways is reached by keyboard
+		<section className="overflow-x-auto px-4 desk:px-8" aria-label="Weeks drawn" tabIndex={0}>
 			<svg
 				width={width}
 				height={HEIGHT + FOOT}
@@ -36,7 +37,7 @@ export function ForecastPicture({ weeks, productName }: { weeks: readonly Foreca
 					<Week key={week.weekOn} week={week} x={LEFT + index * STEP} y={y} />
 				))}
 			</svg>
-		</div>
+		</section>
 	)
 }
 
