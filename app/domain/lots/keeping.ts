@@ -1,10 +1,10 @@
 /** How long honey keeps by its water: up to and with `upToTenths` of a percent, the last class open. */
-const FERMENTATION: readonly { upToTenths: number; mostYeasts: number | null; risk: string }[] = [
-	{ upToTenths: 170, mostYeasts: Number.POSITIVE_INFINITY, risk: "safe whatever the yeast count" },
-	{ upToTenths: 180, mostYeasts: 1000, risk: "safe if under 1000 yeasts per g" },
-	{ upToTenths: 190, mostYeasts: 10, risk: "safe if under 10 per g" },
-	{ upToTenths: 200, mostYeasts: 1, risk: "safe if under 1 per g" },
-	{ upToTenths: Number.POSITIVE_INFINITY, mostYeasts: null, risk: "always in danger" },
+const FERMENTATION: readonly { upToTenths: number; risk: string }[] = [
+	{ upToTenths: 170, risk: "safe whatever the yeast count" },
+	{ upToTenths: 180, risk: "safe if under 1000 yeasts per g" },
+	{ upToTenths: 190, risk: "safe if under 10 per g" },
+	{ upToTenths: 200, risk: "safe if under 1 per g" },
+	{ upToTenths: Number.POSITIVE_INFINITY, risk: "always in danger" },
 ]
 
 /** The most water for USDA Grades A and B, and C, of extracted honey, and for honey in California, in tenths of a percent. */
@@ -44,14 +44,14 @@ export function moistureAdvice(moistureTenths: number): MoistureAdvice | null {
 	}
 	if (moistureTenths > MOISTURE_LIMITS.usdaGradeAB) {
 		return {
-			words: `${water} is over the 18.6 % of USDA Grades A and B: it may ferment (${risk}). Keep it frozen until it is sold, and sell it soon.`,
+			words: `${water} is over the 18.6 % of USDA Grades A and B: it may ferment (its yeasts decide: ${risk}). Keep it frozen until it is sold, and sell it soon.`,
 			source: "Lochhead, in USDA Agriculture Handbook 335; USDA, Grades of Extracted Honey (1985)",
 			isOverLimit: true,
 		}
 	}
 	if (moistureTenths <= 170) return null
 	return {
-		words: `${water} keeps unless yeasts are many (${risk}).`,
+		words: `${water} keeps unless yeasts are many: it is ${risk}.`,
 		source: "Lochhead, in USDA Agriculture Handbook 335",
 		isOverLimit: false,
 	}

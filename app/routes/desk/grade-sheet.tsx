@@ -77,7 +77,7 @@ export default function GradeSheet({ loaderData, params }: Route.ComponentProps)
 				<h2 className="name" id="facts-head">
 					What was seen
 				</h2>
-				<dl className="fact-list">
+				<dl className="grade-facts">
 					{factsOf(grading).map(([label, value]) => (
 						<div className="contents" key={label}>
 							<dt>{label}</dt>

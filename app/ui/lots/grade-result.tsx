@@ -1,6 +1,5 @@
 import type { Fault } from "~/domain/grading/faults"
 import { gradeCautions } from "~/domain/grading/grade-cautions"
-import { Notice } from "~/ui/forms/notice"
 
 /** A grade with every reason that kept the lot from a better one, and what it asks of the seller. */
 export function GradeResult({
@@ -35,11 +34,12 @@ export function GradeResult({
 				)}
 			</section>
 			{gradeCautions({ grade, faults }).map((caution) => (
-				<Notice key={caution.title} title={caution.title}>
+				<section className="lot-part" key={caution.title}>
+					<h3 className="name">{caution.title}</h3>
 					<p>
 						{caution.words} <span className="note">Source: {caution.source}. Other places have other rules.</span>
 					</p>
-				</Notice>
+				</section>
 			))}
 		</>
 	)

@@ -106,8 +106,13 @@ export function HarvestLook({
 				</tfoot>
 			</table>
 			<div className="grid gap-3 px-4 py-4 desk:px-8">
-				{products.map(({ productId, name, moistureTenths, pfundTenths, flora, bestBeforeOn }) => (
+				{products.map(({ productId, name, lots, moistureTenths, pfundTenths, flora, bestBeforeOn }) => (
 					<div key={productId}>
+						{lots.length === 0 && (
+							<p className="short">
+								Nothing is written down of {name}: its supers would come off with nothing in them.
+							</p>
+						)}
 						<p>
 							{name}: best before {fullDay(bestBeforeOn)}
 							{flora && `, ${flora}`}
