@@ -36,7 +36,7 @@ function keyOf(url) {
 async function openPage(request) {
 	const kept = await (await caches.open(PAGES)).match(keyOf(request.url))
 	try {
-		const answer = await (kept ? within(PATIENCE_MS, fetch(request)) : fetch(request))
+		const answer = await (kept ? within(PATIENCE_MS, fetchWhole(request)) : fetchWhole(request))
 		// A redirect leads to the sign-in page: the session is over, and so is what it may see.
 		if (answer.type === "opaqueredirect") await caches.delete(PAGES)
 		else if (answer.status === 403 || answer.status === 404) await forget(request.url)
@@ -59,7 +59,7 @@ async function openPart(request) {
 
 /** The first visit of a page came before this worker did: it is asked for again, with all that it had loaded. */
 async function keepPage(page, parts) {
-	const answer = await fetch(page, { redirect: "manual", cache: "no-store" })
+	const answer = await fetchWhole(new Request(page, { redirect: "manual", cache: "no-store" }))
 	if (!answer.ok || !answer.headers.get("content-type")?.startsWith("text/html")) return
 	await store(page, answer)
 	const cache = await caches.open(PARTS)
@@ -71,10 +71,16 @@ async function keepPage(page, parts) {
 	await trim(cache, MOST_PARTS)
 }
 
+/** A page to its last byte: one that breaks off on the way is as good as none, and must not take the kept one's place. */
+async function fetchWhole(request) {
+	const answer = await fetch(request)
+	if (answer.type === "opaqueredirect") return answer
+	const { status, statusText, headers } = answer
+	return new Response(await answer.blob(), { status, statusText, headers })
+}
+
 async function store(url, answer) {
 	const cache = await caches.open(PAGES)
-	// Put in anew, so that the last one looked at is the last to be thrown out.
-	await cache.delete(keyOf(url))
 	await cache.put(keyOf(url), answer)
 	await trim(cache, MOST_PAGES)
 }

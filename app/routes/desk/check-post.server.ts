@@ -28,8 +28,7 @@ export type TakenCheck =
  * Takes a posted check, from a form or from what a phone has kept: reads it, draws its photo anew and records it. All that
  * is wrong is answered in words, with what was typed; a photo is named as one to choose again.
  */
-export async function takeCheck(request: Request, scope: DeskScope): Promise<TakenCheck> {
-	const form = await request.formData().catch(() => new FormData())
+export async function takeCheck(form: FormData, scope: DeskScope): Promise<TakenCheck> {
 	const fields: CheckFields = {}
 	for (const name of CHECK_FIELDS) fields[name] = String(form.get(name) ?? "")
 	const ids = sent.safeParse(Object.fromEntries(form))
@@ -79,6 +78,9 @@ export async function takeCheck(request: Request, scope: DeskScope): Promise<Tak
 	if (photo) errors.push({ field: "photo", message: "Choose the photo again: a page cannot keep it." })
 	return refuse(errors)
 }
+
+/** What was posted; nothing where it came in pieces, which is then said to be unreadable. */
+export const postedForm = (request: Request): Promise<FormData> => request.formData().catch(() => new FormData())
 
 /** A file over the limit is not even read. */
 async function readPhoto(file: File) {

@@ -1,20 +1,22 @@
 import { randomUUID } from "node:crypto"
-import { data, redirect, useRevalidator } from "react-router"
+import { data, Form, redirect, useRevalidator } from "react-router"
 import { z } from "zod"
 import { dayInZone, fullDay } from "~/domain/calendar"
 import { now as askClock } from "~/platform/clock.server"
 import { type FoundSuper, findSuper } from "~/services/crop/find-super.server"
 import { listSuperChecks } from "~/services/crop/list-super-checks.server"
+import { type MarkRefusal, markSupers, type SuperMark } from "~/services/crop/mark-supers.server"
 import { CheckForm } from "~/ui/crop/check-form"
 import { CheckHistory } from "~/ui/crop/check-history"
 import { KeptChecks } from "~/ui/crop/kept-checks"
 import { useKeptChecks } from "~/ui/crop/kept-checks-hook"
 import { ListPages } from "~/ui/desk/list-pages"
+import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
 import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { admits, type DeskScope, guard } from "../guard.server"
 import type { Route } from "./+types/super"
-import { takeCheck } from "./check-post.server"
+import { postedForm, takeCheck } from "./check-post.server"
 import { DeskBook } from "./desk-book"
 import { findDeskFrame } from "./frame.server"
 
@@ -59,12 +61,44 @@ export const loader = guard(
 export const action = guard(
 	admits.desk("owner", "desk", "packer"),
 	async ({ request, params, url }: Route.ActionArgs, scope) => {
-		await superOf(scope, params.super)
-		const taken = await takeCheck(request, scope)
+		const found = await superOf(scope, params.super)
+		const form = await postedForm(request)
+		const intent = form.get("intent")
+		if (intent === "escape-in" || intent === "escape-out") {
+			const refused = await markEscape(scope, found, intent)
+			if (refused === null) throw redirect(url.pathname)
+			return data({ superId: null, fields: {}, errors: [{ message: refused }], newId: null }, { status: 422 })
+		}
+		const taken = await takeCheck(form, scope)
 		if (!taken.ok) return data(taken, { status: 422 })
 		throw redirect(`${url.pathname}?checked=${taken.superId}`)
 	},
 )
+
+/** Marks the bee escape as of today; why it was not, in words, or null. */
+async function markEscape(
+	{ producer, person }: DeskScope,
+	{ id }: FoundSuper,
+	mark: SuperMark,
+): Promise<string | null> {
+	const today = dayInZone(askClock(), producer.timeZone)
+	const marked = await markSupers({
+		producerId: producer.id,
+		personId: person.id,
+		today,
+		superIds: [id],
+		mark,
+		on: today,
+	})
+	return marked.ok ? null : ESCAPE_WORDS[marked.reason]
+}
+
+const ESCAPE_WORDS: Record<MarkRefusal["reason"], string> = {
+	gone: "The super has come off meanwhile; nothing was marked.",
+	"before-set-on": "The super is set on only after today; nothing was marked.",
+	"none-chosen": "No super was named; nothing was marked.",
+	"in-the-future": "That day is still to come; nothing was marked.",
+}
 
 function stateWords({ state, setOn, clearingOn, offOn, finishedPieces, capacityPieces }: FoundSuper): string {
 	const since = `Set on ${fullDay(setOn)}`
@@ -108,7 +142,7 @@ export default function Super({ loaderData, actionData, params }: Route.Componen
 					idOf={(field) => `check-${found.id}-${field}`}
 				/>
 				{found.state !== "off" && (
-					<details className="check-opener yard-form" open={actionData !== undefined}>
+					<details className="check-opener yard-form" open={Boolean(actionData?.superId)}>
 						<summary className="btn">Check it</summary>
 						<CheckForm
 							id={`check-${found.id}`}
@@ -120,6 +154,14 @@ export default function Super({ loaderData, actionData, params }: Route.Componen
 							onKeep={book.keep}
 						/>
 					</details>
+				)}
+				{found.state !== "off" && (
+					<Form className="yard-form" method="post">
+						<Button name="intent" value={found.state === "on" ? "escape-in" : "escape-out"}>
+							{found.state === "on" ? "The bee escape went in today" : "The bee escape is out again"}
+						</Button>
+						<p className="field-hint">A bee escape clears a super in one to two days (common practice).</p>
+					</Form>
 				)}
 				<section aria-labelledby="checks-head">
 					<h2 className="head-italic border-b border-ink px-4 pt-2 pb-1 desk:px-8" id="checks-head">

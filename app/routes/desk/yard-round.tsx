@@ -14,7 +14,7 @@ import { LedgerGroup } from "~/ui/layout/ledger"
 import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/yard-round"
-import { takeCheck } from "./check-post.server"
+import { postedForm, takeCheck } from "./check-post.server"
 import { DeskBook } from "./desk-book"
 import { findDeskFrame } from "./frame.server"
 
@@ -56,7 +56,7 @@ export const loader = guard(
 export const action = guard(
 	admits.desk("owner", "desk", "packer"),
 	async ({ request, url }: Route.ActionArgs, scope) => {
-		const taken = await takeCheck(request, scope)
+		const taken = await takeCheck(await postedForm(request), scope)
 		if (!taken.ok) return data(taken, { status: 422 })
 		const search = new URLSearchParams(url.searchParams)
 		search.set("checked", taken.superId)
@@ -75,7 +75,7 @@ export default function YardRound({ loaderData, actionData, params }: Route.Comp
 			<div className="yard" data-mode="sun">
 				<SheetHead
 					title={yard.name}
-					lead={`${yard.flora ? `${yard.flora}. ` : ""}${supers === 1 ? "1 super" : `${supers} supers`} to look into. This page opens without signal, and keeps what you note.`}
+					lead={`${yard.flora ? `Near ${yard.flora}. ` : ""}${supers === 1 ? "1 super" : `${supers} supers`} to look into. This page opens without signal, and keeps what you note.`}
 				/>
 				<KeptChecks
 					book={book}

@@ -46,7 +46,7 @@ export function CheckRows({ id, across, values, error }: CheckRowsProps) {
 			<div className="check-drawing">
 				<SuperBlock
 					sections={[...sections].map((code) => SECTION_STATES[Number(code)] ?? "bare")}
-					label={`As noted so far: ${words}`}
+					label={`Drawn so far: ${words}`}
 				/>
 				<output>{words}</output>
 			</div>

@@ -20,12 +20,10 @@ export function KeptChecks({ book, place, signInHref }: KeptChecksProps) {
 	const others = book.kept.filter(({ madeBy }) => madeBy.id !== place.person.id)
 	return (
 		<div className="kept-checks">
-			<div role="status">
-				{waiting.length > 0 && <WaitingLine {...{ book, signInHref }} count={waiting.length} />}
-				{waiting.length === 0 && refused.length === 0 && book.taken.length > 0 && (
-					<MessageLine tone="saved" title={`${takenWords(book.taken)} recorded.`} />
-				)}
-			</div>
+			{waiting.length > 0 && <WaitingLine {...{ book, signInHref }} count={waiting.length} />}
+			{waiting.length === 0 && refused.length === 0 && book.taken.length > 0 && (
+				<MessageLine tone="saved" title={`${takenWords(book.taken)} recorded.`} />
+			)}
 			{others.length > 0 && <OthersLine others={others} />}
 			{refused.length > 0 && (
 				<MessageLine
@@ -111,7 +109,7 @@ function KeptRow({ check, book, place }: { check: KeptCheck; book: KeptChecksSta
 		<li>
 			<div className="kept-row">
 				<div>
-					<h3 className="name">{about.name}</h3>
+					<h2 className="name">{about.name}</h2>
 					<p>
 						{dayWords(seen.checkedOn)}: {sharesWords(seen)}
 						{photo && ", with a photo"}
