@@ -47,7 +47,9 @@ export default function LotTrace({ loaderData, params }: Route.ComponentProps) {
 			/>
 			<div className="with-margin">
 				<div>
-					<h2 className="head-italic px-4 desk:px-8">Forward</h2>
+					<TracedOrders orders={forward.orders} ordersHref={seesOrders ? `${desk}/orders` : null} />
+					<TracedMarketDays marketDays={forward.marketDays} />
+					<LeftWhere lots={forward.lots} lotsHref={`${desk}/lots`} />
 				</div>
 				<MarginLinks
 					label="With this trace"
@@ -62,10 +64,7 @@ export default function LotTrace({ loaderData, params }: Route.ComponentProps) {
 					]}
 				/>
 			</div>
-			<TracedOrders orders={forward.orders} ordersHref={seesOrders ? `${desk}/orders` : null} />
-			<TracedMarketDays marketDays={forward.marketDays} />
-			<LeftWhere lots={forward.lots} lotsHref={`${desk}/lots`} />
-			<h2 className="head-italic px-4 pt-8 desk:px-8">Backward</h2>
+			<h2 className="head-italic px-4 pt-8 desk:px-8">Where it came from</h2>
 			<LotHistories {...backward} lotsHref={`${desk}/lots`} />
 		</DeskBook>
 	)

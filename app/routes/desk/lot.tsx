@@ -71,13 +71,13 @@ export default function Lot({ loaderData, params }: Route.ComponentProps) {
 				<div>
 					<FirstThing loaderData={loaderData} params={params} />
 					<FactList facts={factsOf(lot, desk)} />
+					<LotPlaces {...lot} ordersHref={seesOrders ? `${desk}/orders` : null} />
 				</div>
 				<MarginLinks
 					label="With this lot"
 					links={lotLinks({ producer: params.producer, code: lot.code, state: lot.state, seesOrders })}
 				/>
 			</div>
-			<LotPlaces {...lot} ordersHref={seesOrders ? `${desk}/orders` : null} />
 			<LotMoves moves={moves} />
 			<ListPages params={after ? { after } : {}} next={next} laterWords="Earlier moves" />
 		</DeskBook>

@@ -64,8 +64,16 @@ export default function Trace({ loaderData, params }: Route.ComponentProps) {
 					<div className="sheet-part">
 						<p>
 							The trace took <b>{drill.tookMilliseconds} ms</b> and found {counted(drill.lots.length, "lot")},{" "}
-							{counted(new Set(drill.trace.orders.map(({ storeId }) => storeId)).size, "store")} and{" "}
-							{counted(new Set(drill.trace.marketDays.map(({ id }) => id)).size, "market day")}.
+							{counted(new Set(drill.trace.orders.map(({ storeId }) => storeId)).size, "store").replace(
+								/^none stores$/,
+								"no store",
+							)}{" "}
+							and{" "}
+							{counted(new Set(drill.trace.marketDays.map(({ id }) => id)).size, "market day").replace(
+								/^none market days$/,
+								"no market day",
+							)}
+							.
 						</p>
 						{drill.faults.length === 0 ? (
 							<p>

@@ -5,8 +5,7 @@ import { startWithdrawal } from "~/services/withdrawals/start-withdrawal.server"
 import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
 import { FieldError } from "~/ui/forms/field-error"
-import { Notice } from "~/ui/forms/notice"
-import { MarginNote, SheetHead } from "~/ui/layout/sheet"
+import { SheetHead } from "~/ui/layout/sheet"
 import { WithdrawalReach } from "~/ui/trace/withdrawal-reach"
 import { WordsField } from "~/ui/trace/words-field"
 import { admits, type DeskScope, guard } from "../guard.server"
@@ -131,19 +130,18 @@ export default function NewWithdrawal({ loaderData, actionData, params }: Route.
 				</div>
 			</Form>
 			<WithdrawalReach packedOrders={plan.packedOrders} marketDays={plan.marketDays} />
-			<Notice title="What else may be needed">
+			<section className="sheet-part" aria-labelledby="also-needed">
+				<h2 className="head-italic" id="also-needed">
+					What else may be needed
+				</h2>
+				{plan.storeCount > 0 && (
+					<p>{plan.storePieces} pieces went to stores, counting every lot above, whether it is chosen or not.</p>
+				)}
 				<p>
 					Food that may hurt someone may have to be reported to the authority at once. Ask yours; this page informs no
 					authority.
 				</p>
-			</Notice>
-			{plan.storeCount > 0 && (
-				<div className="sheet-part">
-					<MarginNote>
-						{plan.storePieces} pieces went to stores, counting every lot above, whether it is chosen or not.
-					</MarginNote>
-				</div>
-			)}
+			</section>
 		</DeskBook>
 	)
 }

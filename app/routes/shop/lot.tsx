@@ -94,7 +94,7 @@ export default function PublicLot({ loaderData }: Route.ComponentProps) {
 								{ name: "Comb", fact: `${lot.productName}, ${lot.detail}` },
 								{ name: "Off the hives", fact: fullDay(lot.harvestedOn) },
 								{ name: "Where", fact: place },
-								{ name: "From", fact: lot.flora },
+								{ name: "Flowers", fact: lot.flora },
 								{
 									name: "Colour",
 									fact: (
