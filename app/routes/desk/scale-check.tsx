@@ -69,7 +69,7 @@ export default function ScaleCheck({ loaderData, params }: Route.ComponentProps)
 			<ErrorPlot facts={plotFacts(sheet)} label={plotWords(sheet)} />
 			{!sheet.hasPassed && (
 				<div className="no-print">
-					<Cures suggestedLabel={labelThatHolds(sheet)} againHref={`${lotHref}/scale`} />
+					<Cures isHeld={lot.state === "held"} suggestedLabel={labelThatHolds(sheet)} againHref={`${lotHref}/scale`} />
 				</div>
 			)}
 			<div className="clear-of-margin">

@@ -1,11 +1,15 @@
 import { Link } from "react-router"
 import { Notice } from "~/ui/forms/notice"
 
-/** What cures a lot that failed. It stays held until a later check passes. */
-export function Cures({ suggestedLabel, againHref }: { suggestedLabel: string | null; againHref: string }) {
+/** What cures a lot that failed. One that is held stays so until a later check passes. */
+export function Cures(props: { isHeld: boolean; suggestedLabel: string | null; againHref: string }) {
+	const { isHeld, suggestedLabel, againHref } = props
+	const title = isHeld
+		? "The lot stays held. Any of these cures it."
+		: "The lot is not held any more. Sell none of it until one of these is done."
 	return (
 		<div className="clear-of-margin px-4 py-5 desk:px-8">
-			<Notice title="The lot stays held. Any of these cures it.">
+			<Notice title={title}>
 				<ul className="cures">
 					<li>
 						<b>Relabel</b> every package with a weight that all of them reach

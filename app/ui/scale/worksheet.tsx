@@ -37,7 +37,7 @@ function scaleStep(sheet: NetContentsWorksheet): Step {
 function tareSteps(sheet: NetContentsWorksheet): Step[] {
 	const { tares, averageTare, unit, isTareEntered, ranges, verified } = sheet
 	const sum = tares.map((tare) => shownFigure(tare, unit)).join(" + ")
-	const how = isTareEntered ? "Known from before." : `(${sum}) ÷ ${tares.length}`
+	const how = isTareEntered ? "Known from before." : `(${sum}) ÷ ${tares.length}.`
 	const more = ranges
 		? ` Ranges: errors ${shownFigure(ranges.errors, unit)}, tares ${shownFigure(ranges.tares, unit)}${ranges.ratio ? `, ratio ${ranges.ratio}` : ""}. The handbook may ask for more tares by its table, which is not at hand.`
 		: ""
@@ -154,7 +154,9 @@ export function WorksheetSteps({ sheet, lotPackages }: { sheet: NetContentsWorks
 
 /** Every package of the sample with its error. */
 export function PackageTable({ sheet }: { sheet: NetContentsWorksheet }) {
-	const { unit, unitOfMeasure } = sheet
+	const { unit } = sheet
+	// In whole grams, ounces or pounds the errors in units of measure are the errors themselves.
+	const unitOfMeasure = sheet.unitOfMeasure === "1" ? null : sheet.unitOfMeasure
 	const isRandom = sheet.verified === null
 	return (
 		<table className="sheet-table package-table">
@@ -193,7 +195,7 @@ export function PackageTable({ sheet }: { sheet: NetContentsWorksheet }) {
 						<td className="num fig">{shownFigure(line.gross, unit)}</td>
 						{isRandom && <td className="num fig">{shownFigure(line.nominalGross, unit)}</td>}
 						<td className={line.isTooShort ? "num fig short" : "num fig"}>{shownFigure(line.error, unit)}</td>
-						{line.units !== null && <td className="num fig">{line.units.replace("-", "−")}</td>}
+						{unitOfMeasure && <td className="num fig">{line.units?.replace("-", "−")}</td>}
 						<td className="pl-4!">
 							{line.isTooShort && <span className="short">too short</span>}
 							{line.isJustWithin && "exactly at the variation, counted as within"}
