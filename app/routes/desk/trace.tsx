@@ -29,6 +29,8 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 	return data(answer, { status: asked !== "" && !drill ? 404 : 200 })
 })
 
+const found = (count: number, one: string) => (count === 0 ? `no ${one}` : counted(count, one))
+
 /** A drill: one lot or order is traced, and the page says how long it took and whether every piece is accounted for. */
 export default function Trace({ loaderData, params }: Route.ComponentProps) {
 	const { asked, drill, ran, by, seesOrders } = loaderData
@@ -64,16 +66,8 @@ export default function Trace({ loaderData, params }: Route.ComponentProps) {
 					<div className="sheet-part">
 						<p>
 							The trace took <b>{drill.tookMilliseconds} ms</b> and found {counted(drill.lots.length, "lot")},{" "}
-							{counted(new Set(drill.trace.orders.map(({ storeId }) => storeId)).size, "store").replace(
-								/^none stores$/,
-								"no store",
-							)}{" "}
-							and{" "}
-							{counted(new Set(drill.trace.marketDays.map(({ id }) => id)).size, "market day").replace(
-								/^none market days$/,
-								"no market day",
-							)}
-							.
+							{found(new Set(drill.trace.orders.map(({ storeId }) => storeId)).size, "store")} and{" "}
+							{found(new Set(drill.trace.marketDays.map(({ id }) => id)).size, "market day")}.
 						</p>
 						{drill.faults.length === 0 ? (
 							<p>
