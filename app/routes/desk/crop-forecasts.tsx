@@ -1,5 +1,5 @@
 import { Link } from "react-router"
-import { dayInZone, monthDay } from "~/domain/calendar"
+import { dayInZone, shortMonthDay } from "~/domain/calendar"
 import { type ForecastWeek, howForecastsFared, type WeekForecast } from "~/domain/crop/hindsight"
 import { now as askClock } from "~/platform/clock.server"
 import { compareForecasts } from "~/services/crop/compare-forecasts.server"
@@ -123,7 +123,7 @@ function Comparison({ weeks, productName }: { weeks: readonly ForecastWeek[]; pr
 				<tbody>
 					{weeks.map((week) => (
 						<tr key={week.weekOn}>
-							<td className="name text-body!">{monthDay(week.weekOn)}</td>
+							<td className="name text-body! whitespace-nowrap">{shortMonthDay(week.weekOn)}</td>
 							<td className="num">
 								<Span forecast={week.fourAhead} />
 							</td>
