@@ -97,6 +97,13 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/regroup": { loader: COLD_ROOM, action: COLD_ROOM },
 	// What grades ask and how lots are named is the owner's.
 	"routes/desk/grades": { loader: "desk: owner", action: "desk: owner" },
+	"routes/desk/cold-room": { loader: COLD_ROOM, action: COLD_ROOM },
+	// What freezers held is in the demo's own loads: the first is there for everyone who is admitted.
+	"routes/desk/load": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/load-readings": { loader: COLD_ROOM, action: COLD_ROOM },
+	"routes/desk/load-readings-json": { loader: COLD_ROOM, get: { admitted: [405] }, action: COLD_ROOM },
+	// Without proofs, and without a reason, nothing is released.
+	"routes/desk/release": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: { intent: "proven" } } },
 	"routes/desk/lots": { loader: COLD_ROOM },
 	"routes/desk/lot": { loader: COLD_ROOM },
 	"routes/desk/lot-trace": { loader: COLD_ROOM },

@@ -162,6 +162,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			yard: beeYardId,
 			super: superId,
 			photo: photoId,
+			// The demo's first load of the freezer.
+			load: "1",
 			sale: saleId,
 			take: takeId,
 			product: "11",
