@@ -84,6 +84,12 @@ export default function Lots({ loaderData, params }: Route.ComponentProps) {
 						<Link className="py-1" to={`${base}/cold-room`}>
 							Cold room
 						</Link>
+						<Link className="py-1" to={`${base}/stock-take`}>
+							Count a place
+						</Link>
+						<Link className="py-1" to={`${base}/trace`}>
+							Trace
+						</Link>
 						{mayChangeGrades && (
 							<Link className="py-1" to={`${base}/grades`}>
 								Grades and lot codes

@@ -114,7 +114,11 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 			)}
 			<div className="order-foot">
 				<div>
-					<PackedLots lines={order.lines} lotsHref={`${base}/lots`} />
+					<PackedLots
+						lines={order.lines}
+						lotsHref={`${base}/lots`}
+						historyHref={`${base}/orders/${order.number}/lots`}
+					/>
 					<Timeline events={timeline} />
 					{order.note && <p className="mt-3">Their note: {order.note}</p>}
 				</div>

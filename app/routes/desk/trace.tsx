@@ -1,4 +1,4 @@
-import { data, Form } from "react-router"
+import { data, Form, Link } from "react-router"
 import { dayInZone, dayWords, timeWords } from "~/domain/calendar"
 import { mayRunDesk } from "~/domain/people/roles"
 import { runDrill } from "~/services/trace/run-drill.server"
@@ -44,7 +44,14 @@ export default function Trace({ loaderData, params }: Route.ComponentProps) {
 						? `Run by ${by} on ${ran}.`
 						: "Take any lot or order and see whether every piece of it can be found. Print the page and keep it."
 				}
-				note={drill ? undefined : "Try it before it is needed: with a lot that was sold out long ago, say."}
+				note={
+					seesOrders && (
+						<span className="no-print">
+							<Link to={`/desk/${params.producer}/withdrawals`}>Withdrawals</Link>,{" "}
+							<Link to={`/desk/${params.producer}/records`}>records for an inspector</Link>
+						</span>
+					)
+				}
 			/>
 			<div className="no-print">
 				<ErrorSummary title="Nothing was traced" errors={isMissing ? [{ field: "of", message: NOT_FOUND }] : []} />

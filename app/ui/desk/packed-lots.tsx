@@ -2,8 +2,16 @@ import { Link } from "react-router"
 
 type Line = { code: string; name: string; piecesPerCase: number; lots: readonly { code: string; pieces: number }[] }
 
-/** Which lot fills which line, once an order is packed. */
-export function PackedLots({ lines, lotsHref }: { lines: readonly Line[]; lotsHref: string }) {
+/** Which lot fills which line, once an order is packed; `historyHref` is where it says what those lots came from. */
+export function PackedLots({
+	lines,
+	lotsHref,
+	historyHref,
+}: {
+	lines: readonly Line[]
+	lotsHref: string
+	historyHref: string
+}) {
 	const filled = lines.filter((line) => line.lots.length > 0)
 	if (filled.length === 0) return null
 	return (
@@ -28,6 +36,9 @@ export function PackedLots({ lines, lotsHref }: { lines: readonly Line[]; lotsHr
 					</li>
 				))}
 			</ul>
+			<Link className="inline-block py-1" to={historyHref}>
+				Where these lots come from
+			</Link>
 		</section>
 	)
 }
