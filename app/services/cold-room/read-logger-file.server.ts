@@ -85,7 +85,8 @@ async function readThrough(file: LoggerFile, loadedAt: Date): Promise<LoggerRead
 	const moments = { from: loadedAt.getTime(), to: now.getTime() }
 	const wall = { from: wallOfMoment(moments.from, zone), to: wallOfMoment(moments.to, zone) }
 	const reader = new LoggerReader({ unit, dates, counts: { moments, wall }, isShiftDay: shiftDaysOf(zone) })
-	for await (const text of textOf(file.content)) if (!reader.feed(text)) break
+	// What comes after a refusal is let through unread: a browser that is cut off while sending shows no answer at all.
+	for await (const text of textOf(file.content)) reader.feed(text)
 	return reader.finish()
 }
 
