@@ -11,7 +11,7 @@ import type { PublishedValues } from "./published-values"
 import type { Entry } from "./scale-shapes"
 
 /** A weight as a file writes it: "0.25 lb", "+0.060 lb", "1 lb 8 oz". */
-export function weightOf(text: string): Weight {
+function weightOf(text: string): Weight {
 	const read = parseWeight(text.trim(), "g")
 	if (!read.ok) throw new Error(`not a weight in the file: ${text}`)
 	return read.weight
@@ -20,7 +20,7 @@ export function weightOf(text: string): Weight {
 const number = (value: unknown) => (typeof value === "number" ? value : null)
 
 /** Holds a figure to the decimals it is printed with; a whole number printed of a finer one would be too loose. */
-export function expectPrinted(found: number, printed: number, what: string): void {
+function expectPrinted(found: number, printed: number, what: string): void {
 	const places = `${printed}`.split(".")[1]?.length ?? 0
 	expect(Math.abs(found - printed), `${what}: ${found} for ${printed}`).toBeLessThanOrEqual(0.5 * 10 ** -places + 1e-9)
 }
@@ -100,7 +100,7 @@ function holdCrossChecks(entries: readonly Entry[]): void {
 }
 
 /** What a look-up is about: words of a label, or a figure in a field named by its unit. */
-export function labelOf(entry: Entry): Weight | null {
+function labelOf(entry: Entry): Weight | null {
 	const unit = (["lb", "oz", "g"] as const).find(
 		(each) => entry[each] !== undefined || entry[`label_${each}`] !== undefined,
 	)

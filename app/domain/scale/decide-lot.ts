@@ -45,7 +45,7 @@ export type LotDecision = {
 }
 
 /** The sample variance, with n - 1; null for fewer than two. */
-export function sampleVariance(errors: readonly Fraction[]): Fraction | null {
+function sampleVariance(errors: readonly Fraction[]): Fraction | null {
 	if (errors.length < 2) return null
 	const average = meanOf(errors)
 	const squares = errors.map((error) => times(minus(error, average), minus(error, average)))

@@ -9,7 +9,7 @@ const PLACES: Record<WeightUnit, number> = { g: 3, oz: 4, lb: 5 }
 
 const UNIT_WORDS: Record<WeightUnit, string> = { g: "grams", oz: "ounces", lb: "pounds" }
 
-export const unitWords = (unit: WeightUnit) => UNIT_WORDS[unit]
+const unitWords = (unit: WeightUnit) => UNIT_WORDS[unit]
 
 /** A figure of a worksheet as it is read: rounded for the eye, with a true minus sign: "−1.861". */
 export function shownFigure(figure: string, unit: WeightUnit): string {
