@@ -1,7 +1,7 @@
 import { Form, Link } from "react-router"
 import { fullDay } from "~/domain/calendar"
-import type { PlannedProduct } from "~/domain/lots/plan-harvest"
 import { piecesWords } from "~/domain/quantity"
+import type { LookedAt } from "~/services/harvest/bring-in-harvest.server"
 import type { FoundHarvest } from "~/services/harvest/find-harvest.server"
 import type { HarvestProduct } from "~/services/harvest/find-harvest-page.server"
 import { FilterLinks } from "~/ui/desk/filter-links"
@@ -128,7 +128,7 @@ export function LookStep({
 	errors,
 }: {
 	products: readonly HarvestProduct[]
-	planned: readonly PlannedProduct[]
+	planned: readonly LookedAt[]
 	typed: Typed
 	errors: readonly FieldProblem[]
 }) {

@@ -2,9 +2,8 @@ import { randomUUID } from "node:crypto"
 import { data, redirect } from "react-router"
 import { z } from "zod"
 import { type Day, dayInZone } from "~/domain/calendar"
-import type { PlannedProduct } from "~/domain/lots/plan-harvest"
 import { now as askClock } from "~/platform/clock.server"
-import { bringInHarvest, lookAtHarvest } from "~/services/harvest/bring-in-harvest.server"
+import { bringInHarvest, type LookedAt, lookAtHarvest } from "~/services/harvest/bring-in-harvest.server"
 import { findHarvest } from "~/services/harvest/find-harvest.server"
 import { findChosenSupers, findSupersToTakeOff, type HarvestProduct } from "~/services/harvest/find-harvest-page.server"
 import { admits, type DeskScope, guard } from "../guard.server"
@@ -54,7 +53,7 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 })
 
 type Typed = Record<string, string>
-type Answer = { typed: Typed; errors: FieldProblem[]; planned: PlannedProduct[] | null }
+type Answer = { typed: Typed; errors: FieldProblem[]; planned: LookedAt[] | null }
 
 export const action = guard(
 	admits.desk("owner", "desk", "packer"),

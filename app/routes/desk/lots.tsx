@@ -1,7 +1,9 @@
 import { Link } from "react-router"
 import { dayInZone, shortMonthDay } from "~/domain/calendar"
+import { UNGRADED } from "~/domain/grading/grade-comb"
+import { CULLS } from "~/domain/lots/count-harvest"
 import { mayManagePeople } from "~/domain/people/roles"
-import { wholeCases } from "~/domain/quantity"
+import { piecesWords, wholeCases } from "~/domain/quantity"
 import { now as askClock } from "~/platform/clock.server"
 import { type ListedLot, type LotState, listLots } from "~/services/desk/list-lots.server"
 import { FilterLinks } from "~/ui/desk/filter-links"
@@ -40,6 +42,12 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 const MISSING_WORDS: Record<ListedLot["missing"][number], string> = {
 	freezing: "freezing not proven",
 	weighing: "not weighed",
+}
+
+/** How a lot was graded, after the product's own words. */
+function gradeWords(grade: string): string {
+	if (grade === "") return ""
+	return grade === UNGRADED || grade === CULLS ? `, ${grade.toLowerCase()}` : `, graded ${grade}`
 }
 
 /** What a held lot waits for. */
@@ -147,7 +155,7 @@ export default function Lots({ loaderData, params }: Route.ComponentProps) {
 									{lot.productName}
 									<span className="note block">
 										{lot.detail}
-										{lot.grade && `, graded ${lot.grade}`}
+										{gradeWords(lot.grade)}
 									</span>
 									{lot.state === "held" && <span className="note block desk:hidden">{heldWords(lot)}</span>}
 								</td>
@@ -160,7 +168,7 @@ export default function Lots({ loaderData, params }: Route.ComponentProps) {
 								</td>
 								<td className="max-desk:hidden">{listDay(lot.harvestedOn, today)}</td>
 								<td className="max-desk:hidden">{listDay(lot.bestBeforeOn, today)}</td>
-								<td className="num pr-4! desk:pr-8!">{lot.piecesHarvested} pieces</td>
+								<td className="num pr-4! desk:pr-8!">{piecesWords(lot.piecesHarvested)}</td>
 							</tr>
 						))}
 					</tbody>

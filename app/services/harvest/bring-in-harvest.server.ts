@@ -7,7 +7,7 @@ import type { Day } from "~/domain/calendar"
 import { type HarvestProblem, type PlannedProduct, planHarvest, type WrittenHarvest } from "~/domain/lots/plan-harvest"
 import type { Result } from "~/domain/result"
 import { refreshExpected } from "~/services/crop/refresh-expected.server"
-import { takeLotCodes } from "~/services/lots/take-lot-codes.server"
+import { type LotToName, proposeLotCodes, takeLotCodes } from "~/services/lots/take-lot-codes.server"
 import { type NewLot, writeLots } from "~/services/lots/write-lots.server"
 import { type HarvestSuper, readSupers } from "./read-supers.server"
 
@@ -24,13 +24,33 @@ type Problems = { ok: false; reason: "problems"; problems: HarvestProblem[] }
 
 const superIdsOf = (harvest: WrittenHarvest) => harvest.products.flatMap(({ supers }) => supers.map(({ id }) => id))
 
+/** A product of a harvest as it would be brought in, with the codes that its lots would get. */
+export type LookedAt = PlannedProduct & { proposedCodes: string[] }
+
 /** What a harvest would become, without bringing it in; refuses as `bringInHarvest` does, but for codes that are taken. */
 export function lookAtHarvest(
 	harvest: WrittenHarvest & { producerId: string; today: Day },
-): Promise<Result<{ products: PlannedProduct[] }, Problems>> {
-	const { producerId, today } = harvest
-	return readProducer(producerId, async (tx) =>
-		planHarvest(harvest, { supers: await readSupers(tx, { producerId, ids: superIdsOf(harvest) }), today }),
+): Promise<Result<{ products: LookedAt[] }, Problems>> {
+	const { producerId, today, harvestedOn } = harvest
+	return readProducer(producerId, async (tx) => {
+		const supers = await readSupers(tx, { producerId, ids: superIdsOf(harvest) })
+		const plan = planHarvest(harvest, { supers, today })
+		if (!plan.ok) return plan
+		const lots = lotsToName(plan.products, supers)
+		const codes = (await proposeLotCodes(tx, { producerId, harvestedOn, lots })).values()
+		const products = plan.products.map((product) => ({
+			...product,
+			proposedCodes: product.lots.map(() => codes.next().value ?? ""),
+		}))
+		return { ok: true, products }
+	})
+}
+
+/** The lots of a plan, in its order, as their codes are made. */
+function lotsToName(products: readonly PlannedProduct[], supers: readonly HarvestSuper[]): LotToName[] {
+	const productCodes = new Map(supers.map(({ productId, productCode }) => [productId, productCode]))
+	return products.flatMap(({ productId, lots }) =>
+		lots.map(({ code }) => ({ productCode: productCodes.get(productId) ?? "", code })),
 	)
 }
 
@@ -67,15 +87,7 @@ async function bringIn(tx: Tx, harvest: BringInHarvest): Promise<Result<{ harves
 	await refreshExpected(tx, { producerId, today, productIds: plan.products.map(({ productId }) => productId) })
 
 	const planned = plan.products.flatMap((product) => product.lots.map((lot) => ({ product, lot })))
-	const productCodes = new Map(supers.map(({ productId, productCode }) => [productId, productCode]))
-	const named = await takeLotCodes(tx, {
-		producerId,
-		harvestedOn,
-		lots: planned.map(({ product, lot }) => ({
-			productCode: productCodes.get(product.productId) ?? "",
-			code: lot.code,
-		})),
-	})
+	const named = await takeLotCodes(tx, { producerId, harvestedOn, lots: lotsToName(plan.products, supers) })
 	if ("taken" in named) throw new CodeTaken(named.taken, plan.products)
 	const lots = planned.map(({ product, lot }, index): NewLot => {
 		const { lots: _, finished, ...facts } = product

@@ -10,19 +10,39 @@ const SPARE = 100
 /** What each new lot's code is made of. `code` is one that was typed, or null for one by the producer's pattern. */
 export type LotToName = { productCode: string; code: string | null }
 
+type ToName = { producerId: string; harvestedOn: Day; lots: readonly LotToName[] }
+
 /**
  * The codes of new lots, in the order given: those typed, and for the others the next free numbers of the year by the
- * producer's pattern. Takes the counter's lock, so take it late. Null when a typed code is another lot's already, with
- * that code.
+ * producer's pattern. Takes the counter's lock, so take it late. When a typed code is another lot's already, answers it as
+ * `taken`.
  */
-export async function takeLotCodes(
-	tx: Tx,
-	query: { producerId: string; harvestedOn: Day; lots: readonly LotToName[] },
-): Promise<{ codes: string[] } | { taken: string }> {
-	const { producerId, harvestedOn, lots } = query
-	const pattern = await findPattern(tx, producerId)
+export async function takeLotCodes(tx: Tx, query: ToName): Promise<{ codes: string[] } | { taken: string }> {
+	const { producerId, harvestedOn } = query
 	const year = Number(harvestedOn.slice(0, 4))
 	const first = await takeNumber(tx, { producerId, series: "lot", year })
+	const named = await nameFrom(tx, { ...query, first })
+	if ("taken" in named) return named
+	await tx.execute(sql`
+		update counters set last = ${named.last} where producer_id = ${producerId} and series = 'lot' and year = ${year}`)
+	return named
+}
+
+/** The codes that new lots would get now, without taking any number; for those typed, what was typed. */
+export async function proposeLotCodes(tx: Tx, query: ToName): Promise<string[]> {
+	const { producerId, harvestedOn, lots } = query
+	const { rows } = await tx.execute<{ last: number }>(sql`
+		select last from counters
+		where producer_id = ${producerId} and series = 'lot' and year = ${Number(harvestedOn.slice(0, 4))}`)
+	const named = await nameFrom(tx, { ...query, first: (rows[0]?.last ?? 0) + 1 })
+	return "taken" in named ? lots.map(({ code }) => code ?? "") : named.codes
+}
+
+async function nameFrom(
+	tx: Tx,
+	{ producerId, harvestedOn, lots, first }: ToName & { first: number },
+): Promise<{ codes: string[]; last: number } | { taken: string }> {
+	const pattern = await findPattern(tx, producerId)
 	const numbers = Array.from({ length: lots.length + SPARE }, (_, index) => first + index)
 	const codeOf = ({ productCode }: LotToName, number: number) => lotCode(pattern, { productCode, harvestedOn, number })
 	const candidates = lots.flatMap((lot) => lot.code ?? numbers.map((number) => codeOf(lot, number)))
@@ -44,9 +64,7 @@ export async function takeLotCodes(
 		}
 		throw new Error(`no free lot code by ${pattern} from ${first}`)
 	})
-	await tx.execute(sql`
-		update counters set last = ${last} where producer_id = ${producerId} and series = 'lot' and year = ${year}`)
-	return { codes }
+	return { codes, last }
 }
 
 async function findPattern(tx: Tx, producerId: string): Promise<string> {

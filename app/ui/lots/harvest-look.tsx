@@ -14,6 +14,8 @@ export type LookedAtProduct = {
 	flora: string
 	bestBeforeOn: string
 	lots: { grade: string; pieces: number }[]
+	/** In the order of the lots: the code that each gets when its field is left empty. */
+	proposedCodes: string[]
 }
 
 /** What water in comb does, in words with their source; nothing where there is nothing to say. */
@@ -57,7 +59,7 @@ export function HarvestLook({
 					</tr>
 				</thead>
 				<tbody>
-					{products.flatMap(({ productId, name, detail, lots }) =>
+					{products.flatMap(({ productId, name, detail, lots, proposedCodes }) =>
 						lots.map((lot, index) => {
 							const id = `code-${productId}-${index}`
 							const error = errorOf(`code-${productId}-${lot.grade}`)
@@ -76,7 +78,7 @@ export function HarvestLook({
 											id={id}
 											name={`code-${productId}-${lot.grade}`}
 											maxLength={20}
-											placeholder="by your pattern"
+											placeholder={proposedCodes[index]}
 											autoComplete="off"
 											defaultValue={typed[`code-${productId}-${lot.grade}`]}
 											aria-invalid={error ? true : undefined}
@@ -123,8 +125,8 @@ export function HarvestLook({
 					</div>
 				))}
 				<p className="note">
-					A code left empty is given by your pattern. The lots go into the cold room and are held until they are frozen
-					and weighed.
+					A field left empty gives the code that is shown in it, or the next free one by your pattern. The lots go into
+					the cold room and are held until they are frozen and weighed.
 				</p>
 				<div className="flex flex-wrap gap-3">
 					<Button variant="primary" size="big" name="intent" value="bring-in">

@@ -61,7 +61,11 @@ async function supersOf({ producerId }: Yard) {
 describe("bringing supers in", () => {
 	test("makes a held lot of each grade, every piece in the cold room, and sets the supers off", async () => {
 		const crop = await openCrop()
-		const answer = await bringInHarvest(written(crop))
+		const form = written(crop)
+		expect(await lookAtHarvest(form)).toMatchObject({
+			products: [{ proposedCodes: ["2126-001", "2126-002", "2126-003"] }],
+		})
+		const answer = await bringInHarvest(form)
 		if (!answer.ok) throw new Error(JSON.stringify(answer))
 		const harvest = await findHarvest({ producerId: crop.yard.producerId, harvestId: answer.harvestId })
 		expect(harvest).toMatchObject({ supers: 2, capacityPieces: 80, finishedPieces: 72 })
