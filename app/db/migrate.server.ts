@@ -48,6 +48,16 @@ $$;
 revoke all on function jobs.enqueue(text, json, timestamptz, text) from public;
 grant execute on function jobs.enqueue(text, json, timestamptz, text) to waxbill_app;
 
+create or replace function jobs.enqueue_all(task text, payloads json[])
+returns void language sql security definer set search_path = graphile_worker, pg_temp
+as $$
+	select graphile_worker.add_jobs(array_agg(
+		row(task, p.payload, null, now(), 25, null, null, null)::graphile_worker.job_spec
+	)) from unnest(payloads) as p (payload) having count(*) > 0;
+$$;
+revoke all on function jobs.enqueue_all(text, json[]) from public;
+grant execute on function jobs.enqueue_all(text, json[]) to waxbill_app;
+
 create or replace function jobs.free_stuck(held_for interval) returns void
 language sql security definer set search_path = graphile_worker, pg_temp
 as $$

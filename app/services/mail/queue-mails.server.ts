@@ -29,8 +29,7 @@ export async function queueMails(
 			)
 			.onConflictDoNothing()
 			.returning({ id: outboxMails.id })
-		await tx.execute(sql`
-			select jobs.enqueue('send-mail', json_build_object('producerId', ${producerId}::uuid, 'mailId', m.id), now())
-			from unnest(${sql.param(rows.map(({ id }) => id))}::uuid[]) as m (id)`)
+		const payloads = rows.map(({ id }) => JSON.stringify({ producerId, mailId: id }))
+		await tx.execute(sql`select jobs.enqueue_all('send-mail', ${sql.param(payloads)}::text[]::json[])`)
 	}
 }
