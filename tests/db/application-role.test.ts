@@ -42,6 +42,7 @@ test("only the functions named here run with more rights than their caller has",
 	)
 	expect(rows.map(({ name }) => name)).toEqual([
 		"jobs.enqueue",
+		"jobs.enqueue_all",
 		"jobs.free_stuck",
 		"keep_stock_balance",
 		"raise_shop_version",
