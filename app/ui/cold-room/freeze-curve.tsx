@@ -2,9 +2,9 @@ import type { CurveBucket } from "~/domain/cold-room/curve"
 import { degrees, FREEZE_TABLE, type FreezeRow } from "~/domain/cold-room/freezing"
 
 const WIDTH = 720
-const HEIGHT = 240
-const LEFT = 44
-const BOTTOM = 24
+const HEIGHT = 330
+const LEFT = 62
+const BOTTOM = 32
 
 type FreezeCurveProps = {
 	buckets: readonly CurveBucket[]
@@ -42,13 +42,13 @@ export function FreezeCurve({ buckets, run, row, ends, label }: FreezeCurveProps
 				/>
 			)}
 			<line className="axis" x1={LEFT} x2={WIDTH} y1={y(0)} y2={y(0)} />
-			<text x={LEFT - 6} y={y(0) + 4} textAnchor="end">
+			<text x={LEFT - 6} y={y(0) + 5} textAnchor="end">
 				0 °C
 			</text>
 			{FREEZE_TABLE.map((one) => (
 				<g key={one.tenthsC} className={one === row ? "row on" : "row"}>
 					<line x1={LEFT} x2={WIDTH} y1={y(one.tenthsC)} y2={y(one.tenthsC)} />
-					<text x={LEFT - 6} y={y(one.tenthsC) + 4} textAnchor="end">
+					<text x={LEFT - 6} y={y(one.tenthsC) + 5} textAnchor="end">
 						{degrees(one.tenthsC / 10)}
 					</text>
 				</g>

@@ -79,7 +79,7 @@ export function LoggerForm({ action, proofId, typed, errors, onErrors, onTaken }
 			/>
 			<div className="field">
 				<label className="field-label" htmlFor="field-file">
-					The logger's file
+					The logger’s file
 				</label>
 				<input
 					id="field-file"
