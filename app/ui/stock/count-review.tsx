@@ -85,9 +85,9 @@ function ReviewRow({ lot, values, errors }: { lot: ReviewedLot } & Pick<CountRev
 	const differs = lot.counted !== lot.ledger
 	return (
 		<tr>
-			<td className="lot fig">{lot.code}</td>
+			<td className="lot fig max-desk:hidden">{lot.code}</td>
 			<td className="cell-product">
-				{lot.productName}
+				<span className="fig desk:hidden">{lot.code}</span> {lot.productName}
 				<span className="note block">{lot.detail}</span>
 			</td>
 			<td className="num fig cell-asked">

@@ -61,7 +61,7 @@ export function FigureLines({ caption, heads, counted, sum, apart, apartWords, e
 					<td colSpan={3} className="max-desk:hidden">
 						{sum.words}
 					</td>
-					<td className="desk:hidden">{sum.words}</td>
+					<td className="pl-4! desk:hidden">{sum.words}</td>
 					<td className="num fig pr-4! desk:pr-8!">{sum.pieces}</td>
 				</tr>
 			</tbody>
@@ -110,7 +110,7 @@ function PartRows({ part }: { part: FigurePart }) {
 					<td colSpan={3} className="max-desk:hidden">
 						{part.restLines} more lines
 					</td>
-					<td className="desk:hidden">{part.restLines} more lines</td>
+					<td className="pl-4! desk:hidden">{part.restLines} more lines</td>
 					<td className="num fig pr-4! desk:pr-8!" title={piecesWords(part.restPieces)}>
 						{part.restPieces}
 					</td>
