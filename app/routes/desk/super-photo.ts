@@ -4,7 +4,7 @@ import { findPhoto } from "~/services/crop/find-photo.server"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/super-photo"
 
-/** A photo of a check. It never changes, and only the producer's people may keep it. */
+/** A photo of a check, for the producer's people alone. That it is private and its type as told, every answer says. */
 export const loader = guard(
 	admits.desk("owner", "desk", "packer"),
 	async ({ params }: Route.LoaderArgs, { producer }) => {
