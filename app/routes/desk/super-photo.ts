@@ -15,8 +15,6 @@ export const loader = guard(
 			headers: {
 				"Content-Type": photo.mediaType,
 				"Content-Disposition": "inline",
-				"Cache-Control": "private, max-age=86400",
-				"X-Content-Type-Options": "nosniff",
 				"Content-Security-Policy": "default-src 'none'; frame-ancestors 'none'",
 			},
 		})
