@@ -1,6 +1,6 @@
 import { readFileSync } from "node:fs"
 import { z } from "zod"
-import { freezingHeldTo, freezingShape } from "./freezing"
+import { freezingHeldTo, freezingShape } from "./freezing-shapes"
 import { combGradesShape, keepingShape } from "./grade-shapes"
 import { barcodesShape, labellingShape, netContentsShape, scaleHeldTo } from "./scale-shapes"
 

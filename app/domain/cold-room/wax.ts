@@ -2,7 +2,7 @@
  * Degrees Celsius at which beeswax changes. Melting range and brittleness: secondary sources; softening: from memory,
  * medium confidence.
  */
-export const WAX_C = { melts: [62, 64], brittleBelow: 18, softFrom: 35 } as const
+const WAX_C = { melts: [62, 64], brittleBelow: 18, softFrom: 35 } as const
 
 export type WaxState = "brittle" | "firm" | "soft" | "melting" | "molten"
 

@@ -15,7 +15,7 @@ export type ReleaseAnswer = Result<
 type ReleasedLot = { producerId: string; personId: string; code: string }
 
 /** A reason shorter than this says nothing to whoever reads it years later. */
-export const SHORTEST_REASON = 10
+const SHORTEST_REASON = 10
 
 /**
  * Releases a held lot on its proofs: enough of it was frozen long enough and its latest weighing passed. The lot's row is

@@ -24,7 +24,7 @@ export async function openBeeYard() {
 export type BeeYard = Awaited<ReturnType<typeof openBeeYard>>
 
 /** A check by shares, made today. */
-export const TYPED: TypedCheck = {
+const TYPED: TypedCheck = {
 	by: "shares",
 	rows: ["", "", "", ""],
 	filled: "60",
