@@ -98,6 +98,8 @@ export const memberships = pgTable(
 			.references(() => users.id),
 		role: text("role", { enum: ["owner", "desk", "packer", "stall", "buyer", "payer"] }).notNull(),
 		storeId: uuid("store_id"),
+		/** Letters that a person of a store has asked not to get; see domain/people/letters.ts. */
+		lettersOff: text("letters_off").array().notNull().default([]),
 		createdAt: instant("created_at").notNull().defaultNow(),
 		endedAt: instant("ended_at"),
 	},

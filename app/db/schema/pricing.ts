@@ -82,7 +82,10 @@ export const prices = pgTable(
 		tierId: uuid("tier_id").notNull(),
 		productId: uuid("product_id").notNull(),
 		minCases: smallint("min_cases").notNull().default(1),
+		/** For comb priced by weight the estimate for a case; what is invoiced follows from `pound_cents` and the scale. */
 		caseCents: cents("case_cents").notNull(),
+		/** Set where the product is priced by weight. */
+		poundCents: cents("pound_cents"),
 		validFrom: day("valid_from").notNull(),
 	},
 	(t) => [
@@ -99,6 +102,6 @@ export const prices = pgTable(
 		}),
 		unique("prices_break_once").on(t.producerId, t.tierId, t.productId, t.minCases, t.validFrom),
 		index("prices_by_product").on(t.producerId, t.productId),
-		check("prices_sane", sql`${t.minCases} > 0 and ${t.caseCents} >= 0`),
+		check("prices_sane", sql`${t.minCases} > 0 and ${t.caseCents} >= 0 and coalesce(${t.poundCents}, 0) >= 0`),
 	],
 )

@@ -43,6 +43,8 @@ export const stores = pgTable(
 		termsDiscountDays: smallint("terms_discount_days").notNull().default(0),
 		/** Bought for resale under a certificate good until this day; null = sales tax is charged where it applies. */
 		resaleCertificateUntil: day("resale_certificate_until"),
+		/** In a sharing: 100 counts once, 200 twice. */
+		sharingWeightPercent: smallint("sharing_weight_percent").notNull().default(100),
 		isActive: boolean("is_active").notNull().default(true),
 		createdAt: instant("created_at").notNull().defaultNow(),
 	},
@@ -60,6 +62,7 @@ export const stores = pgTable(
 			"stores_money_not_negative",
 			sql`${t.minimumCents} >= 0 and ${t.deliveryChargeCents} >= 0 and coalesce(${t.freeAboveCents}, 0) >= 0`,
 		),
+		check("stores_sharing_weight_sane", sql`${t.sharingWeightPercent} between 10 and 1000`),
 		check("stores_terms_known", sql`${t.termsKind} in ('on-receipt','net','end-of-month')`),
 		check(
 			"stores_terms_sane",

@@ -14,11 +14,15 @@ export function stateWords(state: OrderState, producerName: string): string {
 	return words[state]
 }
 
-type EventKind = OrderState | "invoiced" | "paid"
+type EventKind = OrderState | "changed" | "shared" | "proposed" | "answered" | "invoiced" | "paid"
 
 /** What happened, at the head of a line of the timeline. */
 export const EVENT_WORDS: Record<EventKind, string> = {
 	placed: "Placed",
+	changed: "Changed",
+	shared: "Shared out",
+	proposed: "Change proposed",
+	answered: "Change answered",
 	confirmed: "Confirmed",
 	packed: "Packed",
 	sent: "Sent",
