@@ -42,11 +42,12 @@ export function holdFreezing({ storage_and_freezing: values }: PublishedValues):
 				}
 			})
 
-			if (isWholeTable) test("nothing warmer than the warmest row is treated", () => {
-				const warmest = Math.max(...rows.map(({ temp_c }) => temp_c))
-				expect(rowReached(warmest + 0.1, "C")).toBeNull()
-				expect(FREEZE_TABLE[0]?.tenthsC).toBe(warmest * 10)
-			})
+			if (isWholeTable)
+				test("nothing warmer than the warmest row is treated", () => {
+					const warmest = Math.max(...rows.map(({ temp_c }) => temp_c))
+					expect(rowReached(warmest + 0.1, "C")).toBeNull()
+					expect(FREEZE_TABLE[0]?.tenthsC).toBe(warmest * 10)
+				})
 		})
 	}
 
