@@ -1,4 +1,4 @@
-import type { expectedSupplies, lots, orderLineLots, saleLineLots, stockMoves } from "~/db/schema"
+import type { lots, orderLineLots, saleLineLots, stockMoves } from "~/db/schema"
 import { notAfter, type Season } from "./season"
 import type { Shelf, Taken } from "./shelf"
 
@@ -10,7 +10,6 @@ export type Stock = {
 	moves: Move[]
 	lineLots: (typeof orderLineLots.$inferInsert)[]
 	saleLots: (typeof saleLineLots.$inferInsert)[]
-	expected: (typeof expectedSupplies.$inferInsert)[]
 }
 
 /** Stock as it is being planned. */

@@ -5,18 +5,18 @@ import type { MarketDayOfSeason } from "./plan-market-days"
 import type { OrderOfSeason } from "./plan-orders"
 import { named, type Season } from "./season"
 import { openShelf, type Taken } from "./shelf"
-import { writeExpected, writeHeld, writeLots } from "./stock-lots"
+import { writeHeld, writeLots } from "./stock-lots"
 
 type Plans = { catalogue: Catalogue; orders: readonly OrderOfSeason[]; marketDays: readonly MarketDayOfSeason[] }
 
 /**
- * Lots and moves behind everything that was packed, sent and sold, and what is ready, held and expected now, so that
+ * Lots and moves behind everything that was packed, sent and sold, and what is ready and held now, so that
  * the coming delivery day has the free cases the scenario names. Writes the lots of each packed line into `orders`.
  */
 export function planStock(season: Season, { catalogue, orders, marketDays }: Plans): Stock {
 	const products = [...catalogue.products.values()]
 	const shelves = new Map(products.map((product) => [product.code, openShelf(season, product)]))
-	const ledger: Ledger = { season, shelves, lots: [], moves: [], lineLots: [], saleLots: [], expected: [] }
+	const ledger: Ledger = { season, shelves, lots: [], moves: [], lineLots: [], saleLots: [] }
 	const steps = [
 		...orders.map((order) => ({ at: order.packedAt, run: (at: Date) => pack(ledger, order, at) })),
 		...marketDays.flatMap((day) => marketSteps(ledger, day)),
@@ -30,14 +30,12 @@ export function planStock(season: Season, { catalogue, orders, marketDays }: Pla
 		shelf.settle(readyPieces(product, orders), season.today)
 		writeLots(ledger, shelf)
 		writeHeld(ledger, product, shelf.nextCode)
-		writeExpected(ledger, product)
 	}
-	const { lots, lineLots, saleLots, expected } = ledger
+	const { lots, lineLots, saleLots } = ledger
 	return {
 		lots,
 		lineLots,
 		saleLots,
-		expected,
 		moves: ledger.moves.toSorted((a, b) => a.movedAt.getTime() - b.movedAt.getTime()),
 	}
 }

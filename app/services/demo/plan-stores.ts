@@ -44,13 +44,15 @@ export function planStores(season: Season, catalogue: Catalogue): Stores {
 		rows: {
 			rounds: rounds.map((round) => ({ producerId, ...round })),
 			shutDays: season.days.shut.map(({ on, reason }) => ({ producerId, shutOn: on, reason })),
-			stores: [...stores.values()].map((store) => ({
+			stores: [...stores.values()].map((store, index) => ({
 				producerId,
 				id: store.id,
 				slug: store.slug,
 				name: store.name,
 				tierId: named(catalogue.tierIds, store.tier),
 				address: store.address,
+				phone: `555-01${String(index + 10)}`,
+				email: `receiving@${mailDomain(store)}`,
 				receivingNote: store.receivingNote,
 				minimumCents: store.minimumCents,
 				deliveryChargeCents: store.deliveryChargeCents,
@@ -92,4 +94,9 @@ export function planStores(season: Season, catalogue: Catalogue): Stores {
 			}),
 		},
 	}
+}
+
+/** Where the store's buyer has a mail address, or one made from the store's own name. */
+function mailDomain(store: StoreOfSeason): string {
+	return store.buyerEmail?.split("@")[1] ?? `${store.slug.replaceAll("-", "")}.example.test`
 }

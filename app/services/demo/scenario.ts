@@ -29,8 +29,6 @@ export type DemoProduct = {
 	freeCases: number
 	/** A lot that is held, in cases, and how many days until its release is expected. */
 	held?: { cases: number; inDays: number }
-	/** Cases to come off the hives at the low figure, so many days after the coming delivery day (negative: before it). */
-	expected?: { cases: number; afterDays: number }
 }
 
 /** A standing order of a store; `weeks` apart, on the first weekday of its rounds. */
@@ -96,6 +94,24 @@ export type DemoComingOrder = {
 	poNumber?: string
 }
 
+/** What was seen when a super was last looked into, in pieces; capped ones are full too. */
+export type DemoLook = { daysAgo: number; full: number; capped: number; isDrawn?: boolean; note?: string }
+
+/**
+ * A super on its hive now; without a look where it was only just set on. `readyAfterDays` sets the pace at which it was
+ * capped, so that it should be ready so many days after the coming delivery day.
+ */
+export type DemoSuper = {
+	code: string
+	setDaysAgo: number
+	looked?: DemoLook
+	readyAfterDays?: number
+	escapeDaysAgo?: number
+}
+
+/** A place with hives, each a stack of supers with the undermost first. Hives are counted on from yard to yard. */
+export type DemoYard = { name: string; flora: string; hives: readonly (readonly DemoSuper[])[] }
+
 /** All that is told of one producer; `seed-demo.server.ts` makes rows of it. */
 export type DemoScenario = {
 	seed: number
@@ -117,6 +133,7 @@ export type DemoScenario = {
 	products: readonly DemoProduct[]
 	rounds: readonly { name: string; weekday: Weekday; cutoffDaysBefore: number; cutoffTime: string }[]
 	stores: readonly DemoStore[]
+	yards: readonly DemoYard[]
 	members: readonly DemoMember[]
 	/** Whoever enters orders for stores without a buyer of their own, and does the rest at the desk. */
 	deskEmail: string

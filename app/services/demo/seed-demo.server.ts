@@ -1,13 +1,15 @@
 import { inArray } from "drizzle-orm"
-import type { PgInsertValue, PgTable } from "drizzle-orm/pg-core"
 import * as schema from "~/db/schema"
 import { type Tx, withPlatform, withProducer } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
 import { now as askClock } from "~/platform/clock.server"
+import { refreshExpected } from "~/services/crop/refresh-expected.server"
 import { startChance } from "./chance"
+import { insertAll } from "./insert-all.server"
 import { larkmoor } from "./larkmoor"
 import { type DemoPerson, demoPeople } from "./people"
 import { planCatalogue } from "./plan-catalogue"
+import { planHistory } from "./plan-history.server"
 import { planInvoices } from "./plan-invoices"
 import { planMarketDays } from "./plan-market-days"
 import { planOrders } from "./plan-orders"
@@ -19,6 +21,7 @@ import { planStores } from "./plan-stores"
 import type { DemoScenario } from "./scenario"
 import { minutesAfter, named, type Season, seasonDays } from "./season"
 import { tansyKnoll } from "./tansy-knoll"
+import { writeCounts, writeCrop, writeReleases } from "./write-history.server"
 
 /**
  * Fills the database with two producers and a season of their work, as of today, and answers whom to sign in as. A
@@ -82,6 +85,9 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	const orders = planOrders(season, { catalogue, stores, standing: standing.standing })
 	const markets = planMarketDays(season, catalogue)
 	const stock = planStock(season, { catalogue, orders, marketDays: markets.days })
+	// A row of chances of its own, so that what stands behind the lots changes nothing of what was ordered.
+	const chance = startChance(season.scenario.seed + 1)
+	const history = await planHistory({ ...season, chance }, { catalogue, stock, orders })
 	const invoices = planInvoices(season, orders)
 	const payments = planPayments(season, invoices)
 	const records = planRecords(season, { orders, invoices, payments })
@@ -135,12 +141,14 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 			})),
 		),
 	)
+	await writeCrop(tx, history)
 	await insertAll(tx, schema.lots, stock.lots)
-	await insertAll(tx, schema.expectedSupplies, stock.expected)
+	await writeReleases(tx, history)
 	await insertAll(tx, schema.markets, markets.rows.markets)
 	await insertAll(tx, schema.marketDays, markets.rows.days)
 	await insertAll(tx, schema.marketDayPeople, markets.rows.people)
 	await insertAll(tx, schema.stockMoves, stock.moves)
+	await writeCounts(tx, history)
 	await insertAll(tx, schema.orderLineLots, stock.lineLots)
 	await insertAll(
 		tx,
@@ -157,18 +165,6 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	await insertAll(tx, schema.orderEvents, records.events)
 	await insertAll(tx, schema.auditEntries, records.audit)
 	await insertAll(tx, schema.outboxMails, records.mails)
-	await insertAll(tx, schema.counters, records.counters)
-}
-
-/** PostgreSQL takes 65,535 values in one statement; this many rows of the widest table stay below. */
-const ROWS_AT_ONCE = 1_000
-
-async function insertAll<Table extends PgTable>(
-	tx: Tx,
-	table: Table,
-	rows: readonly PgInsertValue<Table>[],
-): Promise<void> {
-	for (let from = 0; from < rows.length; from += ROWS_AT_ONCE) {
-		await tx.insert(table).values(rows.slice(from, from + ROWS_AT_ONCE))
-	}
+	await insertAll(tx, schema.counters, [...records.counters, ...history.counters])
+	await refreshExpected(tx, { producerId, today: season.today })
 }

@@ -67,21 +67,3 @@ export function writeHeld(ledger: Ledger, product: CatalogueProduct, nextCode: (
 	const firstOpenOn = days.open[0]?.on ?? wanted
 	writeLot(ledger, lot, { state: "held", releaseOn: compareDays(wanted, firstOpenOn) < 0 ? wanted : firstOpenOn })
 }
-
-/** What is still on the hives of a product. */
-export function writeExpected(ledger: Ledger, product: CatalogueProduct): void {
-	const { producerId, chance, today, days } = ledger.season
-	const { expected } = product
-	if (!expected) return
-	const wanted = addDays(days.open[0]?.on ?? today, expected.afterDays)
-	const lowPieces = expected.cases * product.piecesPerCase
-	ledger.expected.push({
-		producerId,
-		id: chance.id(),
-		productId: product.id,
-		expectedOn: compareDays(wanted, today) > 0 ? wanted : today,
-		lowPieces,
-		likelyPieces: Math.round(lowPieces * 1.3),
-		highPieces: Math.round(lowPieces * 1.6),
-	})
-}

@@ -1,4 +1,5 @@
 import type { DemoScenario } from "../scenario"
+import { larkmoorYards } from "./crop"
 import { larkmoorProducts } from "./products"
 import { larkmoorStores } from "./stores"
 
@@ -31,6 +32,7 @@ export const larkmoor: DemoScenario = {
 		{ name: "Friday round, mills and market hall", weekday: 5, cutoffDaysBefore: 2, cutoffTime: "12:00" },
 	],
 	stores: larkmoorStores,
+	yards: larkmoorYards,
 	members: [
 		{ email: "ida@larkmoor.example.test", role: "owner" },
 		{ email: "bram@larkmoor.example.test", role: "desk" },

@@ -1,6 +1,6 @@
 import type { DemoProduct } from "../scenario"
 
-/** Eight products; the cases free, held and expected make the order sheet of the coming delivery day. */
+/** Eight products; the cases free and held make the order sheet of the coming delivery day. */
 export const larkmoorProducts: readonly DemoProduct[] = [
 	{
 		code: "11",
@@ -40,7 +40,6 @@ export const larkmoorProducts: readonly DemoProduct[] = [
 		yard: "Home yard",
 		harvestPieces: 420,
 		freeCases: 5,
-		expected: { cases: 6, afterDays: 1 },
 	},
 	{
 		code: "22",
@@ -100,7 +99,6 @@ export const larkmoorProducts: readonly DemoProduct[] = [
 		yard: "Home yard",
 		harvestPieces: 320,
 		freeCases: 12,
-		expected: { cases: 6, afterDays: -1 },
 	},
 	{
 		code: "42",
@@ -158,6 +156,5 @@ export const larkmoorProducts: readonly DemoProduct[] = [
 		yard: "Canal Bank",
 		harvestPieces: 240,
 		freeCases: 0,
-		expected: { cases: 8, afterDays: 5 },
 	},
 ]

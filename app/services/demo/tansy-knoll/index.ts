@@ -1,4 +1,4 @@
-import type { DemoProduct, DemoScenario, DemoStore } from "../scenario"
+import type { DemoProduct, DemoScenario, DemoStore, DemoYard } from "../scenario"
 
 const products: readonly DemoProduct[] = [
 	{
@@ -39,7 +39,6 @@ const products: readonly DemoProduct[] = [
 		yard: "The knoll",
 		harvestPieces: 100,
 		freeCases: 4,
-		expected: { cases: 4, afterDays: 4 },
 	},
 	{
 		code: "51",
@@ -109,6 +108,28 @@ const stores: readonly DemoStore[] = [
 	},
 ]
 
+const yards: readonly DemoYard[] = [
+	{
+		name: "The knoll",
+		flora: "lime blossom",
+		hives: [
+			[
+				{ code: "31", setDaysAgo: 30, looked: { daysAgo: 3, full: 40, capped: 32 }, readyAfterDays: 4 },
+				{ code: "11", setDaysAgo: 12, looked: { daysAgo: 3, full: 9, capped: 0, isDrawn: true } },
+			],
+			[{ code: "11", setDaysAgo: 22, looked: { daysAgo: 3, full: 30, capped: 14, isDrawn: true } }],
+		],
+	},
+	{
+		name: "Mill edge",
+		flora: "lime blossom",
+		hives: [
+			[{ code: "51", setDaysAgo: 18, looked: { daysAgo: 12, full: 12, capped: 2 } }],
+			[{ code: "51", setDaysAgo: 1 }],
+		],
+	},
+]
+
 /** The second producer of the demo: small, and there to show that neither sees the other. */
 export const tansyKnoll: DemoScenario = {
 	seed: 77_103,
@@ -130,6 +151,7 @@ export const tansyKnoll: DemoScenario = {
 		{ name: "Delicatessens", percent: 103 },
 	],
 	products,
+	yards,
 	rounds: [{ name: "Thursday round", weekday: 4, cutoffDaysBefore: 1, cutoffTime: "18:00" }],
 	stores,
 	members: [
