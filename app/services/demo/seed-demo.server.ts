@@ -8,6 +8,7 @@ import { startChance } from "./chance"
 import { insertAll } from "./insert-all.server"
 import { larkmoor } from "./larkmoor"
 import { type DemoPerson, demoPeople } from "./people"
+import { planAgreements } from "./plan-agreements"
 import { planCatalogue } from "./plan-catalogue"
 import { planHistory } from "./plan-history.server"
 import { planInvoices } from "./plan-invoices"
@@ -88,6 +89,7 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	// A row of chances of its own, so that what stands behind the lots changes nothing of what was ordered.
 	const chance = startChance(season.scenario.seed + 1)
 	const history = await planHistory({ ...season, chance }, { catalogue, stock, orders })
+	const agreements = planAgreements({ ...season, chance }, { catalogue, stores, standing, orders })
 	const invoices = planInvoices(season, orders)
 	const payments = planPayments(season, invoices)
 	const records = planRecords(season, { orders, invoices, payments })
@@ -105,6 +107,10 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	await insertAll(tx, schema.standingOrders, standing.rows.orders)
 	await insertAll(tx, schema.standingOrderLines, standing.rows.lines)
 	await insertAll(tx, schema.standingOrderSkips, standing.rows.skips)
+	await insertAll(tx, schema.standingOrderChanges, agreements.changes)
+	await insertAll(tx, schema.storePrices, agreements.storePrices)
+	await insertAll(tx, schema.promotions, agreements.promotions)
+	await insertAll(tx, schema.orderDrafts, agreements.drafts)
 	await insertAll(
 		tx,
 		schema.orders,
@@ -141,6 +147,10 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 			})),
 		),
 	)
+	await insertAll(tx, schema.orderMessages, agreements.messages)
+	await insertAll(tx, schema.orderProposals, agreements.proposals)
+	await insertAll(tx, schema.sharingRuns, agreements.runs)
+	await insertAll(tx, schema.sharingShares, agreements.shares)
 	await writeCrop(tx, history)
 	await insertAll(tx, schema.lots, stock.lots)
 	await writeReleases(tx, history)
