@@ -74,7 +74,7 @@ async function figuresByDay(tx: Tx, query: { producerId: string; from: Day }): P
 		select on_day::text as "on", sum(promised)::int as promised, sum(expected)::int as expected, max(market) as market
 		from (
 			select o.delivery_on as on_day, 0 as expected, null::text as market,
-				sum(coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end)) as promised
+				sum(coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end)) as promised
 			from orders o join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id
 			where o.producer_id = ${producerId} and o.state <> 'cancelled' and o.delivery_on between ${from} and ${to}
 			group by o.delivery_on

@@ -33,6 +33,7 @@ export async function findOpenOrders(
 		select o.id, o.number, o.state, o.delivery_on::text as "deliveryOn", s.name as "storeName",
 			o.delivery_cents as "deliveryCents", l.id as "lineId", l.product_id as "productId",
 			l.asked_cases as "askedCases", l.given_cases as "givenCases", l.is_to_share as "isToShare",
+			l.promised_cases as "promisedCases",
 			l.pieces_per_case as "piecesPerCase", l.case_cents as "caseCents", p.code, p.name as "productName"
 		from orders o
 		join stores s on s.producer_id = o.producer_id and s.id = o.store_id

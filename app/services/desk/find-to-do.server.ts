@@ -10,7 +10,10 @@ import { findOpenOrders, type OpenOrder } from "./find-open-orders.server"
 import { findSettledToday, type SettledToday } from "./find-settled-today.server"
 import { findShortages, type Shortage } from "./shortages.server"
 
-/** An order that waits to be confirmed; `isWhole` when all that it asks can be given, beside all others so marked. */
+/**
+ * An order that waits to be confirmed; `isWhole` when all that it asks, or what sharing out has given it, can be given
+ * beside all others so marked.
+ */
 export type WaitingOrder = { order: OpenOrder; isWhole: boolean }
 
 /** Orders of one delivery day that wait to be confirmed, and when its last orders are. */
@@ -75,16 +78,21 @@ function findWaiting(facts: {
 		.filter((order) => order.state === "placed")
 		.map((order) => {
 			const { deliveryOn, lines } = order
-			const isWhole = lines.every(
-				(line) => mostCases(outlooks.get(line.productId), { line, deliveryOn, today }) >= line.askedCases,
-			)
+			const isWhole =
+				lines.some((line) => settledCases(line) > 0) &&
+				lines.every(
+					(line) => mostCases(outlooks.get(line.productId), { line, deliveryOn, today }) >= settledCases(line),
+				)
 			for (const line of isWhole ? lines : []) {
-				const quantity = (line.askedCases - promisedCases(line)) * line.piecesPerCase
+				const quantity = (settledCases(line) - promisedCases(line)) * line.piecesPerCase
 				outlooks.get(line.productId)?.promises.push({ on: promiseDay(deliveryOn, today), quantity })
 			}
 			return { order, isWhole }
 		})
 }
+
+/** What a line gets when its order is confirmed whole: all that it asks, or what sharing out has given it. */
+const settledCases = (line: OpenOrder["lines"][number]) => line.givenCases ?? line.askedCases
 
 /** What is to pack and to send off, by delivery day. Reads nothing. */
 function packingDays(orders: readonly OpenOrder[]): PackingDay[] {

@@ -9,6 +9,7 @@ import type { OpenOrder } from "./find-open-orders.server"
 export type Shortage = {
 	productId: string
 	productName: string
+	productCode: string
 	deliveryOn: Day
 	/** Cases that stores want shared out, and how many stores that are. */
 	toShareCases: number
@@ -39,7 +40,7 @@ export function findShortages(facts: {
 			const key = `${deliveryOn} ${line.productId}`
 			const shortage = wanted.get(key) ?? blank(outlook, { line, deliveryOn })
 			if (line.isToShare && line.givenCases === null) {
-				shortage.toShareCases += line.askedCases
+				shortage.toShareCases += line.askedCases - line.promisedCases
 				shortage.stores += 1
 			}
 			wanted.set(key, shortage)
@@ -61,6 +62,7 @@ function blank(
 	return {
 		productId: line.productId,
 		productName: line.productName,
+		productCode: line.code,
 		deliveryOn,
 		toShareCases: 0,
 		stores: 0,

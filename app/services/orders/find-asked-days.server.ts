@@ -43,7 +43,7 @@ export async function findCasesToShare(
 	query: { producerId: string; deliveryOn: Day },
 ): Promise<Map<string, number>> {
 	const { rows } = await tx.execute<{ product_id: string; cases: number }>(sql`
-		select l.product_id, sum(l.asked_cases)::int as cases
+		select l.product_id, sum(l.asked_cases - l.promised_cases)::int as cases
 		from orders o
 		join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id
 		where o.producer_id = ${query.producerId} and o.delivery_on = ${query.deliveryOn}

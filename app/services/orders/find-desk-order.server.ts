@@ -26,6 +26,8 @@ export type DeskOrderLine = {
 	askedCases: number
 	givenCases: number | null
 	isToShare: boolean
+	/** Of a line to be shared out: the cases that are sure already. */
+	promisedCases: number
 	caseCents: number
 	piecesPerCase: number
 	/** The most that can be given now; all that was given once it is decided. */
@@ -115,6 +117,7 @@ async function findLines(
 			askedCases: orderLines.askedCases,
 			givenCases: orderLines.givenCases,
 			isToShare: orderLines.isToShare,
+			promisedCases: orderLines.promisedCases,
 			caseCents: orderLines.caseCents,
 			piecesPerCase: orderLines.piecesPerCase,
 		})

@@ -11,12 +11,16 @@ export type StandingLine = {
 	askedCases: number
 	givenCases: number | null
 	isToShare: boolean
+	/** Of a line to be shared out: the cases that are sure already. */
+	promisedCases: number
 	piecesPerCase: number
 }
 
-/** What a line is promised as it stands: given once decided, else asked, but nothing while it is to be shared out. */
-export function promisedCases(line: Pick<StandingLine, "askedCases" | "givenCases" | "isToShare">): number {
-	return line.givenCases ?? (line.isToShare ? 0 : line.askedCases)
+/** What a line is promised as it stands: given once decided, else asked, but what is sure while it is to be shared out. */
+export function promisedCases(
+	line: Pick<StandingLine, "askedCases" | "givenCases" | "isToShare" | "promisedCases">,
+): number {
+	return line.givenCases ?? (line.isToShare ? line.promisedCases : line.askedCases)
 }
 
 /** The day a promise counts for: an overdue delivery counts as due today. */

@@ -13,6 +13,8 @@ export type OrderLine = {
 	askedCases: number
 	givenCases: number | null
 	isToShare: boolean
+	/** Of a line to be shared out: the cases that are sure already. */
+	promisedCases: number
 	caseCents: number
 	piecesPerCase: number
 	pieceNetGrams: number
@@ -60,6 +62,7 @@ export function findOrder(query: {
 				askedCases: orderLines.askedCases,
 				givenCases: orderLines.givenCases,
 				isToShare: orderLines.isToShare,
+				promisedCases: orderLines.promisedCases,
 				caseCents: orderLines.caseCents,
 				piecesPerCase: orderLines.piecesPerCase,
 				pieceNetGrams: products.pieceNetGrams,

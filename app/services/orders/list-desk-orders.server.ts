@@ -45,10 +45,10 @@ export function listDeskOrders(query: {
 			)
 			select page.number, page.delivery_on::text as "deliveryOn", page.state, page.name as "storeName",
 				sum(l.asked_cases)::int as "askedCases",
-				sum(coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end))::int as cases,
-				sum(case when l.is_to_share and l.given_cases is null then l.asked_cases else 0 end)::int as "toShareCases",
+				sum(coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end))::int as cases,
+				sum(case when l.is_to_share and l.given_cases is null then l.asked_cases - l.promised_cases else 0 end)::int as "toShareCases",
 				(page.delivery_cents + sum(
-					coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end) * l.case_cents))::int as "totalCents"
+					coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end) * l.case_cents))::int as "totalCents"
 			from page
 			join order_lines l on l.producer_id = ${producerId} and l.order_id = page.id
 			group by page.id, page.number, page.delivery_on, page.state, page.delivery_cents, page.name

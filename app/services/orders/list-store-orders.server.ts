@@ -51,10 +51,10 @@ export function listStoreOrders(query: {
 			)
 			select page.id, page.number, page.delivery_on::text, page.state,
 				sum(l.asked_cases)::int as asked_cases,
-				sum(coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end))::int as cases,
-				sum(case when l.is_to_share and l.given_cases is null then l.asked_cases else 0 end)::int as to_share_cases,
+				sum(coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end))::int as cases,
+				sum(case when l.is_to_share and l.given_cases is null then l.asked_cases - l.promised_cases else 0 end)::int as to_share_cases,
 				(page.delivery_cents + sum(
-					coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end) * l.case_cents))::int as total_cents
+					coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end) * l.case_cents))::int as total_cents
 			from page
 			join order_lines l on l.producer_id = ${producerId} and l.order_id = page.id
 			group by page.id, page.number, page.delivery_on, page.state, page.delivery_cents

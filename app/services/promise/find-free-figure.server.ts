@@ -63,13 +63,13 @@ export function findFreeFigure(query: {
 		const { rows: promises } = await tx.execute<PromiseLine>(sql`
 			select o.number as "orderNumber", s.name as "storeName", o.delivery_on::text as "deliveryOn",
 				greatest(o.delivery_on, ${today}::date)::text as on,
-				sum(coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end) * l.pieces_per_case)::int as quantity
+				sum(coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end) * l.pieces_per_case)::int as quantity
 			from orders o
 			join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id
 			join stores s on s.producer_id = o.producer_id and s.id = o.store_id
 			where o.producer_id = ${producerId} and l.product_id = ${id} and o.state in ('placed', 'confirmed')
 			group by o.delivery_on, o.number, s.name
-			having sum(coalesce(l.given_cases, case when l.is_to_share then 0 else l.asked_cases end)) > 0
+			having sum(coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end)) > 0
 			order by o.delivery_on, o.number`)
 		return { ...facts, ...explainFree({ supplies, promises, reserve, day }) }
 	})

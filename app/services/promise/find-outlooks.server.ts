@@ -22,7 +22,7 @@ type Row = {
  * What is known of each product as of `today`, in pieces: released stock now, held lots from their expected release, both
  * until their best-before, and not culls; what the hives are expected to give, at the figure the producer chose, keeping as
  * long as its lots do; and what open orders have been promised (an overdue promise still holds, as of today). Withdrawn
- * lots give nothing; lines still to be shared out are promised nothing yet. One statement for all products, or for
+ * lots give nothing; of lines still to be shared out only what is sure already. One statement for all products, or for
  * `productIds` alone; products without any supply are there too, with empty lists.
  */
 export async function findOutlooks(
@@ -53,7 +53,7 @@ export async function findOutlooks(
 				and case s.crop_figure when 'likely' then e.likely_pieces else e.low_pieces end > 0
 			union all
 			select ol.product_id, 'promised', greatest(o.delivery_on, ${today}::date), null,
-				sum(coalesce(ol.given_cases, case when ol.is_to_share then 0 else ol.asked_cases end) * ol.pieces_per_case)::int
+				sum(coalesce(ol.given_cases, case when ol.is_to_share then ol.promised_cases else ol.asked_cases end) * ol.pieces_per_case)::int
 			from orders o
 			join order_lines ol on ol.producer_id = o.producer_id and ol.order_id = o.id
 			where o.producer_id = ${producerId} and ol.product_id in (select id from p) and o.state in ('placed', 'confirmed')

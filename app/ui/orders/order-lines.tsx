@@ -11,20 +11,27 @@ export type ShownLine = {
 	askedCases: number
 	givenCases: number | null
 	isToShare: boolean
+	/** Of a line to be shared out: the cases that are sure already. */
+	promisedCases: number
 	caseCents: number
 	piecesPerCase: number
 }
 
-/** Cases that are to be paid as things stand: given once decided, else asked unless it is still to be shared out. */
+/** Cases that are to be paid as things stand: given once decided, else asked; while it is to be shared out, what is sure. */
 function sureCases(line: ShownLine): number {
-	return line.givenCases ?? (line.isToShare ? 0 : line.askedCases)
+	return line.givenCases ?? (line.isToShare ? line.promisedCases : line.askedCases)
 }
 
 const isOpenShare = (line: ShownLine) => line.isToShare && line.givenCases === null
 
 function GivenCell({ line, isCancelled }: { line: ShownLine; isCancelled: boolean }) {
 	if (isCancelled) return <span className="note">none</span>
-	if (isOpenShare(line)) return <span className="note">to be shared out</span>
+	if (isOpenShare(line))
+		return (
+			<span className="note">
+				{line.promisedCases > 0 ? `${line.promisedCases} sure, the rest` : ""} to be shared out
+			</span>
+		)
 	if (line.givenCases === null) return <span className="note">not yet</span>
 	if (line.givenCases >= line.askedCases) return line.givenCases
 	return (
@@ -104,8 +111,8 @@ export function OrderSums({ lines, deliveryCents }: { lines: readonly ShownLine[
 	const sum = (of: (line: ShownLine) => number) => lines.reduce((total, line) => total + of(line), 0)
 	const cases = sum(sureCases)
 	const goodsCents = sum((line) => sureCases(line) * line.caseCents)
-	const sharedCases = sum((line) => (isOpenShare(line) ? line.askedCases : 0))
-	const sharedCents = sum((line) => (isOpenShare(line) ? line.askedCases * line.caseCents : 0))
+	const sharedCases = sum((line) => (isOpenShare(line) ? line.askedCases - line.promisedCases : 0))
+	const sharedCents = sum((line) => (isOpenShare(line) ? (line.askedCases - line.promisedCases) * line.caseCents : 0))
 	return (
 		<Totals>
 			<TotalsRow
