@@ -4,6 +4,7 @@ import * as invitation from "./invitation"
 import * as invoice from "./invoice"
 import * as orderConfirmed from "./order-confirmed"
 import * as orderReceived from "./order-received"
+import * as orderShared from "./order-shared"
 import * as paymentReceived from "./payment-received"
 import * as signInCode from "./sign-in-code"
 import * as signInUnknown from "./sign-in-unknown"
@@ -35,6 +36,7 @@ export const templates = {
 	invitation: letter(invitation),
 	"order-received": letter(orderReceived),
 	"order-confirmed": letter(orderConfirmed),
+	"order-shared": letter(orderShared),
 	invoice: letter(invoice),
 	"payment-received": letter(paymentReceived),
 	"standing-order-set": letter(standingOrderSet),

@@ -8,12 +8,13 @@ const AT_ONCE = 1_000
 
 /**
  * Puts many letters of one event into the outbox, as `queueMail` does with one, in a statement for each thousand. Gone on
- * rollback; what is written under its key already is not written again.
+ * rollback; what is written under its key already is not written again. `delaySeconds` holds all of them back.
  */
 export async function queueMails(
 	tx: Tx,
 	producerId: string,
 	mails: readonly (Letter & { to: string; onceKey: string })[],
+	{ delaySeconds = 0 }: { delaySeconds?: number } = {},
 ): Promise<void> {
 	for (let from = 0; from < mails.length; from += AT_ONCE) {
 		const rows = await tx
@@ -30,6 +31,11 @@ export async function queueMails(
 			.onConflictDoNothing()
 			.returning({ id: outboxMails.id })
 		const payloads = rows.map(({ id }) => JSON.stringify({ producerId, mailId: id }))
-		await tx.execute(sql`select jobs.enqueue_all('send-mail', ${sql.param(payloads)}::text[]::json[])`)
+		await tx.execute(
+			delaySeconds > 0
+				? sql`select jobs.enqueue('send-mail', payload::json, now() + ${delaySeconds} * interval '1 second')
+					from unnest(${sql.param(payloads)}::text[]) as payload`
+				: sql`select jobs.enqueue_all('send-mail', ${sql.param(payloads)}::text[]::json[])`,
+		)
 	}
 }

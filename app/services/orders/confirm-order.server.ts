@@ -10,6 +10,7 @@ import { env } from "~/platform/env.server"
 import { queueMail } from "~/services/mail/queue-mail.server"
 import { findStorePrices } from "~/services/pricing/find-store-prices.server"
 import { findYard, letterHead } from "~/services/producers/find-yard.server"
+import { findSharedSentences } from "~/services/sharing/find-shared-sentences.server"
 import { findMostCases } from "./find-most-cases.server"
 import { type LockedLine, type LockedOrder, lockOrder } from "./lock-order.server"
 import { lockProducts } from "./lock-products.server"
@@ -29,7 +30,7 @@ export type Confirmation =
 export type RefusedLine = { lineId: string; reason: "more-than-asked" | "more-than-free"; mostCases: number }
 
 /**
- * Confirms an order with what can be given of each line; lines not named get all that was asked. Refused, with each
+ * Confirms an order with what can be given of each line; lines not named get what sharing out has given them, or all that was asked. Refused, with each
  * line that is given more than was asked, or than is free for the day besides all other promises. Tells the store's people once, after the time in which the decision can be undone.
  */
 export async function confirmOrder(query: {
@@ -45,7 +46,7 @@ export async function confirmOrder(query: {
 		if (!canMove(order.state, "confirmed")) return { ok: false, reason: "not-placed", state: order.state }
 		const lines = order.lines.map((line) => {
 			const given = query.given.find(({ lineId }) => lineId === line.id)
-			return { ...line, cases: given?.cases ?? line.askedCases, reason: given?.reason ?? "" }
+			return { ...line, cases: given?.cases ?? line.givenCases ?? line.askedCases, reason: given?.reason ?? "" }
 		})
 		if (lines.every((line) => line.cases === 0)) return { ok: false, reason: "nothing-given" }
 		const refused = await refuseLines(tx, { producer, order, lines })
@@ -59,6 +60,7 @@ export async function confirmOrder(query: {
 			.update(orders)
 			.set({ state: "confirmed" })
 			.where(and(eq(orders.producerId, producer.id), eq(orders.id, order.id)))
+		const shared = await findSharedSentences(tx, { producerId: producer.id, orderIds: [order.id] })
 		const keepsPrice = await findKeptPrices(tx, { producer, order, lines })
 		const told = lines.map((line) => ({
 			productName: line.product.name,
@@ -74,7 +76,7 @@ export async function confirmOrder(query: {
 							asked: line.askedCases,
 							given: line.cases,
 							deliveryOn: order.deliveryOn,
-							reason: line.reason,
+							reason: line.reason || (shared.get(line.id)?.given === line.cases ? shared.get(line.id)?.how : undefined),
 							keepsPrice: keepsPrice.has(line.productId),
 						})
 					: null,

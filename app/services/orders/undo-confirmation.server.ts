@@ -3,6 +3,7 @@ import { orderLines, orders, outboxMails } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
 import { now } from "~/platform/clock.server"
+import { findSharedSentences } from "~/services/sharing/find-shared-sentences.server"
 import { confirmationKey } from "./confirm-order.server"
 import { findMostCases } from "./find-most-cases.server"
 import { type LockedOrder, lockOrder } from "./lock-order.server"
@@ -13,7 +14,7 @@ export type Undoing = { ok: true } | { ok: false; reason: "no-such-order" | "not
 
 /**
  * Takes a confirmation back while none of its letters has gone: the order is placed again and the letters are taken out
- * of the outbox. A line whose asked cases have gone to others meanwhile is one to be shared out from then on, so that
+ * of the outbox. A line that was shared out keeps what it got. A line whose asked cases have gone to others meanwhile is one to be shared out from then on, so that
  * nothing is promised twice. Afterwards a change is a new decision with its own letter.
  */
 export async function undoConfirmation(query: {
@@ -56,12 +57,13 @@ async function takeBackGiven(
 	const { lines, deliveryOn } = order
 	await lockProducts(tx, { producerId: producer.id, productIds: lines.map((line) => line.productId) })
 	const today = dayInZone(now(), producer.timeZone)
+	const shared = await findSharedSentences(tx, { producerId: producer.id, orderIds: [order.id] })
 	const most = await findMostCases(tx, { producerId: producer.id, deliveryOn, today, lines })
 	for (const line of lines) {
 		const isToShare = line.isToShare || (most.get(line.id) ?? 0) < line.askedCases
 		await tx
 			.update(orderLines)
-			.set({ givenCases: null, isToShare })
+			.set({ givenCases: shared.get(line.id)?.given ?? null, isToShare })
 			.where(and(eq(orderLines.producerId, producer.id), eq(orderLines.id, line.id)))
 	}
 }
