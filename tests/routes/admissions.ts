@@ -76,6 +76,8 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/to-do": { loader: COLD_ROOM, action: OFFICE, post: { fields: onOrder("confirm") } },
 	"routes/desk/orders": { loader: OFFICE },
 	"routes/desk/order": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "confirm" } } },
+	"routes/desk/sharing": { loader: OFFICE },
+	"routes/desk/sharing-product": { loader: OFFICE, action: OFFICE },
 	"routes/desk/packing": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: onOrder("pack") } },
 	// The crop: whoever works in the yard sees it.
 	"routes/desk/crop": { loader: COLD_ROOM },

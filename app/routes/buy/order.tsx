@@ -5,10 +5,12 @@ import { invoiceNumber } from "~/domain/invoicing/invoice-number"
 import { now as askClock } from "~/platform/clock.server"
 import { cancelOrder } from "~/services/orders/cancel-order.server"
 import { findOrder } from "~/services/orders/find-order.server"
+import { findOrderShares } from "~/services/sharing/find-order-shares.server"
 import { Button } from "~/ui/forms/button"
 import { MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { OrderLines, OrderSums } from "~/ui/orders/order-lines"
 import { EVENT_WORDS, stateWords } from "~/ui/orders/state-words"
+import { OwnShares } from "~/ui/sharing/own-shares"
 import { admits, guard, type StoreScope } from "../guard.server"
 import type { Route } from "./+types/order"
 import { BuyBook } from "./buy-book"
@@ -39,6 +41,7 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 	return {
 		frame: await findBuyFrame(scope, { part: "deliveries", now }),
 		order: shown,
+		shares: await findOrderShares(query),
 		changeUntil: order.mayCancel && cutoffAt ? cutoffSoonWords(cutoffAt, zone, dayInZone(now, zone)) : null,
 		invoiceNumber: invoice && invoiceNumber(invoice.year, invoice.sequence),
 		timeline: events.map(({ kind, at, who }) => ({
@@ -68,7 +71,7 @@ export const action = guard(
 )
 
 export default function Order({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { order, timeline, changeUntil, invoiceNumber, producerName, wasSent, wasCancelled } = loaderData
+	const { order, shares, timeline, changeUntil, invoiceNumber, producerName, wasSent, wasCancelled } = loaderData
 	const base = `/buy/${params.producer}/${params.store}`
 	return (
 		<BuyBook frame={loaderData.frame} ruled>
@@ -107,6 +110,7 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 			<div className="desk:mr-[calc(var(--spacing-margin)-1px)]">
 				<OrderLines lines={order.lines} isCancelled={order.state === "cancelled"} />
 			</div>
+			<OwnShares shares={shares} />
 			<div className="order-foot">
 				<section aria-labelledby="timeline">
 					<h2 className="head-italic" id="timeline">

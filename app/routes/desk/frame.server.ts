@@ -14,6 +14,7 @@ type Roles = DeskScope["roles"]
 const PARTS = [
 	["", "To do", () => true],
 	["orders", "Orders", (roles: Roles) => roles.some(mayRunDesk)],
+	["sharing", "Sharing", (roles: Roles) => roles.some(mayRunDesk)],
 	["packing", "Packing", () => true],
 	["lots", "Lots", () => true],
 	["crop", "Crop", () => true],

@@ -5,6 +5,8 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/orders", "routes/desk/orders.tsx"),
 	route("desk/:producer/orders/:number", "routes/desk/order.tsx"),
 	route("desk/:producer/orders/:number/lots", "routes/desk/order-lots.tsx"),
+	route("desk/:producer/sharing", "routes/desk/sharing.tsx"),
+	route("desk/:producer/sharing/:product/:day", "routes/desk/sharing-product.tsx"),
 	route("desk/:producer/packing", "routes/desk/packing.tsx"),
 	route("desk/:producer/crop", "routes/desk/crop.tsx"),
 	route("desk/:producer/crop/mark", "routes/desk/crop-mark.tsx"),

@@ -135,14 +135,20 @@ function confirmRow({ deliveryOn, cutoffAt, orders }: WaitingDay, moment: Moment
 
 const isOpenShare = (line: OpenOrder["lines"][number]) => line.isToShare && line.givenCases === null
 
+/** What is sure of a line: given where that is decided, else asked; while it is to be shared out, what is promised. */
+const sureCases = (line: OpenOrder["lines"][number]) =>
+	line.givenCases ?? (line.isToShare ? line.promisedCases : line.askedCases)
+
 function sureCents({ lines, deliveryCents }: OpenOrder): number {
-	return lines.reduce((sum, line) => sum + (isOpenShare(line) ? 0 : line.askedCases * line.caseCents), deliveryCents)
+	return lines.reduce((sum, line) => sum + sureCases(line) * line.caseCents, deliveryCents)
 }
 
 /** "5 cases, and 4 of basswood section to be shared out". */
 function askedWords({ lines }: OpenOrder): string {
-	const cases = lines.reduce((sum, line) => sum + (isOpenShare(line) ? 0 : line.askedCases), 0)
-	const shared = lines.filter(isOpenShare).map((line) => `${line.askedCases} of ${line.productName.toLowerCase()}`)
+	const cases = lines.reduce((sum, line) => sum + sureCases(line), 0)
+	const shared = lines
+		.filter(isOpenShare)
+		.map((line) => `${line.askedCases - line.promisedCases} of ${line.productName.toLowerCase()}`)
 	if (shared.length === 0) return casesWords(cases)
 	const rest = `${shared.join(", ")} to be shared out`
 	return cases === 0 ? rest : `${casesWords(cases)}, and ${rest}`
@@ -225,9 +231,9 @@ function shortRow(shortage: Shortage, { today, zone, base }: Moment): Placed {
 			line: asked,
 			strip: { runs, caption: `${strip.freeCases} can be ready`, short: `${shortCases} short` },
 			link: {
-				to: `${base}/orders?day=${deliveryOn}&state=placed`,
-				label: "See the orders",
-				about: dayWords(deliveryOn),
+				to: `${base}/sharing/${encodeURIComponent(shortage.productCode)}/${deliveryOn}`,
+				label: "Share out",
+				about: `${productName}, ${dayWords(deliveryOn)}`,
 			},
 		},
 	}

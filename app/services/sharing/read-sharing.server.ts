@@ -6,6 +6,7 @@ import { freeToPromise } from "~/domain/promise/free-to-promise"
 import { unkeptPromises } from "~/domain/promise/unkept-promises"
 import { wholeCases } from "~/domain/quantity"
 import type { Claim, ClaimClass } from "~/domain/sharing/share-out"
+import { caseStrips } from "~/services/orders/cases-on-day.server"
 import { promiseDay } from "~/services/orders/find-most-cases.server"
 import { findOutlooks, type ProductOutlook } from "~/services/promise/find-outlooks.server"
 
@@ -36,6 +37,8 @@ export type SharingFacts = {
 	deliveryOn: Day
 	/** Cases that can be given besides all that is sure. */
 	supply: number
+	/** What comes too late for the day, where something is expected. */
+	later: { cases: number; on: Day } | null
 	/** What is promised for the day is more than will be there: lines that were promised share too. */
 	isOverPromised: boolean
 	/** The earlier order first. */
@@ -81,7 +84,8 @@ export async function readSharing(
 	const seen = createHash("sha256")
 		.update(JSON.stringify([supply, rows]))
 		.digest("base64url")
-	return { product, deliveryOn, supply, isOverPromised, rows, substitutes, seen }
+	const later = outlook ? laterSupply(outlook, promiseDay(deliveryOn, today)) : null
+	return { product, deliveryOn, supply, later, isOverPromised, rows, substitutes, seen }
 }
 
 /** What of these undecided lines is to be shared, and the whole cases that can be ready for them. Reads nothing. */
@@ -101,6 +105,11 @@ export function shareable<
 	const own = setAside.map((pieces) => ({ on, quantity: -pieces }))
 	const [free] = freeToPromise({ ...outlook, promises: [...outlook.promises, ...own], days: [on] })
 	return { supply: Math.max(0, wholeCases(free?.free ?? 0, outlook.piecesPerCase)), isOverPromised, claimants }
+}
+
+function laterSupply(outlook: ProductOutlook, on: Day): SharingFacts["later"] {
+	const next = caseStrips(outlook, [on])[0]?.next
+	return next ? { cases: next.quantity, on: next.on } : null
 }
 
 /** The claims of these rows, for the cases that are not sure already. A least that what is sure covers is none. */
