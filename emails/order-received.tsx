@@ -17,6 +17,8 @@ import { mistakeWords, NOT_FOR_INFANTS } from "./words"
 export const schema = orderFacts
 	.extend({
 		changeUntil: words.nullish(),
+		/** It was there before, and its lines have been changed by the store. */
+		isChanged: z.boolean().optional(),
 		lines: z
 			.array(
 				z.object({
@@ -73,7 +75,8 @@ export const sample = {
 	totalCents: 52790,
 } satisfies Props
 
-export function subject({ deliveryOn, orderNumber }: Props): string {
+export function subject({ deliveryOn, orderNumber, isChanged }: Props): string {
+	if (isChanged) return `Your order ${orderNumber} for ${dayWords(deliveryOn)} is changed`
 	return `We have your order ${orderNumber} for ${dayWords(deliveryOn)}`
 }
 
@@ -89,7 +92,7 @@ export default function OrderReceived(props: Props) {
 			about={[`Order ${orderNumber}`, day]}
 			sentTo={sentTo}
 		>
-			<Title>We have your order for {day}.</Title>
+			<Title>{props.isChanged ? `We have your changed order for ${day}.` : `We have your order for ${day}.`}</Title>
 			<Lead>
 				For {storeName}. {yard.name} confirms it with another letter.
 				{changeUntil && ` You can change it until ${changeUntil}.`}

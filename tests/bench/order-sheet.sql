@@ -69,6 +69,22 @@ join products p on p.producer_id = ol.producer_id and p.id = ol.product_id and p
 where o.producer_id = :producer_id and o.state in ('placed', 'confirmed')
 group by 1, 3;
 
+-- What is usual: the middle of the last five orders with a product.
+select product_id as "productId", percentile_disc(0.5) within group (order by asked_cases)::int as cases
+from (
+	select l.product_id, l.asked_cases,
+		row_number() over (partition by l.product_id order by o.delivery_on desc, o.number desc) as place
+	from (
+		select id, delivery_on, number from orders
+		where producer_id = :producer_id and store_id = :store_id and state <> 'cancelled'
+			and delivery_on < :delivery_on
+		order by delivery_on desc, id desc limit 30
+	) o
+	join order_lines l on l.producer_id = :producer_id and l.order_id = o.id
+) asked
+where place <= :last_orders
+group by product_id;
+
 -- What the store has ordered on the days of the ribbon, and the last time before.
 select o.number, o.delivery_on::text, o.state, l.product_id, coalesce(l.given_cases, l.asked_cases)::int as cases
 from orders o
@@ -82,11 +98,17 @@ where o.producer_id = :producer_id and o.store_id = :store_id and o.state <> 'ca
 order by o.delivery_on, o.number;
 
 -- What all stores together want shared out.
-select l.product_id, sum(l.asked_cases)::int as cases
+select l.product_id, sum(l.asked_cases - l.promised_cases)::int as cases
 from orders o
 join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id
 where o.producer_id = :producer_id and o.delivery_on = :delivery_on
 	and o.state in ('placed', 'confirmed') and l.is_to_share and l.given_cases is null
 group by l.product_id;
+
+-- What was begun for that day and not sent yet.
+select "order_drafts"."fields", "users"."id", "users"."name", "order_drafts"."updated_at"
+from "order_drafts" inner join "users" on "users"."id" = "order_drafts"."updated_by"
+where ("order_drafts"."producer_id" = :producer_id and "order_drafts"."store_id" = :store_id
+	and "order_drafts"."delivery_on" = :delivery_on);
 
 commit;

@@ -90,14 +90,20 @@ with placed as (
 		:note, :delivery_cents, :person_id, :placed_at,
 		:standing_order_id, :standing_on, :idempotency_key)
 ), lines as (
-	insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, case_cents, pieces_per_case)
+	insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, promised_cases, least_cases,
+		case_cents, pieces_per_case)
 	select :producer_id::uuid, :order_id::uuid, line.* from unnest(
 		:line_product_ids::uuid[],
 		:asked_cases::smallint[],
 		:is_to_share::boolean[],
+		:promised_cases::smallint[],
+		:least_cases::smallint[],
 		:case_cents::integer[],
 		:pieces_per_case::smallint[]
 	) as line
+), draft as (
+	delete from order_drafts
+	where producer_id = :producer_id and store_id = :store_id and delivery_on = :delivery_on and :is_by_hand
 ), event as (
 	insert into order_events (producer_id, order_id, kind, at, user_id, detail)
 	values (:producer_id, :order_id, 'placed', :placed_at, :person_id, :detail::jsonb)

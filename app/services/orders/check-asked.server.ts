@@ -1,25 +1,52 @@
 import type { Tx } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
+import { casePriceChanges, type SeenPrice } from "~/domain/orders/seen-price"
 import { freeToPromise } from "~/domain/promise/free-to-promise"
 import { wholeCases } from "~/domain/quantity"
 import type { StoreProduct } from "~/services/pricing/find-store-prices.server"
-import { findOutlooks } from "~/services/promise/find-outlooks.server"
+import { findOutlooks, type ProductOutlook } from "~/services/promise/find-outlooks.server"
 
-/** One product asked for. `keep` says: if more is asked than is free, keep it and let it be shared out. */
-export type AskedLine = { productId: string; cases: number; keep: boolean }
+/**
+ * What is to be done when more is asked than is free: ask the buyer (`false`); keep all that is asked to be shared out,
+ * with nothing sure (`true`, as standing orders do); take what is free and no more; or take it and wait for the rest.
+ */
+export type Keep = boolean | "free" | "rest"
 
-/** A line that can stand: promised in whole, or, where more is asked than is free, to be shared out. */
-export type CheckedLine = { product: StoreProduct; cases: number; isToShare: boolean }
+/** One product asked for. */
+export type AskedLine = {
+	productId: string
+	cases: number
+	keep: Keep
+	/** Fewer than this are of no use to the store; 0 or left out, any number is welcome. */
+	leastCases?: number
+	/** The prices and the case that the buyer saw; left out where nobody saw any. */
+	seen?: SeenPrice
+}
+
+/** A line that can stand: promised in whole, or to be shared out with `promisedCases` of it sure already. */
+export type CheckedLine = {
+	product: StoreProduct
+	cases: number
+	isToShare: boolean
+	promisedCases: number
+	leastCases: number
+}
 
 /** Why a line cannot stand as it is. `freeCases` is what could be promised, in whole cases. */
 export type LineRefusal =
 	| { productId: string; reason: "more-than-free"; freeCases: number }
 	| { productId: string; reason: "not-sold" }
+	| { productId: string; reason: "price-changed"; seenCents: number; caseCents: number }
+	| { productId: string; reason: "case-changed"; seenPieces: number; piecesPerCase: number }
+
+/** Lines of the order that is being changed: their own promises are set aside while it is checked. */
+export type OwnPromise = { productId: string; pieces: number }
 
 /**
- * Holds what is asked against what is free to promise for the day. The products' rows must be locked by `products` having
- * been read with `lock`: nobody else can then promise the same cases before this transaction ends. Lines and refusals
- * come in the order asked.
+ * Holds what is asked against what is free to promise for the day, and against the prices that the buyer saw. The
+ * products' rows must be locked by `products` having been read with `lock`: nobody else can then promise the same cases
+ * before this transaction ends. Lines and refusals come in the order asked; a line of which none is free and no more than
+ * the free is wanted falls away.
  */
 export async function checkAsked(
 	tx: Tx,
@@ -29,25 +56,62 @@ export async function checkAsked(
 		deliveryOn: Day
 		asked: readonly AskedLine[]
 		products: readonly StoreProduct[]
+		own?: readonly OwnPromise[]
 	},
 ): Promise<{ lines: CheckedLine[]; refused: LineRefusal[] }> {
-	const { producerId, today, deliveryOn, asked } = query
+	const { producerId, today, deliveryOn, asked, own = [] } = query
 	const products = new Map(query.products.map((product) => [product.productId, product]))
 	const outlooks = await findOutlooks(tx, { producerId, today, productIds: [...products.keys()] })
+	setFree(outlooks, deliveryOn, own)
 	const lines: CheckedLine[] = []
 	const refused: LineRefusal[] = []
-	for (const { productId, cases, keep } of asked) {
-		const product = products.get(productId)
-		const outlook = outlooks.get(productId)
+	for (const line of asked) {
+		const product = products.get(line.productId)
+		const outlook = outlooks.get(line.productId)
 		if (!product || !outlook) {
-			refused.push({ productId, reason: "not-sold" })
+			refused.push({ productId: line.productId, reason: "not-sold" })
 			continue
 		}
 		const freePieces = freeToPromise({ ...outlook, days: [deliveryOn] })[0]?.free ?? 0
-		const freeCases = wholeCases(freePieces, product.piecesPerCase)
-		if (cases <= freeCases) lines.push({ product, cases, isToShare: false })
-		else if (keep) lines.push({ product, cases, isToShare: true })
-		else refused.push({ productId, reason: "more-than-free", freeCases })
+		const checked = checkLine(line, product, wholeCases(freePieces, product.piecesPerCase))
+		if ("reason" in checked) refused.push(checked)
+		else if (checked.cases > 0) lines.push(checked)
 	}
-	return { lines, refused }
+	return { lines, refused: [...refused, ...refusePrices(asked, query.products)] }
+}
+
+/** Sets free what an order that is being changed was promised itself for its day. */
+export function setFree(outlooks: Map<string, ProductOutlook>, deliveryOn: Day, own: readonly OwnPromise[]): void {
+	for (const { productId, pieces } of own) {
+		const outlook = outlooks.get(productId)
+		if (!outlook) continue
+		outlooks.set(productId, { ...outlook, promises: [...outlook.promises, { on: deliveryOn, quantity: -pieces }] })
+	}
+}
+
+function checkLine(line: AskedLine, product: StoreProduct, freeCases: number): CheckedLine | LineRefusal {
+	const { cases, keep, leastCases = 0 } = line
+	const free = Math.max(0, freeCases)
+	const base = { product, leastCases: Math.min(leastCases, cases), isToShare: false, promisedCases: 0 }
+	if (cases <= freeCases) return { ...base, cases }
+	switch (keep) {
+		case false:
+			return { productId: line.productId, reason: "more-than-free", freeCases }
+		case "free":
+			return { ...base, cases: free, leastCases: Math.min(leastCases, free) }
+		case "rest":
+			return { ...base, cases, isToShare: true, promisedCases: free }
+		case true:
+			return { ...base, cases, isToShare: true }
+	}
+}
+
+/** Each line whose case, or the price of it at the cases now asked, is not what the buyer saw. */
+function refusePrices(asked: readonly AskedLine[], products: readonly StoreProduct[]): LineRefusal[] {
+	const known = new Map(products.map((product) => [product.productId, product]))
+	const seen = asked.flatMap(({ productId, cases, seen }) => {
+		const product = known.get(productId)
+		return product ? [{ product, cases, seen: seen ?? product }] : []
+	})
+	return casePriceChanges(seen)
 }

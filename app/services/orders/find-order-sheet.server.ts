@@ -14,16 +14,20 @@ import {
 import { findStorePrices, type StoreProduct } from "~/services/pricing/find-store-prices.server"
 import { findOutlooks } from "~/services/promise/find-outlooks.server"
 import { type CaseStrip, caseStrips } from "./cases-on-day.server"
+import { setFree } from "./check-asked.server"
 import { findCasesToShare, findOwnLines, type OwnLine } from "./find-asked-days.server"
+import { findDraft, type OrderDraft } from "./find-draft.server"
 import { type FortnightDay, fortnightOf, ribbonStart } from "./find-fortnight.server"
+import { findNamedOrder, findUsualCases, type NamedOrder } from "./find-order-habits.server"
 
 /** A row of the sheet; all figures in cases. */
 export type SheetRow = StoreProduct & {
 	strip: CaseStrip
 	/** What all stores together have asked for that day and is still to be shared out. */
 	toShareCases: number
-	/** What the store had on its last delivery before this day. */
+	/** What the store had on its last delivery before this day, and the median of its last few orders with it. */
 	lastCases: number
+	usualCases: number
 	/** What it has already ordered for this day. */
 	orderedCases: number
 	/** Whether there is any supply by that day, so that asking, if only to be shared out, is of use. */
@@ -37,12 +41,24 @@ export type OrderSheet = {
 	rows: SheetRow[]
 	/** The store's orders for this day, the earliest first. */
 	orders: { number: number; state: OrderState; cases: number }[]
+	/** The order that is being changed, or ordered again, where one is named. */
+	named: NamedOrder | null
+	/** What was begun for this day and not sent yet. */
+	draft: OrderDraft | null
 }
 
-type SheetQuery = { producerId: string; storeId: string; now: Date; zone: string; day: Day }
+type SheetQuery = {
+	producerId: string
+	storeId: string
+	now: Date
+	zone: string
+	day: Day
+	/** An order of the store to start from: its own promises are free to it while it is changed. */
+	named?: { number: number; isChange: boolean }
+}
 
 /**
- * Everything the order sheet of one store and day shows, read at one moment in seven statements. Null when the van does
+ * Everything the order sheet of one store and day shows, read at one moment in nine statements, ten with a named order. Null when the van does
  * not come to the store that day; a day whose orders have closed is answered, and says so.
  */
 export function findOrderSheet(query: SheetQuery): Promise<OrderSheet | null> {
@@ -59,6 +75,10 @@ async function readSheet(tx: Tx, query: SheetQuery): Promise<OrderSheet | null> 
 	const products = await findStorePrices(tx, { producerId, storeId, today })
 	const productIds = products.map((product) => product.productId)
 	const outlooks = await findOutlooks(tx, { producerId, today, productIds })
+	const named = query.named ? await findNamedOrder(tx, { producerId, storeId, number: query.named.number }) : null
+	const isChange = query.named?.isChange === true
+	if (isChange && named?.deliveryOn === day.on) setFree(outlooks, day.on, named.lines)
+	const usual = await findUsualCases(tx, { producerId, storeId, before: day.on })
 	const from = ribbonStart(today, day.on)
 	const ownLines = await findOwnLines(tx, { producerId, storeId, from, to: addDays(from, 13), lastBefore: day.on })
 	const toShare = await findCasesToShare(tx, { producerId, deliveryOn: day.on })
@@ -77,11 +97,14 @@ async function readSheet(tx: Tx, query: SheetQuery): Promise<OrderSheet | null> 
 				strip,
 				toShareCases: toShare.get(product.productId) ?? 0,
 				lastCases: casesOn(ownLines, lastOn, product.productId),
+				usualCases: usual.get(product.productId) ?? 0,
 				orderedCases: casesOn(ownLines, day.on, product.productId),
 				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && canServe(supply, day.on)),
 			}
 		}),
 		orders: ordersOn(ownLines, day.on),
+		named,
+		draft: isChange ? null : await findDraft(tx, { producerId, storeId, deliveryOn: day.on }),
 	}
 }
 

@@ -36,7 +36,8 @@ export type PlaceOrderAnswer = Result<
  * Places an order for one store and day, in one transaction: the products' rows are locked in the order of their ids, so
  * that of two buyers the first gets the last case, then each line is held against what is free to promise. Refuses the
  * whole when nothing is asked, when the van does not come that day, when its orders have closed, or naming each line that
- * asks more than is free and is not to be kept; nothing is written then. Prices are those in force now. Sending the same
+ * asks more than is free without a choice of what to do then, or that costs something else than the buyer saw; nothing is
+ * written then. Prices are those in force now. The half-filled sheet of that day is done with. Sending the same
  * form again answers the first order, also after the cut-off.
  */
 export async function placeOrder(order: PlaceOrder): Promise<PlaceOrderAnswer> {
@@ -64,6 +65,7 @@ async function placeInTransaction(tx: Tx, order: PlaceOrder): Promise<PlaceOrder
 
 	const { lines, refused } = await checkAsked(tx, { producerId, today, deliveryOn, asked: order.lines, products })
 	if (refused.length > 0) return { ok: false, reason: "lines", refused }
+	if (lines.length === 0) return { ok: false, reason: "nothing-asked" }
 
 	const { number } = await writeOrder(tx, {
 		producerId,

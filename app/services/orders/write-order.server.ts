@@ -3,6 +3,7 @@ import { sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import { cutoffWords } from "~/domain/delivery/last-orders"
+import { type LinePart, lineParts } from "~/domain/orders/line-parts"
 import { type OrderPrice, priceOrder } from "~/domain/pricing/price-order"
 import { env } from "~/platform/env.server"
 import { queueMail } from "~/services/mail/queue-mail.server"
@@ -38,29 +39,55 @@ export type NewOrder = {
  * acknowledgement. Returns id and number. The number comes last but for the writing, since others wait for theirs.
  */
 export async function writeOrder(tx: Tx, order: NewOrder): Promise<{ id: string; number: number }> {
-	const { lines, facts } = order
-	const price = priceOrder({
-		lines: lines.map(({ product, cases, isToShare }) => ({ ...product, cases, toBeSharedOut: isToShare })),
-		terms: facts.terms,
-	})
+	const priced = priceLines(order)
 	const id = randomUUID()
 	const number = await takeNumber(tx, { producerId: order.producerId, series: "order", year: NO_YEAR })
-	await insertOrder(tx, { ...order, id, number, price })
+	await insertOrder(tx, { ...order, id, number, priced })
 	if (order.acknowledgeTo !== null) {
 		await queueMail(tx, {
 			producerId: order.producerId,
 			to: order.acknowledgeTo,
 			template: "order-received",
 			onceKey: `order-received:${id}`,
-			props: letterOf(order, order.acknowledgeTo, number, price),
+			props: orderLetter({ ...order, number, sentTo: order.acknowledgeTo }, priced),
 		})
 	}
 	return { id, number }
 }
 
+/** The parts of an order's lines with the price of the whole, line by line: `price.lines[i]` is that of `parts[i]`. */
+export type PricedLines = { parts: LinePart<CheckedLine>[]; price: OrderPrice; caseCents: number[] }
+
+/** Prices lines that have been checked, each at the break that all cases asked of its family reach. */
+export function priceLines(order: Pick<NewOrder, "lines" | "facts">): PricedLines {
+	const parts = order.lines.flatMap((line) => lineParts(line))
+	const price = priceOrder({
+		lines: parts.map(({ line, ...part }) => ({ ...line.product, ...part })),
+		terms: order.facts.terms,
+	})
+	const centsOf = new Map(price.lines.map((line) => [line.productId, line.caseCents]))
+	return { parts, price, caseCents: order.lines.map((line) => centsOf.get(line.product.productId) ?? 0) }
+}
+
+/** The lines as one set of rows, for a statement that writes them. */
+export function lineRows(lines: readonly CheckedLine[], { caseCents }: PricedLines) {
+	return sql`unnest(
+		${sql.param(lines.map((line) => line.product.productId))}::uuid[],
+		${sql.param(lines.map((line) => line.cases))}::smallint[],
+		${sql.param(lines.map((line) => line.isToShare))}::boolean[],
+		${sql.param(lines.map((line) => line.promisedCases))}::smallint[],
+		${sql.param(lines.map((line) => line.leastCases))}::smallint[],
+		${sql.param(caseCents)}::integer[],
+		${sql.param(lines.map((line) => line.product.piecesPerCase))}::smallint[]
+	)`
+}
+
 /** One statement for all rows: while it runs, others wait for the number and for the products. */
-async function insertOrder(tx: Tx, order: NewOrder & { id: string; number: number; price: OrderPrice }): Promise<void> {
-	const { producerId, id, lines, price, standing } = order
+async function insertOrder(
+	tx: Tx,
+	order: NewOrder & { id: string; number: number; priced: PricedLines },
+): Promise<void> {
+	const { producerId, id, lines, priced, standing } = order
 	const detail = JSON.stringify({
 		number: order.number,
 		deliveryOn: order.deliveryOn,
@@ -71,17 +98,16 @@ async function insertOrder(tx: Tx, order: NewOrder & { id: string; number: numbe
 			insert into orders (producer_id, id, number, store_id, delivery_on, po_number, note, delivery_cents, placed_by,
 				placed_at, standing_order_id, standing_on, idempotency_key)
 			values (${producerId}, ${id}, ${order.number}, ${order.storeId}, ${order.deliveryOn}, ${order.poNumber},
-				${order.note}, ${price.deliveryCents}, ${order.placedBy}, ${order.placedAt.toISOString()},
+				${order.note}, ${priced.price.deliveryCents}, ${order.placedBy}, ${order.placedAt.toISOString()},
 				${standing?.standingOrderId ?? null}, ${standing?.on ?? null}, ${order.idempotencyKey})
 		), lines as (
-			insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, case_cents, pieces_per_case)
-			select ${producerId}::uuid, ${id}::uuid, line.* from unnest(
-				${sql.param(lines.map((line) => line.product.productId))}::uuid[],
-				${sql.param(lines.map((line) => line.cases))}::smallint[],
-				${sql.param(lines.map((line) => line.isToShare))}::boolean[],
-				${sql.param(price.lines.map((line) => line.caseCents))}::integer[],
-				${sql.param(lines.map((line) => line.product.piecesPerCase))}::smallint[]
-			) as line
+			insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, promised_cases, least_cases,
+				case_cents, pieces_per_case)
+			select ${producerId}::uuid, ${id}::uuid, line.* from ${lineRows(lines, priced)} as line
+		), draft as (
+			delete from order_drafts
+			where producer_id = ${producerId} and store_id = ${order.storeId} and delivery_on = ${order.deliveryOn}
+				and ${order.placedBy !== null}
 		), event as (
 			insert into order_events (producer_id, order_id, kind, at, user_id, detail)
 			values (${producerId}, ${id}, 'placed', ${order.placedAt.toISOString()}, ${order.placedBy}, ${detail}::jsonb)
@@ -91,23 +117,27 @@ async function insertOrder(tx: Tx, order: NewOrder & { id: string; number: numbe
 			${detail}::jsonb)`)
 }
 
-function letterOf(order: NewOrder, sentTo: string, number: number, price: OrderPrice) {
-	const { facts } = order
+/** What the acknowledgement of an order says; a line of which a part is to be shared out stands there as two. */
+export function orderLetter(
+	order: Pick<NewOrder, "facts" | "deliveryOn" | "openUntil"> & { number: number; sentTo: string },
+	{ parts, price }: PricedLines,
+) {
+	const { facts, number } = order
 	return {
 		yard: facts.yard,
-		sentTo,
+		sentTo: order.sentTo,
 		storeName: facts.storeName,
 		orderNumber: String(number),
 		deliveryOn: order.deliveryOn,
 		orderUrl: `${env.BASE_URL}/buy/${facts.producerSlug}/${facts.storeSlug}/orders/${number}`,
 		changeUntil: order.openUntil && cutoffWords(order.openUntil, facts.zone),
-		lines: order.lines.map(({ product, cases, isToShare }, index) => ({
+		lines: parts.map(({ line: { product }, cases, toBeSharedOut }, index) => ({
 			productName: product.name,
 			productNote: [product.detail, `case of ${product.piecesPerCase}`].filter(Boolean).join(", "),
 			cases,
 			priceCents: price.lines[index]?.caseCents ?? 0,
-			amountCents: isToShare ? 0 : (price.lines[index]?.lineCents ?? 0),
-			toBeShared: isToShare,
+			amountCents: toBeSharedOut ? 0 : (price.lines[index]?.lineCents ?? 0),
+			toBeShared: toBeSharedOut,
 		})),
 		charges: [{ label: "Delivery", cents: price.deliveryCents }],
 		totalCents: price.totalCents,

@@ -1,15 +1,28 @@
-import { type ReactNode, useEffect, useRef, useState } from "react"
-import { Form, useNavigation } from "react-router"
+import { type ReactNode, useEffect, useMemo, useRef, useState } from "react"
+import { Form, Link, useNavigation } from "react-router"
 import { type Day, monthDay } from "~/domain/calendar"
+import type { UnmatchedRow } from "~/domain/orders/read-columns"
 import type { DeliveryTerms } from "~/domain/pricing/price-order"
 import { Button } from "~/ui/forms/button"
-import { TextField } from "~/ui/forms/fields"
+import { MendRows } from "./mend-rows"
 import { OrderTable } from "./order-table"
-import { breakColumns, casesName, priceSheet, type SheetProduct } from "./price-sheet"
-import { RowNote } from "./row-note"
+import {
+	breakColumns,
+	casesName,
+	keepName,
+	keepRows,
+	leastName,
+	type PricedRow,
+	priceSheet,
+	type SheetProduct,
+} from "./price-sheet"
+import { rowNote } from "./row-note"
 import { MinimumNote, SheetKeys, SheetTotals } from "./sheet-foot"
 import { SheetRow } from "./sheet-row"
+import { SheetList, SheetWords } from "./sheet-words"
+import { useKeptSheet } from "./use-kept-sheet"
 import { useSheetKeys } from "./use-sheet-keys"
+import { useSheetPaste } from "./use-sheet-paste"
 
 export type OrderSheetProps = {
 	day: Day
@@ -18,79 +31,140 @@ export type OrderSheetProps = {
 	terms: DeliveryTerms
 	/** Past last orders: what was ordered stands in plain figures. */
 	isClosed: boolean
+	/** The path of the sheets, to which a day is added. */
+	sheetPath: string
 	/** Where the order is sent, when that is not this page. */
 	action?: string
+	/** An order that is there already is changed: nothing half-filled is kept of it. */
+	isChange: boolean
 	idempotencyKey: string
-	/** What was typed and could not be taken, by field name. */
+	/** What the fields begin with, by field name. */
 	values: Readonly<Record<string, string>>
 	/** What is wrong, by field name. */
 	errors: Readonly<Record<string, string>>
+	/** Rows of a list that name no product. */
+	unmatched: readonly UnmatchedRow[]
+	/** Days that have what this one has not, by product. */
+	elsewhere: Readonly<Record<string, readonly Day[]>>
+	/** A field for the least of every line. */
+	showsLeast: boolean
 	sendLabel: ReactNode
 }
 
-/** What was typed, by product id. */
-function typedOf(products: readonly SheetProduct[], read: (name: string) => string): Record<string, string> {
-	return Object.fromEntries(products.map(({ productId }) => [productId, read(casesName(productId))]))
+/** Fields by name, as they were begun with or as they stand in the form. */
+type Typed = Readonly<Record<string, string>>
+
+function textsOf(form: HTMLFormElement): Typed {
+	return Object.fromEntries(
+		[...new FormData(form)].flatMap(([name, value]) => (typeof value === "string" ? [[name, value]] : [])),
+	)
 }
+
+const sameFields = (a: Typed, b: Typed) => JSON.stringify(a) === JSON.stringify(b)
 
 /** The order sheet as a form: it works as it stands, and counts along, hints and takes keys once the script is there. */
 export function OrderSheet(props: OrderSheetProps) {
-	const { products, terms, values, errors, isClosed } = props
+	const { products, terms, values, errors, isClosed, elsewhere } = props
 	const form = useRef<HTMLFormElement>(null)
-	const [typed, setTyped] = useState(() => typedOf(products, (name) => values[name] ?? ""))
+	const [typed, setTyped] = useState<Typed>(values)
+	const [pasted, setPasted] = useState<readonly UnmatchedRow[] | null>(null)
+	const [open, setOpen] = useState<readonly string[]>([])
 	const isSending = useNavigation().formMethod === "POST"
+	const path = `${props.sheetPath}/${props.day}`
+	const kept = useKeptSheet(form, { isOn: !props.isChange && !props.action, path })
 	const readForm = () => {
-		if (!form.current) return
-		const data = new FormData(form.current)
-		setTyped(typedOf(products, (name) => String(data.get(name) ?? "")))
+		const fresh = form.current && textsOf(form.current)
+		if (fresh) setTyped((before) => (sameFields(before, fresh) ? before : fresh))
 	}
 	// What was typed before the script came, or kept by the browser over Back, counts too.
-	// biome-ignore lint/correctness/useExhaustiveDependencies: once, when the form is there
 	useEffect(readForm, [])
+	useEffect(() => {
+		const last = open.at(-1)
+		const field = last && form.current?.elements.namedItem(leastName(last))
+		if (field instanceof HTMLInputElement) field.focus()
+	}, [open])
 
-	const sheet = priceSheet(products, typed, terms)
+	const drawn = useRef<readonly PricedRow[]>([])
+	const columns = useMemo(() => breakColumns(products), [products])
+	const sheet = useMemo(() => {
+		const fresh = priceSheet(products, typed, terms)
+		return { ...fresh, rows: keepRows(drawn.current, fresh.rows) }
+	}, [products, typed, terms])
+	drawn.current = sheet.rows
 	const rowOf = (productId: string) => sheet.rows.find((row) => row.product.productId === productId)
 	const onKeyDown = useSheetKeys(form, {
-		b: (productId) => {
-			const row = rowOf(productId)
-			if (!row) return null
-			if (!row.line) return 1
-			return row.line.nextBreak ? row.cases + row.line.nextBreak.addCases : null
+		rowKeys: {
+			b: (productId) => {
+				const row = rowOf(productId)
+				if (!row) return null
+				if (!row.line) return 1
+				return row.line.nextBreak ? row.cases + row.line.nextBreak.addCases : null
+			},
+			l: (productId) => rowOf(productId)?.product.lastCases ?? null,
 		},
-		l: (productId) => rowOf(productId)?.product.lastCases ?? null,
+		openLeast: (productId) => setOpen((before) => [...before.filter((one) => one !== productId), productId]),
 	})
-	const columns = breakColumns(products)
+	const changed = () => {
+		readForm()
+		kept.changed()
+	}
+	const onPaste = useSheetPaste(form, {
+		products,
+		onFilled: (unmatched) => {
+			setPasted(unmatched)
+			changed()
+		},
+	})
 
 	const table = (
 		<OrderTable breaks={columns.map((column) => column.head)} day={monthDay(props.day)}>
-			{sheet.rows.map((row) => (
-				<SheetRow
-					key={row.product.productId}
-					row={row}
-					columns={columns}
-					today={props.today}
-					isClosed={isClosed}
-					value={values[casesName(row.product.productId)] ?? ""}
-					error={errors[casesName(row.product.productId)]}
-					note={
-						<RowNote
-							row={row}
-							sheet={sheet}
-							products={products}
-							typed={typed}
-							terms={terms}
-							hasError={errors[casesName(row.product.productId)] !== undefined}
-							isKept={values[`keep-${row.product.productId}`] !== undefined}
-						/>
-					}
-				/>
-			))}
+			{sheet.rows.map((row) => {
+				const { productId } = row.product
+				const least = values[leastName(productId)] ?? ""
+				return (
+					<SheetRow
+						key={productId}
+						row={row}
+						columns={columns}
+						today={props.today}
+						isClosed={isClosed}
+						value={values[casesName(productId)] ?? ""}
+						error={errors[casesName(productId)]}
+						showsLeast={props.showsLeast || least !== "" || open.includes(productId)}
+						least={least}
+						leastError={errors[leastName(productId)]}
+						note={rowNote({
+							row,
+							sheet,
+							products,
+							typed,
+							terms,
+							keep: values[keepName(productId)],
+							hasError: errors[casesName(productId)] !== undefined,
+							sheetPath: props.sheetPath,
+							elsewhere: elsewhere[productId] ?? [],
+						})}
+					/>
+				)
+			})}
 		</OrderTable>
 	)
 	if (isClosed) return table
 	return (
-		<Form method="post" action={props.action} ref={form} onInput={readForm} onKeyDown={onKeyDown} noValidate>
+		<Form
+			method="post"
+			action={props.action}
+			ref={form}
+			onInput={changed}
+			onKeyDown={onKeyDown}
+			onPaste={onPaste}
+			onSubmit={kept.forget}
+			noValidate
+		>
+			{/* Enter sends the order, whatever other buttons stand above the one that does. */}
+			<button type="submit" hidden />
 			<input type="hidden" name="idempotencyKey" value={props.idempotencyKey} />
+			{props.showsLeast && <input type="hidden" name="showsLeast" value="yes" />}
 			{/* Should the session end before it is sent, the page that keeps the order names its lines by these. */}
 			{products.map(({ productId, code, name, detail }) => (
 				<input
@@ -100,29 +174,13 @@ export function OrderSheet(props: OrderSheetProps) {
 					value={`${code} ${name}, ${detail}, cases`}
 				/>
 			))}
+			<MendRows rows={pasted ?? props.unmatched} products={products} />
 			{table}
 			<div className="order-foot">
 				<div>
 					<SheetKeys />
-					<details className="mt-3" open={Boolean(errors.poNumber || errors.note || values.poNumber || values.note)}>
-						<summary className="py-1 font-semibold text-clover">Add your order number or a note</summary>
-						<div className="mt-2 grid gap-3">
-							<TextField
-								name="poNumber"
-								label="Your order number"
-								defaultValue={values.poNumber}
-								error={errors.poNumber}
-								autoComplete="off"
-							/>
-							<TextField
-								name="note"
-								label="A note with the order"
-								defaultValue={values.note}
-								error={errors.note}
-								autoComplete="off"
-							/>
-						</div>
-					</details>
+					<SheetWords values={values} errors={errors} />
+					<SheetList error={errors.list} />
 				</div>
 				<SheetTotals sheet={sheet} />
 				<div className="grid content-start gap-2">
@@ -130,8 +188,41 @@ export function OrderSheet(props: OrderSheetProps) {
 						{props.sendLabel}
 					</Button>
 					<MinimumNote sheet={sheet} terms={terms} />
+					<SheetChoices {...props} path={path} isEmpty={sheet.price.cases === 0} state={kept.state} />
 				</div>
 			</div>
 		</Form>
+	)
+}
+
+type ChoicesProps = Pick<OrderSheetProps, "isChange" | "showsLeast" | "products" | "action"> & {
+	path: string
+	isEmpty: boolean
+	state: "keeping" | "kept" | null
+}
+
+/** What else can be done with a sheet than to send it. */
+function SheetChoices({ isChange, showsLeast, products, action, path, isEmpty, state }: ChoicesProps) {
+	const hadSome = products.some((product) => product.lastCases > 0 && product.mayAsk)
+	return (
+		<div className="grid justify-items-start gap-1">
+			{isEmpty && hadSome && !isChange && !action && <Link to={`${path}?last`}>As last time</Link>}
+			{!showsLeast && (
+				<Button variant="plain" size="small" name="intent" value="least">
+					Least you would take
+				</Button>
+			)}
+			{!isChange && !action && (
+				<>
+					<Button variant="plain" size="small" name="intent" value="keep">
+						Keep for later
+					</Button>
+					<p className="note" role="status">
+						{state === "keeping" && "Keeping what you wrote."}
+						{state === "kept" && "What you wrote is kept."}
+					</p>
+				</>
+			)}
+		</div>
 	)
 }

@@ -71,6 +71,8 @@ type OrderRowProps = {
 	lastTime?: ReactNode
 	/** The field for cases; its label is made from name and detail, and its error stands beside it, under the stock. */
 	quantity?: Omit<QuantityFieldProps, "label" | "errorId">
+	/** A small second figure under the field: the least that would be taken. */
+	least?: ReactNode
 	/** Stands in the place of the field past the cut-off. */
 	figure?: ReactNode
 	amount?: ReactNode
@@ -116,6 +118,7 @@ export function OrderRow({ name, detail, pieces, caseWeight, prices, stock, quan
 				) : (
 					row.figure
 				)}
+				{row.least}
 			</td>
 			<td className="money amount">{row.amount}</td>
 			<td className="margin aside">{row.note}</td>

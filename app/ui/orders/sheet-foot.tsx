@@ -29,6 +29,9 @@ export function SheetKeys() {
 					<Key>L</Key> as last time
 				</li>
 				<li>
+					<Key>M</Key> least you would take
+				</li>
+				<li>
 					<Key>Ctrl</Key> <Key>Enter</Key> send
 				</li>
 			</ul>
@@ -42,32 +45,31 @@ export function SheetKeys() {
 	)
 }
 
-const weightOf = (rows: readonly PricedRow[]) =>
+const weightOf = (rows: readonly PricedRow[], casesOf: (row: PricedRow) => number) =>
 	labelledTotalWords(
-		rows.map(({ product, cases }) => ({
-			labelledGrams: product.pieceNetGrams,
-			pieces: cases * product.piecesPerCase,
+		rows.map((row) => ({
+			labelledGrams: row.product.pieceNetGrams,
+			pieces: casesOf(row) * row.product.piecesPerCase,
 		})),
 	)
 
 /** The sums of the sheet as it is typed: what is sure, what is to be shared out, the way, and the most it can come to. */
 export function SheetTotals({ sheet: { rows, price } }: { sheet: PricedSheet }) {
 	const asked = rows.filter((row) => row.line !== null)
-	const sure = asked.filter((row) => !row.isBeyondFree)
-	const shared = asked.filter((row) => row.isBeyondFree)
+	const isShared = asked.some((row) => row.sharedCases > 0)
 	return (
 		<div aria-live="polite">
 			<Totals>
 				<TotalsRow
-					label={shared.length > 0 ? `${casesWords(price.sureCases)} sure` : casesWords(price.sureCases)}
-					note={price.sureCases > 0 ? weightOf(sure) : undefined}
+					label={isShared ? `${casesWords(price.sureCases)} sure` : casesWords(price.sureCases)}
+					note={price.sureCases > 0 ? weightOf(asked, (row) => row.sureCases) : undefined}
 					value={formatMoney(price.sureCents)}
 					weight="strong"
 				/>
-				{shared.length > 0 && (
+				{isShared && (
 					<TotalsRow
 						label={`${casesWords(price.sharedCases)} to be shared out`}
-						note={weightOf(shared)}
+						note={weightOf(asked, (row) => row.sharedCases)}
 						value={`up to ${formatMoney(price.sharedCents)}`}
 					/>
 				)}
@@ -75,8 +77,8 @@ export function SheetTotals({ sheet: { rows, price } }: { sheet: PricedSheet }) 
 					<TotalsRow label="Delivery" value={price.deliveryCents === 0 ? "free" : formatMoney(price.deliveryCents)} />
 				)}
 				<TotalsRow
-					label={shared.length > 0 ? `${casesWords(price.cases)} if all are met` : "To pay"}
-					note={shared.length > 0 ? weightOf(asked) : undefined}
+					label={isShared ? `${casesWords(price.cases)} if all are met` : "To pay"}
+					note={isShared ? weightOf(asked, (row) => row.sureCases + row.sharedCases) : undefined}
 					value={formatMoney(price.upToCents + price.deliveryCents)}
 					weight="sum"
 				/>

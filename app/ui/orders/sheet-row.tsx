@@ -1,10 +1,13 @@
-import type { ReactNode } from "react"
+import { memo } from "react"
 import type { Day } from "~/domain/calendar"
 import { plainMoney } from "~/domain/money"
+import { writeSeenPrice } from "~/domain/orders/seen-price"
 import { labelledTotalWords } from "~/domain/weight"
 import { FillStrip } from "~/ui/stock/fill-strip"
+import { LeastField } from "./least-field"
 import { OrderRow } from "./order-table"
-import { type BreakColumn, casesName, columnInForce, type PricedRow, priceInColumn } from "./price-sheet"
+import { type BreakColumn, casesName, columnInForce, leastName, type PricedRow, priceInColumn } from "./price-sheet"
+import type { RowNote } from "./row-note"
 import { stripWords } from "./strip-words"
 
 type SheetRowProps = {
@@ -14,15 +17,29 @@ type SheetRowProps = {
 	isClosed: boolean
 	value: string
 	error: string | undefined
-	note: ReactNode
+	note: RowNote
+	/** The field for the least stands in the row, with what it begins with. */
+	showsLeast: boolean
+	least: string
+	leastError: string | undefined
+}
+
+function LastTime({ lastCases, usualCases }: { lastCases: number; usualCases: number }) {
+	return (
+		<>
+			{lastCases || null}
+			{usualCases > 0 && usualCases !== lastCases && <span className="least">usually {usualCases}</span>}
+		</>
+	)
 }
 
 /** One product of the sheet: its prices, what is free of it, the field, and what that comes to. */
-export function SheetRow({ row, columns, today, isClosed, value, error, note }: SheetRowProps) {
-	const { product, line, isBeyondFree } = row
+function Row({ row, columns, today, isClosed, value, error, note, ...least }: SheetRowProps) {
+	const { product, line } = row
 	const { strip } = product
 	const inForce = columnInForce(columns, row)
 	const shown = strip.freeCases > 0 || !strip.next ? strip : { free: 0, held: 0, expected: strip.next.quantity }
+	const hasField = !isClosed
 	return (
 		<OrderRow
 			no={product.code}
@@ -49,11 +66,10 @@ export function SheetRow({ row, columns, today, isClosed, value, error, note }: 
 					/>
 				)
 			}
-			lastTime={product.lastCases || null}
+			lastTime={<LastTime {...product} />}
 			quantity={
-				isClosed
-					? undefined
-					: {
+				hasField
+					? {
 							name: casesName(product.productId),
 							defaultValue: value,
 							disabled: !product.mayAsk && value === "",
@@ -61,18 +77,43 @@ export function SheetRow({ row, columns, today, isClosed, value, error, note }: 
 							// The digit that is typed first replaces what stands there.
 							onFocus: (event) => event.currentTarget.select(),
 						}
+					: undefined
+			}
+			least={
+				hasField && (
+					<>
+						{/* What was seen goes with the order: another price is asked about, never applied in silence. */}
+						<input type="hidden" name={`seen-${product.productId}`} value={writeSeenPrice(product)} />
+						{least.showsLeast && (
+							<LeastField
+								name={leastName(product.productId)}
+								label={`Least you would take of ${product.name}, ${product.detail}`}
+								defaultValue={least.least}
+								error={least.leastError}
+							/>
+						)}
+					</>
+				)
 			}
 			figure={product.orderedCases || null}
 			amount={
 				line && !isClosed ? (
 					<>
-						{isBeyondFree && <i>up to </i>}
-						{plainMoney(line.lineCents)}
+						{row.sharedCases > 0 && <i>up to </i>}
+						{plainMoney(line.cents)}
 					</>
 				) : null
 			}
-			note={isClosed ? null : note}
+			note={isClosed ? null : note.node}
 			off={!product.mayAsk && !product.orderedCases}
 		/>
 	)
 }
+
+/** Drawn anew only when something else stands in it: a key typed in one row leaves the other hundreds alone. */
+export const SheetRow = memo(
+	Row,
+	(before, after) =>
+		before.note.key === after.note.key &&
+		(Object.keys(after) as (keyof SheetRowProps)[]).every((name) => name === "note" || before[name] === after[name]),
+)

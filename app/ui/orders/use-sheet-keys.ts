@@ -1,12 +1,17 @@
 import { type KeyboardEvent, type RefObject, useEffect } from "react"
-import { casesName, productOfField } from "./price-sheet"
+import { casesName, leastName, productOfField } from "./price-sheet"
 
 /** What a letter key does to a row: answers the new count of cases, or null to leave it. */
 export type RowKeys = Readonly<Record<string, (productId: string) => number | null>>
 
 /** The fields of a sheet, from the first row down. */
-function fieldsOf(form: HTMLFormElement): HTMLInputElement[] {
+export function fieldsOf(form: HTMLFormElement): HTMLInputElement[] {
 	return [...form.querySelectorAll<HTMLInputElement>(`input[name^="${casesName("")}"]:not(:disabled)`)]
+}
+
+const fieldNamed = (form: HTMLFormElement, name: string) => {
+	const field = form.elements.namedItem(name)
+	return field instanceof HTMLInputElement ? field : null
 }
 
 /**
@@ -20,10 +25,13 @@ function write(field: HTMLInputElement, value: string): void {
 }
 
 /**
- * The keys of the order sheet: up, down and Enter walk the fields, Ctrl Enter sends, and `rowKeys` names letters that
- * change a row. Without a script none of this is missed: Tab walks, and Enter sends.
+ * The keys of the order sheet: up, down and Enter walk the fields, Ctrl Enter sends, M opens the least of a row, and
+ * `rowKeys` names letters that change a row. Without a script none of this is missed: Tab walks, and Enter sends.
  */
-export function useSheetKeys(form: RefObject<HTMLFormElement | null>, rowKeys: RowKeys) {
+export function useSheetKeys(
+	form: RefObject<HTMLFormElement | null>,
+	{ rowKeys, openLeast }: { rowKeys: RowKeys; openLeast: (productId: string) => void },
+) {
 	useEffect(() => {
 		const isDesk = window.matchMedia("(min-width: 64rem)").matches
 		const isFree = document.activeElement === null || document.activeElement === document.body
@@ -39,14 +47,14 @@ export function useSheetKeys(form: RefObject<HTMLFormElement | null>, rowKeys: R
 			return
 		}
 		const field = event.target
-		const productId = field instanceof HTMLInputElement ? productOfField(field.name) : null
-		if (!(field instanceof HTMLInputElement) || productId === null) return
-		if (event.ctrlKey || event.metaKey || event.altKey) return
-		const fields = fieldsOf(element)
-		const step = event.key === "ArrowUp" ? -1 : event.key === "ArrowDown" || event.key === "Enter" ? 1 : 0
-		if (step !== 0) {
+		if (!(field instanceof HTMLInputElement) || event.ctrlKey || event.metaKey || event.altKey) return
+		if (field.name.startsWith(leastName(""))) return leaveLeast(event, element, field)
+		const productId = productOfField(field.name)
+		if (productId === null) return
+		if (walk(event, element, field)) return
+		if (event.key.toLowerCase() === "m") {
 			event.preventDefault()
-			fields[fields.indexOf(field) + step]?.focus()
+			openLeast(productId)
 			return
 		}
 		const change = rowKeys[event.key.toLowerCase()]
@@ -55,4 +63,23 @@ export function useSheetKeys(form: RefObject<HTMLFormElement | null>, rowKeys: R
 		const cases = change(productId)
 		if (cases !== null) write(field, String(cases))
 	}
+}
+
+function walk(event: KeyboardEvent, form: HTMLFormElement, field: HTMLInputElement): boolean {
+	const step = event.key === "ArrowUp" ? -1 : event.key === "ArrowDown" || event.key === "Enter" ? 1 : 0
+	if (step === 0) return false
+	event.preventDefault()
+	const fields = fieldsOf(form)
+	fields[fields.indexOf(field) + step]?.focus()
+	return true
+}
+
+/** From the least, Enter and Escape go back to the cases of the row, the arrows to the rows beside it. */
+function leaveLeast(event: KeyboardEvent, form: HTMLFormElement, field: HTMLInputElement): void {
+	if (!["Enter", "Escape", "ArrowUp", "ArrowDown"].includes(event.key)) return
+	event.preventDefault()
+	const cases = fieldNamed(form, casesName(field.name.slice(leastName("").length)))
+	if (!cases) return
+	if (event.key === "Enter" || event.key === "Escape") cases.focus()
+	else walk(event, form, cases)
 }

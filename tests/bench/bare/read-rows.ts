@@ -10,7 +10,10 @@ export type Asked = { tokenHash: string; producerSlug: string; storeSlug: string
 type Row = any
 
 /** The rows of one sheet by what they are of. */
-export type SheetRows = Record<"rounds" | "terms" | "prices" | "cases" | "entries" | "ownLines" | "toShare", Row[]> & {
+export type SheetRows = Record<
+	"rounds" | "terms" | "prices" | "cases" | "entries" | "usual" | "ownLines" | "toShare",
+	Row[]
+> & {
 	who: Row
 	today: Day
 	from: Day
@@ -26,6 +29,7 @@ const statements: { text: string; names: string[] }[] = JSON.parse(readFileSync(
 export async function readRows(pool: pg.Pool, asked: Asked): Promise<SheetRows | null> {
 	const client = await pool.connect()
 	const facts: Record<string, unknown> = {
+		last_orders: 5,
 		token_hash: asked.tokenHash,
 		producer_slug: asked.producerSlug,
 		store_slug: asked.storeSlug,
@@ -66,10 +70,13 @@ export async function readRows(pool: pg.Pool, asked: Asked): Promise<SheetRows |
 		facts.product_ids = prices.map((row) => row.id)
 		const cases = await rowsOfNext()
 		const entries = await rowsOfNext()
+		const usual = await rowsOfNext()
 		const ownLines = await rowsOfNext()
 		const toShare = await rowsOfNext()
+		// The half-filled sheet: the bench's store has none.
 		await rowsOfNext()
-		return { who, today, from, rounds, terms, prices, cases, entries, ownLines, toShare }
+		await rowsOfNext()
+		return { who, today, from, rounds, terms, prices, cases, entries, usual, ownLines, toShare }
 	} finally {
 		client.release()
 	}

@@ -29,6 +29,7 @@ export async function sheetOf(rows: SheetRows, { day, now, producerSlug, storeSl
 			.filter((line) => line.deliveryOn === on && line.productId === productId)
 			.reduce((sum, line) => sum + line.cases, 0)
 	const toShare = new Map(rows.toShare.map((row) => [row.product_id, row.cases]))
+	const usual = new Map(rows.usual.map((row) => [row.productId, row.cases]))
 	const [terms] = rows.terms
 	const fortnight = fortnightOf({ schedule, from, outlooks: [...outlooks.values()], ownLines })
 	return {
@@ -57,11 +58,13 @@ export async function sheetOf(rows: SheetRows, { day, now, producerSlug, storeSl
 				strip,
 				toShareCases: toShare.get(row.id) ?? 0,
 				lastCases: casesOn(lastOn, row.id),
+				usualCases: usual.get(row.id) ?? 0,
 				orderedCases: casesOn(day, row.id),
 				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && supply.on <= day),
 			}
 		}),
 		orders: ordersOf(ownLines.filter((line) => line.deliveryOn === day)),
+		start: { key: day, values: {}, changes: null, again: null, draft: null },
 		idempotencyKey: randomUUID(),
 	}
 }

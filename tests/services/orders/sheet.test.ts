@@ -60,7 +60,7 @@ describe("the order sheet", () => {
 			expectedOn: "2026-08-17",
 			freeCases: 7,
 		})
-		expect(row).toMatchObject({ toShareCases: 50, orderedCases: 0, lastCases: 0, mayAsk: true })
+		expect(row).toMatchObject({ toShareCases: 50, usualCases: 0, orderedCases: 0, lastCases: 0, mayAsk: true })
 		expect(row?.breaks).toEqual([
 			{ minCases: 1, caseCents: 11_400 },
 			{ minCases: 3, caseCents: 10_830 },
@@ -120,10 +120,27 @@ describe("a posted order sheet", () => {
 		expect(posted?.lines).toEqual([])
 	})
 
-	test("takes empty as none, and a box as the wish to keep what is more than free", () => {
+	test("takes empty as none, and a choice of what to do with more than is free", () => {
 		const empty = randomUUID()
-		const posted = post({ [`cases-${empty}`]: " ", [`cases-${productId}`]: " 12 ", [`keep-${productId}`]: "yes" })
-		expect(posted).toMatchObject({ lines: [{ productId, cases: 12, keep: true }], errors: {} })
+		const posted = post({ [`cases-${empty}`]: " ", [`cases-${productId}`]: " 12 ", [`keep-${productId}`]: "rest" })
+		expect(posted).toMatchObject({ lines: [{ productId, cases: 12, keep: "rest", leastCases: 0 }], errors: {} })
+	})
+
+	test("takes the least a store would have, and refuses one above what is asked", () => {
+		const fields = { [`cases-${productId}`]: "4", [`seen-${productId}`]: "12;1:11400;3:10830" }
+		const seen = {
+			piecesPerCase: 12,
+			breaks: [
+				{ minCases: 1, caseCents: 11_400 },
+				{ minCases: 3, caseCents: 10_830 },
+			],
+		}
+		expect(post({ ...fields, [`least-${productId}`]: "2" })?.lines).toEqual([
+			{ productId, cases: 4, keep: false, leastCases: 2, seen },
+		])
+		expect(post({ ...fields, [`least-${productId}`]: "5" })?.errors).toEqual({
+			[`least-${productId}`]: "The least cannot be more than what you ask for.",
+		})
 	})
 
 	test("refuses a note that is too long, and is no sheet of ours without its key", () => {

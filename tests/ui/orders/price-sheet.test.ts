@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest"
-import { breakColumns, priceInColumn, priceSheet, type SheetProduct } from "~/ui/orders/price-sheet"
+import { breakColumns, keepRows, priceInColumn, priceSheet, type SheetProduct } from "~/ui/orders/price-sheet"
 import { stripWords } from "~/ui/orders/strip-words"
 
 const TERMS = { minimumCents: 60_000, deliveryChargeCents: 1_800, freeAboveCents: 60_000 }
@@ -20,6 +20,7 @@ function product(code: string, more: Partial<SheetProduct> = {}): SheetProduct {
 		strip: { free: 16, held: 0, heldUntil: null, expected: 0, expectedOn: null, next: null, freeCases: 16 },
 		toShareCases: 0,
 		lastCases: 0,
+		usualCases: 0,
 		orderedCases: 0,
 		mayAsk: true,
 		...more,
@@ -29,13 +30,28 @@ function product(code: string, more: Partial<SheetProduct> = {}): SheetProduct {
 describe("the sheet as it is typed", () => {
 	test("leaves out of the sure sum what is more than free, and counts as none what cannot be read", () => {
 		const products = [product("11"), product("21"), product("31")]
-		const { rows, price } = priceSheet(products, { "11": "3", "21": "17", "31": "some" }, TERMS)
+		const { rows, price } = priceSheet(products, { "cases-11": "3", "cases-21": "17", "cases-31": "some" }, TERMS)
 		expect(rows.map((row) => [row.cases, row.isBeyondFree])).toEqual([
 			[3, false],
 			[17, true],
 			[0, false],
 		])
-		expect(price).toMatchObject({ sureCents: 32_490, sharedCents: 184_110, deliveryCents: 1_800 })
+		// Sixteen of the seventeen are free: they are sure, and only the last is to be shared out.
+		expect(price).toMatchObject({ sureCents: 32_490 + 173_280, sharedCents: 10_830, deliveryCents: 0 })
+	})
+
+	test("counts only what is free where the buyer takes no more", () => {
+		const typed = { "cases-11": "17", "keep-11": "free" }
+		const { rows, price } = priceSheet([product("11")], typed, TERMS)
+		expect(rows[0]).toMatchObject({ cases: 17, sureCases: 16, sharedCases: 0, isBeyondFree: true })
+		expect(price).toMatchObject({ sureCents: 173_280, sharedCents: 0, cases: 16 })
+	})
+
+	test("draws only the rows anew that show something else", () => {
+		const products = [product("11", { breakFamily: "a" }), product("21", { breakFamily: "a" }), product("31")]
+		const before = priceSheet(products, { "cases-11": "1" }, TERMS).rows
+		const after = keepRows(before, priceSheet(products, { "cases-11": "2" }, TERMS).rows)
+		expect(after.map((row, index) => row === before[index])).toEqual([false, true, true])
 	})
 
 	test("heads the columns of the breaks in words, and shows a product of fewer breaks its own price in each", () => {
