@@ -7,10 +7,14 @@ import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/next-sheet"
 import { BuyBook } from "./buy-book"
 import { findBuyFrame } from "./frame.server"
+import { numberIn } from "./sheet.server"
 
 export const meta: Route.MetaFunction = () => [{ title: "Order sheet · Waxbill" }]
 
-/** Goes to the sheet of the next delivery day that takes orders, on or after `from` where that is asked. */
+/**
+ * Goes to the sheet of the next delivery day that takes orders, on or after `from` where that is asked; `again` names an
+ * order that it is to begin with.
+ */
 export const loader = guard(admits.store("buyer", "payer"), async ({ url, params }: Route.LoaderArgs, scope) => {
 	const asked = url.searchParams.get("from")
 	const from = asked !== null && isDay(asked) ? asked : undefined
@@ -22,7 +26,9 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ url, params
 		zone: producer.timeZone,
 		...(from ? { from } : {}),
 	})
-	if (day !== null) throw redirect(`/buy/${params.producer}/${params.store}/sheet/${day}`)
+	const again = numberIn(url.searchParams, "again")
+	const search = again === null ? "" : `?again=${again}`
+	if (day !== null) throw redirect(`/buy/${params.producer}/${params.store}/sheet/${day}${search}`)
 	return { frame: await findBuyFrame(scope, { part: "sheet" }), producerName: producer.name }
 })
 

@@ -52,6 +52,7 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 		})),
 		producerName: scope.producer.name,
 		wasSent: url.searchParams.has("sent") ? scope.person.email : null,
+		wasChanged: url.searchParams.has("changed") ? scope.person.email : null,
 		wasCancelled: url.searchParams.has("cancelled"),
 	}
 })
@@ -71,13 +72,19 @@ export const action = guard(
 )
 
 export default function Order({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { order, shares, timeline, changeUntil, invoiceNumber, producerName, wasSent, wasCancelled } = loaderData
+	const { order, shares, timeline, changeUntil, invoiceNumber, producerName, wasSent, wasChanged, wasCancelled } =
+		loaderData
 	const base = `/buy/${params.producer}/${params.store}`
 	return (
 		<BuyBook frame={loaderData.frame} ruled>
 			{wasSent && order.state === "placed" && (
 				<MessageLine tone="saved" title={`${producerName} has your order ${order.number}.`}>
 					A letter with all of it goes to {wasSent}.
+				</MessageLine>
+			)}
+			{wasChanged && order.state === "placed" && (
+				<MessageLine tone="saved" title={`Order ${order.number} is changed.`}>
+					A letter with all of it goes to {wasChanged}.
 				</MessageLine>
 			)}
 			{wasCancelled && order.state === "cancelled" && (
@@ -102,7 +109,7 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 				note={
 					changeUntil && (
 						<>
-							You can cancel it until <b>{changeUntil}</b>.
+							You can change or cancel it until <b>{changeUntil}</b>.
 						</>
 					)
 				}
@@ -140,6 +147,14 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 							Invoice {invoiceNumber}
 						</Link>
 					)}
+					{order.mayCancel && (
+						<Link className="btn" to={`${base}/sheet/${order.deliveryOn}?order=${order.number}`}>
+							Change this order
+						</Link>
+					)}
+					<Link className="btn" to={`${base}/sheet?again=${order.number}`}>
+						Order this again
+					</Link>
 					{order.mayCancel && (
 						<Form method="post">
 							<Button name="intent" value="cancel" className="w-full">
