@@ -219,10 +219,10 @@ test.describe("without JavaScript", () => {
 		await casesOf(page, "41").fill("900")
 		await page.getByRole("button", { name: "Send order" }).click()
 		await expect(summary).toContainText(
-			/41 Cut comb, clover: \d+ are free\. Ask for \d+, or keep 900 and it is shared out\./,
+			/41 Cut comb, clover: \d+ are free\. Take \d+, wait on the list for the other \d+, or take another day\./,
 		)
 		await expect(casesOf(page, "51")).toHaveValue("2")
-		await page.getByLabel("Keep 900").check()
+		await page.getByLabel(/^Take \d+, wait for \d+ more$/).check()
 		await page.getByRole("button", { name: "Send order" }).click()
 		await expect(page.getByRole("status")).toContainText("has your order")
 		await expect(page.getByRole("row", { name: /Cut comb, clover/ })).toContainText("to be shared out")

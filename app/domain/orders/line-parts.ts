@@ -1,5 +1,5 @@
 /** A line of an order, as far as it is promised. */
-export type PromisedLine = { cases: number; isToShare: boolean; promisedCases: number }
+type PromisedLine = { cases: number; isToShare: boolean; promisedCases: number }
 
 export type LinePart<Line> = { line: Line; cases: number; toBeSharedOut: boolean }
 

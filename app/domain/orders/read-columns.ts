@@ -2,7 +2,7 @@
 export type UnmatchedRow = { row: number; code: string; cases: string }
 
 /** What a list says about a sheet: cases as to be typed, by product id, and the rows that name no product. */
-export type ReadColumns = { cases: Record<string, string>; unmatched: UnmatchedRow[] }
+type ReadColumns = { cases: Record<string, string>; unmatched: UnmatchedRow[] }
 
 type Product = { productId: string; code: string }
 

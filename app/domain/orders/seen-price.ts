@@ -5,7 +5,7 @@ export type SeenPrice = { piecesPerCase: number; breaks: readonly CaseBreak[] }
 
 type Product = SeenPrice & { productId: string; breakFamily: string }
 
-export type PriceChange =
+type PriceChange =
 	| { productId: string; reason: "price-changed"; seenCents: number; caseCents: number }
 	| { productId: string; reason: "case-changed"; seenPieces: number; piecesPerCase: number }
 

@@ -17,7 +17,7 @@ import { fillFromList, mendRows } from "./sheet-list.server"
 import { refusalWords, type SheetErrors } from "./sheet-words"
 
 /** The sheet as it was posted, to be shown again. `fill` is another whenever the fields begin with something else. */
-export type SheetAnswer = {
+type SheetAnswer = {
 	fill: string
 	values: Record<string, string>
 	errors: SheetErrors

@@ -4,7 +4,7 @@ import { readOrderList } from "~/services/orders/read-order-list.server"
 type Product = { productId: string; code: string }
 
 /** A sheet with a list put into it, or what is wrong with the list. */
-export type FilledSheet = { values: Record<string, string>; unmatched: UnmatchedRow[]; errors: Record<string, string> }
+type FilledSheet = { values: Record<string, string>; unmatched: UnmatchedRow[]; errors: Record<string, string> }
 
 /** Rows of a list that the sheet can still show; a longer list of strangers is the wrong list. */
 const MOST_UNMATCHED = 100
@@ -45,7 +45,7 @@ export async function fillFromList(
 }
 
 /** What was chosen for the rows of a list that named no product. */
-export type MendedRows = { values: Record<string, string>; unmatched: UnmatchedRow[]; putIn: number }
+type MendedRows = { values: Record<string, string>; unmatched: UnmatchedRow[]; putIn: number }
 
 /** Puts the rows for which a product was chosen into what is typed, and keeps those for which nothing was chosen yet. */
 export function mendRows(values: Record<string, string>, products: readonly Product[]): MendedRows {

@@ -1,7 +1,6 @@
-import { type Day, dayInZone, dayWords, monthDay, weekday, weekdayName } from "~/domain/calendar"
+import { type Day, dayInZone, monthDay, weekday, weekdayName } from "~/domain/calendar"
 import { cutoffSoonWords } from "~/domain/delivery/last-orders"
 import { formatMoney } from "~/domain/money"
-import { casesWords } from "~/domain/quantity"
 import type { ChangeOrderAnswer } from "~/services/orders/change-order.server"
 import type { LineRefusal } from "~/services/orders/check-asked.server"
 import type { PlaceOrderAnswer } from "~/services/orders/place-order.server"
@@ -77,6 +76,3 @@ export function begunWords(at: Date, zone: string, today: Day): string {
 	const days = (Date.parse(today) - Date.parse(on)) / 86_400_000
 	return days < 7 ? `on ${weekdayName(weekday(on))}` : `on ${monthDay(on)}`
 }
-
-/** "Friday, August 21 has 12 cases": a day that has what this one has not. */
-export const otherDayWords = (on: Day, cases: number) => `${dayWords(on)} has ${casesWords(cases)}`

@@ -40,7 +40,7 @@ export type LineRefusal =
 	| { productId: string; reason: "case-changed"; seenPieces: number; piecesPerCase: number }
 
 /** Lines of the order that is being changed: their own promises are set aside while it is checked. */
-export type OwnPromise = { productId: string; pieces: number }
+type OwnPromise = { productId: string; pieces: number }
 
 /**
  * Holds what is asked against what is free to promise for the day, and against the prices that the buyer saw. The

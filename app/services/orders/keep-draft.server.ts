@@ -10,7 +10,7 @@ const LONGEST = 500
 const KEPT = /^(?:cases-|least-|poNumber$|note$)/
 
 /** What of a sheet's fields is worth keeping: figures, number and note that are not empty, each as it was typed. */
-export function draftFields(values: Readonly<Record<string, string>>): Record<string, string> {
+function draftFields(values: Readonly<Record<string, string>>): Record<string, string> {
 	const kept = Object.entries(values).filter(
 		([name, value]) => KEPT.test(name) && name.length < 60 && value.trim() !== "",
 	)

@@ -56,7 +56,7 @@ export async function writeOrder(tx: Tx, order: NewOrder): Promise<{ id: string;
 }
 
 /** The parts of an order's lines with the price of the whole, line by line: `price.lines[i]` is that of `parts[i]`. */
-export type PricedLines = { parts: LinePart<CheckedLine>[]; price: OrderPrice; caseCents: number[] }
+type PricedLines = { parts: LinePart<CheckedLine>[]; price: OrderPrice; caseCents: number[] }
 
 /** Prices lines that have been checked, each at the break that all cases asked of its family reach. */
 export function priceLines(order: Pick<NewOrder, "lines" | "facts">): PricedLines {

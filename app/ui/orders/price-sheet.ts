@@ -53,7 +53,7 @@ export type SheetProduct = {
 }
 
 /** What a row comes to. Breaks are those of all cases asked; `cents` those of the parts together. */
-export type RowPrice = Pick<PricedLine, "breakIndex" | "nextBreak"> & { cents: number }
+type RowPrice = Pick<PricedLine, "breakIndex" | "nextBreak"> & { cents: number }
 
 /** A row with what was typed in it. `cases` is 0 where nothing, or nothing that can be read, was typed. */
 export type PricedRow = {

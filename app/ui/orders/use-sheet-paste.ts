@@ -30,7 +30,10 @@ export function useSheetPaste(
 		const { cases, unmatched } = readColumns(cells, products)
 		for (const [productId, count] of Object.entries(cases)) {
 			const field = element.elements.namedItem(casesName(productId))
-			if (field instanceof HTMLInputElement) field.value = count
+			if (!(field instanceof HTMLInputElement)) continue
+			// Also one of which none is to be had: it is asked, and answered with what can be done.
+			field.disabled = false
+			field.value = count
 		}
 		onFilled(unmatched)
 	}
