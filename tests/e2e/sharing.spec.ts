@@ -24,7 +24,7 @@ test("the producer compares the rules, shares a short product out, takes it back
 	await expect(ida.getByText("18 cases can be ready for")).toBeVisible()
 	await expect(ida.getByText("The 18th case: without it, under its least.")).toBeVisible()
 	await expect(ida.getByText("All nine reach their least.").first()).toBeVisible()
-	await expect(ida.getByText("set aside: under least").first()).toBeVisible()
+	await expect(ida.getByText("Two are set aside: under their least.").first()).toBeVisible()
 	await expectNoFindings(ida)
 
 	// Another rule, and another supply, live; nothing is promised on a supposition.

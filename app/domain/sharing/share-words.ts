@@ -81,7 +81,7 @@ export function deskReason(told: ToldSharing, index: number, last: { given: numb
 		case "left-over":
 			return leftOverReason(told, { claim, share, last })
 		case "below-least":
-			return `${takesWords(claim)} Its share would be ${exactWords(share.exact)}.`
+			return `Takes ${leastWords(claim)}. Its share would be ${exactWords(share.exact)}.`
 		case "came-back":
 			return "Set aside at first; what was over covers its least."
 		case "nothing-left":
@@ -113,8 +113,8 @@ function leftOverReason(
 	return last ? `${which}: had ${last.given} of ${last.asked} when last short.` : `${which}: the earlier order.`
 }
 
-const takesWords = ({ least, asked }: Claim) =>
-	least === asked ? `Takes ${asked} or none.` : `Takes ${least} or more, or none.`
+/** "2 or none", "3 or more, or none". */
+const leastWords = ({ least, asked }: Claim) => (least === asked ? `${asked} or none` : `${least} or more, or none`)
 
 /** What a store asked and got, and what was sure of it beforehand, in cases of the whole line. */
 export type StoreResult = { asked: number; given: number; sure: number }
@@ -146,7 +146,7 @@ function howWords(told: ToldSharing, index: number): string {
 	const share = told.shares[index] as Share
 	if (supply === 0) return "No more can be ready for this day."
 	if (share.reason === "below-least")
-		return `You take ${claim.least} or none, and your share of the ${supply} would have been less.`
+		return `You take ${leastWords(claim)}, and your share of the ${supply} would have been less.`
 	const rank = (claimClass: ClaimClass) => Object.keys(CLASS_WORDS).indexOf(claimClass)
 	const before = told.claims.filter((one) => rank(one.claimClass) < rank(claim.claimClass)).map((one) => one.claimClass)
 	const first = [...new Set(before)].sort((a, b) => rank(a) - rank(b)).map((name) => CLASS_WORDS[name])
@@ -193,4 +193,4 @@ const reachWords = (count: number) =>
 			: `All ${small(count)} reach their least.`
 
 const asideWords = (count: number) =>
-	count === 1 ? "One would be under its least." : `${head(count)} would be under their least.`
+	count === 1 ? "One is set aside: under its least." : `${head(count)} are set aside: under their least.`

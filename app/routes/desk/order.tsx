@@ -104,6 +104,7 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 				<ConfirmLines
 					order={order}
 					whyHref={(code) => `${base}/promise/${encodeURIComponent(code)}?day=${order.deliveryOn}`}
+					shareHref={(code) => `${base}/sharing/${encodeURIComponent(code)}/${order.deliveryOn}`}
 					values={actionData?.values ?? {}}
 					errors={errors}
 				/>

@@ -12,6 +12,8 @@ type Line = {
 	detail: string
 	askedCases: number
 	isToShare: boolean
+	/** What sharing out has given it; null until then. */
+	givenCases: number | null
 	caseCents: number
 	piecesPerCase: number
 	mostCases: number
@@ -21,6 +23,8 @@ type ConfirmLinesProps = {
 	order: { storeName: string; lines: readonly Line[] }
 	/** Where it is explained how much of a product can be given. */
 	whyHref: (code: string) => string
+	/** Where a product is shared out among all who ask for it. */
+	shareHref: (code: string) => string
 	/** What was typed, by field, where it was refused. */
 	values: Record<string, string>
 	errors: Record<string, string>
@@ -30,7 +34,7 @@ type ConfirmLinesProps = {
  * The lines of an order that waits: asked, how much of it there is, and a field for what each gets, filled with the most
  * that can be given. One button says what happens.
  */
-export function ConfirmLines({ order, whyHref, values, errors }: ConfirmLinesProps) {
+export function ConfirmLines({ order, whyHref, shareHref, values, errors }: ConfirmLinesProps) {
 	const isSending = useNavigation().formMethod === "POST"
 	return (
 		<Form method="post" noValidate>
@@ -58,7 +62,14 @@ export function ConfirmLines({ order, whyHref, values, errors }: ConfirmLinesPro
 				</thead>
 				<tbody>
 					{order.lines.map((line) => (
-						<ConfirmLine key={line.id} line={line} whyHref={whyHref} values={values} errors={errors} />
+						<ConfirmLine
+							key={line.id}
+							line={line}
+							whyHref={whyHref}
+							shareHref={shareHref}
+							values={values}
+							errors={errors}
+						/>
 					))}
 				</tbody>
 			</table>
@@ -71,8 +82,8 @@ export function ConfirmLines({ order, whyHref, values, errors }: ConfirmLinesPro
 	)
 }
 
-function ConfirmLine({ line, whyHref, values, errors }: { line: Line } & Omit<ConfirmLinesProps, "order">) {
-	const { id, code, name, askedCases, mostCases, isToShare } = line
+function ConfirmLine({ line, whyHref, shareHref, values, errors }: { line: Line } & Omit<ConfirmLinesProps, "order">) {
+	const { id, code, name, askedCases, givenCases, mostCases, isToShare } = line
 	const given = `given-${id}`
 	const reason = `reason-${id}`
 	const errorId = `${fieldId(given)}-error`
@@ -84,7 +95,12 @@ function ConfirmLine({ line, whyHref, values, errors }: { line: Line } & Omit<Co
 				<span className="name block text-body!">{name}</span>
 				<span className="note">
 					{line.detail}, case of {line.piecesPerCase}
-					{isToShare && ", to be shared out"}
+					{isToShare && givenCases !== null && `, shared out: ${givenCases} of ${askedCases}`}
+					{isToShare && givenCases === null && (
+						<>
+							, <Link to={shareHref(code)}>to be shared out</Link>
+						</>
+					)}
 				</span>
 			</td>
 			<td className="num fig cell-asked">
@@ -119,7 +135,7 @@ function ConfirmLine({ line, whyHref, values, errors }: { line: Line } & Omit<Co
 				<QuantityField
 					name={given}
 					label={`Cases of ${name} given`}
-					defaultValue={values[given] ?? String(mostCases)}
+					defaultValue={values[given] ?? String(givenCases ?? mostCases)}
 					error={errors[given]}
 					errorId={errorId}
 				/>

@@ -64,7 +64,7 @@ export function RuleTable({ rows, rules, chosen, onChoose, margin }: RuleTablePr
 						</td>
 						<td className="lst">
 							{row.last ? `${row.last.given} of ${row.last.asked}` : "new"}
-							<span className="desk:hidden"> when last short</span>
+							{row.last && <span className="desk:hidden"> when last short</span>}
 						</td>
 						{rules.map((one) => (
 							<RuleCell key={one.rule} row={row} told={one} index={index} isChosen={one.rule === chosen} />
@@ -124,7 +124,7 @@ function RuleCell(props: { row: ShareRow; told: ToldRule; index: number; isChose
 				/>
 				<span className={isUnder ? "fig under" : "fig"}>
 					<b>{given}</b> of {askedCases}
-					{isUnder && <small>{isAside ? "set aside: under least" : "under least"}</small>}
+					{isUnder && <small>under least</small>}
 				</span>
 			</div>
 		</td>

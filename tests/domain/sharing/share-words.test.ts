@@ -82,7 +82,7 @@ describe("eighteen cases that nine stores want", () => {
 		)
 		expect(verdictOf(told, NAMES)).toEqual({
 			isGood: false,
-			head: "Two would be under their least.",
+			head: "Two are set aside: under their least.",
 			line: "Weir Street Pantry and Saltmarsh Provisions get none. 18 of 18 cases given.",
 		})
 	})
