@@ -1,6 +1,7 @@
 import { sql } from "drizzle-orm"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
+import { changeWords, type LineChange } from "~/domain/orders/change-words"
 import { isOpenToChange, type OrderState } from "~/domain/orders/order-states"
 import type { Result } from "~/domain/result"
 import { deliveryDayOn, findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
@@ -24,9 +25,6 @@ export type ChangeOrderAnswer = Result<
 	| { ok: false; reason: "shared-out" }
 	| { ok: false; reason: "lines"; refused: LineRefusal[] }
 >
-
-/** How one line changed: cases asked before and after, 0 where it came or went. */
-type LineChange = { code: string; name: string; from: number; to: number }
 
 /**
  * Puts other lines, number and note in the place of those of a store's own order, while it is only placed, before last
@@ -105,7 +103,7 @@ async function writeChange(
 		orderId: order.id,
 		kind: "changed",
 		userId: person.id,
-		detail: { idempotencyKey, lines: changes },
+		detail: { idempotencyKey, lines: changes, reason: changeWords(changes) },
 	})
 	await queueMail(tx, {
 		producerId,
