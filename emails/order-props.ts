@@ -88,3 +88,27 @@ export function sumsUp(letter: {
 	const lines = letter.lines.reduce((sum, line) => sum + line.amountCents, 0)
 	return letter.charges.reduce((sum, part) => sum + part.cents, lines) === letter.totalCents
 }
+
+/** A late change: what differs on each line in words, why, and what the changed lines come to before and after. */
+export const lateChange = {
+	reason: sentence,
+	lines: z
+		.array(z.object({ productName: words, productNote: words.nullish(), change: words }))
+		.min(1)
+		.max(1000),
+	beforeCents: cents,
+	afterCents: cents,
+}
+
+export const sampleLateChange = {
+	reason: "A super was lost to a storm on Wednesday night.",
+	lines: [
+		{
+			productName: "Basswood section, clover",
+			productNote: "Fancy, 13 oz, case of 12",
+			change: "2 cases instead of 4",
+		},
+	],
+	beforeCents: 57000,
+	afterCents: 28500,
+}

@@ -2,7 +2,11 @@ import type { ComponentType } from "react"
 import type { z } from "zod"
 import * as invitation from "./invitation"
 import * as invoice from "./invoice"
+import * as orderAnswer from "./order-answer"
+import * as orderChanged from "./order-changed"
 import * as orderConfirmed from "./order-confirmed"
+import * as orderMessage from "./order-message"
+import * as orderProposal from "./order-proposal"
 import * as orderReceived from "./order-received"
 import * as orderShared from "./order-shared"
 import * as paymentReceived from "./payment-received"
@@ -37,6 +41,10 @@ export const templates = {
 	"order-received": letter(orderReceived),
 	"order-confirmed": letter(orderConfirmed),
 	"order-shared": letter(orderShared),
+	"order-proposal": letter(orderProposal),
+	"order-changed": letter(orderChanged),
+	"order-answer": letter(orderAnswer),
+	"order-message": letter(orderMessage),
 	invoice: letter(invoice),
 	"payment-received": letter(paymentReceived),
 	"standing-order-set": letter(standingOrderSet),

@@ -70,7 +70,7 @@ export const admissions: Record<string, Admission> = {
 	// A buyer reads what is to pay; paying is the payer's.
 	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
 	"routes/buy/invoice-pdf": storePage,
-	"routes/buy/details": storePage,
+	"routes/buy/details": { loader: STORE, action: STORE, post: { fields: { letters: "invoices" } } },
 
 	// The desk: no stall volunteer; the packer sees what is packed and from which lots, and no money
 	"routes/desk/to-do": { loader: COLD_ROOM, action: OFFICE, post: { fields: onOrder("confirm") } },
@@ -138,6 +138,8 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/invoice-pdf": { loader: OFFICE },
 	"routes/desk/stores": { loader: OFFICE },
 	"routes/desk/prices": { loader: OFFICE },
+	"routes/desk/price-new": { loader: OFFICE, action: OFFICE },
+	"routes/desk/price-upload": { loader: OFFICE, action: OFFICE },
 	// People are the owner's alone.
 	"routes/desk/people": { loader: "desk: owner", action: "desk: owner", post: { fields: { intent: "invite" } } },
 

@@ -1,10 +1,14 @@
 import type { ReactNode } from "react"
+import { Form, redirect } from "react-router"
 import { fullDay, instantAt, timeWords, type Weekday, weekdayName } from "~/domain/calendar"
 import { termsWords } from "~/domain/invoicing/terms"
 import { formatMoney } from "~/domain/money"
+import { letterKinds } from "~/domain/people/letters"
 import { now as askClock } from "~/platform/clock.server"
 import { findStoreDetails, type StoreDetails } from "~/services/delivery/find-store-details.server"
-import { SheetHead } from "~/ui/layout/sheet"
+import { findLettersOff, setLettersOff } from "~/services/people/set-letters-off.server"
+import { MessageLine, SheetHead } from "~/ui/layout/sheet"
+import { LettersForm } from "~/ui/messages/letters-form"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/details"
 import { BuyBook } from "./buy-book"
@@ -12,11 +16,27 @@ import { findBuyFrame } from "./frame.server"
 
 export const meta: Route.MetaFunction = () => [{ title: "Our details · Waxbill" }]
 
-export const loader = guard(admits.store("buyer", "payer"), async (_args: Route.LoaderArgs, scope) => {
-	const { producer, store } = scope
+export const loader = guard(admits.store("buyer", "payer"), async ({ url }: Route.LoaderArgs, scope) => {
+	const { producer, store, person } = scope
 	const now = askClock()
 	const details = await findStoreDetails({ producerId: producer.id, storeId: store.id, now, zone: producer.timeZone })
-	return { frame: await findBuyFrame(scope, { part: "details", now }), details }
+	return {
+		frame: await findBuyFrame(scope, { part: "details", now }),
+		details,
+		lettersOff: await findLettersOff({ producerId: producer.id, storeId: store.id, personId: person.id }),
+		email: person.email,
+		isSaved: url.searchParams.has("saved"),
+	}
+})
+
+/** Every letter that has no tick is switched off, so that a form without any switches all of them off. */
+export const action = guard(admits.store("buyer", "payer"), async ({ request, url }: Route.ActionArgs, scope) => {
+	const { producer, store, person } = scope
+	const form = await request.formData()
+	const wanted = form.getAll("letters").map(String)
+	const off = letterKinds.filter((kind) => !wanted.includes(kind))
+	await setLettersOff({ producerId: producer.id, storeId: store.id, personId: person.id, off })
+	throw redirect(`${url.pathname}?saved`)
 })
 
 type Rounds = StoreDetails["rounds"]
@@ -46,11 +66,16 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
 	)
 }
 
-export default function Details({ loaderData: { frame, details } }: Route.ComponentProps) {
+export default function Details({ loaderData: { frame, details, lettersOff, email, isSaved } }: Route.ComponentProps) {
 	const { yard, people, rounds, resaleCertificateUntil } = details
 	const whom = yard.contactName ?? yard.name
 	return (
 		<BuyBook frame={frame}>
+			{isSaved && (
+				<MessageLine tone="saved" title="Your letters are as you chose.">
+					It holds from the next letter on.
+				</MessageLine>
+			)}
 			<SheetHead
 				title="Our details"
 				lead={<>What {yard.name} knows of you. Call or write to have any of it changed.</>}
@@ -85,6 +110,11 @@ export default function Details({ loaderData: { frame, details } }: Route.Compon
 							<span className="note">{person.email}</span>
 						</span>
 					))}
+				</Fact>
+				<Fact label="Letters to you">
+					<Form method="post">
+						<LettersForm off={lettersOff} email={email} />
+					</Form>
 				</Fact>
 				<Fact label="Whom to call">
 					<b>{whom}</b>

@@ -3,18 +3,25 @@ import { dayInZone, dayWords, shortMonthDay, timeWords } from "~/domain/calendar
 import { cutoffSoonWords } from "~/domain/delivery/last-orders"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
 import { now as askClock } from "~/platform/clock.server"
-import { cancelOrder } from "~/services/orders/cancel-order.server"
+import { findTimeline } from "~/services/messages/find-timeline.server"
 import { findOrder } from "~/services/orders/find-order.server"
+import { findProposal } from "~/services/orders/find-proposal.server"
 import { findOrderShares } from "~/services/sharing/find-order-shares.server"
 import { Button } from "~/ui/forms/button"
+import { ErrorSummary } from "~/ui/forms/error-summary"
 import { MessageLine, SheetHead } from "~/ui/layout/sheet"
+import { MessageForm } from "~/ui/messages/message-form"
+import { OrderTimeline } from "~/ui/messages/order-timeline"
+import { Proposal } from "~/ui/messages/proposal"
 import { OrderLines, OrderSums } from "~/ui/orders/order-lines"
-import { EVENT_WORDS, stateWords } from "~/ui/orders/state-words"
+import { stateWords } from "~/ui/orders/state-words"
 import { OwnShares } from "~/ui/sharing/own-shares"
+import { timelineView } from "../desk/order-timeline"
 import { admits, guard, type StoreScope } from "../guard.server"
 import type { Route } from "./+types/order"
 import { BuyBook } from "./buy-book"
 import { findBuyFrame } from "./frame.server"
+import { takeStep } from "./order-step.server"
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
 	{ title: `Order ${loaderData?.order.number ?? ""} · Waxbill` },
@@ -37,19 +44,24 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 	const { zone, now } = query
 	const order = await findOrder(query)
 	if (!order) throw data(null, { status: 404 })
-	const { cutoffAt, events, invoice, ...shown } = order
+	const { cutoffAt, events: _, invoice, ...shown } = order
+	const before = url.searchParams.get("before")
+	const timeline = await findTimeline({ ...query, before })
+	const open = order.state === "confirmed" ? (await findProposal(query)).open : null
 	return {
 		frame: await findBuyFrame(scope, { part: "deliveries", now }),
 		order: shown,
 		shares: await findOrderShares(query),
 		changeUntil: order.mayCancel && cutoffAt ? cutoffSoonWords(cutoffAt, zone, dayInZone(now, zone)) : null,
 		invoiceNumber: invoice && invoiceNumber(invoice.year, invoice.sequence),
-		timeline: events.map(({ kind, at, who }) => ({
-			what: EVENT_WORDS[kind],
-			who,
-			at: at.toISOString(),
-			when: `${shortMonthDay(dayInZone(at, zone))}, ${timeWords(at, zone)}`,
-		})),
+		timeline: timelineView(timeline, { zone, side: "store", before }),
+		proposal: open && {
+			...open,
+			asked: `${open.who}, ${shortMonthDay(dayInZone(open.at, zone))}, ${timeWords(open.at, zone)}`,
+		},
+		answered: ANSWERED[url.searchParams.get("answered") ?? ""] ?? null,
+		wasWritten: url.searchParams.has("written"),
+		messageKey: crypto.randomUUID(),
 		producerName: scope.producer.name,
 		wasSent: url.searchParams.has("sent") ? scope.person.email : null,
 		wasChanged: url.searchParams.has("changed") ? scope.person.email : null,
@@ -57,23 +69,34 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 	}
 })
 
+const ANSWERED: Record<string, string> = {
+	accepted: "You have accepted the change.",
+	declined: "You have declined the change; the order stands as it was confirmed.",
+}
+
 export const action = guard(
 	admits.store("buyer", "payer"),
 	async ({ request, params, url }: Route.ActionArgs, scope) => {
 		const form = await request.formData()
-		if (form.get("intent") !== "cancel") throw data(null, { status: 400 })
-		const answer = await cancelOrder({ ...orderQuery(scope, params.number), personId: scope.person.id })
-		if (answer.ok) throw redirect(`${url.pathname}?cancelled`)
-		if (answer.reason === "unknown") throw data(null, { status: 404 })
-		const problem =
-			answer.state === "placed" ? "Last orders for this delivery have passed." : `It is ${answer.state} already.`
-		return data({ problem }, { status: 422 })
+		const taken = await takeStep({ form, scope, query: orderQuery(scope, params.number) })
+		if (taken.ok) throw redirect(`${url.pathname}?${taken.search}`)
+		return data(taken.refused, { status: 422 })
 	},
 )
 
 export default function Order({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { order, shares, timeline, changeUntil, invoiceNumber, producerName, wasSent, wasChanged, wasCancelled } =
-		loaderData
+	const {
+		order,
+		shares,
+		timeline,
+		proposal,
+		changeUntil,
+		invoiceNumber,
+		producerName,
+		wasSent,
+		wasChanged,
+		wasCancelled,
+	} = loaderData
 	const base = `/buy/${params.producer}/${params.store}`
 	return (
 		<BuyBook frame={loaderData.frame} ruled>
@@ -92,11 +115,27 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 					What it was promised is free for others again.
 				</MessageLine>
 			)}
-			{actionData && (
-				<MessageLine tone="problem" title="The order could not be cancelled.">
+			{!actionData && loaderData.answered && (
+				<MessageLine tone="saved" title={loaderData.answered}>
+					{producerName} is told.
+				</MessageLine>
+			)}
+			{!actionData && loaderData.wasWritten && (
+				<MessageLine tone="saved" title={`${producerName} has your message.`}>
+					It stands below, with the order.
+				</MessageLine>
+			)}
+			{actionData?.problem && (
+				<MessageLine tone="problem" title={actionData.title}>
 					{actionData.problem} {producerName} can still help; see Our details.
 				</MessageLine>
 			)}
+			<ErrorSummary
+				title={actionData?.title}
+				errors={Object.entries(actionData?.errors ?? {}).map(([field, message]) =>
+					field === "" ? { message } : { field, message },
+				)}
+			/>
 			<SheetHead
 				title={`Order ${order.number}`}
 				lead={
@@ -114,28 +153,42 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 					)
 				}
 			/>
+			{proposal && (
+				<Proposal
+					title={`${producerName} asks to change this order`}
+					reason={proposal.reason}
+					asked={proposal.asked}
+					lines={proposal.lines}
+				>
+					<Form method="post">
+						<input type="hidden" name="proposal" value={proposal.id} />
+						<Button variant="primary" name="intent" value="accept">
+							Accept the change
+						</Button>
+					</Form>
+					<Form method="post">
+						<input type="hidden" name="proposal" value={proposal.id} />
+						<Button name="intent" value="decline">
+							Decline, keep it as confirmed
+						</Button>
+					</Form>
+				</Proposal>
+			)}
 			<div className="desk:mr-[calc(var(--spacing-margin)-1px)]">
 				<OrderLines lines={order.lines} isCancelled={order.state === "cancelled"} />
 			</div>
 			<OwnShares shares={shares} />
 			<div className="order-foot">
-				<section aria-labelledby="timeline">
-					<h2 className="head-italic" id="timeline">
-						What has happened
-					</h2>
-					<ol className="mt-2 grid gap-1">
-						{timeline.map(({ what, who, at, when }) => (
-							<li key={`${what} ${at}`}>
-								<b>{what}</b>
-								{who && ` by ${who}`}{" "}
-								<time className="note" dateTime={at}>
-									{when}
-								</time>
-							</li>
-						))}
-					</ol>
+				<div>
+					<OrderTimeline {...timeline} />
 					{order.note && <p className="mt-3">Your note: {order.note}</p>}
-				</section>
+					<MessageForm
+						to={producerName}
+						messageKey={loaderData.messageKey}
+						value={actionData?.body}
+						error={actionData?.errors.body}
+					/>
+				</div>
 				{order.state === "cancelled" ? (
 					<p>Cancelled; nothing is to pay.</p>
 				) : (

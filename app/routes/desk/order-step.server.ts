@@ -1,13 +1,20 @@
 import { data } from "react-router"
+import { z } from "zod"
+import { writeMessage } from "~/services/messages/write-message.server"
+import { takeBackProposal } from "~/services/orders/answer-proposal.server"
 import { cancelFromDesk } from "~/services/orders/cancel-from-desk.server"
 import { confirmOrder } from "~/services/orders/confirm-order.server"
 import type { DeskOrder } from "~/services/orders/find-desk-order.server"
+import { findProposal } from "~/services/orders/find-proposal.server"
 import { markReceived } from "~/services/orders/mark-received.server"
 import { packOrder } from "~/services/orders/pack-order.server"
+import { proposeChange } from "~/services/orders/propose-change.server"
 import { sendOrder } from "~/services/orders/send-order.server"
 import { undoConfirmation } from "~/services/orders/undo-confirmation.server"
 import type { DeskScope } from "../guard.server"
 import { readConfirmation } from "./confirm-form"
+import { readLateChange } from "./order-change-form"
+import { readMessage } from "./order-message"
 import { lineProblem, orderProblem } from "./order-words"
 
 type Refused = { errors: Record<string, string>; values: Record<string, string> }
@@ -33,6 +40,16 @@ export async function takeStep(query: { form: FormData; order: DeskOrder; scope:
 			return (await markReceived(step))
 				? { ok: true, done: "received" }
 				: refuse({ "": `Order ${order.number} is not on its way. Nothing was changed.` })
+		case "propose":
+			return propose(query)
+		case "take-back": {
+			const proposalId = z.guid().safeParse(form.get("proposal"))
+			if (!proposalId.success) throw data(null, { status: 400 })
+			const taken = { ...step, producer, proposalId: proposalId.data }
+			return answered(order.number, "taken-back", await takeBackProposal(taken))
+		}
+		case "write":
+			return write(query)
 		default:
 			throw data(null, { status: 400 })
 	}
@@ -51,6 +68,33 @@ async function confirm({ form, order, scope }: { form: FormData; order: DeskOrde
 	if (answer.reason !== "lines") return answered(order.number, "confirmed", answer, posted.values)
 	const wrong = answer.refused.map((line) => [`given-${line.lineId}`, lineProblem(line)])
 	return refuse(Object.fromEntries(wrong), posted.values)
+}
+
+type Asked = { form: FormData; order: DeskOrder; scope: DeskScope }
+
+/** A late change: proposed or applied, which the page then says. */
+async function propose({ form, order, scope }: Asked): Promise<Step> {
+	const { lines } = await findProposal({ producerId: scope.producer.id, number: order.number })
+	const posted = readLateChange(form, lines)
+	if (Object.keys(posted.errors).length > 0) return refuse(posted.errors, posted.values)
+	const { reason, changes } = posted
+	const about = { producer: scope.producer, number: order.number, personId: scope.person.id }
+	const answer = await proposeChange({ ...about, reason, changes })
+	if (answer.ok) return { ok: true, done: answer.outcome }
+	if (answer.reason !== "change-lines") return answered(order.number, "asked", answer, posted.values)
+	const wrong = answer.refused.map((line) => [`cases-${line.lineId}`, lineProblem(line)])
+	return refuse(Object.fromEntries(wrong), posted.values)
+}
+
+async function write({ form, order, scope }: Asked): Promise<Step> {
+	const read = readMessage(form)
+	if (!read.ok) return refuse(read.errors, read.values)
+	const { producer, person } = scope
+	const writer = { side: "desk" as const, person }
+	const about = { producer, number: order.number, writer, idempotencyKey: read.key }
+	const written = await writeMessage({ ...about, body: read.body })
+	if (written.ok) return { ok: true, done: "written" }
+	return refuse({ "": "Open the page again and send it from there." }, { body: read.body })
 }
 
 type Answer = { ok: true } | ({ ok: false } & Parameters<typeof orderProblem>[1])

@@ -6,6 +6,9 @@ type Refusal =
 	| { reason: "not-confirmed"; state: string }
 	| { reason: "lines"; refused: { reason: "more-than-asked" | "more-than-free"; mostCases: number }[] }
 	| { reason: "lot-withdrawn"; lotCode: string }
+	| { reason: "nothing-changed" | "open-already" | "not-told" | "no-such-proposal" }
+	| { reason: "answered-already"; state: string }
+	| { reason: "change-lines"; refused: unknown[] }
 	| { reason: "lots-too-few"; productName: string; missingPieces: number }
 
 /** Why a step of an order was refused, as one sentence for the head of the page. */
@@ -27,6 +30,20 @@ export function orderProblem(number: number, refusal: Refusal): string {
 				: `Order ${number} is not confirmed any more. Nothing was changed.`
 		case "lines":
 			return `Order ${number} cannot be met in full any more. Open it and decide what it gets.`
+		case "nothing-changed":
+			return `Order ${number} is like that already. Nothing was changed.`
+		case "open-already":
+			return `A change to order ${number} waits for the store’s answer. Take it back first.`
+		case "not-told":
+			return "The letter of the confirmation has not gone yet: undo the confirmation and decide again."
+		case "no-such-proposal":
+			return "There is no such change to answer any more."
+		case "answered-already":
+			return refusal.state === "taken-back"
+				? "That change was taken back."
+				: `That change was ${refusal.state} already.`
+		case "change-lines":
+			return "There are not enough free cases for that any more. Nothing was changed."
 		case "lot-withdrawn":
 			return `Order ${number} was packed from lot ${refusal.lotCode}, which is withdrawn. It must not leave: cancel it and put its pieces back.`
 		case "lots-too-few":

@@ -1,21 +1,27 @@
-import { data, Link, redirect, type ShouldRevalidateFunctionArgs } from "react-router"
+import { data, Form, Link, redirect, type ShouldRevalidateFunctionArgs } from "react-router"
 import { dayInZone, dayWords, shortMonthDay, timeWords } from "~/domain/calendar"
 import { now as askClock } from "~/platform/clock.server"
 import { env } from "~/platform/env.server"
+import { findTimeline } from "~/services/messages/find-timeline.server"
 import { findDeskOrder } from "~/services/orders/find-desk-order.server"
+import { findProposal } from "~/services/orders/find-proposal.server"
 import { ConfirmLines } from "~/ui/desk/confirm-lines"
+import { LateChangeForm } from "~/ui/desk/late-change-form"
 import { OrderSteps } from "~/ui/desk/order-steps"
 import { PackedLots } from "~/ui/desk/packed-lots"
-import { Timeline } from "~/ui/desk/timeline"
+import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
 import { MessageLine, SheetHead } from "~/ui/layout/sheet"
+import { MessageForm } from "~/ui/messages/message-form"
+import { OrderTimeline } from "~/ui/messages/order-timeline"
+import { Proposal } from "~/ui/messages/proposal"
 import { OrderLines, OrderSums } from "~/ui/orders/order-lines"
-import { EVENT_WORDS } from "~/ui/orders/state-words"
 import { admits, type DeskScope, guard } from "../guard.server"
 import type { Route } from "./+types/order"
 import { DeskBook } from "./desk-book"
 import { findDeskFrame } from "./frame.server"
 import { takeStep } from "./order-step.server"
+import { timelineView } from "./order-timeline"
 
 export const meta: Route.MetaFunction = ({ params }) => [{ title: `Order ${params.number} · Waxbill` }]
 
@@ -35,21 +41,32 @@ const DONE: Record<string, string> = {
 	received: "has arrived",
 	cancelled: "is cancelled",
 	undone: "waits again; no letter went out",
+	asked: "stands as confirmed until the store accepts the change",
+	applied: "is changed, and the store is told",
+	"taken-back": "stands as confirmed; the change is taken back",
+	written: "has your message",
 }
 
 export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }: Route.LoaderArgs, scope) => {
 	const { order, now } = await orderOf(scope, params.number)
 	const zone = scope.producer.timeZone
-	const { events, ...shown } = order
+	const { events: _, ...shown } = order
+	const asked = { producerId: scope.producer.id, number: order.number }
+	const before = url.searchParams.get("before")
+	const timeline = await findTimeline({ ...asked, before })
+	const change = order.state === "confirmed" ? await findProposal(asked) : null
 	return {
 		frame: await findDeskFrame(scope, { part: "orders", day: order.deliveryOn, now }),
 		order: shown,
-		timeline: events.map(({ kind, at, who, isUndone }) => ({
-			what: isUndone ? "Confirmation taken back" : EVENT_WORDS[kind],
-			who,
-			at: at.toISOString(),
-			when: `${shortMonthDay(dayInZone(at, zone))}, ${timeWords(at, zone)}`,
-		})),
+		timeline: timelineView(timeline, { zone, side: "desk", before }),
+		change: change && {
+			...change,
+			open: change.open && {
+				...change.open,
+				asked: `${change.open.who}, ${shortMonthDay(dayInZone(change.open.at, zone))}, ${timeWords(change.open.at, zone)}`,
+			},
+		},
+		messageKey: crypto.randomUUID(),
 		undoMinutes: Math.max(1, Math.round(env.UNDO_SECONDS / 60)),
 		done: DONE[url.searchParams.get("done") ?? ""] ?? null,
 	}
@@ -69,7 +86,7 @@ export function shouldRevalidate({ actionStatus, defaultShouldRevalidate }: Shou
 }
 
 export default function Order({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { order, timeline, done, undoMinutes } = loaderData
+	const { order, timeline, change, messageKey, done, undoMinutes } = loaderData
 	const base = `/desk/${params.producer}`
 	const errors = actionData?.errors ?? {}
 	const wrong = Object.entries(errors).map(([field, message]) => {
@@ -113,6 +130,29 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 					<OrderLines lines={order.lines} isCancelled={order.state === "cancelled"} />
 				</div>
 			)}
+			{change?.open && (
+				<Proposal
+					title={`Waits for ${order.storeName} to accept`}
+					reason={change.open.reason}
+					asked={change.open.asked}
+					lines={change.open.lines}
+				>
+					<Form method="post" preventScrollReset>
+						<input type="hidden" name="proposal" value={change.open.id} />
+						<Button name="intent" value="take-back">
+							Take it back
+						</Button>
+					</Form>
+				</Proposal>
+			)}
+			{change && !change.open && !(order.canUndo && order.lettersTo.length > 0) && (
+				<LateChangeForm
+					lines={change.lines}
+					storeName={order.storeName}
+					values={actionData?.values ?? {}}
+					errors={errors}
+				/>
+			)}
 			<div className="order-foot">
 				<div>
 					<PackedLots
@@ -120,8 +160,14 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 						lotsHref={`${base}/lots`}
 						historyHref={`${base}/orders/${order.number}/lots`}
 					/>
-					<Timeline events={timeline} />
+					<OrderTimeline {...timeline} />
 					{order.note && <p className="mt-3">Their note: {order.note}</p>}
+					<MessageForm
+						to={order.storeName}
+						messageKey={messageKey}
+						value={actionData?.values.body}
+						error={errors.body}
+					/>
 				</div>
 				<div>
 					<OrderSums lines={order.lines} deliveryCents={order.deliveryCents} />

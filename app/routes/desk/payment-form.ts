@@ -4,7 +4,7 @@ import { z } from "zod"
 const MOST_CENTS = 1_000_000_000
 
 /** Reads money as typed, "929.90", "$1,118" or "42"; null when it is none. Nothing is rounded. */
-function centsOf(text: string): number | null {
+export function centsOf(text: string): number | null {
 	const [, whole, part = ""] = /^\$?\s*(\d{1,3}(?:,\d{3})+|\d{1,12})(?:\.(\d{1,2}))?$/.exec(text.trim()) ?? []
 	if (whole === undefined) return null
 	return Number(whole.replaceAll(",", "")) * 100 + Number(part.padEnd(2, "0"))

@@ -112,7 +112,11 @@ async function mailInvoice(
 	const invoice = await readInvoice(tx, { producerId: producer.id, storeId: store.id, number })
 	if (!invoice) throw new Error("the invoice has just been written")
 	const page = `${env.BASE_URL}/buy/${producer.slug}/${store.slug}/invoices/${number}`
-	for (const person of await findStorePeople(tx, { producerId: producer.id, storeId: store.id })) {
+	for (const person of await findStorePeople(tx, {
+		producerId: producer.id,
+		storeId: store.id,
+		kind: "invoices",
+	})) {
 		await queueMail(tx, {
 			producerId: producer.id,
 			to: person.email,

@@ -148,7 +148,11 @@ async function tellStore(
 	const { producer, order, lines } = query
 	const yard = letterHead(await findYard(tx, producer.id))
 	const goodsCents = lines.reduce((sum, line) => sum + line.amountCents, 0)
-	for (const person of await findStorePeople(tx, { producerId: producer.id, storeId: order.storeId })) {
+	for (const person of await findStorePeople(tx, {
+		producerId: producer.id,
+		storeId: order.storeId,
+		kind: "confirmations",
+	})) {
 		await queueMail(tx, {
 			producerId: producer.id,
 			to: person.email,

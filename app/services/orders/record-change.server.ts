@@ -1,7 +1,7 @@
 import { auditEntries, orderEvents } from "~/db/schema"
 import type { Tx } from "~/db/transaction.server"
 
-/** Notes a step of an order on its timeline and in the audit trail, in the transaction that takes it. */
+/** Notes a step of an order on its timeline and in the audit trail, in the transaction that takes it; answers the id of the event. */
 export async function recordChange(
 	tx: Tx,
 	change: {
@@ -11,10 +11,15 @@ export async function recordChange(
 		userId: string | null
 		detail?: Record<string, unknown>
 	},
-): Promise<void> {
+): Promise<string> {
 	const { producerId, orderId, kind, userId, detail = {} } = change
-	await tx.insert(orderEvents).values({ producerId, orderId, kind, userId, detail })
+	const [event] = await tx
+		.insert(orderEvents)
+		.values({ producerId, orderId, kind, userId, detail })
+		.returning({ id: orderEvents.id })
 	await tx
 		.insert(auditEntries)
 		.values({ producerId, userId, action: `order ${kind}`, subjectType: "order", subjectId: orderId, detail })
+	if (!event) throw new Error("an event that was written has an id")
+	return event.id
 }

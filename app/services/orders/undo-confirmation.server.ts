@@ -8,6 +8,7 @@ import { confirmationKey } from "./confirm-order.server"
 import { findMostCases } from "./find-most-cases.server"
 import { type LockedOrder, lockOrder } from "./lock-order.server"
 import { lockProducts } from "./lock-products.server"
+import { findOpenProposal } from "./propose-change.server"
 import { recordChange } from "./record-change.server"
 
 export type Undoing = { ok: true } | { ok: false; reason: "no-such-order" | "not-confirmed" | "already-told" }
@@ -33,6 +34,8 @@ export async function undoConfirmation(query: {
 		const letters = await tx.select({ sentAt: outboxMails.sentAt }).from(outboxMails).where(isLetter).for("update")
 		if (letters.some(({ sentAt }) => sentAt !== null)) return { ok: false, reason: "already-told" }
 		await tx.delete(outboxMails).where(and(isLetter, isNull(outboxMails.sentAt)))
+		const proposal = await findOpenProposal(tx, { producerId, orderId: order.id })
+		if (proposal) return { ok: false, reason: "already-told" }
 		await takeBackGiven(tx, { producer, order })
 		await tx
 			.update(orders)

@@ -2,6 +2,7 @@ import { sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
 import { env } from "~/platform/env.server"
 import { queueMails } from "~/services/mail/queue-mails.server"
+import { findPeopleOfStores } from "~/services/orders/order-people.server"
 import { findYard, letterHead } from "~/services/producers/find-yard.server"
 import type { AddedLine } from "./add-instead.server"
 import type { PlannedLine } from "./plan-given"
@@ -26,13 +27,18 @@ export async function tellStores(
 	const { producer, facts, runId, lines, added } = query
 	const yard = letterHead(await findYard(tx, producer.id))
 	const prices = await findLineFacts(tx, { producerId: producer.id, lineIds: lines.map(({ lineId }) => lineId) })
-	const people = await findPeople(tx, { producerId: producer.id, storeIds: lines.map(({ storeId }) => storeId) })
-	const letters = people.flatMap(({ email, storeId }) => {
+	const people = await findPeopleOfStores(tx, {
+		producerId: producer.id,
+		storeIds: lines.map(({ storeId }) => storeId),
+		kind: "confirmations",
+	})
+	const told = [...people].flatMap(([storeId, those]) => those.map(({ email }) => ({ storeId, email })))
+	const letters = told.flatMap(({ email, storeId }) => {
 		const own = lines.filter((line) => line.storeId === storeId)
 		const [first] = own
 		const slug = prices.get(first?.lineId ?? "")?.storeSlug
 		if (!first || !slug) return []
-		const told = own.flatMap((line) =>
+		const given = own.flatMap((line) =>
 			linesOf(facts, line, { price: prices.get(line.lineId), added: added.get(line.lineId) }),
 		)
 		return {
@@ -48,9 +54,9 @@ export async function tellStores(
 				orderUrl: `${env.BASE_URL}/buy/${producer.slug}/${slug}/orders/${first.orderNumber}`,
 				productName: facts.product.name,
 				sentences: own.map(({ sentence }) => sentence),
-				lines: told,
+				lines: given,
 				charges: [],
-				totalCents: told.reduce((sum, line) => sum + line.amountCents, 0),
+				totalCents: given.reduce((sum, line) => sum + line.amountCents, 0),
 			},
 		}
 	})
@@ -100,18 +106,4 @@ async function findLineFacts(
 		join stores s on s.producer_id = o.producer_id and s.id = o.store_id
 		where l.producer_id = ${query.producerId} and l.id = any(${sql.param([...query.lineIds])}::uuid[])`)
 	return new Map(rows.map((row) => [row.lineId, row]))
-}
-
-/** Who is told at these stores, each once for each store. */
-async function findPeople(
-	tx: Tx,
-	query: { producerId: string; storeIds: readonly string[] },
-): Promise<{ storeId: string; email: string }[]> {
-	const { rows } = await tx.execute<{ storeId: string; email: string }>(sql`
-		select distinct m.store_id as "storeId", u.email
-		from memberships m join users u on u.id = m.user_id
-		where m.producer_id = ${query.producerId} and m.ended_at is null
-			and m.store_id = any(${sql.param([...query.storeIds])}::uuid[])
-		order by 1, 2`)
-	return rows
 }
