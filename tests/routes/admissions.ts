@@ -95,7 +95,7 @@ export const admissions: Record<string, Admission> = {
 	// Whoever works in the cold room brings in, grades and regroups; an empty form is refused.
 	"routes/desk/harvest": { loader: COLD_ROOM, action: COLD_ROOM },
 	"routes/desk/grade": { loader: COLD_ROOM, action: COLD_ROOM },
-	"routes/desk/grade-sheet": { loader: COLD_ROOM, get: { admitted: [404] } },
+	"routes/desk/grade-sheet": { loader: COLD_ROOM },
 	"routes/desk/regroup": { loader: COLD_ROOM, action: COLD_ROOM },
 	// What grades ask and how lots are named is the owner's.
 	"routes/desk/grades": { loader: "desk: owner", action: "desk: owner" },
@@ -115,14 +115,14 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/trace": { loader: COLD_ROOM },
 	"routes/desk/withdrawals": { loader: OFFICE },
 	// Without the lot in question there is nothing to withdraw.
-	"routes/desk/withdrawal-new": { loader: OFFICE, get: { admitted: [404] }, action: OFFICE },
+	"routes/desk/withdrawal-new": { loader: OFFICE, action: OFFICE },
 	"routes/desk/withdrawal": { loader: OFFICE },
 	"routes/desk/withdrawal-poster": { loader: OFFICE },
 	"routes/desk/records": { loader: OFFICE },
 	"routes/desk/records-csv": { loader: OFFICE },
 	// What is posted here lacks its check's own id.
 	"routes/desk/scale": { loader: COLD_ROOM, action: COLD_ROOM, post: { admitted: [400] } },
-	"routes/desk/scale-check": { loader: COLD_ROOM, get: { admitted: [404] } },
+	"routes/desk/scale-check": { loader: COLD_ROOM },
 	"routes/desk/move-pieces": { loader: COLD_ROOM, action: COLD_ROOM },
 	"routes/desk/stock-takes": { loader: COLD_ROOM },
 	// Without a place in the address there is nothing to count.

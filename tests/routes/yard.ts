@@ -141,11 +141,20 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	})
 	const [openDay, lotCode, placed, otherMarketDay, productId] = await asProducer(owner, ourId, async () => [
 		await idOf("select max(delivery_on)::text as id from orders where state = 'placed'"),
-		await idOf("select code as id from lots order by code limit 1"),
+		await idOf(
+			`select l.code as id from lots l where exists (select from gradings g where g.lot_id = l.id)
+				and exists (select from net_checks n where n.lot_id = l.id) order by l.code limit 1`,
+		),
 		await idOf("select number::text as id from orders where state = 'placed' order by number limit 1"),
 		await idOf("select id from market_days where state = 'open' limit 1"),
 		await idOf("select id from products where code = '11'"),
 	])
+	const paperOf = (table: string) =>
+		asProducer(owner, ourId, () =>
+			idOf(`select p.id from ${table} p join lots l on l.id = p.lot_id where l.code = $1 order by p.id limit 1`, [
+				lotCode,
+			]),
+		)
 	return {
 		ours: { producerId: ourId, storeId, otherStoreId, marketDayId },
 		theirs: { producerId: theirId, storeId: theirStoreId },
@@ -167,10 +176,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			sale: saleId,
 			take: takeId,
 			product: "11",
-			// A check of a lot that was never made.
-			// No lot was graded under this id.
-			grading: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a31",
-			check: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a12",
+			grading: await paperOf("gradings"),
+			check: await paperOf("net_checks"),
 			// The token of no link that was ever sent.
 			token: "w".repeat(43),
 		},

@@ -16,9 +16,10 @@ import { withdrawalForm } from "./withdrawal-form"
 
 export const meta: Route.MetaFunction = () => [{ title: "Withdraw a lot · Waxbill" }]
 
-/** The plan for the lot that the address names; 404 where there is none. */
+/** The plan for the lot that the address names; 404 where there is none. Without a lot, one is chosen first. */
 async function planOf({ producer }: DeskScope, url: URL) {
-	const code = url.searchParams.get("lot") ?? ""
+	const code = url.searchParams.get("lot")
+	if (!code) throw redirect(`/desk/${producer.slug}/lots`)
 	const plan = await findWithdrawalPlan({ producerId: producer.id, code })
 	if (!plan) throw data(null, { status: 404 })
 	return { code, plan }
