@@ -85,6 +85,12 @@ function deliveryName(on: Day, today: Day): string {
 	return ahead > 0 && ahead < 7 ? name : `${name} ${Number(on.slice(8))}`
 }
 
+/** So many orders of a day stand below its row; the others are a link away. */
+const MOST_SHOWN = 25
+
+/** The dearest first; of two alike the one placed first. */
+const byMoney = (orders: WaitingDay["orders"]) => orders.toSorted((a, b) => sureCents(b.order) - sureCents(a.order))
+
 function confirmRow({ deliveryOn, cutoffAt, orders }: WaitingDay, moment: Moment): Placed {
 	const { today, base, now } = moment
 	const whole = orders.filter((one) => one.isWhole).length
@@ -121,14 +127,24 @@ function confirmRow({ deliveryOn, cutoffAt, orders }: WaitingDay, moment: Moment
 						},
 					}
 				: {}),
-			orders: orders.map(({ order, isWhole }) => ({
-				number: order.number,
-				storeName: order.storeName,
-				to: `${base}/orders/${order.number}`,
-				line: askedWords(order),
-				money: formatMoney(sureCents(order)),
-				isWhole,
-			})),
+			...(orders.length > MOST_SHOWN
+				? {
+						rest: {
+							to: `${base}/orders?day=${deliveryOn}&state=placed`,
+							label: `All ${orders.length.toLocaleString("en-US")} orders of ${deliveryName(deliveryOn, today)}`,
+						},
+					}
+				: {}),
+			orders: byMoney(orders)
+				.slice(0, MOST_SHOWN)
+				.map(({ order, isWhole }) => ({
+					number: order.number,
+					storeName: order.storeName,
+					to: `${base}/orders/${order.number}`,
+					line: askedWords(order),
+					money: formatMoney(sureCents(order)),
+					isWhole,
+				})),
 		},
 	}
 }

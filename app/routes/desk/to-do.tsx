@@ -1,14 +1,15 @@
-import { data, Form, redirect } from "react-router"
+import { data, Form, Link, redirect } from "react-router"
 import { z } from "zod"
 import { dayInZone, dayWords, instantAt, isDay, timeWords, weekday, weekdayName } from "~/domain/calendar"
 import { mayRunDesk } from "~/domain/people/roles"
 import { now as askClock } from "~/platform/clock.server"
-import { confirmWhole } from "~/services/desk/confirm-whole.server"
+import { confirmWhole, undoWhole } from "~/services/desk/confirm-whole.server"
 import { findPackingDays, findToDo } from "~/services/desk/find-to-do.server"
 import { confirmOrder } from "~/services/orders/confirm-order.server"
 import { undoConfirmation } from "~/services/orders/undo-confirmation.server"
 import { countHead } from "~/ui/desk/number-words"
 import { Owed, ToDoGroups } from "~/ui/desk/to-do-rows"
+import { useConfirmKey } from "~/ui/desk/use-confirm-key"
 import { Button } from "~/ui/forms/button"
 import { LedgerGroup, LedgerRow } from "~/ui/layout/ledger"
 import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
@@ -35,21 +36,33 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 	const owed = toDo ? owedRows(toDo.overdue, moment) : []
 	const toSettle = groups.reduce((sum, group) => sum + group.rows.length, owed.length)
 	const from = url.searchParams.get("from")
-	const doneMany = Number(url.searchParams.get("confirmed"))
+	const countOf = (name: string) => {
+		const count = Number(url.searchParams.get(name))
+		return Number.isSafeInteger(count) && count > 0 ? count : null
+	}
+	const base = moment.base
 	return {
 		frame: await findDeskFrame(scope, { part: "", now, toSettle, ...(from && isDay(from) ? { from } : {}) }),
 		title: `${weekdayName(weekday(moment.today))} ${partOfDay(now, zone)}`,
 		groups,
 		owed,
 		toSettle,
+		seasonHref: seesAll ? `${base}/season` : null,
 		settled: toDo && {
 			...toDo.settled,
-			undoable: toDo.settled.undoable.map(({ at, ...one }) => ({ ...one, at: timeWords(at, zone) })),
+			undoableInAll: toDo.settled.undoable.length,
+			undoable: toDo.settled.undoable
+				.slice(0, MOST_UNDOABLE)
+				.map(({ at, ...one }) => ({ ...one, at: timeWords(at, zone) })),
 		},
-		done: Number.isSafeInteger(doneMany) && doneMany > 0 ? doneMany : null,
+		done: countOf("confirmed"),
+		more: countOf("more"),
 		isUndone: url.searchParams.has("undone"),
 	}
 })
+
+/** So many confirmations stand on the page with an Undo of their own. */
+const MOST_UNDOABLE = 20
 
 const number = z.coerce.number().int().min(1).max(999_999_999)
 
@@ -60,12 +73,17 @@ export const action = guard(admits.desk("owner", "desk"), async ({ request, url 
 	if (intent === "confirm-whole") {
 		const day = String(form.get("day") ?? "")
 		if (!isDay(day)) throw data(null, { status: 400 })
-		const { confirmed, left } = await confirmWhole({ producer, personId: person.id, day })
+		const { confirmed, left, more } = await confirmWhole({ producer, personId: person.id, day })
 		if (left > 0 && confirmed === 0) {
 			const problem = `Nothing was confirmed: none of the orders for ${dayWords(day)} can be met in full any more.`
 			return data({ problem }, { status: 422 })
 		}
-		throw redirect(`${url.pathname}?confirmed=${confirmed}`)
+		throw redirect(`${url.pathname}?confirmed=${confirmed}${more > 0 ? `&more=${more}` : ""}`)
+	}
+	if (intent === "undo-whole") {
+		const undone = await undoWhole({ producer, personId: person.id })
+		if (undone > 0) throw redirect(`${url.pathname}?undone=${undone}`)
+		return data({ problem: "Every letter has gone. A change is a new decision now." }, { status: 422 })
 	}
 	const parsed = number.safeParse(form.get("number"))
 	if (!parsed.success) throw data(null, { status: 400 })
@@ -89,7 +107,8 @@ function partOfDay(now: Date, zone: string): string {
 }
 
 export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
-	const { groups, owed, toSettle, settled, title, done, isUndone } = loaderData
+	const { groups, owed, toSettle, settled, title, done, more, isUndone, seasonHref } = loaderData
+	useConfirmKey()
 	const things = `${countHead(toSettle)} ${toSettle === 1 ? "thing" : "things"} to settle.`
 	return (
 		<DeskBook frame={loaderData.frame} ruled>
@@ -104,14 +123,25 @@ export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
 					title={done === 1 ? "One order is confirmed." : `${countHead(done)} orders are confirmed.`}
 				>
 					The letters go in two minutes; until then you can take it back below.
+					{more !== null && ` ${more.toLocaleString("en-US")} more can be met: confirm again for the next.`}
 				</MessageLine>
 			)}
 			{!actionData && isUndone && (
-				<MessageLine tone="saved" title="The confirmation is taken back.">
-					No letter went out. The order waits again.
+				<MessageLine tone="saved" title="It is taken back.">
+					No letter went out. What was confirmed waits again.
 				</MessageLine>
 			)}
-			<SheetHead title={title} lead={toSettle === 0 ? "Nothing to settle." : things} />
+			<SheetHead
+				title={title}
+				lead={toSettle === 0 ? "Nothing to settle." : things}
+				note={
+					seasonHref && (
+						<>
+							Which weeks will be short? <Link to={seasonHref}>The season ahead</Link>
+						</>
+					)
+				}
+			/>
 			{toSettle === 0 ? (
 				<EmptyLine>Nothing to settle. New orders appear here as stores send them.</EmptyLine>
 			) : (
@@ -131,7 +161,7 @@ export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
 type SettledProps = NonNullable<Route.ComponentProps["loaderData"]["settled"]>
 
 function Settled({ settled }: { settled: SettledProps }) {
-	const { undoable, confirmed, packed, sent, paid } = settled
+	const { undoable, undoableInAll, confirmed, packed, sent, paid } = settled
 	const done = [
 		confirmed > 0 && `${countHead(confirmed)} ${confirmed === 1 ? "order" : "orders"} confirmed`,
 		packed > 0 && `${countHead(packed)} ${packed === 1 ? "order" : "orders"} packed`,
@@ -162,6 +192,13 @@ function Settled({ settled }: { settled: SettledProps }) {
 					}
 				/>
 			))}
+			{undoableInAll > 1 && (
+				<Form method="post" className="py-2" preventScrollReset>
+					<Button name="intent" value="undo-whole">
+						{undoableInAll > 100 ? "Take the latest 100 back" : `Take all ${undoableInAll} back`}
+					</Button>
+				</Form>
+			)}
 			{done.length > 0 && (
 				<p className="flex flex-wrap gap-x-6 py-3 text-ink-soft">
 					{done.map((words) => (

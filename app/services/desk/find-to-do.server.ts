@@ -73,7 +73,10 @@ function findWaiting(facts: {
 	today: Day
 }): WaitingOrder[] {
 	const { today } = facts
-	const outlooks = new Map([...facts.outlooks].map(([id, one]) => [id, { ...one, promises: [...one.promises] }]))
+	// One sum for each day keeps this quick with thousands of orders.
+	const outlooks = new Map(
+		[...facts.outlooks].map(([id, one]) => [id, { ...one, promises: one.promises.map((promise) => ({ ...promise })) }]),
+	)
 	return facts.orders
 		.filter((order) => order.state === "placed")
 		.map((order) => {
@@ -85,7 +88,11 @@ function findWaiting(facts: {
 				)
 			for (const line of isWhole ? lines : []) {
 				const quantity = (settledCases(line) - promisedCases(line)) * line.piecesPerCase
-				outlooks.get(line.productId)?.promises.push({ on: promiseDay(deliveryOn, today), quantity })
+				const promises = outlooks.get(line.productId)?.promises
+				const on = promiseDay(deliveryOn, today)
+				const ofDay = promises?.find((promise) => promise.on === on)
+				if (ofDay) ofDay.quantity += quantity
+				else promises?.push({ on, quantity })
 			}
 			return { order, isWhole }
 		})

@@ -26,6 +26,8 @@ export type ToDoRow = {
 	/** One button that confirms all orders of a day that can be met in full. */
 	confirmAll?: { day: string; label: string }
 	orders?: WaitingOrderRow[]
+	/** Where the orders are that are not shown. */
+	rest?: { to: string; label: string }
 }
 
 export type ToDoGroup = { when: string; note?: string; rows: ToDoRow[] }
@@ -47,7 +49,7 @@ function Row({ row, isFirst }: { row: ToDoRow; isFirst: boolean }) {
 	const action = row.confirmAll ? (
 		<Form method="post" preventScrollReset>
 			<input type="hidden" name="day" value={row.confirmAll.day} />
-			<Button variant={variant} name="intent" value="confirm-whole">
+			<Button variant={variant} name="intent" value="confirm-whole" aria-keyshortcuts="y">
 				{row.confirmAll.label}
 			</Button>
 		</Form>
@@ -71,6 +73,11 @@ function Row({ row, isFirst }: { row: ToDoRow; isFirst: boolean }) {
 						<WaitingOrder key={order.number} order={order} isFirst={isFirst && !row.confirmAll && index === 0} />
 					))}
 				</ul>
+			)}
+			{row.rest && (
+				<Link className="inline-block py-2" to={row.rest.to}>
+					{row.rest.label}
+				</Link>
 			)}
 		</LedgerRow>
 	)

@@ -2,7 +2,7 @@ import { eq } from "drizzle-orm"
 import { describe, expect, test } from "vitest"
 import { lots } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
-import { confirmWhole } from "~/services/desk/confirm-whole.server"
+import { confirmWhole, undoWhole } from "~/services/desk/confirm-whole.server"
 import { findDeskFortnight } from "~/services/desk/find-desk-fortnight.server"
 import { findToDo } from "~/services/desk/find-to-do.server"
 import { addProduct, openStore, openYard, THURSDAY, TUESDAY_18, type Yard, ZONE } from "../orders/place-yard"
@@ -52,11 +52,23 @@ describe("what is to do", () => {
 		const first = await place(await openStore(yard), [scarce, 3])
 		const second = await place(await openStore(yard), [scarce, 9])
 		const press = { producer: producerOf(yard), personId, day: TUESDAY_18 }
-		expect(await confirmWhole(press)).toEqual({ confirmed: 1, left: 1 })
-		expect(await confirmWhole(press)).toEqual({ confirmed: 0, left: 1 })
+		expect(await confirmWhole(press)).toEqual({ confirmed: 1, left: 1, more: 0 })
+		expect(await confirmWhole(press)).toEqual({ confirmed: 0, left: 1, more: 0 })
 		expect(await orderAt(yard, first)).toMatchObject({ state: "confirmed" })
 		expect(await orderAt(yard, second)).toMatchObject({ state: "placed" })
 		expect((await toDoOf(yard)).settled.undoable).toMatchObject([{ number: first, storeName: "Pantry & Plume" }])
+	})
+
+	test("all that was just confirmed is taken back by one press, while no letter has gone", async () => {
+		const yard = await openYard()
+		const personId = await addHand()
+		const round = await addProduct(yard, { code: "11", readyCases: 9 })
+		const numbers = [await place(await openStore(yard), [round, 3]), await place(await openStore(yard), [round, 2])]
+		const desk = { producer: producerOf(yard), personId }
+		expect(await confirmWhole({ ...desk, day: TUESDAY_18 })).toEqual({ confirmed: 2, left: 0, more: 0 })
+		expect(await undoWhole(desk)).toBe(2)
+		for (const number of numbers) expect(await orderAt(yard, number)).toMatchObject({ state: "placed" })
+		expect(await undoWhole(desk)).toBe(0)
 	})
 
 	test("packing, held lots and invoices past their day are there, each with its figures", async () => {
