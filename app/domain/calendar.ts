@@ -1,5 +1,3 @@
-import { Temporal } from "temporal-polyfill"
-
 /** A calendar day as ISO text, "2026-08-18". Days compare and sort as text. */
 export type Day = string
 
@@ -161,8 +159,20 @@ export function dayInZone(instant: Date, zone: string): Day {
  * day, time or zone does not exist. Source: RFC 5545, 3.3.5, as Temporal's "compatible" rule.
  */
 export function instantAt(day: Day, time: string, zone: string): Date {
-	const local = Temporal.PlainDate.from(day).toPlainDateTime(Temporal.PlainTime.from(time))
-	return new Date(local.toZonedDateTime(zone, { disambiguation: "compatible" }).epochMilliseconds)
+	if (!isDay(day)) throw new RangeError(`not a day: ${day}`)
+	if (!/^([01]\d|2[0-3]):[0-5]\d(:[0-5]\d)?$/.test(time)) throw new RangeError(`not a time: ${time}`)
+	const wanted = Date.parse(`${day}T${time}Z`)
+	// No zone changes its clocks twice within two days: what holds a day before and a day after is all that can hold.
+	const before = wanted - offsetAt(wanted - MS_PER_DAY, zone)
+	const after = wanted - offsetAt(wanted + MS_PER_DAY, zone)
+	const shown = [before, after].filter((at) => at + offsetAt(at, zone) === wanted)
+	return new Date(shown.length > 0 ? Math.min(...shown) : before)
+}
+
+/** How far the clocks of a zone are ahead of UTC at an instant, in milliseconds, whole minutes. */
+function offsetAt(at: number, zone: string): number {
+	const { day, hour, minute } = wallClock(new Date(at), zone)
+	return Date.parse(`${day}T00:00Z`) + (hour * 60 + minute) * 60_000 - Math.floor(at / 60_000) * 60_000
 }
 
 /** The wall-clock time at `instant` in `zone` as people say it: "2:15 pm", "10 am", "noon", "midnight". */

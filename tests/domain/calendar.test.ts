@@ -126,6 +126,31 @@ describe("time zones", () => {
 		expect(instantAt("2026-11-01", "01:30", ZONE).toISOString()).toBe("2026-11-01T05:30:00.000Z")
 	})
 
+	test("finds the same instant as Temporal does, in zones that change by an hour, by half of one and by a day", () => {
+		const zones = ["America/New_York", "Europe/Berlin", "Australia/Lord_Howe", "Pacific/Apia", "Asia/Kathmandu", "UTC"]
+		fc.assert(
+			fc.property(anyDay, fc.constantFrom(...zones), fc.integer({ min: 0, max: 1439 }), (day, zone, minutes) => {
+				const time = Temporal.PlainTime.from("00:00").add({ minutes }).toString().slice(0, 5)
+				const local = Temporal.PlainDateTime.from(`${day}T${time}`)
+				const expected = local.toZonedDateTime(zone, { disambiguation: "compatible" }).epochMilliseconds
+				expect(instantAt(day, time, zone).getTime()).toBe(expected)
+			}),
+			{ numRuns: 2000 },
+		)
+		for (const [day, zone] of [
+			["2011-12-30", "Pacific/Apia"],
+			["2026-10-04", "Australia/Lord_Howe"],
+			["2026-04-05", "Australia/Lord_Howe"],
+			["2026-03-29", "Europe/Berlin"],
+			["2026-10-25", "Europe/Berlin"],
+		] as const) {
+			for (const time of ["00:30", "01:45", "02:15", "02:30", "03:00", "12:00"]) {
+				const expected = Temporal.PlainDateTime.from(`${day}T${time}`).toZonedDateTime(zone).epochMilliseconds
+				expect(instantAt(day, time, zone).getTime(), `${day} ${time} ${zone}`).toBe(expected)
+			}
+		}
+	})
+
 	test("a time or a day that does not exist throws", () => {
 		expect(() => instantAt("2026-02-30", "12:00", ZONE)).toThrow(RangeError)
 		expect(() => instantAt("2026-02-20", "25:00", ZONE)).toThrow(RangeError)

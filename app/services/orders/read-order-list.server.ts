@@ -12,11 +12,19 @@ export async function readOrderList(
 ): Promise<{ ok: true; cells: string[][] } | { ok: false; reason: "empty" | "too-large" }> {
 	if (file.size > MOST_BYTES) return { ok: false, reason: "too-large" }
 	const bytes = await file.arrayBuffer()
-	const { data } = Papa.parse<string[]>(textOf(bytes).replaceAll("\u0000", ""), { skipEmptyLines: false })
+	const text = textOf(bytes).replaceAll("\u0000", "")
+	const { data } = Papa.parse<string[]>(text, { skipEmptyLines: false, delimiter: separatorOf(text) })
 	const cells = data.map((row) => row.slice(0, 50).map((cell) => cell.slice(0, 200)))
 	return cells.some((row) => row.some((cell) => cell.trim() !== ""))
 		? { ok: true, cells }
 		: { ok: false, reason: "empty" }
+}
+
+/** The separator that the first line with anything on it has most of; a comma where it has none. */
+function separatorOf(text: string): string {
+	const line = text.split(/\r?\n|\r/).find((one) => one.trim() !== "") ?? ""
+	const counts = [",", ";", "\t"].map((separator) => ({ separator, count: line.split(separator).length }))
+	return counts.toSorted((a, b) => b.count - a.count)[0]?.separator ?? ","
 }
 
 function textOf(bytes: ArrayBuffer): string {

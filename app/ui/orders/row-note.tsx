@@ -44,10 +44,16 @@ export function rowNote(facts: NoteFacts): RowNote {
 			),
 		}
 	}
-	if (cases === 0 && product.lastCases > 0 && product.mayAsk && sheet.price.cases > 0) {
-		return { key: `last ${product.lastCases}`, node: <>You had {product.lastCases} last time.</> }
-	}
+	const had = cases === 0 && product.mayAsk && sheet.price.cases > 0 ? hadWords(product) : ""
+	if (had) return { key: had, node: had }
 	return { key: "", node: null }
+}
+
+/** What the store had last time, and what is usual where that is something else. */
+function hadWords({ lastCases, usualCases }: SheetProduct): string {
+	if (lastCases === 0) return usualCases > 0 ? `${usualCases} is usual.` : ""
+	const usual = usualCases > 0 && usualCases !== lastCases ? `; ${usualCases} is usual` : ""
+	return `You had ${lastCases} last time${usual}.`
 }
 
 function shortNote({ row, keep, hasError, sheetPath, elsewhere }: NoteFacts): RowNote {

@@ -24,15 +24,6 @@ type SheetRowProps = {
 	leastError: string | undefined
 }
 
-function LastTime({ lastCases, usualCases }: { lastCases: number; usualCases: number }) {
-	return (
-		<>
-			{lastCases || null}
-			{usualCases > 0 && usualCases !== lastCases && <span className="least">usually {usualCases}</span>}
-		</>
-	)
-}
-
 /** One product of the sheet: its prices, what is free of it, the field, and what that comes to. */
 function Row({ row, columns, today, isClosed, value, error, note, ...least }: SheetRowProps) {
 	const { product, line } = row
@@ -66,7 +57,7 @@ function Row({ row, columns, today, isClosed, value, error, note, ...least }: Sh
 					/>
 				)
 			}
-			lastTime={<LastTime {...product} />}
+			lastTime={product.lastCases || null}
 			quantity={
 				hasField
 					? {
