@@ -66,6 +66,7 @@ export const admissions: Record<string, Admission> = {
 	"routes/buy/order": { loader: STORE, action: STORE, post: { fields: { intent: "cancel" } } },
 	"routes/buy/deliveries": storePage,
 	"routes/buy/standing": { loader: STORE, action: STORE },
+	"routes/buy/standing-year": storePage,
 	"routes/buy/invoices": storePage,
 	// A buyer reads what is to pay; paying is the payer's.
 	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
@@ -74,6 +75,8 @@ export const admissions: Record<string, Admission> = {
 
 	// The desk: no stall volunteer; the packer sees what is packed and from which lots, and no money
 	"routes/desk/to-do": { loader: COLD_ROOM, action: OFFICE, post: { fields: onOrder("confirm") } },
+	"routes/desk/season": { loader: OFFICE },
+	"routes/desk/season-csv": { loader: OFFICE },
 	"routes/desk/orders": { loader: OFFICE },
 	"routes/desk/order": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "confirm" } } },
 	"routes/desk/sharing": { loader: OFFICE },

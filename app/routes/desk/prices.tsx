@@ -1,9 +1,11 @@
+import { Link } from "react-router"
 import { dayInZone } from "~/domain/calendar"
 import { formatMoney, plainMoney } from "~/domain/money"
 import { weightWords } from "~/domain/weight"
 import { now } from "~/platform/clock.server"
 import { findPriceList } from "~/services/desk/find-price-list.server"
-import { EmptyLine, SheetHead } from "~/ui/layout/sheet"
+import { ButtonLink } from "~/ui/forms/button"
+import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/prices"
 import { DeskBook } from "./desk-book"
@@ -11,13 +13,14 @@ import { findDeskFrame } from "./frame.server"
 
 export const meta: Route.MetaFunction = () => [{ title: "Prices · Waxbill" }]
 
-export const loader = guard(admits.desk("owner", "desk"), async (_args: Route.LoaderArgs, scope) => {
+export const loader = guard(admits.desk("owner", "desk"), async ({ url }: Route.LoaderArgs, scope) => {
 	const { producer } = scope
 	const at = now()
 	const products = await findPriceList({ producerId: producer.id, today: dayInZone(at, producer.timeZone) })
 	return {
 		frame: await findDeskFrame(scope, { part: "prices", now: at }),
 		products,
+		wasSet: url.searchParams.has("set"),
 		tiers: [...new Set(products.flatMap((product) => product.tiers.map((tier) => tier.tierName)))].toSorted(),
 	}
 })
@@ -33,14 +36,24 @@ function Breaks({ breaks }: { breaks: readonly Break[] }) {
 	))
 }
 
-export default function Prices({ loaderData }: Route.ComponentProps) {
-	const { products, tiers } = loaderData
+export default function Prices({ loaderData, params }: Route.ComponentProps) {
+	const { products, tiers, wasSet } = loaderData
+	const page = `/desk/${params.producer}/prices`
 	return (
 		<DeskBook frame={loaderData.frame}>
 			<SheetHead
 				title="Prices"
 				lead="What a case costs in each price tier, and from how many cases of its family it costs less."
+				action={
+					<div className="flex flex-wrap items-center gap-3">
+						<Link to={`${page}/upload`}>Upload a list</Link>
+						<ButtonLink variant="primary" to={`${page}/new`}>
+							Set a price
+						</ButtonLink>
+					</div>
+				}
 			/>
+			{wasSet && <MessageLine tone="saved" title="Kept." />}
 			{products.length === 0 ? (
 				<EmptyLine>Nothing is for sale yet.</EmptyLine>
 			) : (

@@ -9,6 +9,8 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/sharing/:product/:day", "routes/desk/sharing-product.tsx"),
 	route("desk/:producer/packing", "routes/desk/packing.tsx"),
 	route("desk/:producer/crop", "routes/desk/crop.tsx"),
+	route("desk/:producer/season", "routes/desk/season.tsx"),
+	route("desk/:producer/season.csv", "routes/desk/season-csv.ts"),
 	route("desk/:producer/crop/mark", "routes/desk/crop-mark.tsx"),
 	route("desk/:producer/crop/set-up", "routes/desk/crop-set-up.tsx"),
 	route("desk/:producer/crop/set-up/:yard", "routes/desk/crop-set-up-yard.tsx"),
@@ -52,5 +54,7 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/invoices/:invoice.pdf", "routes/desk/invoice-pdf.tsx"),
 	route("desk/:producer/stores", "routes/desk/stores.tsx"),
 	route("desk/:producer/prices", "routes/desk/prices.tsx"),
+	route("desk/:producer/prices/new", "routes/desk/price-new.tsx"),
+	route("desk/:producer/prices/upload", "routes/desk/price-upload.tsx"),
 	route("desk/:producer/people", "routes/desk/people.tsx"),
 ]
