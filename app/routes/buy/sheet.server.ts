@@ -15,6 +15,8 @@ export type SheetStart = {
 	changes: number | null
 	/** The order that is asked for again. */
 	again: number | null
+	/** Lines of that order whose product is no longer sold to the store, and which are therefore not on the sheet. */
+	gone: number
 	/** The half-filled sheet it goes on with: when it was begun, and by whom where that was somebody else. */
 	draft: { when: string; by: string | null } | null
 }
@@ -71,8 +73,10 @@ type Beginning = {
 
 /** What was asked for in the address comes before what was begun; an order is changed without regard to that. */
 function startOf(sheet: OrderSheet, { day, changes, again, isLast, ...reader }: Beginning): SheetStart {
-	const blank = { values: {}, changes: null, again: null, draft: null }
 	const { named, draft } = sheet
+	const sold = new Set(sheet.rows.map((row) => row.productId))
+	const gone = named?.lines.filter((line) => !sold.has(line.productId)).length ?? 0
+	const blank = { values: {}, changes: null, again: null, gone, draft: null }
 	if (named && changes !== null) {
 		return { ...blank, key: `${day} order ${changes}`, values: orderValues(named, true), changes }
 	}

@@ -36,19 +36,27 @@ export function shouldRevalidate({ actionStatus, formData, defaultShouldRevalida
 	return actionStatus === 422 || defaultShouldRevalidate
 }
 
+/** Says that a product was taken off the price list since the order was placed, so that its line does not go unseen. */
+function goneWords(gone: number): string {
+	if (gone === 0) return ""
+	return gone === 1
+		? " One line is left out: its product is no longer sold to you."
+		: ` ${gone} lines are left out: their products are no longer sold to you.`
+}
+
 /** What the sheet was begun with, in a sentence; nothing for a blank one. */
 function StartLine({ start }: { start: SheetStart }) {
 	if (start.changes !== null) {
 		return (
 			<MessageLine tone="saved" title={`You are changing order ${start.changes}.`}>
-				It stays as it is until you save it.
+				It stays as it is until you save it.{goneWords(start.gone)}
 			</MessageLine>
 		)
 	}
 	if (start.again !== null) {
 		return (
 			<MessageLine tone="saved" title={`This is what you asked for in order ${start.again}.`}>
-				Nothing is ordered yet.
+				Nothing is ordered yet.{goneWords(start.gone)}
 			</MessageLine>
 		)
 	}

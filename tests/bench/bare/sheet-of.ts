@@ -64,7 +64,7 @@ export async function sheetOf(rows: SheetRows, { day, now, producerSlug, storeSl
 			}
 		}),
 		orders: ordersOf(ownLines.filter((line) => line.deliveryOn === day)),
-		start: { key: day, values: {}, changes: null, again: null, draft: null },
+		start: { key: day, values: {}, changes: null, again: null, gone: 0, draft: null },
 		idempotencyKey: randomUUID(),
 	}
 }
