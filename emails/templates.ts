@@ -12,6 +12,7 @@ import * as orderShared from "./order-shared"
 import * as paymentReceived from "./payment-received"
 import * as signInCode from "./sign-in-code"
 import * as signInUnknown from "./sign-in-unknown"
+import * as standingOrderReminder from "./standing-order-reminder"
 import * as standingOrderSet from "./standing-order-set"
 import * as withdrawal from "./withdrawal"
 
@@ -47,6 +48,7 @@ export const templates = {
 	"order-message": letter(orderMessage),
 	invoice: letter(invoice),
 	"payment-received": letter(paymentReceived),
+	"standing-order-reminder": letter(standingOrderReminder),
 	"standing-order-set": letter(standingOrderSet),
 	withdrawal: letter(withdrawal),
 }

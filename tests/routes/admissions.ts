@@ -140,6 +140,7 @@ export const admissions: Record<string, Admission> = {
 	},
 	"routes/desk/invoice-pdf": { loader: OFFICE },
 	"routes/desk/stores": { loader: OFFICE },
+	"routes/desk/commitments": { loader: OFFICE, action: "desk: owner" },
 	"routes/desk/prices": { loader: OFFICE },
 	"routes/desk/price-new": { loader: OFFICE, action: OFFICE },
 	"routes/desk/price-upload": { loader: OFFICE, action: OFFICE },

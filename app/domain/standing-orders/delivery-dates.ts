@@ -21,6 +21,8 @@ export type StandingRule = {
 	endsOn: Day | null
 	/** From this day on every date is skipped; null while it runs. */
 	pausedFrom: Day | null
+	/** The last day of the pause; null or left out, until it is resumed. */
+	pausedUntil?: Day | null
 	/** ISO weekdays on which the van comes to the store, 1 Monday to 7 Sunday. */
 	deliveryWeekdays: readonly number[]
 	shutDays: readonly Day[]
@@ -69,13 +71,18 @@ export function nextDeliveryDates(standing: StandingRule, from: Day, count: numb
 		const next = ruleDays[index + 1]
 		if (deliveryOn === null || deliveryOn < from || (endsOn !== null && deliveryOn > endsOn)) continue
 		if (deliveryOn !== ruleOn && next !== undefined && next <= deliveryOn) continue
-		const isPaused = standing.pausedFrom !== null && ruleOn >= standing.pausedFrom
 		dates.push({
 			ruleOn,
 			deliveryOn,
 			isMoved: deliveryOn !== ruleOn,
-			isSkipped: isPaused || standing.skips.includes(ruleOn),
+			isSkipped: isWithinPause(standing, ruleOn) || standing.skips.includes(ruleOn),
 		})
 	}
 	return dates
+}
+
+/** Whether a date by the rule lies within the pause, whose first and last day belong to it. */
+export function isWithinPause(pause: Pick<StandingRule, "pausedFrom" | "pausedUntil">, ruleOn: Day): boolean {
+	const { pausedFrom, pausedUntil = null } = pause
+	return pausedFrom !== null && ruleOn >= pausedFrom && (pausedUntil === null || ruleOn <= pausedUntil)
 }

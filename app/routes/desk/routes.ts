@@ -53,6 +53,7 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/invoices/:invoice", "routes/desk/invoice.tsx"),
 	route("desk/:producer/invoices/:invoice.pdf", "routes/desk/invoice-pdf.tsx"),
 	route("desk/:producer/stores", "routes/desk/stores.tsx"),
+	route("desk/:producer/stores/:store/standing", "routes/desk/commitments.tsx"),
 	route("desk/:producer/prices", "routes/desk/prices.tsx"),
 	route("desk/:producer/prices/new", "routes/desk/price-new.tsx"),
 	route("desk/:producer/prices/upload", "routes/desk/price-upload.tsx"),

@@ -1,3 +1,4 @@
+import { Link } from "react-router"
 import { type Weekday, weekdayName } from "~/domain/calendar"
 import { termsWords } from "~/domain/invoicing/terms"
 import { formatMoney } from "~/domain/money"
@@ -51,7 +52,9 @@ export default function Stores({ loaderData }: Route.ComponentProps) {
 						{stores.map((store) => (
 							<tr key={store.name} className={store.isActive ? undefined : "text-ink-faint"}>
 								<td className="py-2!">
-									<span className="name block text-body!">{store.name}</span>
+									<Link className="name block text-body!" to={`${store.slug}/standing`}>
+										{store.name}
+									</Link>
 									<span className="note block">{store.address}</span>
 									<span className="note block desk:hidden">
 										{store.tierName}, {termsWords(store.terms)}

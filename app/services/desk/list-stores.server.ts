@@ -4,6 +4,7 @@ import type { Terms } from "~/domain/invoicing/terms"
 
 /** A store as the desk lists it. */
 export type ListedStore = {
+	slug: string
 	name: string
 	address: string
 	tierName: string
@@ -31,7 +32,7 @@ export function listStores(query: { producerId: string }): Promise<ListedStore[]
 	const { producerId } = query
 	return readProducer(producerId, async (tx) => {
 		const { rows } = await tx.execute<Row>(sql`
-			select s.name, s.address, t.name as "tierName", s.minimum_cents as "minimumCents", s.is_active as "isActive",
+			select s.slug, s.name, s.address, t.name as "tierName", s.minimum_cents as "minimumCents", s.is_active as "isActive",
 				s.delivery_charge_cents as "deliveryChargeCents", s.free_above_cents as "freeAboveCents",
 				s.terms_kind as "termsKind", s.terms_days as "termsDays",
 				s.terms_discount_basis_points as "discountBasisPoints", s.terms_discount_days as "discountDays",

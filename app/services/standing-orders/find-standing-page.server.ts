@@ -2,6 +2,7 @@ import { and, eq, inArray } from "drizzle-orm"
 import { orders } from "~/db/schema"
 import { readProducer, type Tx } from "~/db/transaction.server"
 import { addDays, type Day } from "~/domain/calendar"
+import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
 import { type DeliverySchedule, findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { findOwnLines } from "~/services/orders/find-asked-days.server"
 import { type FortnightDay, fortnightOf } from "~/services/orders/find-fortnight.server"
@@ -14,8 +15,8 @@ import { type DatedRule, type DueDate, standingDates } from "./standing-dates.se
 /** How many dates ahead the page shows. */
 const SHOWN_DATES = 6
 
-/** A date as the page shows it; `orderNumber` once it has become an order. */
-export type ShownDate = DueDate & { orderNumber: number | null; forecast: LineForecast[] }
+/** A date as the page shows it: what it asks, how that can be met, and `orderNumber` once it has become an order. */
+export type ShownDate = DueDate & { orderNumber: number | null; lines: StandingLine[]; forecast: LineForecast[] }
 
 export type StandingPage = {
 	standing: StandingOrder | null
@@ -34,7 +35,7 @@ export function findStandingPage(query: {
 	storeId: string
 	now: Date
 	zone: string
-	draft?: { rule: Omit<DatedRule, "skips">; lines: readonly StandingLine[] }
+	draft?: { rule: Pick<DatedRule, "rule" | "startsOn" | "endsOn">; lines: readonly StandingLine[] }
 }): Promise<StandingPage> {
 	const { producerId, storeId, draft } = query
 	return readProducer(producerId, async (tx) => {
@@ -51,13 +52,18 @@ export function findStandingPage(query: {
 			to: addDays(today, 13),
 			lastBefore: today,
 		})
-		// Saving takes over the dates skipped, so a draft shows them skipped too.
-		const rule = draft ? { ...draft.rule, skips: standing?.skips ?? [] } : standing
-		const lines = draft?.lines ?? standing?.lines ?? []
+		// Saving takes over skips, pause and changes, so a draft shows them too.
+		const bends = { skips: [], pausedFrom: null, pausedUntil: null, ...standing, createdAt: null, endedAt: null }
+		const rule = draft ? { ...bends, ...draft.rule } : standing
+		const usual = draft?.lines ?? standing?.lines ?? []
+		const linesOn = (ruleOn: Day) => linesOnDate(usual, standing?.changes ?? [], ruleOn)
 		const dates = rule ? standingDates(rule, schedule, SHOWN_DATES) : []
 		const made = standing ? await findMadeOrders(tx, { producerId, standingOrderId: standing.id, dates }) : new Map()
-		const ahead = dates.filter((date) => date.isOpen && !date.isSkipped).map((date) => date.deliveryOn)
-		const forecasts = forecastDates(lines, ahead, outlooks)
+		const ahead = dates.filter((date) => date.isOpen && !date.isSkipped)
+		const forecasts = forecastDates(
+			ahead.map((date) => ({ on: date.deliveryOn, lines: linesOn(date.ruleOn) })),
+			outlooks,
+		)
 		return {
 			standing,
 			schedule,
@@ -66,7 +72,8 @@ export function findStandingPage(query: {
 			dates: dates.map((date) => ({
 				...date,
 				orderNumber: made.get(date.ruleOn) ?? null,
-				forecast: forecasts[ahead.indexOf(date.deliveryOn)] ?? [],
+				forecast: forecasts[ahead.indexOf(date)] ?? [],
+				lines: linesOn(date.ruleOn),
 			})),
 		}
 	})

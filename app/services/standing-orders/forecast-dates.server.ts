@@ -7,16 +7,15 @@ import type { StandingLine } from "./read-standing-orders.server"
 export type LineForecast = { productId: string; free: number; held: number; expected: number; short: number }
 
 /**
- * Says for each of `days`, the earliest first, how the lines can likely be met as things stand: from what is free, held
+ * Says for each date, the earliest first, how its lines can likely be met as things stand: from what is free, held
  * or expected, less what the earlier of these dates have taken. Changes nothing in `outlooks`.
  */
 export function forecastDates(
-	lines: readonly StandingLine[],
-	days: readonly Day[],
+	dates: readonly { on: Day; lines: readonly Pick<StandingLine, "productId" | "cases">[] }[],
 	outlooks: ReadonlyMap<string, ProductOutlook>,
 ): LineForecast[][] {
 	const taken = new Map<string, { on: Day; quantity: number }[]>()
-	return days.map((on) =>
+	return dates.map(({ on, lines }) =>
 		lines.map(({ productId, cases }) => {
 			const outlook = outlooks.get(productId)
 			const earlier = taken.get(productId) ?? []

@@ -3,16 +3,15 @@ import { sql } from "drizzle-orm"
 import { breaksConstraint } from "~/db/errors.server"
 import { readProducer, type Tx, withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
-import { type DeliverySchedule, findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
+import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
+import type { DeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { checkAsked } from "~/services/orders/check-asked.server"
 import { findPlacingFacts } from "~/services/orders/find-placing-facts.server"
 import { writeOrder } from "~/services/orders/write-order.server"
 import { findStorePrices } from "~/services/pricing/find-store-prices.server"
-import { readStandingOrders, type StandingOrder } from "./read-standing-orders.server"
-import { type DueDate, standingDates } from "./standing-dates.server"
-
-/** Dates of one standing order whose cut-off can have passed while the delivery is still to come. */
-const DATES_WITHIN_A_FORTNIGHT = 15
+import { findAllDates } from "./find-all-dates.server"
+import type { StandingOrder } from "./read-standing-orders.server"
+import type { DueDate } from "./standing-dates.server"
 
 /**
  * Makes the orders of all standing orders of a producer whose last orders have passed and whose delivery is not past: each
@@ -38,39 +37,20 @@ export async function makeDueOrders(query: { producerId: string; now: Date }): P
 type Due = { standing: StandingOrder; date: DueDate; schedule: DeliverySchedule }
 
 async function findDue(tx: Tx, query: { producerId: string; now: Date }): Promise<Due[]> {
-	const { producerId, now } = query
-	const { rows } = await tx.execute<{ time_zone: string }>(
-		sql`select time_zone from producers where id = ${producerId}`,
-	)
-	const zone = rows[0]?.time_zone
-	if (zone === undefined) return []
 	// One that ended lately may have a date that closed before its end and is not made yet.
-	const standingOrders = await readStandingOrders(
-		tx,
-		producerId,
-		sql`(so.ended_at is null or so.ended_at > ${now.toISOString()}::timestamptz - interval '15 days')`,
-	)
-	if (standingOrders.length === 0) return []
-	const all = await findDeliverySchedule(tx, { producerId, storeId: null, now, zone })
-	const weekdays = await findStoreWeekdays(tx, producerId)
-	const made = await findMade(tx, { producerId, from: all.today })
-	return standingOrders.flatMap((standing) => {
-		const stops = weekdays.get(standing.storeId) ?? []
-		const schedule = { ...all, rounds: all.rounds.filter((round) => stops.includes(round.weekday)) }
-		return standingDates(standing, schedule, DATES_WITHIN_A_FORTNIGHT)
-			.filter((date) => !date.isOpen && !date.isSkipped && !made.has(`${standing.id} ${date.ruleOn}`))
-			.map((date) => ({ standing, date, schedule }))
+	const since = query.now.toISOString()
+	const all = await findAllDates(tx, {
+		...query,
+		condition: sql`(so.ended_at is null or so.ended_at > ${since}::timestamptz - interval '15 days')`,
 	})
-}
-
-async function findStoreWeekdays(tx: Tx, producerId: string): Promise<Map<string, number[]>> {
-	const { rows } = await tx.execute<{ store_id: string; weekdays: number[] }>(sql`
-		select s.store_id, array_agg(r.weekday::int) as weekdays
-		from store_rounds s
-		join delivery_rounds r on r.producer_id = s.producer_id and r.id = s.round_id
-		where s.producer_id = ${producerId}
-		group by s.store_id`)
-	return new Map(rows.map((row) => [row.store_id, row.weekdays]))
+	const [first] = all
+	if (!first) return []
+	const made = await findMade(tx, { producerId: query.producerId, from: first.schedule.today })
+	return all.flatMap(({ standing, dates, schedule }) =>
+		dates
+			.filter((date) => !date.isOpen && !date.isSkipped && !made.has(`${standing.id} ${date.ruleOn}`))
+			.map((date) => ({ standing, date, schedule })),
+	)
 }
 
 async function findMade(tx: Tx, query: { producerId: string; from: Day }): Promise<Set<string>> {
@@ -84,10 +64,12 @@ async function findMade(tx: Tx, query: { producerId: string; from: Day }): Promi
 async function makeOrder(producerId: string, { standing, date, schedule }: Due): Promise<boolean> {
 	const { storeId } = standing
 	const idempotencyKey = keyOf(standing.id, date.ruleOn)
+	const asked = linesOnDate(standing.lines, standing.changes, date.ruleOn)
+	if (asked.length === 0) return false
 	try {
 		return await withProducer(producerId, async (tx) => {
 			const { today, now } = schedule
-			const productIds = standing.lines.map((line) => line.productId)
+			const productIds = asked.map((line) => line.productId)
 			const products = await findStorePrices(tx, { producerId, storeId, today, productIds, lock: true })
 			const facts = await findPlacingFacts(tx, { producerId, storeId, idempotencyKey })
 			if (facts.earlier) return false
@@ -95,11 +77,11 @@ async function makeOrder(producerId: string, { standing, date, schedule }: Due):
 				producerId,
 				today,
 				deliveryOn: date.deliveryOn,
-				asked: standing.lines.map(({ productId, cases }) => ({ productId, cases, keep: true })),
+				asked: asked.map(({ productId, cases, leastCases }) => ({ productId, cases, leastCases, keep: true })),
 				products,
 			})
 			if (lines.length === 0) return false
-			await writeOrder(tx, {
+			const { id } = await writeOrder(tx, {
 				producerId,
 				storeId,
 				facts,
@@ -114,6 +96,7 @@ async function makeOrder(producerId: string, { standing, date, schedule }: Due):
 				acknowledgeTo: standing.createdBy.email,
 				openUntil: null,
 			})
+			await copySubstitutes(tx, { producerId, orderId: id, standingOrderId: standing.id })
 			return true
 		})
 	} catch (error) {
@@ -122,6 +105,19 @@ async function makeOrder(producerId: string, { standing, date, schedule }: Due):
 		}
 		throw error
 	}
+}
+
+/** The order's lines take over what may stand in for them, for the sharing out that may follow. */
+async function copySubstitutes(
+	tx: Tx,
+	query: { producerId: string; orderId: string; standingOrderId: string },
+): Promise<void> {
+	await tx.execute(sql`
+		update order_lines set substitute_ids = usual.substitute_ids
+		from standing_order_lines usual
+		where order_lines.producer_id = ${query.producerId} and order_lines.order_id = ${query.orderId}
+			and usual.producer_id = order_lines.producer_id and usual.standing_order_id = ${query.standingOrderId}
+			and usual.product_id = order_lines.product_id and usual.substitute_ids <> '{}'`)
 }
 
 /** A key that is the same for the same date of the same standing order, in the form of a UUID (RFC 9562, version 8). */

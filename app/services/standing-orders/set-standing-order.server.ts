@@ -1,5 +1,5 @@
 import { and, eq, isNull, sql } from "drizzle-orm"
-import { auditEntries, standingOrderLines, standingOrderSkips, standingOrders } from "~/db/schema"
+import { auditEntries, standingOrderChanges, standingOrderLines, standingOrderSkips, standingOrders } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import { cutoffWords } from "~/domain/delivery/last-orders"
@@ -10,7 +10,7 @@ import { type DeliverySchedule, findDeliverySchedule } from "~/services/delivery
 import { queueMail } from "~/services/mail/queue-mail.server"
 import { findPlacingFacts, type PlacingFacts } from "~/services/orders/find-placing-facts.server"
 import { findStorePrices, type StoreProduct } from "~/services/pricing/find-store-prices.server"
-import { readStoreStandingOrder, type StandingLine } from "./read-standing-orders.server"
+import { readStoreStandingOrder, type StandingLine, type StandingOrder } from "./read-standing-orders.server"
 import { standingDates } from "./standing-dates.server"
 
 export type SetStandingOrder = {
@@ -26,6 +26,10 @@ export type SetStandingOrder = {
 	endsOn: Day | null
 	/** Cases above zero, each product once. */
 	lines: readonly StandingLine[]
+	/** Whether the store commits to it for the season: served first when short. */
+	isCommitment: boolean
+	/** The id of the standing order that the form was drawn from, null where there was none; left out, none is asked about. */
+	drawnFrom?: string | null
 	/** Made with the form: a second send changes nothing. */
 	idempotencyKey: string
 }
@@ -33,7 +37,8 @@ export type SetStandingOrder = {
 export type SetStandingOrderAnswer = Result<
 	object,
 	| { ok: false; reason: "nothing-asked" | "no-delivery-that-weekday" | "no-dates" }
-	| { ok: false; reason: "not-sold" | "least-above-asked"; productIds: string[] }
+	| { ok: false; reason: "not-sold" | "least-above-asked" | "stands-in-for-itself"; productIds: string[] }
+	| { ok: false; reason: "changed-meanwhile"; theirs: StandingOrder | null }
 >
 
 /** How many of the next dates the acknowledgement names. */
@@ -41,7 +46,8 @@ const DATES_IN_LETTER = 6
 
 /**
  * Sets the standing order of a store, in place of the one before, whose dates from here on it takes over (dates skipped
- * stay skipped). What has closed already stays with the one before. Refuses lines and rules that cannot be met, writing
+ * stay skipped, a pause and changes of one date stay). Refused where another person of the store has
+ * changed it since the form was drawn. What has closed already stays with the one before. Refuses lines and rules that cannot be met, writing
  * nothing. Recorded, and acknowledged by mail with the next dates; a second send of the same form changes nothing.
  */
 export function setStandingOrder(order: SetStandingOrder): Promise<SetStandingOrderAnswer> {
@@ -58,11 +64,15 @@ export function setStandingOrder(order: SetStandingOrder): Promise<SetStandingOr
 		if (sent) return { ok: true }
 
 		const schedule = await findDeliverySchedule(tx, order)
-		const productIds = order.lines.map((line) => line.productId)
+		const productIds = [...new Set(order.lines.flatMap((line) => [line.productId, ...line.substituteIds]))]
 		const products = await findStorePrices(tx, { producerId, storeId, today: schedule.today, productIds })
 		const refusal = refuse(order, schedule, products)
 		if (refusal) return refusal
-		const id = await replace(tx, order)
+		const before = await readStoreStandingOrder(tx, order)
+		if (order.drawnFrom !== undefined && order.drawnFrom !== (before?.id ?? null)) {
+			return { ok: false, reason: "changed-meanwhile", theirs: before }
+		}
+		const id = await replace(tx, order, before)
 		const facts = await findPlacingFacts(tx, { producerId, storeId, idempotencyKey: order.idempotencyKey })
 		await acknowledge(tx, { id, order, schedule, products, facts })
 		return { ok: true }
@@ -77,10 +87,13 @@ function refuse(
 	const { lines, cadence } = order
 	if (lines.length === 0) return { ok: false, reason: "nothing-asked" }
 	const sold = new Set(products.map((product) => product.productId))
-	const notSold = lines.filter((line) => !sold.has(line.productId)).map((line) => line.productId)
+	const refused = (isWrong: (line: StandingLine) => boolean) => lines.filter(isWrong).map((line) => line.productId)
+	const notSold = refused((line) => ![line.productId, ...line.substituteIds].every((id) => sold.has(id)))
 	if (notSold.length > 0) return { ok: false, reason: "not-sold", productIds: notSold }
-	const above = lines.filter((line) => line.leastCases > line.cases).map((line) => line.productId)
+	const above = refused((line) => line.leastCases > line.cases)
 	if (above.length > 0) return { ok: false, reason: "least-above-asked", productIds: above }
+	const itself = refused((line) => line.substituteIds.includes(line.productId))
+	if (itself.length > 0) return { ok: false, reason: "stands-in-for-itself", productIds: itself }
 	if (!schedule.rounds.some((round) => round.weekday === cadence.weekday)) {
 		return { ok: false, reason: "no-delivery-that-weekday" }
 	}
@@ -89,12 +102,11 @@ function refuse(
 }
 
 function ruleFacts({ cadence, startsOn, endsOn }: SetStandingOrder) {
-	return { rule: ruleOf(cadence), startsOn, endsOn, pausedFrom: null, endedAt: null }
+	return { rule: ruleOf(cadence), startsOn, endsOn, pausedFrom: null, pausedUntil: null, endedAt: null }
 }
 
-async function replace(tx: Tx, order: SetStandingOrder): Promise<string> {
+async function replace(tx: Tx, order: SetStandingOrder, before: StandingOrder | null): Promise<string> {
 	const { producerId, storeId, now } = order
-	const before = await readStoreStandingOrder(tx, { producerId, storeId })
 	await tx
 		.update(standingOrders)
 		.set({ endedAt: now })
@@ -114,6 +126,9 @@ async function replace(tx: Tx, order: SetStandingOrder): Promise<string> {
 			rule,
 			startsOn,
 			endsOn,
+			pausedFrom: before?.pausedFrom ?? null,
+			pausedUntil: before?.pausedUntil ?? null,
+			isCommitment: order.isCommitment,
 			createdBy: order.person.id,
 			createdAt: now,
 			idempotencyKey: order.idempotencyKey,
@@ -122,9 +137,7 @@ async function replace(tx: Tx, order: SetStandingOrder): Promise<string> {
 	if (!row) throw new Error("an insert returns its row")
 	const standingOrderId = row.id
 	await tx.insert(standingOrderLines).values(order.lines.map((line) => ({ producerId, standingOrderId, ...line })))
-	if (before && before.skips.length > 0) {
-		await tx.insert(standingOrderSkips).values(before.skips.map((skipOn) => ({ producerId, standingOrderId, skipOn })))
-	}
+	if (before) await takeOver(tx, { order, standingOrderId, before })
 	await tx.insert(auditEntries).values({
 		producerId,
 		at: now,
@@ -132,9 +145,34 @@ async function replace(tx: Tx, order: SetStandingOrder): Promise<string> {
 		action: "set-standing-order",
 		subjectType: "standing-order",
 		subjectId: standingOrderId,
-		detail: { rule, startsOn, endsOn, lines: order.lines, replaces: before?.id ?? null },
+		detail: {
+			rule,
+			startsOn,
+			endsOn,
+			isCommitment: order.isCommitment,
+			lines: order.lines,
+			replaces: before?.id ?? null,
+		},
 	})
 	return standingOrderId
+}
+
+/** What was said of single dates stays, but for products that are asked no more. */
+async function takeOver(
+	tx: Tx,
+	taken: { order: SetStandingOrder; standingOrderId: string; before: StandingOrder },
+): Promise<void> {
+	const { standingOrderId, before, order } = taken
+	const { producerId } = order
+	if (before.skips.length > 0) {
+		await tx.insert(standingOrderSkips).values(before.skips.map((skipOn) => ({ producerId, standingOrderId, skipOn })))
+	}
+	const asked = new Set(order.lines.map((line) => line.productId))
+	const changes = before.changes.filter((change) => asked.has(change.productId))
+	if (changes.length === 0) return
+	await tx
+		.insert(standingOrderChanges)
+		.values(changes.map(({ on, ...change }) => ({ producerId, standingOrderId, changeOn: on, ...change })))
 }
 
 async function acknowledge(

@@ -3,12 +3,7 @@ import { auditEntries, standingOrderSkips } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import type { Result } from "~/domain/result"
-import { findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
-import { readStoreStandingOrder } from "./read-standing-orders.server"
-import { standingDates } from "./standing-dates.server"
-
-/** How far ahead a date can be skipped: what a season of weekly deliveries holds. */
-const DATES_AHEAD = 60
+import { findOpenDate } from "./find-open-date.server"
 
 /**
  * Skips one date of the store's standing order, or puts it back. `ruleOn` names the date by the rule. Refused for a date
@@ -25,12 +20,9 @@ export function skipDate(query: {
 }): Promise<Result<{ deliveryOn: Day }, { ok: false; reason: "no-such-date" | "closed" }>> {
 	const { producerId, ruleOn } = query
 	return withProducer(producerId, async (tx) => {
-		const standing = await readStoreStandingOrder(tx, query)
-		if (!standing) return { ok: false, reason: "no-such-date" }
-		const schedule = await findDeliverySchedule(tx, query)
-		const date = standingDates(standing, schedule, DATES_AHEAD).find((one) => one.ruleOn === ruleOn)
-		if (!date) return { ok: false, reason: "no-such-date" }
-		if (!date.isOpen) return { ok: false, reason: "closed" }
+		const found = await findOpenDate(tx, query)
+		if (!found.ok) return found
+		const { standing, date } = found
 
 		const skip = { producerId, standingOrderId: standing.id, skipOn: ruleOn }
 		if (query.isSkipped) await tx.insert(standingOrderSkips).values(skip).onConflictDoNothing()

@@ -9,6 +9,7 @@ export type DatedRule = {
 	startsOn: Day
 	endsOn: Day | null
 	pausedFrom: Day | null
+	pausedUntil: Day | null
 	skips: readonly Day[]
 	createdAt: Date | null
 	endedAt: Date | null

@@ -3,7 +3,7 @@ import { type Day, shortMonthDay } from "~/domain/calendar"
 import { formatMoney } from "~/domain/money"
 import { casesWords } from "~/domain/quantity"
 import { FillStrip } from "~/ui/stock/fill-strip"
-import { StandingField } from "./standing-field"
+import { DateField, InsteadField, StandingField } from "./standing-field"
 
 export type StandingProduct = { productId: string; code: string; name: string; detail: string; piecesPerCase: number }
 
@@ -20,6 +20,10 @@ export type DateColumn = {
 	/** "open until Friday noon", "closed". */
 	words: string
 	orderNumber: number | null
+	/** Cases of that date by product id; none where the standing order leaves the product out. */
+	asked: Readonly<Record<string, number>>
+	/** Usual cases by product id, to say what a changed date is not. */
+	usual: Readonly<Record<string, number>>
 	/** By product id. */
 	forecast: Readonly<Record<string, ShownForecast>>
 	cases: number
@@ -36,10 +40,20 @@ type StandingTableProps = {
 	producerName: string
 	/** The button that skips a date or puts it back; none while the dates are only a preview. */
 	dateAction?: (date: DateColumn) => ReactNode
+	/** The date that is being changed, by the rule, and the form its fields belong to. */
+	openDate: { ruleOn: Day; formId: string } | null
 }
 
 /** Lines down, next dates across: what is asked, how likely it comes, and why not. */
-export function StandingTable({ products, dates, values, errors, producerName, dateAction }: StandingTableProps) {
+export function StandingTable({
+	products,
+	dates,
+	values,
+	errors,
+	producerName,
+	dateAction,
+	openDate,
+}: StandingTableProps) {
 	return (
 		<div className="standing-scroll">
 			<table className="standing-table">
@@ -58,6 +72,11 @@ export function StandingTable({ products, dates, values, errors, producerName, d
 							Least you
 							<br />
 							would take
+						</th>
+						<th scope="col" className="instead">
+							If short,
+							<br />
+							take instead
 						</th>
 						{dates.map((date) => (
 							<th key={date.ruleOn} scope="col" className={columnClass(date)}>
@@ -84,9 +103,21 @@ export function StandingTable({ products, dates, values, errors, producerName, d
 							<td className="num">
 								<StandingField kind="least" product={product} values={values} errors={errors} />
 							</td>
+							<td className="instead">
+								<InsteadField product={product} values={values} errors={errors} />
+							</td>
 							{dates.map((date) => (
 								<td key={date.ruleOn} className={columnClass(date)}>
-									<Forecast forecast={date.isSkipped ? undefined : date.forecast[product.productId]} />
+									{openDate?.ruleOn === date.ruleOn && date.usual[product.productId] !== undefined ? (
+										<DateField
+											product={product}
+											formId={openDate.formId}
+											value={values[`on-${product.productId}`] ?? String(date.asked[product.productId] ?? 0)}
+											error={errors[`on-${product.productId}`]}
+										/>
+									) : (
+										<Forecast date={date} productId={product.productId} />
+									)}
 								</td>
 							))}
 						</tr>
@@ -95,7 +126,7 @@ export function StandingTable({ products, dates, values, errors, producerName, d
 				{dates.length > 0 && (
 					<tfoot>
 						<tr>
-							<th scope="row" colSpan={4} className="pl-4! desk:pl-[102px]!">
+							<th scope="row" colSpan={5} className="pl-4! desk:pl-[102px]!">
 								<b>If all are met</b> <span className="note">at your prices, before any sharing out</span>
 							</th>
 							{dates.map((date) => (
@@ -112,9 +143,9 @@ export function StandingTable({ products, dates, values, errors, producerName, d
 							))}
 						</tr>
 						<tr>
-							<td colSpan={4} className="aside pl-4! desk:pl-[102px]!">
-								What {producerName} expects as things stand. It changes as the hives come off; you can skip a date until
-								its last orders.
+							<td colSpan={5} className="aside pl-4! desk:pl-[102px]!">
+								What {producerName} expects as things stand. It changes as the hives come off; you can skip or change a
+								date until its last orders.
 							</td>
 							{dates.map((date) => (
 								<td key={date.ruleOn} className={`aside ${columnClass(date)}`}>
@@ -133,20 +164,31 @@ function columnClass({ isSkipped, isOpen }: DateColumn): string {
 	return ["date", isSkipped && "skipped", !isOpen && "closed"].filter(Boolean).join(" ")
 }
 
-function Forecast({ forecast }: { forecast: ShownForecast | undefined }) {
-	if (!forecast || forecast.cases === 0) return null
+/** What is asked on a date, "2 not 3" where it is that date's own, and how it can be met. */
+function Forecast({ date, productId }: { date: DateColumn; productId: string }) {
+	const usual = date.usual[productId]
+	if (date.isSkipped || !usual) return null
+	const asked = date.asked[productId] ?? 0
+	const forecast = date.forecast[productId]
 	return (
 		<>
-			<span className="fig block text-figure">{forecast.cases}</span>
-			<FillStrip
-				countsThrough
-				runs={[
-					{ state: "free", count: forecast.free },
-					{ state: "held", count: forecast.held },
-					{ state: "expected", count: forecast.expected },
-					{ state: "short", count: forecast.short },
-				]}
-			/>
+			<span className="block whitespace-nowrap">
+				<span className={asked === usual ? "fig text-figure" : "fig text-figure font-semibold text-clover"}>
+					{asked}
+				</span>
+				{asked !== usual && <span className="note"> not {usual}</span>}
+			</span>
+			{forecast && asked > 0 && (
+				<FillStrip
+					countsThrough
+					runs={[
+						{ state: "free", count: forecast.free },
+						{ state: "held", count: forecast.held },
+						{ state: "expected", count: forecast.expected },
+						{ state: "short", count: forecast.short },
+					]}
+				/>
+			)}
 		</>
 	)
 }

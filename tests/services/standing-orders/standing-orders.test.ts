@@ -3,9 +3,12 @@ import { and, eq } from "drizzle-orm"
 import { describe, expect, test } from "vitest"
 import { orderLines, orders, products, shutDays } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
+import { changeDate } from "~/services/standing-orders/change-date.server"
 import { endStandingOrder } from "~/services/standing-orders/end-standing-order.server"
 import { findStandingPage } from "~/services/standing-orders/find-standing-page.server"
 import { makeDueOrders } from "~/services/standing-orders/make-due-orders.server"
+import { pauseStandingOrder } from "~/services/standing-orders/pause-standing-order.server"
+import { remindDates } from "~/services/standing-orders/remind-dates.server"
 import { type SetStandingOrder, setStandingOrder } from "~/services/standing-orders/set-standing-order.server"
 import { skipDate } from "~/services/standing-orders/skip-date.server"
 import { renderMail } from "~emails/render"
@@ -24,7 +27,8 @@ function everyOtherTuesday(shop: Shop, productId: string, more: Partial<SetStand
 		cadence: { every: "week", interval: 2, weekday: 2, months: [] },
 		startsOn: "2026-08-18",
 		endsOn: null,
-		lines: [{ productId, cases: 3, leastCases: 1 }],
+		lines: [{ productId, cases: 3, leastCases: 1, substituteIds: [] }],
+		isCommitment: false,
 		idempotencyKey: randomUUID(),
 		...more,
 	}
@@ -79,10 +83,12 @@ describe("setting a standing order", () => {
 		const skip = { producerId, storeId: shop.storeId, personId: shop.person.id, now: THURSDAY, zone: ZONE }
 		await skipDate({ ...skip, ruleOn: "2026-09-15", isSkipped: true })
 		const before = await pageOf(shop)
-		await setStandingOrder(everyOtherTuesday(shop, productId, { lines: [{ productId, cases: 5, leastCases: 0 }] }))
+		await setStandingOrder(
+			everyOtherTuesday(shop, productId, { lines: [{ productId, cases: 5, leastCases: 0, substituteIds: [] }] }),
+		)
 		const after = await pageOf(shop)
 		expect(after.standing?.id).not.toBe(before.standing?.id)
-		expect(after.standing?.lines).toEqual([{ productId, cases: 5, leastCases: 0 }])
+		expect(after.standing?.lines).toEqual([{ productId, cases: 5, leastCases: 0, substituteIds: [] }])
 		expect(after.dates.filter((date) => date.isSkipped).map((date) => date.ruleOn)).toEqual(["2026-09-15"])
 	})
 
@@ -91,12 +97,12 @@ describe("setting a standing order", () => {
 		const foreign = (await openWithRound()).productId
 		const set = (more: Partial<SetStandingOrder>) => setStandingOrder(everyOtherTuesday(shop, productId, more))
 		expect(await set({ lines: [] })).toEqual({ ok: false, reason: "nothing-asked" })
-		expect(await set({ lines: [{ productId: foreign, cases: 1, leastCases: 0 }] })).toEqual({
+		expect(await set({ lines: [{ productId: foreign, cases: 1, leastCases: 0, substituteIds: [] }] })).toEqual({
 			ok: false,
 			reason: "not-sold",
 			productIds: [foreign],
 		})
-		expect(await set({ lines: [{ productId, cases: 1, leastCases: 2 }] })).toEqual({
+		expect(await set({ lines: [{ productId, cases: 1, leastCases: 2, substituteIds: [] }] })).toEqual({
 			ok: false,
 			reason: "least-above-asked",
 			productIds: [productId],
@@ -144,7 +150,7 @@ describe("making orders at the cut-off", () => {
 	test("asks beyond the free as a line to be shared out, and leaves out what is no longer sold", async () => {
 		const { yard, shop, productId, producerId } = await openWithRound(2)
 		const gone = await addProduct(yard, { code: "21", readyCases: 9 })
-		const lines = [productId, gone].map((id) => ({ productId: id, cases: 3, leastCases: 0 }))
+		const lines = [productId, gone].map((id) => ({ productId: id, cases: 3, leastCases: 0, substituteIds: [] }))
 		await setStandingOrder(everyOtherTuesday(shop, productId, { lines }))
 		await withProducer(producerId, (tx) =>
 			tx
@@ -201,5 +207,116 @@ describe("making orders at the cut-off", () => {
 		expect(await makeDueOrders({ producerId, now: FRIDAY_NOON })).toEqual({ made: 0 })
 		expect(await makeDueOrders({ producerId, now: new Date("2026-08-19T16:00:00Z") })).toEqual({ made: 1 })
 		expect(await ordersOf(producerId)).toMatchObject([{ deliveryOn: "2026-08-21", standingOn: "2026-08-18" }])
+	})
+})
+
+describe("bending single dates", () => {
+	const linesMade = (producerId: string) =>
+		readProducer(producerId, (tx) =>
+			tx
+				.select({
+					asked: orderLines.askedCases,
+					least: orderLines.leastCases,
+					instead: orderLines.substituteIds,
+				})
+				.from(orderLines)
+				.where(eq(orderLines.producerId, producerId)),
+		)
+
+	test("makes a date with the cases of that date, the least it can still have, and what may stand in", async () => {
+		const { yard, shop, productId, producerId } = await openWithRound()
+		const other = await addProduct(yard, { code: "41", readyCases: 9 })
+		const lines = [{ productId, cases: 5, leastCases: 3, substituteIds: [other] }]
+		await setStandingOrder(everyOtherTuesday(shop, productId, { lines }))
+		const one = { producerId, storeId: shop.storeId, personId: shop.person.id, now: THURSDAY, zone: ZONE }
+		const cases = [{ productId, cases: 2 }]
+		expect(await changeDate({ ...one, ruleOn: "2026-08-18", cases })).toMatchObject({ ok: true })
+		await makeDueOrders({ producerId, now: FRIDAY_NOON })
+		expect(await linesMade(producerId)).toEqual([{ asked: 2, least: 2, instead: [other] }])
+		expect(await changeDate({ ...one, now: FRIDAY_NOON, ruleOn: "2026-08-18", cases })).toEqual({
+			ok: false,
+			reason: "closed",
+		})
+		await makeDueOrders({ producerId, now: new Date("2026-08-28T16:00:00Z") })
+		expect((await linesMade(producerId)).map((line) => line.asked).toSorted()).toEqual([2, 5])
+	})
+
+	test("makes nothing within a pause, and resuming brings back no date that closed in it", async () => {
+		const { shop, productId, producerId } = await openWithRound()
+		await setStandingOrder(everyOtherTuesday(shop, productId))
+		const pausing = { producerId, storeId: shop.storeId, personId: shop.person.id, now: THURSDAY, zone: ZONE }
+		const pause = { from: "2026-08-18", until: "2026-09-01" }
+		expect(await pauseStandingOrder({ ...pausing, pause: { from: "2026-08-18", until: "2026-08-17" } })).toEqual({
+			ok: false,
+			reason: "ends-before-start",
+		})
+		expect(await pauseStandingOrder({ ...pausing, pause })).toEqual({ ok: true })
+		expect((await pageOf(shop)).dates.map((date) => date.isSkipped)).toEqual([true, true, false, false, false, false])
+		expect(await pauseStandingOrder({ ...pausing, now: FRIDAY_NOON, pause: null })).toEqual({ ok: true })
+		expect(await makeDueOrders({ producerId, now: HOURS_LATE })).toEqual({ made: 0 })
+		expect((await pageOf(shop, HOURS_LATE)).dates.map((date) => date.isSkipped)).toEqual([
+			true,
+			false,
+			false,
+			false,
+			false,
+			false,
+		])
+	})
+
+	test("cannot be paused over a date whose last orders have passed", async () => {
+		const { shop, productId, producerId } = await openWithRound()
+		await setStandingOrder(everyOtherTuesday(shop, productId))
+		const late = { producerId, storeId: shop.storeId, personId: shop.person.id, now: HOURS_LATE, zone: ZONE }
+		expect(await pauseStandingOrder({ ...late, pause: { from: "2026-08-17", until: null } })).toEqual({
+			ok: false,
+			reason: "closed",
+		})
+		expect(await makeDueOrders({ producerId, now: HOURS_LATE })).toEqual({ made: 1 })
+	})
+
+	test("closes at noon in the producer's zone on either side of the end of daylight-saving time", async () => {
+		// Daylight-saving time ends in the zone of the yard on November 1, 2026: noon goes from 16:00 to 17:00 UTC.
+		const { shop, productId, producerId } = await openWithRound(40)
+		const cadence = { every: "week", interval: 1, weekday: 2, months: [] } as const
+		const now = new Date("2026-10-20T16:00:00Z")
+		await setStandingOrder(everyOtherTuesday(shop, productId, { cadence, startsOn: "2026-11-03", now }))
+		expect(await makeDueOrders({ producerId, now: new Date("2026-10-30T15:59:00Z") })).toEqual({ made: 0 })
+		expect(await makeDueOrders({ producerId, now: new Date("2026-10-30T16:00:00Z") })).toEqual({ made: 1 })
+		expect(await makeDueOrders({ producerId, now: new Date("2026-11-06T16:59:00Z") })).toEqual({ made: 0 })
+		expect(await makeDueOrders({ producerId, now: new Date("2026-11-06T17:00:00Z") })).toEqual({ made: 1 })
+	})
+})
+
+describe("two people of one store", () => {
+	test("the second to save sees what changed meanwhile, and can save over it", async () => {
+		const { shop, productId } = await openWithRound()
+		const lines = (cases: number) => [{ productId, cases, leastCases: 0, substituteIds: [] }]
+		const set = (cases: number, drawnFrom: string | null) =>
+			setStandingOrder(everyOtherTuesday(shop, productId, { lines: lines(cases), drawnFrom }))
+		expect(await set(3, null)).toEqual({ ok: true })
+		const seen = (await pageOf(shop)).standing?.id ?? null
+		expect(await set(4, seen)).toEqual({ ok: true })
+		const answer = await set(5, seen)
+		expect(answer).toMatchObject({ ok: false, reason: "changed-meanwhile", theirs: { lines: lines(4) } })
+		const theirs = (await pageOf(shop)).standing
+		expect(theirs?.lines).toEqual(lines(4))
+		expect(await set(5, theirs?.id ?? null)).toEqual({ ok: true })
+		expect((await pageOf(shop)).standing?.lines).toEqual(lines(5))
+	})
+})
+
+describe("reminding before last orders", () => {
+	test("writes once for a date, a day before, with a link that opens it", async () => {
+		const { shop, productId, producerId } = await openWithRound()
+		await setStandingOrder(everyOtherTuesday(shop, productId, { now: new Date("2026-08-11T16:00:00Z") }))
+		expect(await remindDates({ producerId, now: new Date("2026-08-13T15:59:00Z") })).toEqual({ reminded: 0 })
+		expect(await remindDates({ producerId, now: new Date("2026-08-13T16:00:00Z") })).toEqual({ reminded: 1 })
+		expect(await remindDates({ producerId, now: new Date("2026-08-13T17:00:00Z") })).toEqual({ reminded: 0 })
+		const letters = (await findOutbox(producerId)).filter((mail) => mail.template === "standing-order-reminder")
+		expect(letters).toHaveLength(1)
+		const letter = await renderMail(letters[0]?.template ?? "", letters[0]?.props)
+		expect(letter.text).toContain("noon on Friday, August 14")
+		expect(letter.text).toContain("/standing?date=2026-08-18")
 	})
 })
