@@ -1,3 +1,4 @@
+import { LateRest } from "./late-rest"
 import { type Vessel, WaterLevel } from "./water-level"
 
 /** How a short product is divided: see `exactShares`. */
@@ -128,14 +129,8 @@ function shareClass(supply: number, claims: readonly Ranked[], rule: SharingRule
 	const sharing = new Sharing(supply, claims, rule)
 	const wouldGet = claims.map((_, index) => sharing.share(index))
 	const isAside = setAsideHopeless(sharing, claims, rule)
-	let round = wholeCases(sharing, claims, { supply, isAside })
-	for (;;) {
-		const latest = latestBelowLeast(claims, round, isAside)
-		if (latest === null) break
-		isAside[latest] = 1
-		sharing.setAside(latest)
-		round = wholeCases(sharing, claims, { supply, isAside })
-	}
+	setAsideUnlifted(sharing, claims, { supply, isAside })
+	const round = wholeCases(sharing, claims, isAside)
 	const back = comeBack(claims, { over: supply - round.sum, isAside })
 	return claims.map(({ id, asked }, index): Share => {
 		const given = isAside[index] ? (back.get(index) ?? 0) : (round.given[index] as number)
@@ -203,19 +198,77 @@ function alikeKey({ asked, least, weight }: Claim, share: number, rule: SharingR
 	return `${least - asked} ${weight}`
 }
 
+/** Claims of one asking and weight: they have one exact share. `waiting` need a left-over case to reach their least. */
+type Alike = { member: number; count: number; whole: number; waiting: number[] }
+
+/**
+ * Sets aside those that no left-over case is left for, though it would lift them to their least acceptable: the latest
+ * order first, until the left-over cases reach. After `setAsideHopeless` each claim lacks one case at most, and shares
+ * only rise, so that nobody joins those who wait. Takes time in proportion to the claims set aside times the kinds of
+ * claims (one asking and weight), not times all claims.
+ */
+function setAsideUnlifted(
+	sharing: Sharing,
+	claims: readonly Ranked[],
+	{ supply, isAside }: { supply: number; isAside: Uint8Array },
+): void {
+	const isWaiting = new Uint8Array(claims.length)
+	const kinds = new Map<string, Alike>()
+	const kindOf: Alike[] = []
+	let [askedInAll, wholeInAll] = [0, 0]
+	for (const [index, { asked, weight, least }] of claims.entries()) {
+		if (isAside[index]) continue
+		const key = `${asked} ${weight}`
+		const kind = kinds.get(key) ?? {
+			member: index,
+			count: 0,
+			whole: Math.floor(sharing.share(index)),
+			waiting: [],
+		}
+		kinds.set(key, kind)
+		kindOf[index] = kind
+		kind.count += 1
+		askedInAll += asked
+		wholeInAll += kind.whole
+		if (least <= kind.whole) continue
+		kind.waiting.push(index)
+		isWaiting[index] = 1
+	}
+	const waiting = new LateRest(isWaiting, (a, b) => isLater(claims, a, b))
+	for (;;) {
+		const latest = waiting.latestAfter(Math.max(0, Math.min(supply, askedInAll) - wholeInAll))
+		if (latest === null) return
+		const kind = kindOf[latest] as Alike
+		isAside[latest] = 1
+		waiting.takeOut(latest)
+		kind.count -= 1
+		askedInAll -= (claims[latest] as Ranked).asked
+		wholeInAll -= kind.whole
+		sharing.setAside(latest)
+		for (const one of kinds.values()) wholeInAll += riseOf(one, sharing, waiting)
+	}
+}
+
+/** Brings a kind's whole cases up to its share, which lifts all of it that waited; answers by how many cases in all. */
+function riseOf(kind: Alike, sharing: Sharing, waiting: LateRest): number {
+	const whole = Math.floor(sharing.share(kind.member))
+	if (whole === kind.whole) return 0
+	const rise = (whole - kind.whole) * kind.count
+	kind.whole = whole
+	for (const index of kind.waiting) waiting.takeOut(index)
+	kind.waiting = []
+	return rise
+}
+
 type Round = { given: Int32Array; sum: number }
 
 /** Exact shares rounded down, and the left-over cases given out. */
-function wholeCases(
-	sharing: Sharing,
-	claims: readonly Ranked[],
-	facts: { supply: number; isAside: Uint8Array },
-): Round {
+function wholeCases(sharing: Sharing, claims: readonly Ranked[], isAside: Uint8Array): Round {
 	const given = new Int32Array(claims.length)
 	const parts: number[] = []
 	let [sum, exactSum] = [0, 0]
 	for (const [index] of claims.entries()) {
-		if (facts.isAside[index]) continue
+		if (isAside[index]) continue
 		const exact = sharing.share(index)
 		given[index] = Math.floor(exact)
 		sum += given[index] as number
@@ -228,19 +281,6 @@ function wholeCases(
 	const inTurn = [...parts.filter(isLifted), ...parts.filter((index) => !isLifted(index))]
 	for (const index of inTurn.slice(0, leftOver)) given[index] = (given[index] as number) + 1
 	return { given, sum: sum + Math.min(leftOver, inTurn.length) }
-}
-
-/** Of the claims below their least acceptable the one furthest below, the latest order on ties; null where there is none. */
-function latestBelowLeast(claims: readonly Ranked[], { given }: Round, isAside: Uint8Array): number | null {
-	let found: number | null = null
-	let furthest = 0
-	for (const [index, { least }] of claims.entries()) {
-		const below = isAside[index] ? 0 : least - (given[index] as number)
-		if (below <= 0 || below < furthest) continue
-		if (below > furthest || found === null || isLater(claims, index, found)) found = index
-		furthest = below
-	}
-	return found
 }
 
 /** Who of those set aside gets something of what is over: first their least acceptable, then a case each in turn. */
