@@ -139,10 +139,87 @@ test("numbers have no gaps, and the counters go on from the last", async () => {
 			with numbers as (
 				select producer_id, 'order' as series, 0 as year, number from orders
 				union all select producer_id, 'invoice', year, sequence from invoices
+				union all select producer_id, 'load', 0, number from freezer_loads
+				union all select producer_id, 'withdrawal', 0, number from withdrawals
 			)
 			select n.producer_id, n.series, n.year, max(n.number), count(*), c.last from numbers n
 			left join counters c on c.producer_id = n.producer_id and c.series = n.series and c.year = n.year
 			group by 1, 2, 3, c.last having max(n.number) <> count(*) or c.last is distinct from count(*)`),
+	).toEqual([])
+})
+
+test("every lot that was released has its reason, and the proofs of it came before", async () => {
+	expect(
+		await faults(`
+			select l.code, l.state, r.kind from lots l
+			left join lot_releases r on r.producer_id = l.producer_id and r.lot_id = l.id
+			where (l.state = 'held') <> (r.lot_id is null)`),
+	).toEqual([])
+	expect(
+		await faults(`
+			select l.code, p.created_at, c.created_at, r.released_at from lot_releases r
+			join lots l on l.producer_id = r.producer_id and l.id = r.lot_id
+			left join freeze_proofs p on p.producer_id = r.producer_id and p.id = r.freeze_proof_id and p.is_accepted
+			left join net_checks c on c.producer_id = r.producer_id and c.id = r.net_check_id and c.lot_id = r.lot_id
+				and c.has_passed
+			where r.kind = 'proven' and not coalesce(greatest(p.created_at, c.created_at) <= r.released_at, false)`),
+	).toEqual([])
+})
+
+test("what was made from other lots is what went into it, to the piece", async () => {
+	const kinds = await acrossProducers<{ kind: string }>("select distinct kind from lot_links order by 1")
+	expect(kinds.map(({ kind }) => kind)).toEqual(["cut-up", "split"])
+	expect(
+		await faults(`
+			select k.kind, k.pieces, b.pieces, k.pieces_made, t.pieces_harvested from lot_links k
+			join lots t on t.producer_id = k.producer_id and t.id = k.to_lot_id
+			left join stock_balances b on b.producer_id = k.producer_id and b.lot_id = k.from_lot_id
+				and b.place = case k.kind when 'cut-up' then 'cut-up' else 'other-lot' end
+			where b.pieces is distinct from k.pieces or t.pieces_harvested <> k.pieces_made`),
+	).toEqual([])
+})
+
+test("the lots of a harvest are what its supers gave, but for the culls", async () => {
+	expect(
+		await faults(`
+			with gave as (
+				select producer_id, harvest_id, product_id, sum(finished_pieces) as pieces from supers
+				where harvest_id is not null group by 1, 2, 3
+			), made as (
+				select producer_id, harvest_id, product_id, sum(pieces_harvested) as pieces from lots
+				where harvest_id is not null and grade <> 'Culls' group by 1, 2, 3
+			)
+			select * from gave full join made on made.producer_id = gave.producer_id
+				and made.harvest_id = gave.harvest_id and made.product_id = gave.product_id
+			where gave.pieces is distinct from made.pieces`),
+	).toEqual([])
+})
+
+test("what a count did not find is missing, and no more", async () => {
+	expect(
+		await faults(`
+			with short as (
+				select producer_id, lot_id, sum(ledger_pieces - counted_pieces) as pieces from stock_take_lines
+				group by 1, 2 having sum(ledger_pieces - counted_pieces) <> 0
+			)
+			select * from short full join (select * from stock_balances where place = 'missing' and pieces > 0) b
+				on b.producer_id = short.producer_id and b.lot_id = short.lot_id
+			where short.pieces is distinct from b.pieces`),
+	).toEqual([])
+})
+
+test("a withdrawn lot had left for the stores that were written to", async () => {
+	expect(
+		await faults(`
+			select w.number, n.pieces, l.state from withdrawal_notices n
+			join withdrawals w on w.producer_id = n.producer_id and w.id = n.withdrawal_id
+			join withdrawal_lots x on x.producer_id = w.producer_id and x.withdrawal_id = w.id
+			join lots l on l.producer_id = x.producer_id and l.id = x.lot_id
+			where l.state <> 'withdrawn' or n.pieces is distinct from (
+				select sum(y.pieces) from order_line_lots y
+				join order_lines e on e.producer_id = y.producer_id and e.id = y.order_line_id
+				join orders o on o.producer_id = e.producer_id and o.id = e.order_id
+				where y.producer_id = l.producer_id and y.lot_id = l.id and o.store_id = n.store_id)`),
 	).toEqual([])
 })
 
@@ -167,6 +244,10 @@ test("nothing has happened in the future, and no letter still waits", async () =
 	expect(await faults("select id from order_events where at > now()")).toEqual([])
 	expect(await faults("select id from stock_moves where moved_at > now()")).toEqual([])
 	expect(await faults("select id from payments where received_at > now()")).toEqual([])
+	expect(await faults("select id from super_checks where received_at > now()")).toEqual([])
+	expect(await faults("select id from freeze_proofs where created_at > now()")).toEqual([])
+	expect(await faults("select id from net_checks where created_at > now()")).toEqual([])
+	expect(await faults("select lot_id from lot_releases where released_at > now()")).toEqual([])
 	expect(await faults("select id from outbox_mails where sent_at is null")).toEqual([])
 })
 

@@ -1,6 +1,7 @@
 import type { freezeProofs, freezerLoadLots, freezerLoads, lots } from "~/db/schema"
 import { addDays, type Day, instantAt } from "~/domain/calendar"
-import { freezerCurve } from "./freezer-curve"
+import { coolingAllowance, enteredRuns, judgeFreezing } from "~/domain/cold-room/freezing"
+import { readFreezerLog } from "./freezer-log"
 import { grouped, minutesAfter, type Season } from "./season"
 
 type Lot = typeof lots.$inferInsert
@@ -16,8 +17,8 @@ export type ColdRoom = {
 	}
 }
 
-/** Hours until the middle of a case has reached the cold, and how long it is then left; common practice, no source. */
-const HOURS = { toReach: 10, held: 48 }
+/** Hours until the middle of a case has reached the cold, and how long it is then left: two days in all; common practice, no source. */
+const HOURS = { toReach: 6, held: 42 }
 const MINUTES_AN_HOUR = 60
 /** So many of the last loads have a curve; those before were entered by hand. */
 const LOGGED = 3
@@ -67,30 +68,33 @@ function load(
 	}
 }
 
-/** The coldest row of the table (5 °F for two hours, BEEBOOK vol. II, wax moths, 5.8.1), kept far longer than it asks. */
+/** The treatment of a load, kept far longer than the table asks: entered by hand, or read from a logger's file. */
 function proofOf(
 	{ producerId, chance, scenario, userId }: Season,
 	{ harvestedOn, loadedAt, isLogged }: { harvestedOn: Day; loadedAt: Date; isLogged: boolean },
 ): Proof & { id: string; createdAt: Date } {
-	const runFrom = minutesAfter(loadedAt, HOURS.toReach * MINUTES_AN_HOUR)
-	const runTo = minutesAfter(runFrom, HOURS.held * MINUTES_AN_HOUR)
-	const curve = isLogged ? freezerCurve({ loadedAt, runFrom, runTo }) : []
+	const coldAt = minutesAfter(loadedAt, HOURS.toReach * MINUTES_AN_HOUR)
+	const outAt = minutesAfter(coldAt, HOURS.held * MINUTES_AN_HOUR)
+	const { verdict, ...found } = isLogged
+		? readFreezerLog({ loadedAt, coldAt, outAt }, scenario.timeZone)
+		: { ...enteredByHand(), note: "Thermometer in the middle of the middle case." }
 	return {
 		producerId,
 		id: chance.id(),
 		loadId: chance.id(),
 		kind: isLogged ? "logger" : "entry",
-		isAccepted: true,
-		rowTenthsC: -150,
-		requiredMinutes: 120,
-		heldMinutes: HOURS.held * MINUTES_AN_HOUR,
-		runFrom,
-		runTo,
+		isAccepted: verdict.isProven,
+		rowTenthsC: verdict.row.tenthsC,
+		requiredMinutes: verdict.row.minutes,
+		heldMinutes: verdict.countedMinutes,
+		...found,
 		fileName: isLogged ? `freezer-${harvestedOn}.csv` : "",
-		report: isLogged ? { rows: curve.length, unit: "C", gaps: [], clockSteps: [] } : {},
-		curve,
-		note: isLogged ? "" : "Thermometer in the middle of the middle case.",
 		enteredBy: userId(scenario.packerEmail),
-		createdAt: minutesAfter(runTo, 25),
+		createdAt: minutesAfter(outAt, 25),
 	}
+}
+
+function enteredByHand() {
+	const entered = { temperature: -18, unit: "C", minutes: HOURS.held * MINUTES_AN_HOUR, probe: "comb" } as const
+	return { verdict: judgeFreezing(enteredRuns(entered), coolingAllowance(entered.probe)), report: { entered } }
 }

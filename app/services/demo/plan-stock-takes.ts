@@ -63,7 +63,7 @@ function take(
 		fromPlace: "ready",
 		toPlace: "missing",
 		pieces: missed,
-		reason: "counted less",
+		reason: "count of the ready shelf",
 		movedBy: takenBy,
 		movedAt: at,
 	})

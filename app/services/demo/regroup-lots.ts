@@ -39,7 +39,7 @@ function splitOne(season: Season, stock: Stock, plan: Regrouping): void {
 	stock.lots.push(lot)
 	const pieces = 12
 	link(season, plan, { fromLotId: from.id, toLotId: lot.id, kind: "split", pieces, piecesMade: pieces, at: now })
-	const reason = `split off ${from.code}`
+	const reason = `split from lot ${from.code}`
 	stock.moves.push(
 		moveOf(season, { lotId: from.id, fromPlace: "ready", toPlace: "other-lot", toRef: lot.id, pieces, reason }, now),
 		moveOf(season, { lotId: lot.id, fromPlace: null, toPlace: "cold-room", pieces, reason }, now),
@@ -85,7 +85,7 @@ function cutUpCulls(season: Season, catalogue: Catalogue, stock: Stock, plan: Re
 		fromPlace: "cold-room",
 		toPlace: "cut-up",
 		pieces,
-		reason: `cut up into ${to.code}`,
+		reason: `cut up into lot ${to.code}`,
 	} as const
 	stock.moves.push(moveOf(season, off, offAt), moveOf(season, cut, at))
 }
