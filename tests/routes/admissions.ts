@@ -71,6 +71,9 @@ export const admissions: Record<string, Admission> = {
 	// A buyer reads what is to pay; paying is the payer's.
 	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
 	"routes/buy/invoice-pdf": storePage,
+	"routes/buy/prices": storePage,
+	"routes/buy/prices-csv": storePage,
+	"routes/buy/prices-pdf": storePage,
 	"routes/buy/details": { loader: STORE, action: STORE, post: { fields: { letters: "invoices" } } },
 
 	// The desk: no stall volunteer; the packer sees what is packed and from which lots, and no money
@@ -142,6 +145,8 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/stores": { loader: OFFICE },
 	"routes/desk/commitments": { loader: OFFICE, action: "desk: owner" },
 	"routes/desk/prices": { loader: OFFICE },
+	"routes/desk/price-list-csv": { loader: OFFICE },
+	"routes/desk/price-list-pdf": { loader: OFFICE },
 	"routes/desk/price-new": { loader: OFFICE, action: OFFICE },
 	"routes/desk/price-upload": { loader: OFFICE, action: OFFICE },
 	// People are the owner's alone.

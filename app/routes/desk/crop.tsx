@@ -59,6 +59,9 @@ export default function Crop({ loaderData, params }: Route.ComponentProps) {
 				links={[
 					{ to: `${base}/mark`, label: "Mark several supers" },
 					...(loaderData.maySetUp ? [{ to: `${base}/set-up`, label: "Yards and hives" }] : []),
+					...(loaderData.maySetUp
+						? [{ to: `/desk/${params.producer}/season`, label: "The season ahead: what will be short" }]
+						: []),
 					{ to: `${base}/forecasts`, label: "Forecasts and what came off" },
 					...(loaderData.maySet ? [{ to: `${base}/settings`, label: "Crop settings" }] : []),
 				]}
