@@ -94,7 +94,8 @@ test("both sides write about an order, and a change that gives less waits for th
 		[["order-message", "order-proposal", "order-answer"], String(order.number)],
 	)
 	expect(letters.map(({ template }) => template)).toEqual(["order-answer", "order-message", "order-proposal"])
-	expect(faults.flat()).toEqual([])
+	// The refusal above is a 422, which the browser notes.
+	expect(faults.flat().filter((fault) => !fault.includes("422"))).toEqual([])
 })
 
 test.describe("without JavaScript", () => {

@@ -58,8 +58,8 @@ export default function Season({ loaderData, params }: Route.ComponentProps) {
 							<p>
 								{sentence ? <span className="short">{sentence}</span> : "Covered in every week, at the low figure too."}
 							</p>
-							<SeasonPicture name={name} weeks={weeks} />
-							<SeasonTable name={name} weeks={weeks} />
+							<SeasonPicture name={`${code} ${name}`} weeks={weeks} />
+							<SeasonTable name={`${code} ${name}`} weeks={weeks} />
 						</section>
 					))}
 					<p className="px-4 py-4 desk:px-8">

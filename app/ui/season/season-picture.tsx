@@ -64,6 +64,7 @@ export function SeasonPicture({ name, weeks }: { name: string; weeks: readonly S
 						x={LEFT + index * STEP + (STEP - BAR) / 2}
 						y={y}
 						isNamed={index % 2 === 0}
+						isFirstShort={(weeks[index - 1]?.short ?? 0) === 0}
 					/>
 				))}
 				<path className="season-low" d={line(weeks, y)} />
@@ -100,7 +101,7 @@ function Week({ week, x, y, isNamed }: { week: ShownWeek; x: number; y: (cases: 
 						d={`M${x + 0.5} ${y(wanted - short)}V${y(wanted)}h${BAR - 1}V${y(wanted - short)}z`}
 					/>
 					<text className="season-short-word" x={x + BAR / 2} y={y(wanted) - 4} textAnchor="middle">
-						{short} short
+						{isFirstShort ? `${short} short` : short}
 					</text>
 				</>
 			)}
