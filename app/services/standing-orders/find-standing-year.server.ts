@@ -10,12 +10,12 @@ const A_YEAR = 365
 /** Weekly dates of a year, and a few to be sure that the last is past it. */
 const DATES_OF_A_YEAR = 60
 
-export type YearDate = DueDate & { lines: StandingLine[] }
+type YearDate = DueDate & { lines: StandingLine[] }
 
 /** Cases of one product by standing order in this calendar year: in orders made so far, and on the dates to come. */
-export type SeasonTotal = { productId: string; code: string; name: string; madeCases: number; comingCases: number }
+type SeasonTotal = { productId: string; code: string; name: string; madeCases: number; comingCases: number }
 
-export type StandingYear = {
+type StandingYear = {
 	standing: StandingOrder | null
 	today: Day
 	zone: string

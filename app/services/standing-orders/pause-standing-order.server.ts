@@ -12,7 +12,7 @@ import { type DueDate, standingDates } from "./standing-dates.server"
 const DATES_WITHIN_A_FORTNIGHT = 15
 
 /** From the first to the last day without deliveries; no last day is until it is resumed. */
-export type Pause = { from: Day; until: Day | null }
+type Pause = { from: Day; until: Day | null }
 
 /**
  * Pauses the store's standing order, or resumes it with `pause` null. A date whose last orders have passed stays as it was:

@@ -1,6 +1,6 @@
 import { casesWords } from "~/domain/quantity"
 
-export type Season = {
+type Season = {
 	year: string
 	madeDates: number
 	comingDates: number
