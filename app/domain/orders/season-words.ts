@@ -3,7 +3,7 @@ import { casesWords } from "~/domain/quantity"
 import { type CropRange, type SeasonWeek, shortCases } from "./season"
 
 /** The weeks in which a product will be short, at one figure of the crop, in whole cases; the earliest first. */
-export function shortWeeks(
+function shortWeeks(
 	{ weeks, piecesPerCase }: { weeks: readonly SeasonWeek[]; piecesPerCase: number },
 	figure: keyof CropRange,
 ): { weekOn: Day; cases: number }[] {
