@@ -175,6 +175,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			load: "1",
 			sale: saleId,
 			take: takeId,
+			tier: await asProducer(owner, ourId, () => idOf("select id from price_tiers order by name limit 1")),
 			product: "11",
 			grading: await paperOf("gradings"),
 			check: await paperOf("net_checks"),

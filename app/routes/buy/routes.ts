@@ -12,5 +12,8 @@ export const buyRoutes: RouteConfigEntry[] = [
 	route("buy/:producer/:store/invoices", "routes/buy/invoices.tsx"),
 	route("buy/:producer/:store/invoices/:invoice", "routes/buy/invoice.tsx"),
 	route("buy/:producer/:store/invoices/:invoice.pdf", "routes/buy/invoice-pdf.tsx"),
+	route("buy/:producer/:store/prices", "routes/buy/prices.tsx"),
+	route("buy/:producer/:store/prices.csv", "routes/buy/prices-csv.ts"),
+	route("buy/:producer/:store/prices.pdf", "routes/buy/prices-pdf.ts"),
 	route("buy/:producer/:store/details", "routes/buy/details.tsx"),
 ]

@@ -21,7 +21,9 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ url }: Route.
 		frame: await findDeskFrame(scope, { part: "prices", now: at }),
 		products,
 		wasSet: url.searchParams.has("set"),
-		tiers: [...new Set(products.flatMap((product) => product.tiers.map((tier) => tier.tierName)))].toSorted(),
+		tiers: [...new Map(products.flatMap(({ tiers }) => tiers.map((tier) => [tier.tierName, tier.tierId])))]
+			.map(([name, id]) => ({ name, id }))
+			.toSorted((a, b) => a.name.localeCompare(b.name)),
 	}
 })
 
@@ -68,8 +70,17 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 									A case
 								</th>
 								{tiers.map((tier) => (
-									<th key={tier} scope="col" className="num">
-										{tier}
+									<th key={tier.id} scope="col" className="num">
+										{tier.name}
+										<span className="note block">
+											{/* Files, not pages: the browser takes them. */}
+											<a href={`${page}/${tier.id}.pdf`} aria-label={`Prices for ${tier.name}, to print`}>
+												print
+											</a>{" "}
+											<a href={`${page}/${tier.id}.csv`} aria-label={`Prices for ${tier.name}, for a spreadsheet`}>
+												CSV
+											</a>
+										</span>
 									</th>
 								))}
 								<th scope="col" className="num pr-4! desk:pr-8!">
@@ -90,8 +101,8 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 										<span className="note block">{weightWords(product.pieceNetGrams * product.piecesPerCase)} net</span>
 									</td>
 									{tiers.map((tier) => (
-										<td key={tier} className="money py-2!">
-											<Breaks breaks={product.tiers.find((one) => one.tierName === tier)?.breaks ?? []} />
+										<td key={tier.id} className="money py-2!">
+											<Breaks breaks={product.tiers.find((one) => one.tierId === tier.id)?.breaks ?? []} />
 										</td>
 									))}
 									<td className="money pr-4! desk:pr-8!">

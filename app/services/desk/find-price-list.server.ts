@@ -11,10 +11,14 @@ export type PricedProduct = {
 	piecesPerCase: number
 	breakFamily: string
 	pieceCents: number | null
-	tiers: { tierName: string; breaks: { minCases: number; caseCents: number }[] }[]
+	tiers: { tierId: string; tierName: string; breaks: { minCases: number; caseCents: number }[] }[]
 }
 
-type Row = Omit<PricedProduct, "tiers"> & { tierName: string | null; breaks: { minCases: number; caseCents: number }[] }
+type Row = Omit<PricedProduct, "tiers"> & {
+	tierId: string | null
+	tierName: string | null
+	breaks: { minCases: number; caseCents: number }[]
+}
 
 /** The price list in force on `today`: products by code, each with the tiers that have a price for it, by name. */
 export function findPriceList(query: { producerId: string; today: Day }): Promise<PricedProduct[]> {
@@ -28,18 +32,18 @@ export function findPriceList(query: { producerId: string; today: Day }): Promis
 				order by r.product_id, r.tier_id, r.min_cases, r.valid_from desc
 			)
 			select p.code, p.name, p.detail, p.piece_net_grams as "pieceNetGrams", p.pieces_per_case as "piecesPerCase",
-				p.break_family as "breakFamily", p.piece_cents as "pieceCents", t.name as "tierName",
+				p.break_family as "breakFamily", p.piece_cents as "pieceCents", t.id as "tierId", t.name as "tierName",
 				json_agg(json_build_object('minCases', f.min_cases, 'caseCents', f.case_cents) order by f.min_cases) as breaks
 			from products p
 			left join in_force f on f.product_id = p.id
 			left join price_tiers t on t.producer_id = p.producer_id and t.id = f.tier_id
 			where p.producer_id = ${producerId} and p.is_active
-			group by p.id, p.code, p.name, p.detail, p.piece_net_grams, p.pieces_per_case, p.break_family, p.piece_cents, t.name
+			group by p.id, p.code, p.name, p.detail, p.piece_net_grams, p.pieces_per_case, p.break_family, p.piece_cents, t.id, t.name
 			order by length(p.code), p.code, t.name`)
 		const products = new Map<string, PricedProduct>()
-		for (const { tierName, breaks, ...product } of rows) {
+		for (const { tierId, tierName, breaks, ...product } of rows) {
 			const known = products.get(product.code) ?? { ...product, tiers: [] }
-			if (tierName !== null) known.tiers.push({ tierName, breaks })
+			if (tierId !== null && tierName !== null) known.tiers.push({ tierId, tierName, breaks })
 			products.set(product.code, known)
 		}
 		return [...products.values()]
