@@ -17,6 +17,7 @@ export default {
 		// The bench builds these by their path.
 		"tests/bench/vite.config.ts",
 		"tests/bench/reference-*.{ts,tsx}",
+		"tests/bench/services.ts",
 		"tests/bench/minimal-app/{*,app/*}.{ts,tsx}",
 		// Types of the scripts, for the tests that import them.
 		"scripts/lib/*.d.mts",

@@ -13,19 +13,38 @@ with sold as materialized (
 	from products p
 	where p.producer_id = :producer_id and p.is_active and p.id = any(:product_ids::uuid[])
 	order by p.id for no key update
-), in_force as (
-	select distinct on (r.product_id, r.min_cases) r.product_id, r.min_cases, r.case_cents
+), own as (
+	select product_id, min_cases, case_cents, pound_cents from (
+		select distinct on (r.product_id, r.min_cases) r.product_id, r.min_cases, r.case_cents, r.pound_cents, r.valid_until
+		from store_prices r
+		where r.producer_id = :producer_id and r.store_id = :store_id and r.valid_from <= :today
+		order by r.product_id, r.min_cases, r.valid_from desc
+	) latest where valid_until is null or valid_until >= :today
+), of_tier as (
+	select distinct on (r.product_id, r.min_cases) r.product_id, r.min_cases, r.case_cents, r.pound_cents
 	from stores s
 	join prices r on r.producer_id = s.producer_id and r.tier_id = s.tier_id
 	where s.producer_id = :producer_id and s.id = :store_id and r.valid_from <= :today
 	order by r.product_id, r.min_cases, r.valid_from desc
+), in_force as (
+	select * from own
+	union all
+	select * from of_tier where not exists (select from own where own.product_id = of_tier.product_id)
 ), breaks as (
 	select product_id, array_agg(min_cases order by min_cases) as min_cases,
-		array_agg(case_cents order by min_cases) as case_cents
+		array_agg(case_cents order by min_cases) as case_cents,
+		array_agg(pound_cents order by min_cases) as pound_cents
 	from in_force group by product_id
+), offs as (
+	select o.product_id, max(o.basis_points) as off
+	from promotions o
+	join stores s on s.producer_id = o.producer_id and s.id = :store_id
+	where o.producer_id = :producer_id and (o.tier_id is null or o.tier_id = s.tier_id)
+		and :today::date between o.starts_on and o.ends_on
+	group by o.product_id
 )
-select sold.*, breaks.min_cases, breaks.case_cents
-from sold join breaks on breaks.product_id = sold.id
+select sold.*, breaks.min_cases, breaks.case_cents, breaks.pound_cents, coalesce(offs.off, 0) as off
+from sold join breaks on breaks.product_id = sold.id left join offs on offs.product_id = sold.id
 order by length(sold.code), sold.code;
 
 -- The store, its producer, and whether this form was sent before.
@@ -52,31 +71,37 @@ where r.producer_id = :producer_id
 order by r.weekday;
 
 -- What can be promised of each product.
-select p.id, p.pieces_per_case, p.reserve_pieces from products p
-where p.producer_id = :producer_id and p.id = any(:product_ids::uuid[]);
-
-select l.product_id, case l.state when 'released' then 'free' else 'held' end as kind,
-	case l.state when 'released' then :today::date else greatest(l.expected_release_on, :today::date) end::text as on,
-	sum(b.pieces)::int as pieces
-from lots l
-join products p on p.producer_id = l.producer_id and p.id = l.product_id and p.id = any(:product_ids::uuid[])
-join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
-where l.producer_id = :producer_id and l.state in ('released', 'held') and l.best_before_on >= :today
-	and b.place in ('cold-room', 'ready') and b.pieces > 0
-group by 1, 2, 3
-union all
-select e.product_id, 'expected', e.expected_on::text, e.low_pieces
-from expected_supplies e
-join products p on p.producer_id = e.producer_id and p.id = e.product_id and p.id = any(:product_ids::uuid[])
-where e.producer_id = :producer_id and e.expected_on >= :today and e.low_pieces > 0
-union all
-select ol.product_id, 'promised', greatest(o.delivery_on, :today::date)::text,
-	sum(coalesce(ol.given_cases, case when ol.is_to_share then 0 else ol.asked_cases end) * ol.pieces_per_case)::int
-from orders o
-join order_lines ol on ol.producer_id = o.producer_id and ol.order_id = o.id
-join products p on p.producer_id = ol.producer_id and p.id = ol.product_id and p.id = any(:product_ids::uuid[])
-where o.producer_id = :producer_id and o.state in ('placed', 'confirmed')
-group by 1, 3;
+with p as (
+	select p.id, p.code, p.pieces_per_case, p.reserve_pieces from products p where p.producer_id = :producer_id and p.id = any(:product_ids::uuid[])
+), entries as (
+	select l.product_id, case l.state when 'released' then 'free' else 'held' end as kind,
+		case l.state when 'released' then :today::date else greatest(l.expected_release_on, :today::date) end as on_day,
+		l.best_before_on as until, sum(b.pieces)::int as pieces
+	from lots l
+	join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
+	where l.producer_id = :producer_id and l.product_id in (select id from p) and l.state in ('released', 'held')
+		and l.best_before_on >= :today and l.grade <> :culls
+		and b.place in ('cold-room', 'ready') and b.place_ref = '00000000-0000-0000-0000-000000000000' and b.pieces > 0
+	group by 1, 2, 3, 4
+	union all
+	select e.product_id, 'expected', e.expected_on, e.expected_on + coalesce(s.best_before_days, 300)::int,
+		case s.crop_figure when 'likely' then e.likely_pieces else e.low_pieces end
+	from expected_supplies e
+	left join producer_settings s on s.producer_id = e.producer_id
+	where e.producer_id = :producer_id and e.product_id in (select id from p) and e.expected_on >= :today
+		and case s.crop_figure when 'likely' then e.likely_pieces else e.low_pieces end > 0
+	union all
+	select ol.product_id, 'promised', greatest(o.delivery_on, :today::date), null,
+		sum(coalesce(ol.given_cases, case when ol.is_to_share then ol.promised_cases else ol.asked_cases end) * ol.pieces_per_case)::int
+	from orders o
+	join order_lines ol on ol.producer_id = o.producer_id and ol.order_id = o.id
+	where o.producer_id = :producer_id and ol.product_id in (select id from p) and o.state in ('placed', 'confirmed')
+	group by 1, 3
+)
+select p.id as "productId", p.pieces_per_case as "piecesPerCase", p.reserve_pieces as reserve,
+	e.kind, e.on_day::text as on, e.until::text as until, e.pieces
+from p left join entries e on e.product_id = p.id
+order by p.code, e.on_day, e.until;
 
 -- The order's number: from here on, others wait.
 insert into counters (producer_id, series, year, last) values (:producer_id, :series, :year, 1)

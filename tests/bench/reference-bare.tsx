@@ -1,33 +1,25 @@
-import { createHash } from "node:crypto"
 import { createServer } from "node:http"
-import pg from "pg"
+import { askedOf, openPool } from "./bare/asked-of"
 import { readRows } from "./bare/read-rows"
 import { renderSheet } from "./bare/render-sheet"
 import { sheetOf } from "./bare/sheet-of"
 
 const PATH = /^\/buy\/([a-z0-9-]+)\/([a-z0-9-]+)\/sheet\/(\d{4}-\d{2}-\d{2})$/
-const TOKEN = /(?:^|; )waxbill-session=([\w-]+)/
 
 /**
  * The order sheet without a framework: node:http for the request, pg for the same statements on a pool of the same size,
  * react-dom/server for the same page. It has no routes but this one, no headers but the needed, no log.
  */
-const pool = new pg.Pool({ connectionString: process.env.DATABASE_URL, options: "-c role=waxbill_app", max: 10 })
+const pool = openPool()
 
 const server = createServer(async (request, response) => {
 	try {
 		const path = request.url ?? ""
-		const [, producerSlug, storeSlug, day] = PATH.exec(path) ?? []
-		const [, token] = TOKEN.exec(request.headers.cookie ?? "") ?? []
-		if (!producerSlug || !storeSlug || !day || !token) return void response.writeHead(404).end()
-		const tokenHash = createHash("sha256").update(token).digest("hex")
-		const asked = { tokenHash, producerSlug, storeSlug, day, now: new Date() }
-		const rows = await readRows(pool, asked)
-		if (!rows) return void response.writeHead(404).end()
-		const html = renderSheet(await sheetOf(rows, asked), {
-			path,
-			params: { producer: producerSlug, store: storeSlug, day },
-		})
+		const [, producer, store, day] = PATH.exec(path) ?? []
+		const asked = askedOf({ producer, store, day }, request.headers.cookie)
+		const rows = asked && (await readRows(pool, asked))
+		if (!rows || !producer || !store || !day) return void response.writeHead(404).end()
+		const html = renderSheet(await sheetOf(rows, asked), { path, params: { producer, store, day } })
 		response.writeHead(200, { "Content-Type": "text/html; charset=utf-8" }).end(html)
 	} catch (error) {
 		console.error(error)

@@ -14,6 +14,8 @@ export default defineConfig({
 		outDir: ".waxbill/bench/build/node",
 		emptyOutDir: true,
 		sourcemap: true,
-		rollupOptions: { input: { bare: here("reference-bare.tsx"), minimal: here("reference-minimal.ts") } },
+		rollupOptions: {
+			input: { bare: here("reference-bare.tsx"), minimal: here("reference-minimal.ts"), services: here("services.ts") },
+		},
 	},
 })

@@ -1,6 +1,7 @@
 import { readFileSync } from "node:fs"
 import type pg from "pg"
 import { addDays, type Day, dayInZone } from "~/domain/calendar"
+import { CULLS } from "~/domain/lots/count-harvest"
 import { ribbonStart } from "~/services/orders/find-fortnight.server"
 
 /** Whose sheet is asked for, and of which day. */
@@ -10,10 +11,7 @@ export type Asked = { tokenHash: string; producerSlug: string; storeSlug: string
 type Row = any
 
 /** The rows of one sheet by what they are of. */
-export type SheetRows = Record<
-	"rounds" | "terms" | "prices" | "cases" | "entries" | "usual" | "ownLines" | "toShare",
-	Row[]
-> & {
+export type SheetRows = Record<"rounds" | "terms" | "prices" | "entries" | "usual" | "ownLines" | "toShare", Row[]> & {
 	who: Row
 	today: Day
 	from: Day
@@ -30,6 +28,7 @@ export async function readRows(pool: pg.Pool, asked: Asked): Promise<SheetRows |
 	const client = await pool.connect()
 	const facts: Record<string, unknown> = {
 		last_orders: 5,
+		culls: CULLS,
 		token_hash: asked.tokenHash,
 		producer_slug: asked.producerSlug,
 		store_slug: asked.storeSlug,
@@ -68,7 +67,6 @@ export async function readRows(pool: pg.Pool, asked: Asked): Promise<SheetRows |
 		const terms = await rowsOfNext()
 		const prices = await rowsOfNext()
 		facts.product_ids = prices.map((row) => row.id)
-		const cases = await rowsOfNext()
 		const entries = await rowsOfNext()
 		const usual = await rowsOfNext()
 		const ownLines = await rowsOfNext()
@@ -76,7 +74,7 @@ export async function readRows(pool: pg.Pool, asked: Asked): Promise<SheetRows |
 		// The half-filled sheet: the bench's store has none.
 		await rowsOfNext()
 		await rowsOfNext()
-		return { who, today, from, rounds, terms, prices, cases, entries, usual, ownLines, toShare }
+		return { who, today, from, rounds, terms, prices, entries, usual, ownLines, toShare }
 	} finally {
 		client.release()
 	}

@@ -1,7 +1,8 @@
 import { randomUUID } from "node:crypto"
 import { type Day, timeLeftWords } from "~/domain/calendar"
 import { cutoffSoonWords } from "~/domain/delivery/last-orders"
-import type { SupplyKind } from "~/domain/promise/free-to-promise"
+import { caseCentsAfter } from "~/domain/pricing/price-in-force"
+import { canServe, type PromisedQuantity, type Supply } from "~/domain/promise/free-to-promise"
 import { findBuyFrame } from "~/routes/buy/frame.server"
 import type { loadSheet } from "~/routes/buy/sheet.server"
 import { deliveryDayOn } from "~/services/delivery/find-delivery-days.server"
@@ -60,7 +61,7 @@ export async function sheetOf(rows: SheetRows, { day, now, producerSlug, storeSl
 				lastCases: casesOn(lastOn, row.id),
 				usualCases: usual.get(row.id) ?? 0,
 				orderedCases: casesOn(day, row.id),
-				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && supply.on <= day),
+				mayAsk: outlook.supplies.some((supply) => supply.quantity > 0 && canServe(supply, day)),
 			}
 		}),
 		orders: ordersOf(ownLines.filter((line) => line.deliveryOn === day)),
@@ -82,23 +83,14 @@ function roundsOf({ rounds }: SheetRows) {
 	}
 }
 
-function outlooksOf({ cases, entries }: SheetRows): Map<string, ProductOutlook> {
-	type Mutable = {
-		supplies: { on: Day; quantity: number; kind: SupplyKind }[]
-		promises: { on: Day; quantity: number }[]
-		reserve: number
-		piecesPerCase: number
-	}
-	const outlooks = new Map<string, Mutable>(
-		cases.map((row) => [
-			row.id,
-			{ supplies: [], promises: [], reserve: row.reserve_pieces, piecesPerCase: row.pieces_per_case },
-		]),
-	)
-	for (const { product_id, kind, on, pieces } of entries) {
-		const outlook = outlooks.get(product_id)
-		if (kind === "promised") outlook?.promises.push({ on, quantity: pieces })
-		else outlook?.supplies.push({ on, quantity: pieces, kind })
+function outlooksOf({ entries }: SheetRows): Map<string, ProductOutlook> {
+	type Growing = ProductOutlook & { supplies: Supply[]; promises: PromisedQuantity[] }
+	const outlooks = new Map<string, Growing>()
+	for (const { productId, piecesPerCase, reserve, kind, on, until, pieces } of entries) {
+		const outlook: Growing = outlooks.get(productId) ?? { supplies: [], promises: [], reserve, piecesPerCase }
+		outlooks.set(productId, outlook)
+		if (kind === "promised") outlook.promises.push({ on, quantity: pieces })
+		else if (kind) outlook.supplies.push({ on, until: until ?? undefined, quantity: pieces, kind })
 	}
 	return outlooks
 }
@@ -126,7 +118,11 @@ function productOf(row: Row) {
 		breakFamily: row.break_family,
 		breaks: row.min_cases.map((minCases: number, index: number) => ({
 			minCases,
-			caseCents: row.case_cents[index] ?? 0,
+			caseCents: caseCentsAfter(
+				{ caseCents: row.case_cents[index] ?? 0, poundCents: row.pound_cents[index] ?? null },
+				{ pieceNetGrams: row.piece_net_grams, piecesPerCase: row.pieces_per_case },
+				row.off,
+			).caseCents,
 		})),
 	}
 }

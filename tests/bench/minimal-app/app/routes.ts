@@ -1,3 +1,3 @@
-import { index, type RouteConfig } from "@react-router/dev/routes"
+import { index, type RouteConfig, route } from "@react-router/dev/routes"
 
-export default [index("page.tsx")] satisfies RouteConfig
+export default [index("page.tsx"), route("buy/:producer/:store/sheet/:day", "reading-page.tsx")] satisfies RouteConfig

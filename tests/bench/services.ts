@@ -1,0 +1,21 @@
+import { makeDueOrders } from "~/services/standing-orders/make-due-orders.server"
+import { measureLogger, measureSeasons } from "./services/seasons"
+import { measureSharing } from "./services/sharing"
+
+/** Measures the product's own services without HTTP: `services.js <what> <facts as JSON>` prints what it found as JSON. */
+const [what, text = "{}"] = process.argv.slice(2)
+const facts = JSON.parse(text)
+const measures: Record<string, () => Promise<unknown>> = {
+	sharing: measureSharing,
+	seasons: () => measureSeasons(facts),
+	logger: () => measureLogger(facts),
+	standing: async () => {
+		const began = performance.now()
+		const { made } = await makeDueOrders({ producerId: facts.producerId, now: new Date(facts.now) })
+		return { made, ms: performance.now() - began }
+	},
+}
+const measure = measures[what ?? ""]
+if (!measure) throw new Error(`nothing is called ${what}`)
+console.log(JSON.stringify(await measure()))
+process.exit(0)
