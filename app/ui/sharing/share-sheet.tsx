@@ -122,10 +122,10 @@ function Supply(
 			</p>
 			<Form method="get" className="share-suppose no-print" preventScrollReset>
 				<input type="hidden" name="rule" value={rule} />
+				<span aria-hidden="true">What if so many cases were ready</span>
 				<QuantityField
 					name="suppose"
 					label="What if so many cases were ready"
-					showLabel
 					defaultValue={suppose}
 					placeholder={String(supply)}
 					error={supposed.error}
