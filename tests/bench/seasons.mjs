@@ -89,12 +89,11 @@ function statementsOf(size, ownerEmail) {
 			from generate_series(0, ${Math.ceil(supers / 10) - 1}) n`,
 		`insert into supers (producer_id, id, hive_id, product_id, set_on, level, state, off_on, finished_pieces, harvest_id)
 			select ${producer}, pg_temp.id('super', n), pg_temp.id('hive', n / 10), pg_temp.id('product', n % ${PRODUCTS}),
-				current_date - 90, 1 + n % 10, case when n < ${onHives} then 'on' else 'off' end,
-				case when n < ${onHives} then null else current_date - 20 - n % ${DAYS - 90} end,
-				case when n < ${onHives} then null else 36 end,
-				case when n < ${onHives} then null else pg_temp.id('harvest', n % ${lots}) end
-			from generate_series(0, ${supers - 1}) n`,
-		`update supers set set_on = off_on - 40 where producer_id = ${producer} and state = 'off'`,
+				coalesce(off_on, current_date) - 40, 1 + n % 10, case when off_on is null then 'on' else 'off' end,
+				off_on, case when off_on is not null then 36 end,
+				case when off_on is not null then pg_temp.id('harvest', n % ${lots}) end
+			from generate_series(0, ${supers - 1}) n,
+				lateral (select case when n >= ${onHives} then current_date - 20 - n % ${DAYS - 90} end as off_on) s`,
 		`insert into super_checks (producer_id, id, super_id, checked_on, filled_percent, capped_percent, sections)
 			select ${producer}, pg_temp.id('check', n * ${CHECKS_OF_A_SUPER} + c), pg_temp.id('super', n),
 				s.set_on + 2 * c, 5 * c, 4 * c, repeat('3', 40)

@@ -3,7 +3,7 @@ import { type Claim, exactShares, type SharingRule, shareOut } from "~/domain/sh
 import { medianOf } from "./timing"
 
 const RULES: readonly SharingRule[] = ["equal-shares", "in-proportion", "equal-shortfall"]
-const SIZES = [2_500, 10_000, 40_000]
+const SIZES = [5_000, 10_000, 20_000]
 const SOLVED = 10_000
 
 /** Claims that differ in all that counts, from a fixed sequence, so that every run shares out the same. */
@@ -50,7 +50,7 @@ export async function measureSharing() {
 			ms: SIZES.map((count) => {
 				const claims = make(count)
 				const supply = share === 0 ? supplyFor(claims) : Math.floor(count * 20 * share)
-				return medianOf(9, () => shareOut({ supply, claims, rule }))
+				return medianOf(3, () => shareOut({ supply, claims, rule }))
 			}),
 		})),
 	)
@@ -67,7 +67,7 @@ export async function measureSharing() {
 			const found = (columns[`x${index}`] as { Primal: number } | undefined)?.Primal ?? Number.NaN
 			if (!(Math.abs(found - share) < 1e-4)) throw new Error(`${rule}: HiGHS gives ${found} where we give ${share}`)
 		}
-		return { rule, ms: medianOf(9, () => exactShares(supply, claims, rule)), solverMs }
+		return { rule, ms: medianOf(3, () => exactShares(supply, claims, rule)), solverMs }
 	})
 	return { sizes: SIZES, times, solved }
 }
