@@ -49,7 +49,9 @@ export async function measureCrop({ database, web, cookie, folder, env, ownerEma
 
 function sharingRows({ sizes, times, solved, solvedClaims }, say) {
 	for (const { rule, ms, solverMs } of solved) {
-		say(`Exact shares of ${solvedClaims} claims, ${rule}: ${ms.toFixed(1)} ms, HiGHS ${solverMs.toFixed(0)} ms for the same`)
+		say(
+			`Exact shares of ${solvedClaims} claims, ${rule}: ${ms.toFixed(1)} ms, HiGHS ${solverMs.toFixed(0)} ms for the same`,
+		)
 	}
 	const full = sizes.indexOf(10_000)
 	return times.map(({ rule, of, ms }) => {
