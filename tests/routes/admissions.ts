@@ -148,6 +148,7 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/price-list-csv": { loader: OFFICE },
 	"routes/desk/price-list-pdf": { loader: OFFICE },
 	"routes/desk/price-new": { loader: OFFICE, action: OFFICE },
+	"routes/desk/price-special": { loader: OFFICE, action: OFFICE },
 	"routes/desk/price-upload": { loader: OFFICE, action: OFFICE },
 	// People are the owner's alone.
 	"routes/desk/people": { loader: "desk: owner", action: "desk: owner", post: { fields: { intent: "invite" } } },

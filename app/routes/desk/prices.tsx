@@ -48,6 +48,7 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 				lead="What a case costs in each price tier, and from how many cases of its family it costs less."
 				action={
 					<div className="flex flex-wrap items-center gap-3">
+						<Link to={`${page}/special`}>Own prices and promotions</Link>
 						<Link to={`${page}/upload`}>Upload a list</Link>
 						<ButtonLink variant="primary" to={`${page}/new`}>
 							Set a price

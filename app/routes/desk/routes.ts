@@ -57,6 +57,7 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/prices", "routes/desk/prices.tsx"),
 	route("desk/:producer/prices/new", "routes/desk/price-new.tsx"),
 	route("desk/:producer/prices/upload", "routes/desk/price-upload.tsx"),
+	route("desk/:producer/prices/special", "routes/desk/price-special.tsx"),
 	route("desk/:producer/prices/:tier.csv", "routes/desk/price-list-csv.ts"),
 	route("desk/:producer/prices/:tier.pdf", "routes/desk/price-list-pdf.ts"),
 	route("desk/:producer/people", "routes/desk/people.tsx"),
