@@ -9,7 +9,7 @@ import { legible } from "./legible"
 import { column, paper } from "./paper"
 
 /** What a printed price list says. Money is cents for a case; a break stands beside its least number of cases. */
-export type PriceListProps = {
+type PriceListProps = {
 	yard: { name: string; address: string; email: string; phone: string }
 	forName: string
 	day: Day

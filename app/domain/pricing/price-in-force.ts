@@ -14,7 +14,7 @@ export type DatedPrice = {
 }
 
 /** So much off between two days, both included, in hundredths of a percent. */
-export type Promotion = { basisPoints: number; startsOn: Day; endsOn: Day }
+type Promotion = { basisPoints: number; startsOn: Day; endsOn: Day }
 
 /**
  * Which of the dated prices of one product hold on `day`: of each break the latest that has begun, unless its last day is

@@ -2,7 +2,7 @@ import { sql } from "drizzle-orm"
 import { readProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 
-export type OwnPrice = {
+type OwnPrice = {
 	id: string
 	storeName: string
 	code: string
@@ -14,7 +14,7 @@ export type OwnPrice = {
 	validUntil: Day | null
 }
 
-export type ListedPromotion = {
+type ListedPromotion = {
 	id: string
 	name: string
 	code: string
@@ -27,7 +27,7 @@ export type ListedPromotion = {
 }
 
 /** What departs from the tiers, as far as it holds today or later, and what can be chosen for more of it. */
-export type OwnPrices = {
+type OwnPrices = {
 	own: OwnPrice[]
 	promotions: ListedPromotion[]
 	stores: { id: string; name: string; tierId: string }[]
