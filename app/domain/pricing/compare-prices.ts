@@ -24,7 +24,7 @@ export type NewPrice = { tierId: string; productId: string; minCases: number; ce
 export type PriceChange = NewPrice & { oldCents: number | null; kind: "new" | "changed" | "unchanged" }
 
 /** The figure that a price is named by: a pound's where it is by weight, else a case's. */
-export function namedCents(price: { caseCents: number; poundCents: number | null }): number {
+function namedCents(price: { caseCents: number; poundCents: number | null }): number {
 	return price.poundCents ?? price.caseCents
 }
 
