@@ -68,7 +68,7 @@ export default function StockTakeResult({ loaderData, params }: Route.ComponentP
 						<th scope="col" className="num">
 							Counted
 						</th>
-						<th scope="col" className="pr-4! desk:pr-8!">
+						<th scope="col" className="pl-4! pr-4! desk:pr-8!">
 							Posted
 						</th>
 					</tr>
@@ -93,7 +93,7 @@ export default function StockTakeResult({ loaderData, params }: Route.ComponentP
 								{line.counted}
 								<span className="note block desk:hidden">of {line.ledger}</span>
 							</td>
-							<td className="pr-4! desk:pr-8!">
+							<td className="pl-4! pr-4! desk:pr-8!">
 								{line.counted === line.ledger
 									? "agreed"
 									: line.counted < line.ledger
