@@ -42,7 +42,9 @@ export default function OrderAnswer(props: Props) {
 			</Title>
 			<Lead>
 				{answeredBy} answered.{" "}
-				{answer === "accepted" ? "The order is changed as below." : "The order stands as it was confirmed, without this:"}
+				{answer === "accepted"
+					? "The order is changed as below."
+					: "The order stands as it was confirmed, without this:"}
 			</Lead>
 			<ChangeTable {...props} />
 			<Button href={orderUrl} words="Open the order" />

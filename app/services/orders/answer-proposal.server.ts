@@ -95,7 +95,7 @@ async function close(
 }
 
 /** Takes the letters of a proposal out of the outbox that have not gone; answers whether any had. */
-export async function dropProposalLetters(tx: Tx, { producerId, id }: Proposal): Promise<boolean> {
+async function dropProposalLetters(tx: Tx, { producerId, id }: Proposal): Promise<boolean> {
 	const isLetter = and(eq(outboxMails.producerId, producerId), eq(outboxMails.onceKey, proposalKey(id)))
 	await tx.select({ id: outboxMails.id }).from(outboxMails).where(isLetter).for("update")
 	await tx.delete(outboxMails).where(and(isLetter, isNull(outboxMails.sentAt)))

@@ -75,7 +75,16 @@ export function SeasonPicture({ name, weeks }: { name: string; weeks: readonly S
 
 const wantedOf = ({ commitment, standing, single }: ShownWeek) => commitment + standing + single
 
-function Week({ week, x, y, isNamed }: { week: ShownWeek; x: number; y: (cases: number) => number; isNamed: boolean }) {
+type WeekProps = {
+	week: ShownWeek
+	x: number
+	y: (cases: number) => number
+	isNamed: boolean
+	/** Of short weeks in a row the first says the word, so that the figures of the others have room. */
+	isFirstShort: boolean
+}
+
+function Week({ week, x, y, isNamed, isFirstShort }: WeekProps) {
 	const { commitment, standing, single, short, weekOn } = week
 	const wanted = wantedOf(week)
 	const parts = [
