@@ -1,5 +1,5 @@
 import type { ReactNode } from "react"
-import { Form, redirect } from "react-router"
+import { Form, Link, redirect } from "react-router"
 import { fullDay, instantAt, timeWords, type Weekday, weekdayName } from "~/domain/calendar"
 import { termsWords } from "~/domain/invoicing/terms"
 import { formatMoney } from "~/domain/money"
@@ -98,7 +98,12 @@ export default function Details({ loaderData: { frame, details, lettersOff, emai
 							))}
 				</Fact>
 				<Fact label="Delivery">{deliveryWords(details.delivery)}</Fact>
-				<Fact label="Price list">{details.tierName}</Fact>
+				<Fact label="Price list">
+					{details.tierName}.{" "}
+					<Link to="../prices" relative="path">
+						Your prices
+					</Link>
+				</Fact>
 				<Fact label="Invoices are">{termsWords(details.terms)}</Fact>
 				<Fact label="Resale certificate">
 					{resaleCertificateUntil ? `on file, good until ${fullDay(resaleCertificateUntil)}` : "none on file"}

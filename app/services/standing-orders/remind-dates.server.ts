@@ -5,14 +5,15 @@ import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
 import { env } from "~/platform/env.server"
 import { queueMail } from "~/services/mail/queue-mail.server"
 import { findPlacingFacts } from "~/services/orders/find-placing-facts.server"
+import { findPeopleOfStores, type StorePerson } from "~/services/orders/order-people.server"
 import { findStorePrices } from "~/services/pricing/find-store-prices.server"
 import { findAllDates } from "./find-all-dates.server"
 
 const A_DAY = 24 * 60 * 60 * 1000
 
 /**
- * Writes to the person who set a standing order, a day before the last orders of each of its dates: what comes, and where
- * to change that one date. Once for a date, however often this runs; none for a date that is skipped or asks nothing, nor
+ * Writes to the people of a store who want to be reminded, a day before the last orders of each date of its standing
+ * order: what comes, and where to change that one date. Once for a date, however often this runs; none for a date that is skipped or asks nothing, nor
  * for one that closed before the standing order was reminded of. Returns how many letters were queued.
  */
 export function remindDates(query: { producerId: string; now: Date }): Promise<{ reminded: number }> {
@@ -37,7 +38,9 @@ export function remindDates(query: { producerId: string; now: Date }): Promise<{
 			near.map((one) => one.onceKey),
 		)
 		const due = near.filter((one) => !sent.has(one.onceKey))
-		for (const one of due) await remind(tx, producerId, one)
+		const storeIds = due.map(({ standing }) => standing.storeId)
+		const people = await findPeopleOfStores(tx, { producerId, storeIds, kind: "reminders" })
+		for (const one of due) await remind(tx, producerId, { ...one, people: people.get(one.standing.storeId) ?? [] })
 		return { reminded: due.length }
 	})
 }
@@ -54,10 +57,11 @@ type Reminder = Pick<Awaited<ReturnType<typeof findAllDates>>[number], "standing
 	date: { ruleOn: string; deliveryOn: string; cutoffAt: Date }
 	onceKey: string
 	asked: readonly { productId: string; cases: number }[]
+	people: readonly StorePerson[]
 }
 
-async function remind(tx: Tx, producerId: string, { standing, schedule, date, onceKey, asked }: Reminder) {
-	const { storeId, createdBy } = standing
+async function remind(tx: Tx, producerId: string, { standing, schedule, date, onceKey, asked, people }: Reminder) {
+	const { storeId } = standing
 	const facts = await findPlacingFacts(tx, { producerId, storeId, idempotencyKey: standing.id })
 	const productIds = asked.map((line) => line.productId)
 	const products = await findStorePrices(tx, { producerId, storeId, today: schedule.today, productIds })
@@ -67,19 +71,16 @@ async function remind(tx: Tx, producerId: string, { standing, schedule, date, on
 		cases: asked.find((line) => line.productId === product.productId)?.cases ?? 0,
 	}))
 	if (lines.length === 0) return
-	await queueMail(tx, {
-		producerId,
-		to: createdBy.email,
-		template: "standing-order-reminder",
-		onceKey,
-		props: {
-			yard: facts.yard,
-			sentTo: createdBy.email,
-			storeName: facts.storeName,
-			deliveryOn: date.deliveryOn,
-			changeUntil: cutoffWords(date.cutoffAt, schedule.zone),
-			lines,
-			dateUrl: `${env.BASE_URL}/buy/${facts.producerSlug}/${facts.storeSlug}/standing?date=${date.ruleOn}`,
-		},
-	})
+	const props = {
+		yard: facts.yard,
+		storeName: facts.storeName,
+		deliveryOn: date.deliveryOn,
+		changeUntil: cutoffWords(date.cutoffAt, schedule.zone),
+		lines,
+		dateUrl: `${env.BASE_URL}/buy/${facts.producerSlug}/${facts.storeSlug}/standing?date=${date.ruleOn}`,
+	}
+	for (const { email } of people) {
+		const template = "standing-order-reminder"
+		await queueMail(tx, { producerId, to: email, template, onceKey, props: { ...props, sentTo: email } })
+	}
 }
