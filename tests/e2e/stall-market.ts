@@ -89,7 +89,7 @@ const CARDS = {
 /** Holds a card to the stall's reader, by the form on the stand-in's page of readers; the phone's own page stays in front. */
 export async function presentCard(page: Page, card: keyof typeof CARDS): Promise<void> {
 	const readers = `${e2eAddresses().stripe}/readers`
-	expect(await (await page.request.get(readers)).text()).toContain(CARDS[card])
+	await expect.poll(async () => (await page.request.get(readers)).text()).toContain(CARDS[card])
 	const answer = await page.request.post(`${readers}/${READER}/present`, { form: { card } })
 	expect(answer.ok()).toBe(true)
 }
