@@ -16,8 +16,8 @@ const MINUTES_A_DAY = 1440
 const LEFT = 6
 
 /**
- * One lot that was called back after all of it had been sold, but for a few pieces in the cold room. Of the stores that
- * had it the first has answered, the second has not opened the notice, any other has only opened it.
+ * One lot that was called back after all of it had been sold, but for a few pieces in the cold room. The stores that had
+ * it were called, as no letter could be written to them; the first has opened its notice and answered.
  */
 export function planWithdrawal(
 	season: Season,
@@ -46,7 +46,6 @@ export function planWithdrawal(
 		],
 		lots: [{ producerId, withdrawalId, lotId: lot.id, piecesOut: lot.piecesOut }],
 		notices: lot.stores.map(({ storeId, pieces }, index) => {
-			const openedAt = index === 1 ? null : notAfter(now, minutesAfter(startedAt, 95 + 40 * index))
 			const isAnswered = index === 0
 			return {
 				producerId,
@@ -55,7 +54,7 @@ export function planWithdrawal(
 				storeId,
 				pieces,
 				tokenHash: chance.hash(),
-				openedAt,
+				openedAt: isAnswered ? notAfter(now, minutesAfter(startedAt, 95)) : null,
 				answeredAt: isAnswered ? notAfter(now, minutesAfter(startedAt, 130)) : null,
 				heldPieces: isAnswered ? Math.min(4, pieces) : null,
 				answerNote: isAnswered ? "Put aside behind the counter." : "",
