@@ -33,7 +33,7 @@ async function placeShortOrder(browser: Browser): Promise<string> {
 			.getByRole("textbox")
 	await casesOf("11").fill("3")
 	await casesOf("21").fill("99")
-	await rosa.getByLabel("Keep 99").check()
+	await rosa.getByLabel(/^Take \d+, wait for \d+ more$|^Wait on the list for 99$/).check()
 	await rosa.getByRole("button", { name: "Send order" }).click()
 	await expect(rosa.getByRole("status")).toContainText("has your order")
 	const number = /Order (\d+)/.exec((await rosa.getByRole("heading", { level: 1 }).textContent()) ?? "")?.[1]
