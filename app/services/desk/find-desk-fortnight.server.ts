@@ -8,6 +8,7 @@ import {
 } from "~/services/delivery/find-delivery-days.server"
 import { caseStrips } from "~/services/orders/cases-on-day.server"
 import { ribbonStart } from "~/services/orders/find-fortnight.server"
+import { promiseDay } from "~/services/orders/find-most-cases.server"
 import { findOutlooks } from "~/services/promise/find-outlooks.server"
 import { findOpenOrders } from "./find-open-orders.server"
 import { findShortages } from "./shortages.server"
@@ -42,7 +43,9 @@ export function findDeskFortnight(query: {
 		const days = fortnight(from)
 		const deliveries = new Map(deliveryDaysOf(schedule, 14, from).map((day) => [day.on, day]))
 		const outlooks = await findOutlooks(tx, { producerId, today })
-		const orders = await findOpenOrders(tx, { producerId, states: ["placed", "confirmed"] })
+		const open = await findOpenOrders(tx, { producerId, states: ["placed", "confirmed"] })
+		// What is short on a day is told by the orders of that day: those of the weeks after it need no working out.
+		const orders = open.filter(({ deliveryOn }) => days.includes(promiseDay(deliveryOn, today)))
 		const shortages = findShortages({ orders, outlooks, today })
 		const ahead = days.filter((on) => on >= today && deliveries.has(on))
 		const free = new Map(ahead.map((on) => [on, 0]))
