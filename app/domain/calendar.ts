@@ -22,12 +22,19 @@ const MONTH_NAMES = [
 	"December",
 ] as const
 
-/** Whether `text` is a day that exists, written "YYYY-MM-DD". */
+const DAY = /^(\d{4})-(\d{2})-(\d{2})$/
+
+/** Whether `text` is a day that exists, written "YYYY-MM-DD". Asked of every day that is reckoned with: no date is made. */
 export function isDay(text: string): boolean {
-	const match = /^(\d{4})-(\d{2})-(\d{2})$/.exec(text)
-	if (!match) return false
-	const at = new Date(`${text}T00:00:00Z`)
-	return !Number.isNaN(at.getTime()) && at.toISOString().slice(0, 10) === text
+	const [, year, month, date] = DAY.exec(text) ?? []
+	return year !== undefined && Number(date) >= 1 && Number(date) <= daysInMonth(Number(year), Number(month))
+}
+
+/** By the Gregorian calendar, as ISO 8601 has it; 0 for a month that there is not. */
+function daysInMonth(year: number, month: number): number {
+	if (month === 2) return year % 4 === 0 && (year % 100 !== 0 || year % 400 === 0) ? 29 : 28
+	if (month < 1 || month > 12) return 0
+	return month === 4 || month === 6 || month === 9 || month === 11 ? 30 : 31
 }
 
 /** Sorts days, the earlier first. */

@@ -79,7 +79,7 @@ with p as (
 		l.best_before_on as until, sum(b.pieces)::int as pieces
 	from lots l
 	join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
-	where l.producer_id = :producer_id and l.product_id in (select id from p) and l.state in ('released', 'held')
+	where l.producer_id = :producer_id and l.product_id = any(:product_ids::uuid[]) and l.state in ('released', 'held')
 		and l.best_before_on >= :today and l.grade <> :culls
 		and b.place in ('cold-room', 'ready') and b.place_ref = '00000000-0000-0000-0000-000000000000' and b.pieces > 0
 	group by 1, 2, 3, 4
@@ -88,14 +88,14 @@ with p as (
 		case s.crop_figure when 'likely' then e.likely_pieces else e.low_pieces end
 	from expected_supplies e
 	left join producer_settings s on s.producer_id = e.producer_id
-	where e.producer_id = :producer_id and e.product_id in (select id from p) and e.expected_on >= :today
+	where e.producer_id = :producer_id and e.product_id = any(:product_ids::uuid[]) and e.expected_on >= :today
 		and case s.crop_figure when 'likely' then e.likely_pieces else e.low_pieces end > 0
 	union all
 	select ol.product_id, 'promised', greatest(o.delivery_on, :today::date), null,
 		sum(coalesce(ol.given_cases, case when ol.is_to_share then ol.promised_cases else ol.asked_cases end) * ol.pieces_per_case)::int
 	from orders o
 	join order_lines ol on ol.producer_id = o.producer_id and ol.order_id = o.id
-	where o.producer_id = :producer_id and ol.product_id in (select id from p) and o.state in ('placed', 'confirmed')
+	where o.producer_id = :producer_id and ol.product_id = any(:product_ids::uuid[]) and o.state in ('placed', 'confirmed')
 	group by 1, 3
 )
 select p.id as "productId", p.pieces_per_case as "piecesPerCase", p.reserve_pieces as reserve,

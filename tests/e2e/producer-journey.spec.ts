@@ -35,7 +35,7 @@ async function placeShortOrder(browser: Browser): Promise<string> {
 	await casesOf("21").fill("99")
 	await rosa.getByLabel(/^Take \d+, wait for \d+ more$|^Wait on the list for 99$/).check()
 	await rosa.getByRole("button", { name: "Send order" }).click()
-	await expect(rosa.getByRole("status")).toContainText("has your order")
+	await expect(rosa.getByRole("status").filter({ hasText: "has your order" })).toBeVisible()
 	const number = /Order (\d+)/.exec((await rosa.getByRole("heading", { level: 1 }).textContent()) ?? "")?.[1]
 	await rosa.context().close()
 	if (!number) throw new Error("the page names the order")

@@ -74,6 +74,8 @@ export const stockBalances = pgTable(
 			foreignColumns: [lots.producerId, lots.id],
 		}),
 		index("stock_balances_by_place").on(t.producerId, t.place, t.placeRef),
+		// Most places of most lots are empty by now: what lies somewhere is found without them.
+		index("stock_balances_on_hand").on(t.producerId, t.place, t.lotId).where(sql`pieces > 0`),
 		check("stock_balances_not_negative", sql`${t.pieces} >= 0`),
 	],
 )

@@ -13,6 +13,7 @@ import { LotPlaces } from "~/ui/trace/lot-places"
 import { MarginLinks } from "~/ui/trace/margin-links"
 import { PLACE_WORDS } from "~/ui/trace/place-words"
 import { firstStep, missingWords } from "~/ui/trace/release-words"
+import { superWords } from "~/ui/trace/super-words"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/lot"
 import { DeskBook } from "./desk-book"
@@ -168,7 +169,7 @@ function factsOf(lot: LoaderData["lot"], desk: string): Fact[] {
 		{ name: "Yard", fact: lot.yard },
 		{ name: "Colour", fact: pfundTenths === null ? "" : `${colourByPfund(pfundTenths)}, ${pfundTenths / 10} mm Pfund` },
 		{ name: "Moisture", fact: moistureTenths === null ? "" : `${moistureTenths / 10} %` },
-		{ name: "Supers", fact: lot.supers.map(({ hive, yard }) => `hive ${hive}, ${yard}`).join("; ") },
+		{ name: "Supers", fact: superWords(lot.supers) },
 		{ name: "Came from", fact: sources.length > 0 ? <Neighbours lots={sources} desk={desk} /> : null },
 		{ name: "Went into", fact: made.length > 0 ? <Neighbours lots={made} desk={desk} /> : null },
 	]

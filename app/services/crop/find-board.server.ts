@@ -181,7 +181,7 @@ async function findAsked(
 			select l.product_id, sum(b.pieces) as pieces, sum(b.pieces) filter (where l.state = 'held') as held
 			from lots l join stock_balances b on b.producer_id = l.producer_id and b.lot_id = l.id
 			where l.producer_id = ${producerId} and l.state in ('released', 'held') and l.best_before_on >= ${today}
-				and b.place in ('cold-room', 'ready')
+				and b.place in ('cold-room', 'ready') and b.pieces > 0
 			group by 1
 		)
 		select p.id as "productId", p.pieces_per_case as "piecesPerCase", coalesce(a.pieces, 0)::int as "askedPieces",

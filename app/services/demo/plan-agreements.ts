@@ -113,7 +113,7 @@ function changedDate({ producerId, today }: Season, { standing, catalogue }: Pla
 
 /** A question and its answer about one order, and a change that the store accepted on another. */
 function wordsOnOrders({ producerId, chance, userId, scenario }: Season, orders: readonly OrderOfSeason[]) {
-	const sent = orders.filter((order) => order.sentAt !== null && order.lines.length > 0)
+	const sent = orders.filter((order) => order.sentAt && order.lines.length > 0 && order.store.buyerId)
 	const [asked, changed] = [last(sent), last(sent.slice(0, -1))]
 	const desk = userId(scenario.deskEmail)
 	const message = (side: "store" | "desk", body: string, minutes: number) => ({

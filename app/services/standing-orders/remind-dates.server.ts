@@ -3,10 +3,9 @@ import { type Tx, withProducer } from "~/db/transaction.server"
 import { cutoffWords } from "~/domain/delivery/last-orders"
 import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
 import { env } from "~/platform/env.server"
-import { queueMail } from "~/services/mail/queue-mail.server"
-import { findPlacingFacts } from "~/services/orders/find-placing-facts.server"
-import { findPeopleOfStores, type StorePerson } from "~/services/orders/order-people.server"
-import { findStorePrices } from "~/services/pricing/find-store-prices.server"
+import { queueMails } from "~/services/mail/queue-mails.server"
+import { findPeopleOfStores } from "~/services/orders/order-people.server"
+import { findYard, letterHead } from "~/services/producers/find-yard.server"
 import { findAllDates } from "./find-all-dates.server"
 
 const A_DAY = 24 * 60 * 60 * 1000
@@ -38,9 +37,7 @@ export function remindDates(query: { producerId: string; now: Date }): Promise<{
 			near.map((one) => one.onceKey),
 		)
 		const due = near.filter((one) => !sent.has(one.onceKey))
-		const storeIds = due.map(({ standing }) => standing.storeId)
-		const people = await findPeopleOfStores(tx, { producerId, storeIds, kind: "reminders" })
-		for (const one of due) await remind(tx, producerId, { ...one, people: people.get(one.standing.storeId) ?? [] })
+		if (due.length > 0) await queueMails(tx, producerId, await lettersOf(tx, producerId, due))
 		return { reminded: due.length }
 	})
 }
@@ -57,30 +54,67 @@ type Reminder = Pick<Awaited<ReturnType<typeof findAllDates>>[number], "standing
 	date: { ruleOn: string; deliveryOn: string; cutoffAt: Date }
 	onceKey: string
 	asked: readonly { productId: string; cases: number }[]
-	people: readonly StorePerson[]
 }
 
-async function remind(tx: Tx, producerId: string, { standing, schedule, date, onceKey, asked, people }: Reminder) {
-	const { storeId } = standing
-	const facts = await findPlacingFacts(tx, { producerId, storeId, idempotencyKey: standing.id })
-	const productIds = asked.map((line) => line.productId)
-	const products = await findStorePrices(tx, { producerId, storeId, today: schedule.today, productIds })
-	const lines = products.map((product) => ({
-		productName: product.name,
-		productNote: [product.detail, `case of ${product.piecesPerCase}`].filter(Boolean).join(", "),
-		cases: asked.find((line) => line.productId === product.productId)?.cases ?? 0,
-	}))
-	if (lines.length === 0) return
-	const props = {
-		yard: facts.yard,
-		storeName: facts.storeName,
-		deliveryOn: date.deliveryOn,
-		changeUntil: cutoffWords(date.cutoffAt, schedule.zone),
-		lines,
-		dateUrl: `${env.BASE_URL}/buy/${facts.producerSlug}/${facts.storeSlug}/standing?date=${date.ruleOn}`,
+/** One letter to each person for each date that still asks for something that is sold; three statements for all. */
+async function lettersOf(tx: Tx, producerId: string, due: readonly Reminder[]) {
+	const storeIds = [...new Set(due.map(({ standing }) => standing.storeId))]
+	const people = await findPeopleOfStores(tx, { producerId, storeIds, kind: "reminders" })
+	const yard = letterHead(await findYard(tx, producerId))
+	const stores = await findSold(tx, producerId, due)
+	return due.flatMap(({ standing, schedule, date, onceKey, asked }) => {
+		const store = stores.get(standing.storeId)
+		const lines = asked.flatMap(({ productId, cases }) => {
+			const product = store?.products.get(productId)
+			return product ? { productName: product.name, productNote: product.note, cases } : []
+		})
+		if (!store || lines.length === 0) return []
+		return (people.get(standing.storeId) ?? []).map(({ email }) => ({
+			to: email,
+			template: "standing-order-reminder" as const,
+			onceKey,
+			props: {
+				yard,
+				sentTo: email,
+				storeName: store.name,
+				deliveryOn: date.deliveryOn,
+				changeUntil: cutoffWords(date.cutoffAt, schedule.zone),
+				lines,
+				dateUrl: `${env.BASE_URL}/buy/${store.producerSlug}/${store.slug}/standing?date=${date.ruleOn}`,
+			},
+		}))
+	})
+}
+
+type Store = {
+	name: string
+	slug: string
+	producerSlug: string
+	products: Map<string, { name: string; note: string }>
+}
+
+/** The stores of these dates, and what of their lines is sold to them: active, and with a price of the store or its tier. */
+async function findSold(tx: Tx, producerId: string, due: readonly Reminder[]): Promise<Map<string, Store>> {
+	const pairs = due.flatMap(({ standing, asked }) => asked.map(({ productId }) => [standing.storeId, productId]))
+	const { rows } = await tx.execute<
+		Omit<Store, "products"> & { storeId: string; productId: string; productName: string; note: string }
+	>(sql`
+		select distinct s.id as "storeId", s.name, s.slug, y.slug as "producerSlug", p.id as "productId",
+			p.name as "productName", concat_ws(', ', nullif(p.detail, ''), 'case of ' || p.pieces_per_case) as note
+		from unnest(${sql.param(pairs.map(([storeId]) => storeId))}::uuid[],
+			${sql.param(pairs.map(([, productId]) => productId))}::uuid[]) as asked(store_id, product_id)
+		join stores s on s.producer_id = ${producerId} and s.id = asked.store_id
+		join producers y on y.id = s.producer_id
+		join products p on p.producer_id = s.producer_id and p.id = asked.product_id and p.is_active
+		where exists (select from prices r
+				where r.producer_id = s.producer_id and r.tier_id = s.tier_id and r.product_id = p.id)
+			or exists (select from store_prices o
+				where o.producer_id = s.producer_id and o.store_id = s.id and o.product_id = p.id)`)
+	const stores = new Map<string, Store>()
+	for (const { storeId, productId, productName, note, ...store } of rows) {
+		const found = stores.get(storeId) ?? { ...store, products: new Map() }
+		found.products.set(productId, { name: productName, note })
+		stores.set(storeId, found)
 	}
-	for (const { email } of people) {
-		const template = "standing-order-reminder"
-		await queueMail(tx, { producerId, to: email, template, onceKey, props: { ...props, sentTo: email } })
-	}
+	return stores
 }

@@ -9,6 +9,6 @@ const WORDS: Record<ProbePlace, string> = {
 /** Where a probe can be, with what is taken off for it. */
 export const PROBE_OPTIONS = PROBE_PLACES.map((value) => {
 	const allowance = coolingAllowance(value)
-	const taken = allowance === 0 ? "" : ` (the first ${hoursWords(allowance)} do not count)`
+	const taken = allowance === 0 ? "" : ` (less ${hoursWords(allowance)})`
 	return { value, label: `${WORDS[value]}${taken}` }
 })

@@ -1,9 +1,9 @@
 import { type ReactNode, useEffect, useMemo, useRef, useState } from "react"
-import { Form, Link, useNavigation } from "react-router"
+import { Form, useNavigation } from "react-router"
 import { type Day, monthDay } from "~/domain/calendar"
 import type { UnmatchedRow } from "~/domain/orders/read-columns"
 import type { DeliveryTerms } from "~/domain/pricing/price-order"
-import { Button } from "~/ui/forms/button"
+import { Button, ButtonLink } from "~/ui/forms/button"
 import { MendRows } from "./mend-rows"
 import { OrderTable } from "./order-table"
 import {
@@ -206,7 +206,11 @@ function SheetChoices({ isChange, showsLeast, products, action, path, isEmpty, s
 	const hadSome = products.some((product) => product.lastCases > 0 && product.mayAsk)
 	return (
 		<div className="grid justify-items-start gap-1">
-			{isEmpty && hadSome && !isChange && !action && <Link to={`${path}?last`}>As last time</Link>}
+			{isEmpty && hadSome && !isChange && !action && (
+				<ButtonLink variant="plain" size="small" to={`${path}?last`}>
+					As last time
+				</ButtonLink>
+			)}
 			{!showsLeast && (
 				<Button variant="plain" size="small" name="intent" value="least">
 					Least you would take

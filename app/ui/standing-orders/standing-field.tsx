@@ -46,8 +46,8 @@ export function InsteadField({ product, values, errors }: Omit<StandingFieldProp
 				name={name}
 				type="text"
 				autoComplete="off"
-				className="input w-24!"
-				placeholder="Nothing else"
+				className="input w-25! px-2! desk:w-32!"
+				placeholder="none"
 				aria-label={`If ${product.name} is short, numbers of up to two products to take instead`}
 				aria-invalid={error ? true : undefined}
 				aria-describedby={describedBy(error ? `${id}-error` : undefined)}

@@ -62,7 +62,9 @@ export function StandingTable({
 						<th scope="col" className="no">
 							No.
 						</th>
-						<th scope="col">Product</th>
+						<th scope="col" className="product">
+							Product
+						</th>
 						<th scope="col" className="num">
 							Usual,
 							<br />

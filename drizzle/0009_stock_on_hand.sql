@@ -1,0 +1,1 @@
+CREATE INDEX "stock_balances_on_hand" ON "stock_balances" USING btree ("producer_id","place","lot_id") WHERE pieces > 0;
