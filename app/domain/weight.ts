@@ -28,6 +28,11 @@ export function weightWords(grams: number): string {
 	return poundsText(Math.round(grams / GRAMS_PER_OUNCE) * 4)
 }
 
+/** A weight that was weighed, in both units: "9 lb 12 oz (4,422 g)". Throws RangeError on a negative or fractional number of grams. */
+export function exactWeightWords(grams: number): string {
+	return `${poundsText(Math.round((grams * 4) / GRAMS_PER_OUNCE))} (${grams.toLocaleString("en-US")} g)`
+}
+
 /**
  * The whole grams to store and print for a label of `ounces` (quarters at the finest), rounded down, so that the ounces
  * stay the larger declaration and the one that is verified: 12 oz is 340 g. Throws RangeError on anything but quarters.

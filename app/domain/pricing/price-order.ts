@@ -1,5 +1,5 @@
-/** What a case costs from `minCases` up. */
-export type CaseBreak = { minCases: number; caseCents: number }
+/** What a case costs from `minCases` up; an estimate where `poundCents`, the price of a pound, is set. */
+export type CaseBreak = { minCases: number; caseCents: number; poundCents?: number | null }
 
 /** One line to price. */
 export type PriceLine = {
@@ -27,6 +27,8 @@ export type PricedLine = {
 	cases: number
 	pieces: number
 	caseCents: number
+	/** Set where it is priced by weight: `caseCents` is then an estimate. */
+	poundCents: number | null
 	lineCents: number
 	/** Which break applies, counted from 0 by rising `minCases`; the first also where the family is below it. */
 	breakIndex: number
@@ -87,6 +89,7 @@ function priceLine(line: PriceLine, familyCases: number): PricedLine & { askedCe
 		cases,
 		pieces: cases * line.piecesPerCase,
 		caseCents: active.caseCents,
+		poundCents: active.poundCents ?? null,
 		lineCents: cases * active.caseCents,
 		breakIndex,
 		nextBreak: next

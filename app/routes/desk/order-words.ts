@@ -9,6 +9,7 @@ type Refusal =
 	| { reason: "nothing-changed" | "open-already" | "not-told" | "no-such-proposal" }
 	| { reason: "answered-already"; state: string }
 	| { reason: "change-lines"; refused: unknown[] }
+	| { reason: "weights"; refused: unknown[] }
 	| { reason: "lots-too-few"; productName: string; missingPieces: number }
 
 /** Why a step of an order was refused, as one sentence for the head of the page. */
@@ -46,6 +47,8 @@ export function orderProblem(number: number, refusal: Refusal): string {
 			return "There are not enough free cases for that any more. Nothing was changed."
 		case "lot-withdrawn":
 			return `Order ${number} was packed from lot ${refusal.lotCode}, which is withdrawn. It must not leave: cancel it and put its pieces back.`
+		case "weights":
+			return `Order ${number} has comb that is priced by weight. Weigh it on the packing page. Nothing was moved.`
 		case "lots-too-few":
 			return `${refusal.missingPieces} pieces of ${refusal.productName.toLowerCase()} are missing on the shelves: no released lot has them. Nothing was moved.`
 	}

@@ -7,12 +7,14 @@ import { sendOrder } from "~/services/orders/send-order.server"
 import { FilterLinks } from "~/ui/desk/filter-links"
 import { counted, countHead } from "~/ui/desk/number-words"
 import { PackingOrders, PickTable } from "~/ui/desk/packing-sheet"
+import { ErrorSummary } from "~/ui/forms/error-summary"
 import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/packing"
 import { DeskBook } from "./desk-book"
 import { findDeskFrame } from "./frame.server"
 import { orderProblem } from "./order-words"
+import { readWeights, weightProblems } from "./weigh-form"
 
 export const meta: Route.MetaFunction = () => [{ title: "Packing · Waxbill" }]
 
@@ -41,17 +43,23 @@ const step = z.object({
 export const action = guard(
 	admits.desk("owner", "desk", "packer"),
 	async ({ request, url }: Route.ActionArgs, { producer, person }) => {
-		const parsed = step.safeParse(Object.fromEntries(await request.formData()))
+		const form = await request.formData()
+		const parsed = step.safeParse(Object.fromEntries(form))
 		if (!parsed.success) throw data(null, { status: 400 })
 		const { intent, number, day } = parsed.data
 		const query = { producerId: producer.id, number, personId: person.id }
-		const answer = intent === "pack" ? await packOrder(query) : await sendOrder({ ...query, producer })
+		const { values, weighed, ...typed } = readWeights(form)
+		if (Object.keys(typed.errors).length > 0) return data({ number, values, ...typed, problem: null }, { status: 422 })
+		const answer = intent === "pack" ? await packOrder({ ...query, weighed }) : await sendOrder({ ...query, producer })
 		if (answer.ok) {
 			const done = `Order ${number} is ${intent === "pack" ? "packed" : "sent, and its invoice is on its way"}.`
 			throw redirect(`${url.pathname}?${new URLSearchParams({ day, done })}`)
 		}
 		if (answer.reason === "no-such-order") throw data(null, { status: 404 })
-		return data({ problem: orderProblem(number, answer) }, { status: 422 })
+		if (answer.reason === "weights") {
+			return data({ number, values, ...weightProblems(answer.refused, weighed), problem: null }, { status: 422 })
+		}
+		return data({ number, values, ...typed, problem: orderProblem(number, answer) }, { status: 422 })
 	},
 )
 
@@ -64,12 +72,18 @@ export default function Packing({ loaderData, actionData, params }: Route.Compon
 			: `${countHead(orders.length)} ${orders.length === 1 ? "stop" : "stops"}; ${packed === 0 ? "none packed yet" : `${counted(packed, "order")} packed`}.`
 	return (
 		<DeskBook frame={loaderData.frame}>
-			{actionData && (
+			{actionData?.problem && (
 				<MessageLine tone="problem" title="That could not be done.">
 					{actionData.problem}
 				</MessageLine>
 			)}
 			{!actionData && done && <MessageLine tone="saved" title={done} />}
+			{actionData && (
+				<ErrorSummary
+					title={`Order ${actionData.number} is not packed yet`}
+					errors={Object.entries(actionData.errors).map(([field, message]) => ({ field, message }))}
+				/>
+			)}
 			<SheetHead title={day ? `Packing for ${dayWords(day)}` : "Packing"} lead={lead} />
 			{days.length > 1 && (
 				<div className="no-print">
@@ -83,7 +97,7 @@ export default function Packing({ loaderData, actionData, params }: Route.Compon
 			) : (
 				<>
 					{picks.length > 0 && <PickTable picks={picks} lotsHref={`/desk/${params.producer}/lots`} />}
-					<PackingOrders orders={orders} day={day} />
+					<PackingOrders orders={orders} day={day} posted={actionData ?? null} />
 				</>
 			)}
 		</DeskBook>

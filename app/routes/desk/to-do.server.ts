@@ -11,6 +11,7 @@ import {
 	weekdayName,
 } from "~/domain/calendar"
 import { formatMoney } from "~/domain/money"
+import { lineAmount } from "~/domain/pricing/weighed-line"
 import { casesWords } from "~/domain/quantity"
 import type { OpenOrder } from "~/services/desk/find-open-orders.server"
 import type { HeldLot, OverdueInvoice, PackingDay, ToDo, WaitingDay } from "~/services/desk/find-to-do.server"
@@ -156,7 +157,7 @@ const sureCases = (line: OpenOrder["lines"][number]) =>
 	line.givenCases ?? (line.isToShare ? line.promisedCases : line.askedCases)
 
 function sureCents({ lines, deliveryCents }: OpenOrder): number {
-	return lines.reduce((sum, line) => sum + sureCases(line) * line.caseCents, deliveryCents)
+	return lines.reduce((sum, line) => sum + lineAmount({ ...line, cases: sureCases(line) }).cents, deliveryCents)
 }
 
 /** "5 cases, and 4 of basswood section to be shared out". */

@@ -5,7 +5,15 @@ import type { StandingLine } from "~/services/orders/find-most-cases.server"
 
 export type OpenState = "placed" | "confirmed" | "packed"
 
-export type OpenLine = StandingLine & { code: string; productName: string; caseCents: number }
+export type OpenLine = StandingLine & {
+	code: string
+	productName: string
+	caseCents: number
+	/** Set where the line is priced by weight: `caseCents` is an estimate until `weighedGrams` is there. */
+	poundCents: number | null
+	weighedGrams: number | null
+	pieceNetGrams: number
+}
 
 /** An order that has not left yet, with its lines by code. */
 export type OpenOrder = {
@@ -34,7 +42,8 @@ export async function findOpenOrders(
 			o.delivery_cents as "deliveryCents", l.id as "lineId", l.product_id as "productId",
 			l.asked_cases as "askedCases", l.given_cases as "givenCases", l.is_to_share as "isToShare",
 			l.promised_cases as "promisedCases",
-			l.pieces_per_case as "piecesPerCase", l.case_cents as "caseCents", p.code, p.name as "productName"
+			l.pieces_per_case as "piecesPerCase", l.case_cents as "caseCents",
+			l.pound_cents as "poundCents", l.weighed_grams as "weighedGrams", p.piece_net_grams as "pieceNetGrams", p.code, p.name as "productName"
 		from orders o
 		join stores s on s.producer_id = o.producer_id and s.id = o.store_id
 		join order_lines l on l.producer_id = o.producer_id and l.order_id = o.id

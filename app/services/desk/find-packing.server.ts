@@ -6,6 +6,7 @@ import { findOpenOrders, type OpenOrder } from "./find-open-orders.server"
 
 /** A line to pack; `lots` are those packed, or those to take while it is only confirmed. */
 export type PackingLine = {
+	id: string
 	code: string
 	productName: string
 	cases: number
@@ -13,6 +14,8 @@ export type PackingLine = {
 	lots: { code: string; pieces: number }[]
 	/** Pieces that no released lot can give. */
 	missingPieces: number
+	/** Where it is priced by weight: the price of a pound, what its pieces weigh by their label, and what was weighed. */
+	byWeight: { poundCents: number; usualGrams: number; weighedGrams: number | null } | null
 }
 
 export type PackingOrder = {
@@ -118,13 +121,20 @@ function packingLine(
 		order.state === "packed" ? (packed.get(line.id) ?? []) : [...proposed].map(([code, pieces]) => ({ code, pieces }))
 	const pieces = piecesOf(line)
 	return {
+		id: line.id,
 		code: line.code,
 		productName: line.productName,
 		cases: line.givenCases ?? 0,
 		pieces,
 		lots,
 		missingPieces: pieces - lots.reduce((sum, lot) => sum + lot.pieces, 0),
+		byWeight: weightOf(line, pieces),
 	}
+}
+
+function weightOf({ poundCents, weighedGrams, pieceNetGrams }: Line, pieces: number): PackingLine["byWeight"] {
+	if (poundCents === null) return null
+	return { poundCents, usualGrams: pieces * pieceNetGrams, weighedGrams }
 }
 
 /** The lots that fill each line that is packed, by line id. */

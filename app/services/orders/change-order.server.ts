@@ -95,7 +95,7 @@ async function writeChange(
 	await tx.execute(sql`delete from order_lines where producer_id = ${producerId} and order_id = ${order.id}`)
 	await tx.execute(sql`
 		insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, promised_cases, least_cases,
-			case_cents, pieces_per_case)
+			case_cents, pound_cents, pieces_per_case)
 		select ${producerId}::uuid, ${order.id}::uuid, line.* from ${lineRows(lines, priced)} as line`)
 	const changes = lineChanges(order, lines)
 	await recordChange(tx, {

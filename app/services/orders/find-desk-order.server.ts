@@ -29,6 +29,9 @@ export type DeskOrderLine = {
 	/** Of a line to be shared out: the cases that are sure already. */
 	promisedCases: number
 	caseCents: number
+	/** Set where it is priced by weight: `caseCents` is an estimate until `weighedGrams` is there. */
+	poundCents: number | null
+	weighedGrams: number | null
 	piecesPerCase: number
 	/** The most that can be given now; all that was given once it is decided. */
 	mostCases: number
@@ -119,6 +122,8 @@ async function findLines(
 			isToShare: orderLines.isToShare,
 			promisedCases: orderLines.promisedCases,
 			caseCents: orderLines.caseCents,
+			poundCents: orderLines.poundCents,
+			weighedGrams: orderLines.weighedGrams,
 			piecesPerCase: orderLines.piecesPerCase,
 		})
 		.from(orderLines)

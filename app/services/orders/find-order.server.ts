@@ -16,6 +16,9 @@ export type OrderLine = {
 	/** Of a line to be shared out: the cases that are sure already. */
 	promisedCases: number
 	caseCents: number
+	/** Set where it is priced by weight: `caseCents` is an estimate until `weighedGrams` is there. */
+	poundCents: number | null
+	weighedGrams: number | null
 	piecesPerCase: number
 	pieceNetGrams: number
 }
@@ -64,6 +67,8 @@ export function findOrder(query: {
 				isToShare: orderLines.isToShare,
 				promisedCases: orderLines.promisedCases,
 				caseCents: orderLines.caseCents,
+				poundCents: orderLines.poundCents,
+				weighedGrams: orderLines.weighedGrams,
 				piecesPerCase: orderLines.piecesPerCase,
 				pieceNetGrams: products.pieceNetGrams,
 			})

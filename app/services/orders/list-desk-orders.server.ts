@@ -2,6 +2,7 @@ import { sql } from "drizzle-orm"
 import { readProducer } from "~/db/transaction.server"
 import { type Day, isDay } from "~/domain/calendar"
 import type { OrderState } from "~/domain/orders/order-states"
+import { lineCentsSql } from "./line-cents.server"
 
 /** An order in the desk's list; money is what was asked, or given once that is decided, with delivery. */
 export type DeskOrderRow = {
@@ -47,8 +48,7 @@ export function listDeskOrders(query: {
 				sum(l.asked_cases)::int as "askedCases",
 				sum(coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end))::int as cases,
 				sum(case when l.is_to_share and l.given_cases is null then l.asked_cases - l.promised_cases else 0 end)::int as "toShareCases",
-				(page.delivery_cents + sum(
-					coalesce(l.given_cases, case when l.is_to_share then l.promised_cases else l.asked_cases end) * l.case_cents))::int as "totalCents"
+				(page.delivery_cents + sum(${lineCentsSql}))::int as "totalCents"
 			from page
 			join order_lines l on l.producer_id = ${producerId} and l.order_id = page.id
 			group by page.id, page.number, page.delivery_on, page.state, page.delivery_cents, page.name

@@ -56,7 +56,12 @@ export async function writeOrder(tx: Tx, order: NewOrder): Promise<{ id: string;
 }
 
 /** The parts of an order's lines with the price of the whole, line by line: `price.lines[i]` is that of `parts[i]`. */
-type PricedLines = { parts: LinePart<CheckedLine>[]; price: OrderPrice; caseCents: number[] }
+type PricedLines = {
+	parts: LinePart<CheckedLine>[]
+	price: OrderPrice
+	/** What each line costs: a case, and a pound where it is priced by weight. */
+	prices: { caseCents: number; poundCents: number | null }[]
+}
 
 /** Prices lines that have been checked, each at the break that all cases asked of its family reach. */
 export function priceLines(order: Pick<NewOrder, "lines" | "facts">): PricedLines {
@@ -65,19 +70,21 @@ export function priceLines(order: Pick<NewOrder, "lines" | "facts">): PricedLine
 		lines: parts.map(({ line, ...part }) => ({ ...line.product, ...part })),
 		terms: order.facts.terms,
 	})
-	const centsOf = new Map(price.lines.map((line) => [line.productId, line.caseCents]))
-	return { parts, price, caseCents: order.lines.map((line) => centsOf.get(line.product.productId) ?? 0) }
+	const priceOf = new Map(price.lines.map((line) => [line.productId, line]))
+	const prices = order.lines.map(({ product }) => priceOf.get(product.productId) ?? { caseCents: 0, poundCents: null })
+	return { parts, price, prices }
 }
 
 /** The lines as one set of rows, for a statement that writes them. */
-export function lineRows(lines: readonly CheckedLine[], { caseCents }: PricedLines) {
+export function lineRows(lines: readonly CheckedLine[], { prices }: PricedLines) {
 	return sql`unnest(
 		${sql.param(lines.map((line) => line.product.productId))}::uuid[],
 		${sql.param(lines.map((line) => line.cases))}::smallint[],
 		${sql.param(lines.map((line) => line.isToShare))}::boolean[],
 		${sql.param(lines.map((line) => line.promisedCases))}::smallint[],
 		${sql.param(lines.map((line) => line.leastCases))}::smallint[],
-		${sql.param(caseCents)}::integer[],
+		${sql.param(prices.map(({ caseCents }) => caseCents))}::integer[],
+		${sql.param(prices.map(({ poundCents }) => poundCents))}::integer[],
 		${sql.param(lines.map((line) => line.product.piecesPerCase))}::smallint[]
 	)`
 }
@@ -102,7 +109,7 @@ async function insertOrder(
 				${standing?.standingOrderId ?? null}, ${standing?.on ?? null}, ${order.idempotencyKey})
 		), lines as (
 			insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, promised_cases, least_cases,
-				case_cents, pieces_per_case)
+				case_cents, pound_cents, pieces_per_case)
 			select ${producerId}::uuid, ${id}::uuid, line.* from ${lineRows(lines, priced)} as line
 		), draft as (
 			delete from order_drafts

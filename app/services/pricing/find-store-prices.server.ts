@@ -93,12 +93,12 @@ export async function findStorePrices(
 		pieceNetGrams: row.piece_net_grams,
 		piecesPerCase: row.pieces_per_case,
 		breakFamily: row.break_family,
-		breaks: row.min_cases.map((minCases, index) => ({ minCases, caseCents: caseCentsOf(row, index) })),
+		breaks: row.min_cases.map((minCases, index) => ({ minCases, ...priceAt(row, index) })),
 	}))
 }
 
-function caseCentsOf(row: Row, index: number): number {
+function priceAt(row: Row, index: number): { caseCents: number; poundCents: number | null } {
 	const price = { caseCents: row.case_cents[index] ?? 0, poundCents: row.pound_cents[index] ?? null }
 	const sizes = { pieceNetGrams: row.piece_net_grams, piecesPerCase: row.pieces_per_case }
-	return caseCentsAfter(price, sizes, row.off).caseCents
+	return caseCentsAfter(price, sizes, row.off)
 }

@@ -7,7 +7,13 @@ import { findStorePrices, type StoreProduct } from "~/services/pricing/find-stor
 import type { PlannedLine } from "./plan-given"
 
 /** A line that was added to an order in place of what is missing of another. */
-export type AddedLine = { lineId: string; product: StoreProduct; cases: number; caseCents: number }
+export type AddedLine = {
+	lineId: string
+	product: StoreProduct
+	cases: number
+	caseCents: number
+	poundCents: number | null
+}
 
 /**
  * Adds to each order what stands in for what it does not get, at its store's price of today, with the break that the
@@ -28,11 +34,13 @@ export async function addInstead(
 	const rows = [...added].map(([lineId, one]) => ({ ...one, orderId: orderOf.get(lineId) as string }))
 	if (rows.length > 0) {
 		await tx.execute(sql`
-			insert into order_lines (producer_id, id, order_id, product_id, asked_cases, case_cents, pieces_per_case)
+			insert into order_lines (producer_id, id, order_id, product_id, asked_cases, case_cents, pound_cents,
+				pieces_per_case)
 			select ${query.producerId}::uuid, line.* from unnest(
 				${sql.param(rows.map((row) => row.lineId))}::uuid[], ${sql.param(rows.map((row) => row.orderId))}::uuid[],
 				${sql.param(rows.map((row) => row.product.productId))}::uuid[], ${sql.param(rows.map((row) => row.cases))}::smallint[],
 				${sql.param(rows.map((row) => row.caseCents))}::integer[],
+				${sql.param(rows.map((row) => row.poundCents))}::integer[],
 				${sql.param(rows.map((row) => row.product.piecesPerCase))}::smallint[]) as line`)
 	}
 	return added
@@ -61,7 +69,8 @@ async function priceInstead(
 		lines: products.map((one) => ({ ...one, cases: cases.get(one.productId) ?? 0 })),
 		terms: { minimumCents: 0, deliveryChargeCents: 0, freeAboveCents: null },
 	})
-	const caseCents = price.lines[products.indexOf(product)]?.caseCents
-	if (caseCents === undefined) return null
-	return { lineId: randomUUID(), product, cases: instead.cases, caseCents }
+	const priced = price.lines[products.indexOf(product)]
+	if (!priced) return null
+	const { caseCents, poundCents } = priced
+	return { lineId: randomUUID(), product, cases: instead.cases, caseCents, poundCents }
 }

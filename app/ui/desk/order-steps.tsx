@@ -2,7 +2,15 @@ import { Form, Link } from "react-router"
 import type { OrderState } from "~/domain/orders/order-states"
 import { Button } from "~/ui/forms/button"
 
-type Order = { number: number; state: OrderState; storeName: string; invoiceNumber: string | null; canUndo: boolean }
+type Order = {
+	number: number
+	state: OrderState
+	deliveryOn: string
+	storeName: string
+	invoiceNumber: string | null
+	canUndo: boolean
+	lines: readonly { poundCents: number | null; givenCases: number | null }[]
+}
 
 /** The next step of each state: its intent, and the words on its button. */
 const NEXT: Partial<Record<OrderState, { intent: string; words: string }>> = {
@@ -13,7 +21,10 @@ const NEXT: Partial<Record<OrderState, { intent: string; words: string }>> = {
 
 /** What can be done with an order now: the next step as the one filled button, and the ways back. */
 export function OrderSteps({ order, base }: { order: Order; base: string }) {
-	const next = NEXT[order.state]
+	const isToWeigh =
+		order.state === "confirmed" &&
+		order.lines.some(({ poundCents, givenCases }) => poundCents !== null && (givenCases ?? 0) > 0)
+	const next = isToWeigh ? undefined : NEXT[order.state]
 	const canCancel = order.state === "placed" || order.state === "confirmed" || order.state === "packed"
 	return (
 		<div className="grid content-start gap-3">
@@ -23,6 +34,11 @@ export function OrderSteps({ order, base }: { order: Order; base: string }) {
 						{next.words}
 					</Button>
 				</Form>
+			)}
+			{isToWeigh && (
+				<Link className="btn primary big" to={`${base}/packing?day=${order.deliveryOn}#order-${order.number}`}>
+					Weigh and pack it
+				</Link>
 			)}
 			{order.invoiceNumber && (
 				<Link className="btn" to={`${base}/invoices/${order.invoiceNumber}`}>

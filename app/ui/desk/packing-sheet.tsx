@@ -3,6 +3,7 @@ import { casesWords } from "~/domain/quantity"
 import { Button } from "~/ui/forms/button"
 import { LedgerGroup, LedgerRow } from "~/ui/layout/ledger"
 import { caseAndPieceWords } from "./number-words"
+import { WeighedPrice, WeighField, type WeighPosted } from "./weigh-field"
 
 type Pick = {
 	place: "ready" | "cold-room"
@@ -63,16 +64,30 @@ type PackingOrder = {
 	state: "confirmed" | "packed"
 	storeName: string
 	lines: readonly {
+		id: string
 		code: string
 		productName: string
 		cases: number
 		lots: readonly { code: string; pieces: number }[]
 		missingPieces: number
+		byWeight: { poundCents: number; usualGrams: number; weighedGrams: number | null } | null
 	}[]
 }
 
+/** What was typed for one order and refused. */
+type Posted = WeighPosted & { number: number }
+
 /** The orders of a day, each with what goes into it and its one next step; what is to pack comes before what is packed. */
-export function PackingOrders({ orders, day }: { orders: readonly PackingOrder[]; day: string }) {
+export function PackingOrders({
+	orders,
+	day,
+	posted,
+}: {
+	orders: readonly PackingOrder[]
+	day: string
+	posted: Posted | null
+}) {
+	const postedOf = (order: PackingOrder) => (posted?.number === order.number ? posted : null)
 	const toPack = orders.filter((order) => order.state === "confirmed")
 	const packed = orders.filter((order) => order.state === "packed")
 	return (
@@ -80,14 +95,20 @@ export function PackingOrders({ orders, day }: { orders: readonly PackingOrder[]
 			{toPack.length > 0 && (
 				<LedgerGroup when="To pack">
 					{toPack.map((order, index) => (
-						<OrderRow key={order.number} order={order} day={day} isFirst={index === 0} />
+						<OrderRow key={order.number} order={order} day={day} isFirst={index === 0} posted={postedOf(order)} />
 					))}
 				</LedgerGroup>
 			)}
 			{packed.length > 0 && (
 				<LedgerGroup when="Packed, to send">
 					{packed.map((order, index) => (
-						<OrderRow key={order.number} order={order} day={day} isFirst={toPack.length === 0 && index === 0} />
+						<OrderRow
+							key={order.number}
+							order={order}
+							day={day}
+							isFirst={toPack.length === 0 && index === 0}
+							posted={null}
+						/>
 					))}
 				</LedgerGroup>
 			)}
@@ -95,7 +116,18 @@ export function PackingOrders({ orders, day }: { orders: readonly PackingOrder[]
 	)
 }
 
-function OrderRow({ order, day, isFirst }: { order: PackingOrder; day: string; isFirst: boolean }) {
+function OrderRow({
+	order,
+	day,
+	isFirst,
+	posted,
+}: {
+	order: PackingOrder
+	day: string
+	isFirst: boolean
+	posted: Posted | null
+}) {
+	const form = `order-${order.number}`
 	const cases = order.lines.reduce((sum, line) => sum + line.cases, 0)
 	const isPacked = order.state === "packed"
 	const words = isPacked ? "Sent, issue the invoice" : "Packed"
@@ -104,7 +136,7 @@ function OrderRow({ order, day, isFirst }: { order: PackingOrder; day: string; i
 			name={order.storeName}
 			line={`Order ${order.number}, ${casesWords(cases)}`}
 			action={
-				<Form method="post" preventScrollReset>
+				<Form method="post" preventScrollReset id={form}>
 					<input type="hidden" name="number" value={order.number} />
 					<input type="hidden" name="day" value={day} />
 					<Button
@@ -131,9 +163,18 @@ function OrderRow({ order, day, isFirst }: { order: PackingOrder; day: string; i
 						{line.missingPieces > 0 && (
 							<span className="short font-semibold">{line.missingPieces} pieces are in no released lot</span>
 						)}
+						{line.byWeight && (
+							<LineWeight line={{ ...line, byWeight: line.byWeight }} {...{ form, isPacked, posted }} />
+						)}
 					</li>
 				))}
 			</ul>
 		</LedgerRow>
 	)
+}
+
+type LineWeightProps = Parameters<typeof WeighField>[0] & { isPacked: boolean }
+
+function LineWeight({ line, form, isPacked, posted }: LineWeightProps) {
+	return isPacked ? <WeighedPrice line={line} /> : <WeighField line={line} form={form} posted={posted} />
 }

@@ -1,5 +1,7 @@
 import { formatMoney, plainMoney } from "~/domain/money"
+import { lineAmount } from "~/domain/pricing/weighed-line"
 import { casesWords } from "~/domain/quantity"
+import { exactWeightWords } from "~/domain/weight"
 import { Totals, TotalsRow } from "~/ui/layout/sheet"
 import { FillStrip } from "~/ui/stock/fill-strip"
 
@@ -14,6 +16,9 @@ export type ShownLine = {
 	/** Of a line to be shared out: the cases that are sure already. */
 	promisedCases: number
 	caseCents: number
+	/** Set where it is priced by weight: `caseCents` is an estimate until `weighedGrams` is there. */
+	poundCents: number | null
+	weighedGrams: number | null
 	piecesPerCase: number
 }
 
@@ -21,6 +26,8 @@ export type ShownLine = {
 function sureCases(line: ShownLine): number {
 	return line.givenCases ?? (line.isToShare ? line.promisedCases : line.askedCases)
 }
+
+const sureAmount = (line: ShownLine) => lineAmount({ ...line, cases: sureCases(line) })
 
 const isOpenShare = (line: ShownLine) => line.isToShare && line.givenCases === null
 
@@ -47,6 +54,25 @@ function GivenCell({ line, isCancelled }: { line: ShownLine; isCancelled: boolea
 					{ state: "short", count: line.askedCases - line.givenCases },
 				]}
 			/>
+		</>
+	)
+}
+
+/** "Fancy, case of 8", and of comb priced by weight what it weighed, or that it is still to be weighed. */
+function lineFacts({ detail, piecesPerCase, poundCents, weighedGrams }: ShownLine): string {
+	const facts = [detail, `case of ${piecesPerCase}`]
+	if (poundCents !== null) {
+		facts.push(weighedGrams === null ? "priced when it is weighed" : `weighed ${exactWeightWords(weighedGrams)}`)
+	}
+	return facts.filter(Boolean).join(", ")
+}
+
+function SureAmount({ line }: { line: ShownLine }) {
+	const { cents, isEstimate } = sureAmount(line)
+	return (
+		<>
+			{isEstimate && <i>about </i>}
+			{plainMoney(cents)}
 		</>
 	)
 }
@@ -83,20 +109,28 @@ export function OrderLines({ lines, isCancelled }: { lines: readonly ShownLine[]
 						<td className="fig text-ink-faint max-desk:hidden">{line.code}</td>
 						<td className="max-desk:pl-4!">
 							<span className="name block text-body!">{line.name}</span>
-							<span className="note">{[line.detail, `case of ${line.piecesPerCase}`].filter(Boolean).join(", ")}</span>
+							<span className="note">{lineFacts(line)}</span>
 						</td>
 						<td className="num fig">{line.askedCases}</td>
 						<td className="num fig">
 							<GivenCell line={line} isCancelled={isCancelled} />
 						</td>
-						<td className="money max-desk:hidden">{plainMoney(line.caseCents)}</td>
+						<td className="money max-desk:hidden">
+							{line.poundCents === null ? (
+								plainMoney(line.caseCents)
+							) : (
+								<>
+									{plainMoney(line.poundCents)} <span className="note">a lb</span>
+								</>
+							)}
+						</td>
 						<td className="money pr-4! desk:pr-5!">
 							{isOpenShare(line) ? (
 								<>
 									<i>up to</i> {plainMoney(line.askedCases * line.caseCents)}
 								</>
 							) : (
-								plainMoney(sureCases(line) * line.caseCents)
+								<SureAmount line={line} />
 							)}
 						</td>
 					</tr>
@@ -110,14 +144,15 @@ export function OrderLines({ lines, isCancelled }: { lines: readonly ShownLine[]
 export function OrderSums({ lines, deliveryCents }: { lines: readonly ShownLine[]; deliveryCents: number }) {
 	const sum = (of: (line: ShownLine) => number) => lines.reduce((total, line) => total + of(line), 0)
 	const cases = sum(sureCases)
-	const goodsCents = sum((line) => sureCases(line) * line.caseCents)
+	const goodsCents = sum((line) => sureAmount(line).cents)
+	const isEstimate = lines.some((line) => sureAmount(line).isEstimate)
 	const sharedCases = sum((line) => (isOpenShare(line) ? line.askedCases - line.promisedCases : 0))
 	const sharedCents = sum((line) => (isOpenShare(line) ? (line.askedCases - line.promisedCases) * line.caseCents : 0))
 	return (
 		<Totals>
 			<TotalsRow
 				label={sharedCases > 0 ? `${casesWords(cases)} sure` : casesWords(cases)}
-				value={formatMoney(goodsCents)}
+				value={isEstimate ? `about ${formatMoney(goodsCents)}` : formatMoney(goodsCents)}
 			/>
 			{sharedCases > 0 && (
 				<TotalsRow label={`${casesWords(sharedCases)} to be shared out`} value={`up to ${formatMoney(sharedCents)}`} />
@@ -125,7 +160,7 @@ export function OrderSums({ lines, deliveryCents }: { lines: readonly ShownLine[
 			<TotalsRow label="Delivery" value={deliveryCents === 0 ? "free" : formatMoney(deliveryCents)} />
 			<TotalsRow
 				label={sharedCases > 0 ? "To pay, if all are met" : "To pay"}
-				value={formatMoney(goodsCents + sharedCents + deliveryCents)}
+				value={`${isEstimate ? "about " : ""}${formatMoney(goodsCents + sharedCents + deliveryCents)}`}
 				weight="sum"
 			/>
 		</Totals>

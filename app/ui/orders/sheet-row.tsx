@@ -24,6 +24,13 @@ type SheetRowProps = {
 	leastError: string | undefined
 }
 
+/** What it is, and of comb priced by weight what a pound costs: the price of a case is then about what it comes to. */
+function rowDetail({ product, line }: PricedRow): string {
+	const poundCents = product.breaks[line?.breakIndex ?? 0]?.poundCents ?? null
+	if (poundCents === null) return product.detail
+	return [product.detail, `about; ${plainMoney(poundCents)} a lb as weighed`].filter(Boolean).join(", ")
+}
+
 /** One product of the sheet: its prices, what is free of it, the field, and what that comes to. */
 function Row({ row, columns, today, isClosed, value, error, note, ...least }: SheetRowProps) {
 	const { product, line } = row
@@ -35,7 +42,7 @@ function Row({ row, columns, today, isClosed, value, error, note, ...least }: Sh
 		<OrderRow
 			no={product.code}
 			name={product.name}
-			detail={product.detail}
+			detail={rowDetail(row)}
 			pieces={product.piecesPerCase}
 			caseWeight={labelledTotalWords([{ labelledGrams: product.pieceNetGrams, pieces: product.piecesPerCase }])}
 			prices={columns.map((column, index) => ({

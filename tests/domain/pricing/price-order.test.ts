@@ -43,6 +43,7 @@ describe("an order on the order sheet", () => {
 		const [two] = priceOrder({ lines: [rounds(2)], terms }).lines
 		expect(two).toMatchObject({
 			caseCents: 11_400,
+			poundCents: null,
 			lineCents: 22_800,
 			pieces: 24,
 			breakIndex: 0,
