@@ -1,4 +1,6 @@
 import "./lib/node-version.mjs"
+import { rmSync } from "node:fs"
+import { join } from "node:path"
 import { ensureBuilt } from "./lib/build.mjs"
 import { supervise } from "./lib/crew.mjs"
 import { anyPort } from "./lib/ports.mjs"
@@ -17,7 +19,8 @@ await supervise(
 		const databaseUrl = process.env.TEST_DATABASE_URL ?? (await startTestCluster(crew))
 		await ensureBuilt()
 		const ports = await choosePorts(anyPort)
-		const env = productEnv({ databaseUrl, ports })
+		const env = { ...productEnv({ databaseUrl, ports }), TEST_CLOCK_FILE: join(testFolder, "clock") }
+		rmSync(env.TEST_CLOCK_FILE, { force: true })
 		await runBuilt("reset", "The database could not be emptied.", env)
 		await runBuilt("migrate", "The database could not be brought up to date.", env)
 		await runBuilt("seed", "The demo data could not be written.", env)

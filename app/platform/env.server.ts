@@ -60,6 +60,7 @@ export const envSchema = z.object({
 	),
 	PROCESSES: whole(1, 64, 1),
 	UNDO_SECONDS: whole(0, 3600, 120),
+	TEST_CLOCK_FILE: z.preprocess(unset, z.string().optional()),
 })
 
 /** The environment as the program uses it: `BASE_URL` is always an origin (no path, no slash at the end). */
@@ -102,9 +103,18 @@ function acrossVariables(record: Readonly<Record<string, string | undefined>>): 
 				faults.push("BASE_URL must begin with https:// in production, or sign-in cookies travel in the open")
 		}
 	}
+	if (unset(record.TEST_CLOCK_FILE) !== undefined && !isTryingThingsOut(record))
+		faults.push("TEST_CLOCK_FILE must be unset except on this machine and with STRIPE_API_BASE set: it moves the clock")
 	if (unset(record.STRIPE_API_BASE) !== undefined && record.STRIPE_SECRET_KEY?.includes("_live_"))
 		faults.push("STRIPE_API_BASE must be unset with a live STRIPE_SECRET_KEY, or the key goes to another server")
 	return faults
+}
+
+/** On this machine alone, and with a stand-in for payments: nobody's real orders or money are there. */
+function isTryingThingsOut(record: Readonly<Record<string, string | undefined>>): boolean {
+	const base = unset(record.BASE_URL) ?? "http://127.0.0.1"
+	const isHere = URL.canParse(String(base)) && LOOPBACK_HOSTS.includes(new URL(String(base)).hostname)
+	return isHere && unset(record.STRIPE_API_BASE) !== undefined
 }
 
 let parsed: Env | undefined

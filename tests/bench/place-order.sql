@@ -116,7 +116,7 @@ with placed as (
 		:standing_order_id, :standing_on, :idempotency_key)
 ), lines as (
 	insert into order_lines (producer_id, order_id, product_id, asked_cases, is_to_share, promised_cases, least_cases,
-		case_cents, pieces_per_case)
+		case_cents, pound_cents, pieces_per_case)
 	select :producer_id::uuid, :order_id::uuid, line.* from unnest(
 		:line_product_ids::uuid[],
 		:asked_cases::smallint[],
@@ -124,6 +124,7 @@ with placed as (
 		:promised_cases::smallint[],
 		:least_cases::smallint[],
 		:case_cents::integer[],
+		:pound_cents::integer[],
 		:pieces_per_case::smallint[]
 	) as line
 ), draft as (

@@ -97,6 +97,17 @@ describe("the environment", () => {
 		)
 	})
 
+	it("moves its clock only where nobody's real orders are", () => {
+		const refusal =
+			"TEST_CLOCK_FILE must be unset except on this machine and with STRIPE_API_BASE set: it moves the clock"
+		const clock = { ...complete, TEST_CLOCK_FILE: "/tmp/clock", STRIPE_API_BASE: "http://127.0.0.1:3003" }
+		const { STRIPE_API_BASE: _, ...withoutStandIn } = clock
+		const open = { ...clock, NODE_ENV: "production", BASE_URL: "https://orders.example.test" }
+		expect(faultsOf(clock)).toEqual([])
+		expect(faultsOf({ ...clock, NODE_ENV: "production", BASE_URL: "http://127.0.0.1:3000" })).toEqual([])
+		expect([faultsOf(open), faultsOf(withoutStandIn)]).toEqual([[refusal], [refusal]])
+	})
+
 	it("is explained in .env.example, each variable once and none besides", () => {
 		const text = readFileSync(new URL("../../../.env.example", import.meta.url), "utf8")
 		const names = [...text.matchAll(/^([A-Z_]+)=/gm)].map((match) => match[1])
