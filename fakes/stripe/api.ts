@@ -1,8 +1,10 @@
 import type { IncomingMessage, ServerResponse } from "node:http"
 import { setTimeout as pause } from "node:timers/promises"
+import { balanceEndpoints } from "./balance"
 import { chargeEndpoints } from "./charges"
 import { checkoutSessionEndpoints } from "./checkout-sessions"
 import { customerEndpoints } from "./customers"
+import { disputeEndpoints } from "./disputes"
 import { StripeRefusal } from "./errors"
 import { eventEndpoints } from "./event-endpoints"
 import { expand } from "./expand"
@@ -12,19 +14,27 @@ import { readBody, sendJson } from "./http"
 import { createIdempotency, fingerprintOf } from "./idempotency"
 import { newId } from "./ids"
 import { paymentIntentEndpoints } from "./payment-intents"
+import { paymentMethodEndpoints } from "./payment-methods"
+import { payoutEndpoints } from "./payouts"
 import { readerEndpoints } from "./readers"
 import { refundEndpoints } from "./refunds"
 import { createRouter } from "./router"
+import { setupIntentEndpoints } from "./setup-intents"
 import { strikes } from "./switches"
 
 const route = createRouter({
+	...balanceEndpoints,
 	...chargeEndpoints,
 	...checkoutSessionEndpoints,
 	...customerEndpoints,
+	...disputeEndpoints,
 	...eventEndpoints,
 	...paymentIntentEndpoints,
+	...paymentMethodEndpoints,
+	...payoutEndpoints,
 	...readerEndpoints,
 	...refundEndpoints,
+	...setupIntentEndpoints,
 })
 
 /** A call that ends without an answer, by the switch `dropNext`. */

@@ -22,6 +22,8 @@ const outcomes: Record<string, CardOutcome> = {
 	"378282246310005": { kind: "success" },
 	"4000002760003184": { kind: "authenticate" },
 	"4000000000000002": genericDecline,
+	// Can be kept, and is declined each time it is charged afterwards.
+	"4000000000000341": genericDecline,
 	"4000000000009995": declined("card_declined", "insufficient_funds", "Your card has insufficient funds."),
 	"4000000000000069": declined("expired_card", "expired_card", "Your card has expired."),
 	"4000000000000127": declined("incorrect_cvc", "incorrect_cvc", "Your card's security code is incorrect."),
@@ -44,6 +46,7 @@ const namedMethods: Record<string, string> = {
 	pm_card_chargeDeclinedExpiredCard: "4000000000000069",
 	pm_card_chargeDeclinedProcessingError: "4000000000000119",
 	pm_card_authenticationRequired: "4000002760003184",
+	pm_card_chargeCustomerFail: "4000000000000341",
 }
 
 /** The card number behind a test payment method such as `pm_card_visa`; undefined for any other name. */
@@ -54,6 +57,11 @@ export function numberOfMethod(name: string): string | undefined {
 /** What the test card with this number does; undefined for a number that is no test card, which is never taken. */
 export function outcomeOf(number: string): CardOutcome | undefined {
 	return outcomes[number]
+}
+
+/** Whether the bank of this test card lets it be kept for later; what comes of a later charge is another matter. */
+export function canBeKept(number: string): boolean {
+	return number === "4000000000000341" || outcomes[number]?.kind !== "decline"
 }
 
 /** Brand and last four digits, the only trace of a number that may be stored. */

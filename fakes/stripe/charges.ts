@@ -1,5 +1,7 @@
 import type Stripe from "stripe"
 import { z } from "zod"
+import { recordBalance } from "./balance"
+import type { BankAccount } from "./banks"
 import type { Card, CardOutcome } from "./cards"
 import { noSuch } from "./errors"
 import type { Fake } from "./fake"
@@ -8,9 +10,12 @@ import { page } from "./lists"
 import { expandable, paging, paramsOf, readParams } from "./params"
 import type { Endpoints } from "./router"
 
-/** How the card was given: typed on a page, or presented to a reader. */
-export type Presented = { card: Card; name: string | null; email: string | null; reader?: string }
-type Decline = Extract<CardOutcome, { kind: "decline" }>
+/** What is charged: a card that was typed on a page or presented to a reader, or an account at a bank. */
+export type Presented = { name: string | null; email: string | null } & (
+	| { card: Card; reader?: string }
+	| { bank: BankAccount }
+)
+export type Decline = Extract<CardOutcome, { kind: "decline" }>
 
 function typedCard(card: Card, amount: number): Stripe.Charge.PaymentMethodDetails.Card {
 	return {
@@ -61,6 +66,25 @@ function presentedCard(card: Card, amount: number, reader: string): Stripe.Charg
 	}
 }
 
+function debitedAccount(bank: BankAccount): Stripe.Charge.PaymentMethodDetails.UsBankAccount {
+	return {
+		account_holder_type: "company",
+		account_type: "checking",
+		bank_name: bank.bankName,
+		fingerprint: null,
+		last4: bank.last4,
+		payment_reference: null,
+		routing_number: bank.routingNumber,
+	}
+}
+
+function detailsOf(presented: Presented, amount: number): Stripe.Charge.PaymentMethodDetails {
+	if ("bank" in presented) return { type: "us_bank_account", us_bank_account: debitedAccount(presented.bank) }
+	const { card, reader } = presented
+	if (reader === undefined) return { type: "card", card: typedCard(card, amount) }
+	return { type: "card_present", card_present: presentedCard(card, amount, reader) }
+}
+
 function outcomeOf(decline: Decline | undefined): Stripe.Charge.Outcome {
 	return {
 		advice_code: null,
@@ -75,16 +99,17 @@ function outcomeOf(decline: Decline | undefined): Stripe.Charge.Outcome {
 }
 
 /**
- * Records one attempt to charge `intent`: succeeded (captured now, or held for capture if the intent says manual), or
- * failed when `decline` is given. Emits nothing: the caller knows in which order the events belong.
+ * Records one attempt to charge `intent`: succeeded (captured now, or held for capture if the intent says manual), failed
+ * when `decline` is given, or pending until the bank has answered when an account is debited. Emits nothing: the caller
+ * knows in which order the events belong.
  */
 export function recordCharge(
 	fake: Fake,
 	intent: Stripe.PaymentIntent,
 	presented: Presented,
+	method: string,
 	decline?: Decline,
 ): Stripe.Charge {
-	const { card, reader } = presented
 	const captured = !decline && intent.capture_method !== "manual"
 	const charge: Stripe.Charge = {
 		id: newId("ch"),
@@ -114,11 +139,8 @@ export function recordCharge(
 		outcome: outcomeOf(decline),
 		paid: !decline,
 		payment_intent: intent.id,
-		payment_method: newId("pm"),
-		payment_method_details:
-			reader === undefined
-				? { type: "card", card: typedCard(card, intent.amount) }
-				: { type: "card_present", card_present: presentedCard(card, intent.amount, reader) },
+		payment_method: method,
+		payment_method_details: detailsOf(presented, intent.amount),
 		receipt_email: intent.receipt_email,
 		receipt_number: null,
 		receipt_url: null,
@@ -129,11 +151,12 @@ export function recordCharge(
 		source_transfer: null,
 		statement_descriptor: null,
 		statement_descriptor_suffix: null,
-		status: decline ? "failed" : "succeeded",
+		status: decline ? "failed" : "bank" in presented ? "pending" : "succeeded",
 		transfer_data: null,
 		transfer_group: null,
 	}
 	fake.store.charges.set(charge.id, charge)
+	if (captured && charge.status === "succeeded") recordBalance(fake, charge)
 	return charge
 }
 

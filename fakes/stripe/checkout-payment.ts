@@ -1,7 +1,13 @@
 import type Stripe from "stripe"
+import { canBeKept, describeCard, outcomeOf } from "./cards"
+import type { Presented } from "./charges"
+import { type GivenAccount, methodOfAccount, startDebit } from "./debits"
+import { invalidRequest } from "./errors"
 import { fromPage } from "./events"
 import type { Fake } from "./fake"
 import { type Attempt, attempt, type GivenCard, openIntent, settleAuthentication } from "./payment-flow"
+import { recordMethod } from "./payment-methods"
+import { setUpMethod } from "./setup-intents"
 
 /** The payment intent of a session; made at the first try, as Stripe does. */
 function intentOf(fake: Fake, session: Stripe.Checkout.Session): Stripe.PaymentIntent {
@@ -13,18 +19,24 @@ function intentOf(fake: Fake, session: Stripe.Checkout.Session): Stripe.PaymentI
 		{
 			amount: session.amount_total ?? 0,
 			currency: session.currency ?? "usd",
-			allowedTypes: null,
+			allowedTypes: isByDebit(session) ? ["us_bank_account"] : null,
 			captureMethod: "automatic",
 			customer: typeof session.customer === "string" ? session.customer : null,
 			description: secret?.intentDescription ?? null,
 			metadata: { ...secret?.intentMetadata },
 			receiptEmail: null,
 			automatic: false,
+			futureUsage: secret?.futureUsage ?? null,
 		},
 		fromPage,
 	)
 	session.payment_intent = intent.id
 	return intent
+}
+
+/** Whether the session takes debits of an account; else it takes cards. */
+export function isByDebit(session: Stripe.Checkout.Session): boolean {
+	return session.allowed_payment_method_types?.[0] === "us_bank_account"
 }
 
 /** The address a session knows for its payer: its own, or the customer's; null when the page has to ask. */
@@ -33,9 +45,14 @@ export function knownEmail(fake: Fake, session: Stripe.Checkout.Session): string
 	return fake.store.customers.get(String(session.customer))?.email ?? null
 }
 
-function complete(fake: Fake, session: Stripe.Checkout.Session, email: string | null, name: string | null): void {
+function complete(
+	fake: Fake,
+	session: Stripe.Checkout.Session,
+	{ email, name }: { email: string | null; name: string | null },
+	paymentStatus: Stripe.Checkout.Session.PaymentStatus = "paid",
+): void {
 	session.status = "complete"
-	session.payment_status = "paid"
+	session.payment_status = paymentStatus
 	session.url = null
 	session.customer_details = {
 		address: null,
@@ -58,8 +75,41 @@ function complete(fake: Fake, session: Stripe.Checkout.Session, email: string | 
 export function paySession(fake: Fake, session: Stripe.Checkout.Session, card: GivenCard): Attempt {
 	const intent = intentOf(fake, session)
 	const result = attempt(fake, intent, card, fromPage)
-	if (result.kind === "paid") complete(fake, session, card.email, card.name)
+	if (result.kind === "paid") complete(fake, session, card)
 	return result
+}
+
+/** Debits the account typed on the page: the session is complete and unpaid until the bank has answered. */
+export function debitSession(fake: Fake, session: Stripe.Checkout.Session, account: GivenAccount): void {
+	const { presented, method } = methodOfAccount(fake, account)
+	startDebit(fake, intentOf(fake, session), presented, method, fromPage)
+	complete(fake, session, account, "unpaid")
+}
+
+function keep(fake: Fake, session: Stripe.Checkout.Session, presented: Presented, method: string): void {
+	const intent = setUpMethod(fake, {
+		method,
+		type: "bank" in presented ? "us_bank_account" : "card",
+		customer: String(session.customer),
+		metadata: { ...fake.store.sessionSecrets.get(session.id)?.setupMetadata },
+	})
+	session.setup_intent = intent.id
+	complete(fake, session, presented, "no_payment_required")
+}
+
+/** Keeps the account typed on the page of a session in the mode setup. */
+export function keepAccount(fake: Fake, session: Stripe.Checkout.Session, account: GivenAccount): void {
+	const { presented, method } = methodOfAccount(fake, account)
+	keep(fake, session, presented, method)
+}
+
+/** Keeps the card typed on the page of a session in the mode setup; refuses one whose bank would not have it kept. */
+export function keepCard(fake: Fake, session: Stripe.Checkout.Session, given: GivenCard): void {
+	const outcome = outcomeOf(given.number)
+	if (!outcome || !canBeKept(given.number)) throw invalidRequest("Your card was declined.", { code: "card_declined" })
+	const card = describeCard(given.number, given.expMonth, given.expYear)
+	const presented: Presented = { card, name: given.name, email: given.email }
+	keep(fake, session, presented, recordMethod(fake, presented, { card: outcome }))
 }
 
 /** The holder's answer on the authentication page, for an intent at requires_action; completes its session if it has one. */
@@ -69,8 +119,8 @@ export function answerAuthentication(
 	approved: boolean,
 ): Stripe.Checkout.Session | undefined {
 	const session = [...fake.store.sessions.values()].find((row) => row.payment_intent === intent.id)
-	const payer = fake.store.waitingCards.get(intent.id)
+	const payer = fake.store.waitingCards.get(intent.id)?.presented
 	settleAuthentication(fake, intent, approved, fromPage)
-	if (session && intent.status === "succeeded") complete(fake, session, payer?.email ?? null, payer?.name ?? null)
+	if (session && intent.status === "succeeded") complete(fake, session, payer ?? { email: null, name: null })
 	return session
 }

@@ -8,7 +8,7 @@ import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { lineItemSchema, makeLines } from "./line-items"
 import { page } from "./lists"
-import { expandable, integer, list, mergeMetadata, metadata, paging, paramsOf, readParams } from "./params"
+import { currency, expandable, integer, list, mergeMetadata, metadata, paging, paramsOf, readParams } from "./params"
 import { cancelIntent } from "./payment-intents"
 import type { Endpoints } from "./router"
 
@@ -17,9 +17,12 @@ const LONGEST = 24 * 60 * 60
 
 const createSchema = paramsOf<Stripe.Checkout.SessionCreateParams>()({
 	...expandable,
-	allowed_payment_method_types: list(z.literal("card")).optional(),
-	mode: z.literal("payment", "The payment fake knows the mode payment only"),
-	line_items: list(lineItemSchema),
+	allowed_payment_method_types: list(z.enum(["card", "us_bank_account"]))
+		.refine((types) => types.length === 1, "The payment fake knows one type a session")
+		.optional(),
+	currency: currency.optional(),
+	mode: z.enum(["payment", "setup"], "The payment fake knows the modes payment and setup"),
+	line_items: list(lineItemSchema).optional(),
 	success_url: z.url("Not a valid URL"),
 	cancel_url: z.url("Not a valid URL").optional(),
 	client_reference_id: z.string().max(200).optional(),
@@ -28,7 +31,14 @@ const createSchema = paramsOf<Stripe.Checkout.SessionCreateParams>()({
 	expires_at: integer.optional(),
 	locale: z.string().optional(),
 	metadata: metadata.optional(),
-	payment_intent_data: z.strictObject({ description: z.string().optional(), metadata: metadata.optional() }).optional(),
+	payment_intent_data: z
+		.strictObject({
+			description: z.string().optional(),
+			metadata: metadata.optional(),
+			setup_future_usage: z.literal("off_session").optional(),
+		})
+		.optional(),
+	setup_intent_data: z.strictObject({ metadata: metadata.optional() }).optional(),
 	submit_type: z.enum(["auto", "book", "donate", "pay"]).optional(),
 })
 const updateSchema = paramsOf<Stripe.Checkout.SessionUpdateParams>()({ ...expandable, metadata: metadata.optional() })
@@ -63,6 +73,20 @@ function checkExpiry(fake: Fake, asked: number | undefined): number {
 	return asked
 }
 
+/** Refuses a session that keeps a method and also sells something, or for nobody. */
+function checkSetup(given: z.infer<typeof createSchema>): void {
+	if (given.line_items) {
+		throw invalidRequest("You can not pass `line_items` in `setup` mode.", { param: "line_items" })
+	}
+	if (given.payment_intent_data) {
+		throw invalidRequest("You can not pass `payment_intent_data` in `setup` mode.", { param: "payment_intent_data" })
+	}
+	// Stripe makes a customer here when told to; this fake wants the one that the method is kept for.
+	if (given.customer === undefined) {
+		throw invalidRequest("Missing required param: customer.", { code: "parameter_missing", param: "customer" })
+	}
+}
+
 function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkout.Session {
 	if (given.customer !== undefined && given.customer_email !== undefined) {
 		throw invalidRequest("You may only specify one of these parameters: customer, customer_email.", {
@@ -72,7 +96,10 @@ function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkou
 	}
 	const customer = given.customer === undefined ? null : getCustomer(fake, given.customer, "customer")
 	const expiresAt = checkExpiry(fake, given.expires_at)
-	const { lines, total, currency } = makeLines(fake, given.line_items)
+	if (given.mode === "setup") checkSetup(given)
+	const made =
+		given.mode === "payment" ? makeLines(fake, given.line_items ?? []) : { lines: [], total: null, currency: "usd" }
+	const { lines, total } = made
 	const id = newId("cs_test", 40)
 	const session: Stripe.Checkout.Session = {
 		...blankSession,
@@ -80,10 +107,12 @@ function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkou
 		allowed_payment_method_types: given.allowed_payment_method_types ?? null,
 		amount_subtotal: total,
 		amount_total: total,
+		mode: given.mode,
+		payment_method_types: given.allowed_payment_method_types ?? ["card"],
 		cancel_url: given.cancel_url ?? null,
 		client_reference_id: given.client_reference_id ?? null,
 		created: fake.seconds(),
-		currency,
+		currency: made.currency,
 		customer: customer?.id ?? null,
 		customer_creation: customer ? null : "if_required",
 		customer_email: given.customer_email ?? null,
@@ -99,6 +128,8 @@ function create(fake: Fake, given: z.infer<typeof createSchema>): Stripe.Checkou
 		lines,
 		intentDescription: given.payment_intent_data?.description ?? null,
 		intentMetadata: mergeMetadata({}, given.payment_intent_data?.metadata),
+		futureUsage: given.payment_intent_data?.setup_future_usage ?? null,
+		setupMetadata: mergeMetadata({}, given.setup_intent_data?.metadata),
 	})
 	return session
 }

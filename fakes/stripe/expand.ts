@@ -12,6 +12,12 @@ function fetchById(store: Store, id: string): unknown {
 	if (prefix === "cus") return store.customers.get(id)
 	if (prefix === "pi") return store.intents.get(id)
 	if (prefix === "ch") return store.charges.get(id)
+	if (prefix === "pm") return store.methods.get(id)
+	if (prefix === "seti") return store.setupIntents.get(id)
+	if (prefix === "txn") return store.balanceTransactions.get(id)
+	if (prefix === "re") return store.refunds.get(id)
+	if (prefix === "du") return store.disputes.get(id)
+	if (prefix === "po") return store.payouts.get(id)
 	return undefined
 }
 

@@ -1,12 +1,11 @@
 import type Stripe from "stripe"
 import { type CardOutcome, describeCard, outcomeOf } from "./cards"
-import { type Presented, recordCharge } from "./charges"
+import { type Decline, type Presented, recordCharge } from "./charges"
 import { invalidRequest } from "./errors"
 import type { Cause } from "./events"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
-
-type Decline = Extract<CardOutcome, { kind: "decline" }>
+import { attachMethod, recordMethod } from "./payment-methods"
 
 /** What came of an attempt to pay. `message` is the sentence for the person with the card. */
 export type Attempt =
@@ -21,13 +20,15 @@ type IntentDraft = {
 	amount: number
 	currency: string
 	/** What the caller lets the payer use; null leaves it to Stripe, which for this fake means a card. */
-	allowedTypes: ("card" | "card_present")[] | null
+	allowedTypes: ("card" | "card_present" | "us_bank_account")[] | null
 	captureMethod: "automatic" | "manual"
 	customer: string | null
 	description: string | null
 	metadata: Record<string, string>
 	receiptEmail: string | null
 	automatic: boolean
+	/** Set when the method is kept for charges without its owner. */
+	futureUsage: "off_session" | null
 }
 
 /** A new payment intent that waits for a card; recorded and told of (payment_intent.created). */
@@ -69,7 +70,7 @@ export function openIntent(fake: Fake, draft: IntentDraft, cause: Cause): Stripe
 		processing: null,
 		receipt_email: draft.receiptEmail,
 		review: null,
-		setup_future_usage: null,
+		setup_future_usage: draft.futureUsage,
 		shipping: null,
 		source: null,
 		statement_descriptor: null,
@@ -84,8 +85,9 @@ export function openIntent(fake: Fake, draft: IntentDraft, cause: Cause): Stripe
 }
 
 /** Takes the money of an intent whose card is good: succeeded, or requires_capture when capture is manual. */
-function succeed(fake: Fake, intent: Stripe.PaymentIntent, presented: Presented, cause: Cause): void {
-	const charge = recordCharge(fake, intent, presented)
+function succeed(fake: Fake, intent: Stripe.PaymentIntent, presented: Presented, method: string, cause: Cause): void {
+	const charge = recordCharge(fake, intent, presented, method)
+	keepIfAsked(fake, intent, method, cause)
 	intent.latest_charge = charge.id
 	intent.payment_method = charge.payment_method
 	intent.last_payment_error = null
@@ -102,14 +104,21 @@ function succeed(fake: Fake, intent: Stripe.PaymentIntent, presented: Presented,
 	}
 }
 
+/** Attaches the method to the intent's customer when the intent says that it is kept. */
+export function keepIfAsked(fake: Fake, intent: Stripe.PaymentIntent, method: string, cause: Cause): void {
+	const customer = typeof intent.customer === "string" ? intent.customer : null
+	if (customer && intent.setup_future_usage === "off_session") attachMethod(fake, method, customer, cause)
+}
+
 function decline(
 	fake: Fake,
 	intent: Stripe.PaymentIntent,
 	presented: Presented,
+	method: string,
 	why: Decline,
 	cause: Cause,
 ): Attempt & { kind: "declined" } {
-	const charge = recordCharge(fake, intent, presented, why)
+	const charge = recordCharge(fake, intent, presented, method, why)
 	intent.latest_charge = charge.id
 	intent.status = "requires_payment_method"
 	intent.next_action = null
@@ -141,31 +150,52 @@ export function attempt(
 	if (!outcome) {
 		throw invalidRequest("Only Stripe's test card numbers are taken here.", { code: "incorrect_number" })
 	}
-	fake.store.waitingCards.delete(intent.id)
 	const card = describeCard(given.number, given.expMonth, given.expYear)
 	const presented: Presented = { card, name: given.name, email: given.email }
 	if (more.reader !== undefined) presented.reader = more.reader
-	if (outcome.kind === "decline") return decline(fake, intent, presented, outcome, cause)
+	const method = more.reader === undefined ? recordMethod(fake, presented, { card: outcome }) : newId("pm")
+	return chargeCard(fake, intent, { outcome, presented, method }, cause, more)
+}
+
+const mustAuthenticate: Decline = {
+	kind: "decline",
+	code: "authentication_required",
+	declineCode: "authentication_required",
+	message: "Your card was declined. This transaction requires authentication.",
+}
+
+/** Tries to pay `intent` with a card whose number is not at hand any more. `offSession`: its holder cannot be asked. */
+export function chargeCard(
+	fake: Fake,
+	intent: Stripe.PaymentIntent,
+	given: { outcome: CardOutcome; presented: Presented; method: string },
+	cause: Cause,
+	more: { reader?: string; returnTo?: string; offSession?: boolean } = {},
+): Attempt {
+	const { outcome, presented, method } = given
+	fake.store.waitingCards.delete(intent.id)
+	if (outcome.kind === "decline") return decline(fake, intent, presented, method, outcome, cause)
 	// A chip read by a reader is authenticated there and then.
 	if (outcome.kind === "success" || more.reader !== undefined) {
-		succeed(fake, intent, presented, cause)
+		succeed(fake, intent, presented, method, cause)
 		return { kind: "paid" }
 	}
+	if (more.offSession) return decline(fake, intent, presented, method, mustAuthenticate, cause)
 	const url = `${fake.url}/authenticate/${intent.id}`
 	intent.status = "requires_action"
-	intent.payment_method = newId("pm")
+	intent.payment_method = method
 	intent.next_action = { type: "redirect_to_url", redirect_to_url: { url, return_url: more.returnTo ?? null } }
-	fake.store.waitingCards.set(intent.id, { card, name: given.name, email: given.email })
+	fake.store.waitingCards.set(intent.id, { presented, method })
 	fake.events.emit("payment_intent.requires_action", intent, cause)
 	return { kind: "authenticate", url }
 }
 
 /** The card holder's answer on the authentication page. The intent must be at requires_action. */
 export function settleAuthentication(fake: Fake, intent: Stripe.PaymentIntent, approved: boolean, cause: Cause): void {
-	const presented = fake.store.waitingCards.get(intent.id)
+	const waiting = fake.store.waitingCards.get(intent.id)
 	fake.store.waitingCards.delete(intent.id)
-	if (approved && presented) {
-		succeed(fake, intent, presented, cause)
+	if (approved && waiting) {
+		succeed(fake, intent, waiting.presented, waiting.method, cause)
 		return
 	}
 	intent.status = "requires_payment_method"

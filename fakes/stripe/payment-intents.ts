@@ -1,9 +1,11 @@
 import type Stripe from "stripe"
 import { z } from "zod"
 import { checkAmount } from "./amounts"
+import { recordBalance } from "./balance"
 import { numberOfMethod } from "./cards"
 import { getCharge } from "./charges"
 import { getCustomer } from "./customers"
+import { startDebit } from "./debits"
 import { invalidRequest, noSuch, StripeRefusal, unexpectedState } from "./errors"
 import type { Cause } from "./events"
 import type { Fake } from "./fake"
@@ -21,14 +23,15 @@ import {
 	paramsOf,
 	readParams,
 } from "./params"
-import { attempt, openIntent } from "./payment-flow"
+import { type Attempt, attempt, chargeCard, openIntent } from "./payment-flow"
+import { keptMethod } from "./payment-methods"
 import type { Endpoints } from "./router"
 
 const confirmFields = { payment_method: z.string().optional(), return_url: z.string().optional() }
 const createSchema = paramsOf<Stripe.PaymentIntentCreateParams>()({
 	...expandable,
 	...confirmFields,
-	allowed_payment_method_types: list(z.enum(["card", "card_present"])).optional(),
+	allowed_payment_method_types: list(z.enum(["card", "card_present", "us_bank_account"])).optional(),
 	amount: integer,
 	currency,
 	automatic_payment_methods: z
@@ -39,6 +42,7 @@ const createSchema = paramsOf<Stripe.PaymentIntentCreateParams>()({
 	customer: z.string().optional(),
 	description: z.string().optional(),
 	metadata: metadata.optional(),
+	off_session: flag.optional(),
 	receipt_email: z.string().optional(),
 })
 const updateSchema = paramsOf<Stripe.PaymentIntentUpdateParams>()({
@@ -81,20 +85,54 @@ function cardBehind(method: string | undefined): string {
 	return number
 }
 
-function confirm(
+type Confirmation = {
+	payment_method?: string | undefined
+	return_url?: string | undefined
+	off_session?: boolean | undefined
+}
+
+/** Charges a method that is kept for the intent's customer. A debit is on its way afterwards, which counts as no refusal. */
+function chargeKept(
 	fake: Fake,
 	intent: Stripe.PaymentIntent,
-	given: { payment_method?: string | undefined; return_url?: string | undefined },
+	given: Confirmation & { payment_method: string },
 	cause: Cause,
-): void {
+): Attempt {
+	const customer = typeof intent.customer === "string" ? intent.customer : null
+	const { presented, behaviour } = keptMethod(fake, given.payment_method, customer)
+	if ("bank" in behaviour) {
+		startDebit(fake, intent, presented, given.payment_method, cause)
+		return { kind: "paid" }
+	}
+	const more = { offSession: given.off_session ?? false }
+	return chargeCard(fake, intent, { outcome: behaviour.card, presented, method: given.payment_method }, cause, {
+		...more,
+		...(given.return_url === undefined ? {} : { returnTo: given.return_url }),
+	})
+}
+
+/** Refuses a method that there is not, before anything is made. */
+function checkMethod(fake: Fake, method: string | undefined, customer: string | null): void {
+	if (method !== undefined && fake.store.methods.has(method)) keptMethod(fake, method, customer)
+	else cardBehind(method)
+}
+
+function chargeNamed(fake: Fake, intent: Stripe.PaymentIntent, given: Confirmation, cause: Cause): Attempt {
+	const method = given.payment_method
+	if (method !== undefined && fake.store.methods.has(method)) {
+		return chargeKept(fake, intent, { ...given, payment_method: method }, cause)
+	}
+	const number = cardBehind(method)
+	const year = new Date(fake.seconds() * 1000).getUTCFullYear() + 2
+	const card = { number, expMonth: 12, expYear: year, name: null, email: intent.receipt_email }
+	return attempt(fake, intent, card, cause, given.return_url === undefined ? {} : { returnTo: given.return_url })
+}
+
+function confirm(fake: Fake, intent: Stripe.PaymentIntent, given: Confirmation, cause: Cause): void {
 	if (!["requires_payment_method", "requires_confirmation"].includes(intent.status)) {
 		throw unexpectedState(`You cannot confirm this PaymentIntent because it has a status of ${intent.status}.`, intent)
 	}
-	const number = cardBehind(given.payment_method)
-	const year = new Date(fake.seconds() * 1000).getUTCFullYear() + 2
-	const card = { number, expMonth: 12, expYear: year, name: null, email: intent.receipt_email }
-	const returnTo = given.return_url
-	const result = attempt(fake, intent, card, cause, returnTo === undefined ? {} : { returnTo })
+	const result = chargeNamed(fake, intent, given, cause)
 	if (result.kind !== "declined") return
 	throw new StripeRefusal(402, {
 		type: "card_error",
@@ -126,6 +164,7 @@ function capture(fake: Fake, intent: Stripe.PaymentIntent, amount: number | unde
 	intent.status = "succeeded"
 	intent.amount_received = taken
 	intent.amount_capturable = 0
+	recordBalance(fake, charge)
 	fake.events.emit("charge.captured", charge, cause)
 	fake.events.emit("payment_intent.succeeded", intent, cause)
 }
@@ -153,7 +192,7 @@ export const paymentIntentEndpoints: Endpoints = {
 		const given = readParams(createSchema, form)
 		checkAmount(given.amount, given.currency, "amount")
 		if (given.customer !== undefined) getCustomer(fake, given.customer, "customer")
-		if (given.confirm) cardBehind(given.payment_method)
+		if (given.confirm) checkMethod(fake, given.payment_method, given.customer ?? null)
 		const draft = {
 			amount: given.amount,
 			currency: given.currency,
@@ -164,6 +203,7 @@ export const paymentIntentEndpoints: Endpoints = {
 			metadata: mergeMetadata({}, given.metadata),
 			receiptEmail: given.receipt_email ?? null,
 			automatic: given.automatic_payment_methods?.enabled ?? true,
+			futureUsage: null,
 		}
 		const intent = openIntent(fake, draft, cause)
 		if (given.confirm) confirm(fake, intent, given, cause)

@@ -1,8 +1,10 @@
 import type Stripe from "stripe"
 import { z } from "zod"
 import { dollars } from "./amounts"
+import { recordRefund, recordRefundFailure } from "./balance"
 import { getCharge } from "./charges"
 import { invalidRequest, noSuch, unexpectedState } from "./errors"
+import { fromPage } from "./events"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { page } from "./lists"
@@ -63,11 +65,36 @@ function amountToRefund(charge: Stripe.Charge, asked: number | undefined): numbe
 	return amount
 }
 
+/** The bank's answer to a refund: it arrived, or it did not and the money is back on the balance (refund.failed). */
+export function settleRefund(fake: Fake, refund: Stripe.Refund, outcome: "succeeded" | "failed"): void {
+	if (refund.status === "failed" || (outcome === "succeeded" && refund.status !== "pending")) {
+		throw invalidRequest(`Refund ${refund.id} is settled already.`)
+	}
+	refund.status = outcome
+	if (outcome === "failed") {
+		refund.failure_reason = "expired_or_canceled_card"
+		recordRefundFailure(fake, refund)
+		const charge = getCharge(fake, String(refund.charge))
+		charge.amount_refunded -= refund.amount
+		charge.refunded = false
+	}
+	fake.events.emit("refund.updated", refund, fromPage)
+	if (outcome === "failed") fake.events.emit("refund.failed", refund, fromPage)
+}
+
+/** The refund named `id`; refuses with 404 `resource_missing`. */
+export function getRefund(fake: Fake, id: string): Stripe.Refund {
+	const refund = fake.store.refunds.get(id)
+	if (!refund) throw noSuch("refund", id)
+	return refund
+}
+
 export const refundEndpoints: Endpoints = {
 	"POST /v1/refunds": ({ fake, form, cause }) => {
 		const given = readParams(createSchema, form)
 		const charge = chargeToRefund(fake, given)
 		const amount = amountToRefund(charge, given.amount)
+		const isDebit = charge.payment_method_details?.type === "us_bank_account"
 		const refund: Stripe.Refund = {
 			id: newId("re"),
 			object: "refund",
@@ -78,17 +105,21 @@ export const refundEndpoints: Endpoints = {
 			currency: charge.currency,
 			customer: charge.customer,
 			customer_account: null,
-			destination_details: { type: "card", card: { type: "refund" } },
+			destination_details: isDebit
+				? { type: "us_bank_transfer", us_bank_transfer: { reference: null, reference_status: null } }
+				: { type: "card", card: { type: "refund" } },
 			metadata: mergeMetadata({}, given.metadata),
 			payment_intent: charge.payment_intent,
 			payment_method: charge.payment_method,
 			reason: given.reason ?? null,
 			receipt_number: null,
 			source_transfer_reversal: null,
-			status: "succeeded",
+			// A bank takes its days; a card's refund counts at once and may still fail.
+			status: isDebit ? "pending" : "succeeded",
 			transfer_reversal: null,
 		}
 		fake.store.refunds.set(refund.id, refund)
+		recordRefund(fake, refund)
 		charge.amount_refunded += amount
 		charge.refunded = charge.amount_refunded === charge.amount_captured
 		fake.events.emit("refund.created", refund, cause)
@@ -106,8 +137,6 @@ export const refundEndpoints: Endpoints = {
 	},
 	"GET /v1/refunds/:id": ({ fake, form, id }) => {
 		readParams(z.strictObject(expandable), form)
-		const refund = fake.store.refunds.get(id)
-		if (!refund) throw noSuch("refund", id)
-		return refund
+		return getRefund(fake, id)
 	},
 }

@@ -2,7 +2,7 @@ import { createServer } from "node:http"
 import type { AddressInfo } from "node:net"
 import { createApi } from "./api"
 import { expireDue, payUrl } from "./checkout-sessions"
-import { changeSwitches, createControl, resetFake } from "./control"
+import { type BankStep, changeSwitches, createControl, resetFake, takeBankStep } from "./control"
 import { createEventLog } from "./events"
 import type { Fake } from "./fake"
 import { createPages } from "./pages/hosted"
@@ -33,6 +33,8 @@ export type StripeFake = {
 	state: Store
 	/** Turns switches on or off, as POST /_switches does. */
 	switch: (changes: SwitchChanges) => void
+	/** Has a bank do something, as POST /_bank does. */
+	bank: (step: BankStep) => void
 	/** Lets held events go and waits until each was tried once. */
 	flushEvents: (order: "created" | "reverse") => Promise<void>
 	/** Resolves when every event that is not held has been tried once. */
@@ -92,6 +94,7 @@ export async function startStripeFake(options: StripeFakeOptions = {}): Promise<
 		port,
 		state: store,
 		switch: (changes) => changeSwitches(fake, courier, changes),
+		bank: (step) => takeBankStep(fake, step),
 		flushEvents: courier.flush,
 		idle: courier.idle,
 		reset: () => resetFake(fake, courier),

@@ -1,5 +1,7 @@
 import type Stripe from "stripe"
-import type { Card } from "./cards"
+import type { BankOutcome } from "./banks"
+import type { CardOutcome } from "./cards"
+import type { Presented } from "./charges"
 import { seedReaders } from "./seed"
 
 /** The answer kept for an idempotency key, with what was asked, so that another body under the same key is refused. */
@@ -13,19 +15,32 @@ type SessionSecret = {
 	lines: Stripe.LineItem[]
 	intentMetadata: Record<string, string>
 	intentDescription: string | null
+	futureUsage: "off_session" | null
+	setupMetadata: Record<string, string>
 }
 
+/** What comes of charging a kept method, found out when it was typed: its number is never stored. */
+export type Behaviour = { card: CardOutcome } | { bank: BankOutcome }
+
 /** The card of a payment that waits for its holder to approve it: what may be kept of a card, and no more. */
-export type WaitingCard = { card: Card; name: string | null; email: string | null }
+export type WaitingCard = { presented: Presented; method: string }
 
 type Tables = {
 	customers: Map<string, Stripe.Customer>
 	sessions: Map<string, Stripe.Checkout.Session>
 	sessionSecrets: Map<string, SessionSecret>
 	intents: Map<string, Stripe.PaymentIntent>
+	setupIntents: Map<string, Stripe.SetupIntent>
+	methods: Map<string, Stripe.PaymentMethod>
+	behaviours: Map<string, Behaviour>
 	waitingCards: Map<string, WaitingCard>
 	charges: Map<string, Stripe.Charge>
 	refunds: Map<string, Stripe.Refund>
+	disputes: Map<string, Stripe.Dispute>
+	balanceTransactions: Map<string, Stripe.BalanceTransaction>
+	payouts: Map<string, Stripe.Payout>
+	/** The balance transactions of a payout, by its id. */
+	payoutParts: Map<string, string[]>
 	readers: Map<string, Stripe.Terminal.Reader>
 	events: Map<string, Stripe.Event>
 	answers: Map<string, KeptAnswer>
@@ -45,9 +60,16 @@ function emptyTables(): Tables {
 		sessions: new Map(),
 		sessionSecrets: new Map(),
 		intents: new Map(),
+		setupIntents: new Map(),
+		methods: new Map(),
+		behaviours: new Map(),
 		waitingCards: new Map(),
 		charges: new Map(),
 		refunds: new Map(),
+		disputes: new Map(),
+		balanceTransactions: new Map(),
+		payouts: new Map(),
+		payoutParts: new Map(),
 		readers: new Map(),
 		events: new Map(),
 		answers: new Map(),

@@ -1,13 +1,24 @@
 import type { IncomingMessage, ServerResponse } from "node:http"
 import type Stripe from "stripe"
-import { answerAuthentication, knownEmail, paySession } from "../checkout-payment"
+import {
+	answerAuthentication,
+	debitSession,
+	isByDebit,
+	keepAccount,
+	keepCard,
+	knownEmail,
+	paySession,
+} from "../checkout-payment"
+import { takeBankStep } from "../control"
 import { StripeRefusal } from "../errors"
 import { fromPage } from "../events"
 import type { Fake } from "../fake"
 import { type FormTree, parseForm } from "../form"
 import { readBody, redirect, sendPage } from "../http"
 import { presentCard } from "../readers"
+import { readAccountForm } from "./account-form"
 import { authenticatePage } from "./authenticate-page"
+import { bankPage } from "./bank-page"
 import { readCardForm } from "./card-form"
 import { messagePage } from "./layout"
 import { payPage } from "./pay-page"
@@ -49,8 +60,19 @@ function submitPay({ fake, id, form }: Visit): Reply {
 	if (session.status !== "open") return closed(session)
 	const lines = fake.store.sessionSecrets.get(id)?.lines ?? []
 	const email = knownEmail(fake, session)
+	if (isByDebit(session)) {
+		const { typed, errors, account } = readAccountForm(form, email === null)
+		if (!account) return { status: 422, html: payPage({ session, lines, email, typed, errors }) }
+		const take = session.mode === "setup" ? keepAccount : debitSession
+		take(fake, session, { ...account, email: email ?? typed.email })
+		return { to: successUrl(session) }
+	}
 	const { typed, errors, card } = readCardForm(form, email === null, fake.seconds())
 	if (!card) return { status: 422, html: payPage({ session, lines, email, typed, errors }) }
+	if (session.mode === "setup") {
+		keepCard(fake, session, { ...card, email: email ?? typed.email })
+		return { to: successUrl(session) }
+	}
 	const result = paySession(fake, session, { ...card, email: email ?? typed.email })
 	if (result.kind === "paid") return { to: successUrl(session) }
 	if (result.kind === "authenticate") return { to: result.url }
@@ -85,6 +107,11 @@ function submitPresent({ fake, id, form }: Visit): Reply {
 	return { to: "/readers" }
 }
 
+function submitBank({ fake, form }: Visit): Reply {
+	takeBankStep(fake, { ...form })
+	return { to: "/bank" }
+}
+
 const routes: { method: string; pattern: RegExp; handle: (visit: Visit) => Reply }[] = [
 	{ method: "GET", pattern: /^\/$/, handle: () => ({ to: "/readers" }) },
 	{ method: "GET", pattern: /^\/pay\/(\w+)$/, handle: showPay },
@@ -92,6 +119,8 @@ const routes: { method: string; pattern: RegExp; handle: (visit: Visit) => Reply
 	{ method: "GET", pattern: /^\/authenticate\/(\w+)$/, handle: showAuthenticate },
 	{ method: "POST", pattern: /^\/authenticate\/(\w+)$/, handle: submitAuthenticate },
 	{ method: "GET", pattern: /^\/readers$/, handle: ({ fake }) => ({ status: 200, html: readersPage(fake) }) },
+	{ method: "GET", pattern: /^\/bank$/, handle: ({ fake }) => ({ status: 200, html: bankPage(fake) }) },
+	{ method: "POST", pattern: /^\/bank$/, handle: submitBank },
 	{ method: "POST", pattern: /^\/readers\/(\w+)\/present$/, handle: submitPresent },
 ]
 

@@ -1,29 +1,11 @@
 import type Stripe from "stripe"
 import { dollars } from "../amounts"
-import type { CardErrors, CardField, TypedCard } from "./card-form"
+import { TEST_ROUTING_NUMBER } from "../banks"
+import { isByDebit } from "../checkout-payment"
+import type { AccountErrors } from "./account-form"
+import type { CardErrors, TypedCard } from "./card-form"
+import { field } from "./field"
 import { escapeHtml, layout } from "./layout"
-
-type FieldSpec = { name: CardField; label: string; hint?: string; value: string; numeric?: boolean }
-
-// autocomplete is off so that no browser offers a real, saved card on a page that must never see one.
-function field(spec: FieldSpec, errors: CardErrors): string {
-	const { name, label, hint, value } = spec
-	const error = errors[name]
-	const described = [hint ? `${name}-hint` : "", error ? `${name}-error` : ""].filter(Boolean).join(" ")
-	const attributes = [
-		`id="${name}"`,
-		`name="${name}"`,
-		`value="${escapeHtml(value)}"`,
-		'autocomplete="off"',
-		spec.numeric ? 'inputmode="numeric"' : "",
-		name === "email" ? 'type="email"' : 'type="text"',
-		described ? `aria-describedby="${described}"` : "",
-		error ? 'aria-invalid="true"' : "",
-	].filter(Boolean)
-	return `<div><label for="${name}">${label}${hint ? ` <span class="hint" id="${name}-hint">${hint}</span>` : ""}</label>
-${error ? `<span class="wrong" id="${name}-error">${escapeHtml(error)}</span>` : ""}
-<input ${attributes.join(" ")}></div>`
-}
 
 function linesTable(lines: Stripe.LineItem[]): string {
 	const rows = lines.map(
@@ -43,9 +25,35 @@ const testCards = `<details><summary>Test cards</summary>
 </tbody></table>
 <p>Any expiry in the future, any security code, any name.</p></details>`
 
-function summary(errors: CardErrors, refusal: string | undefined): string {
+const testAccounts = `<details><summary>Test accounts</summary>
+<table><thead><tr><th scope="col">Number</th><th scope="col">What it does</th></tr></thead><tbody>
+<tr><td><code>000123456789</code></td><td>clears</td></tr>
+<tr><td><code>000222222227</code></td><td>is returned: insufficient funds</td></tr>
+<tr><td><code>000111111113</code></td><td>is returned: account closed</td></tr>
+</tbody></table>
+<p>The debit is on its way until the <a href="/bank">bank</a> answers.</p></details>`
+
+type Typed = Partial<TypedCard>
+
+function cardFields(typed: Typed | undefined, errors: CardErrors): string {
+	return `${field({ name: "number", label: "Card number", hint: "A test card only, such as 4242 4242 4242 4242", value: "", numeric: true }, errors)}
+<div class="pair">
+${field({ name: "expiry", label: "Expiry", hint: "Month/year", value: typed?.expiry ?? "", numeric: true }, errors)}
+${field({ name: "cvc", label: "CVC", hint: "3 or 4 digits", value: "", numeric: true }, errors)}
+</div>
+${field({ name: "name", label: "Name on card", value: typed?.name ?? "" }, errors)}`
+}
+
+function accountFields(typed: Typed | undefined, errors: AccountErrors): string {
+	return `${field({ name: "routing", label: "Routing number", hint: `The test bank, ${TEST_ROUTING_NUMBER}`, value: TEST_ROUTING_NUMBER, numeric: true }, errors)}
+${field({ name: "account", label: "Account number", hint: "A test account only, such as 000123456789", value: "", numeric: true }, errors)}
+${field({ name: "name", label: "Name on account", value: typed?.name ?? "" }, errors)}
+<p>By going on you authorize this debit.</p>`
+}
+
+function summary(errors: Partial<Record<string, string>>, refusal: string | undefined): string {
 	const sentences = Object.entries(errors).map(
-		([name, sentence]) => `<li><a href="#${name}">${escapeHtml(sentence)}</a></li>`,
+		([name, sentence]) => `<li><a href="#${name}">${escapeHtml(sentence ?? "")}</a></li>`,
 	)
 	if (refusal) return `<div class="alert" role="alert"><p>${escapeHtml(refusal)}</p></div>`
 	if (sentences.length === 0) return ""
@@ -57,33 +65,33 @@ export function payPage(view: {
 	session: Stripe.Checkout.Session
 	lines: Stripe.LineItem[]
 	email: string | null
-	typed?: TypedCard
-	errors?: CardErrors
+	typed?: Typed
+	errors?: CardErrors & AccountErrors
 	refusal?: string | undefined
 }): string {
 	const { session, typed, errors = {} } = view
+	const byDebit = isByDebit(session)
+	const keeps = session.mode === "setup"
 	const total = dollars(session.amount_total ?? 0)
+	const what = byDebit ? "bank account" : "card"
+	const title = keeps ? `Keep a ${what}` : byDebit ? "Pay from a bank account" : "Pay by card"
 	const emailField = view.email
 		? `<p>Receipt to ${escapeHtml(view.email)}</p>`
 		: field({ name: "email", label: "E-mail", value: typed?.email ?? "" }, errors)
 	const back = session.cancel_url ? `<p><a href="${escapeHtml(session.cancel_url)}">Go back without paying</a></p>` : ""
+	const sum = `<p class="sum">${total} <span class="hint">${escapeHtml((session.currency ?? "usd").toUpperCase())}</span></p>
+${linesTable(view.lines)}`
 	return layout(
-		`Pay ${total}`,
-		`<h1>Pay by card</h1>
-<p class="sum">${total} <span class="hint">${escapeHtml((session.currency ?? "usd").toUpperCase())}</span></p>
-${linesTable(view.lines)}
+		keeps ? title : `Pay ${total}`,
+		`<h1>${title}</h1>
+${keeps ? "<p>Nothing is charged now.</p>" : sum}
 ${summary(errors, view.refusal)}
 <form method="post" novalidate>
 ${emailField}
-${field({ name: "number", label: "Card number", hint: "A test card only, such as 4242 4242 4242 4242", value: "", numeric: true }, errors)}
-<div class="pair">
-${field({ name: "expiry", label: "Expiry", hint: "Month/year", value: typed?.expiry ?? "", numeric: true }, errors)}
-${field({ name: "cvc", label: "CVC", hint: "3 or 4 digits", value: "", numeric: true }, errors)}
-</div>
-${field({ name: "name", label: "Name on card", value: typed?.name ?? "" }, errors)}
-<div class="actions"><button type="submit">Pay ${total}</button></div>
+${byDebit ? accountFields(typed, errors) : cardFields(typed, errors)}
+<div class="actions"><button type="submit">${keeps ? `Keep this ${what}` : `Pay ${total}`}</button></div>
 </form>
-${testCards}
+${byDebit ? testAccounts : testCards}
 ${back}`,
 	)
 }
