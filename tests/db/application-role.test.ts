@@ -41,14 +41,18 @@ test("only the functions named here run with more rights than their caller has",
 		where prosecdef and pronamespace::regnamespace::text in ('public', 'jobs', 'drizzle') order by 1`,
 	)
 	expect(rows.map(({ name }) => name)).toEqual([
+		"close_forward",
 		"harvested_is_somewhere",
 		"jobs.enqueue",
 		"jobs.enqueue_all",
 		"jobs.free_stuck",
 		"keep_lot_state",
+		"keep_returned",
+		"keep_settled",
 		"keep_stock_balance",
 		"only_released_leaves",
 		"raise_shop_version",
+		"refuse_closed_day",
 		"withdrawn_stays",
 	])
 })

@@ -1,8 +1,9 @@
-import { and, eq, sql } from "drizzle-orm"
+import { and, eq, gt, sql } from "drizzle-orm"
 import { beforeAll, describe, expect, test } from "vitest"
 import {
 	auditEntries,
 	invoiceLines,
+	invoiceOrders,
 	invoices,
 	lots,
 	orderEvents,
@@ -10,6 +11,7 @@ import {
 	orders,
 	payments,
 	producers,
+	settlements,
 	stockBalances,
 	stockMoves,
 } from "~/db/schema"
@@ -40,8 +42,12 @@ async function anyOrder() {
 	return first(await readProducer(producerId, (tx) => tx.select().from(orders).limit(1)))
 }
 
-async function anyInvoice() {
-	return first(await readProducer(producerId, (tx) => tx.select().from(invoices).limit(1)))
+/** Some invoice, and its row as one that is to be written anew: with nothing settled. */
+async function newInvoice() {
+	const { id, openCents, paidCents, creditedCents, discountCents, writtenOffCents, ...invoice } = first(
+		await readProducer(producerId, (tx) => tx.select().from(invoices).limit(1)),
+	)
+	return { id, invoice }
 }
 
 /** A new lot with so many pieces on the ready shelf. */
@@ -161,21 +167,18 @@ describe("orders", () => {
 
 describe("invoices", () => {
 	test("have a number of their own in their year, and an order its one invoice", async () => {
-		const { id, ...invoice } = await anyInvoice()
-		const unsent = first(
-			await readProducer(producerId, (tx) => tx.select().from(orders).where(eq(orders.state, "placed")).limit(1)),
-		)
-		expect(await constraintOf((tx) => tx.insert(invoices).values({ ...invoice, orderId: unsent.id }))).toBe(
-			"invoices_number_once",
-		)
-		expect(await constraintOf((tx) => tx.insert(invoices).values({ ...invoice, sequence: 900_001 }))).toBe(
-			"invoices_once_per_order",
+		const { id, invoice } = await newInvoice()
+		expect(await constraintOf((tx) => tx.insert(invoices).values(invoice))).toBe("invoices_number_once")
+		const about = first(await readProducer(producerId, (tx) => tx.select().from(invoiceOrders).limit(1)))
+		expect(await constraintOf((tx) => tx.insert(invoiceOrders).values({ ...about, invoiceId: id }))).toBe(
+			"invoice_orders_pk",
 		)
 	})
 
 	test("once issued are never altered nor deleted, and neither are their lines and payments", async () => {
 		expect(await codeOf((tx) => tx.update(invoices).set({ totalCents: 1 }))).toBe(INSUFFICIENT_PRIVILEGE)
 		expect(await codeOf((tx) => tx.update(invoices).set({ dueOn: "2030-01-01" }))).toBe(INSUFFICIENT_PRIVILEGE)
+		expect(await constraintOf((tx) => tx.update(invoices).set({ paidCents: 1 }))).toBe("invoices_sums_by_ledger_alone")
 		expect(await codeOf((tx) => tx.delete(invoices))).toBe(INSUFFICIENT_PRIVILEGE)
 		expect(await codeOf((tx) => tx.update(invoiceLines).set({ lineCents: 1 }))).toBe(INSUFFICIENT_PRIVILEGE)
 		expect(await codeOf((tx) => tx.delete(invoiceLines))).toBe(INSUFFICIENT_PRIVILEGE)
@@ -184,15 +187,26 @@ describe("invoices", () => {
 	})
 
 	test("take a payment, up to what they come to", async () => {
-		const { id, totalCents } = await anyInvoice()
-		const pay = (cents: number) => (tx: Tx) =>
-			tx.update(invoices).set({ paidCents: cents }).where(eq(invoices.id, id)).returning({ paid: invoices.paidCents })
-		expect(await withProducer(producerId, pay(totalCents))).toEqual([{ paid: totalCents }])
-		expect(await constraintOf(pay(totalCents + 1))).toBe("invoices_paid_within_total")
+		const { id, openCents } = first(
+			await readProducer(producerId, (tx) => tx.select().from(invoices).where(gt(invoices.openCents, 0)).limit(1)),
+		)
+		const settle = (cents: number) => (tx: Tx) =>
+			tx.insert(settlements).values({
+				producerId,
+				invoiceId: id,
+				kind: "write-off",
+				amountCents: cents,
+				settledOn: "2030-01-01",
+			})
+		expect(await constraintOf(settle(openCents + 1))).toBe("invoices_settled_within_total")
+		await withProducer(producerId, settle(openCents))
+		expect(await readProducer(producerId, (tx) => tx.select().from(invoices).where(eq(invoices.id, id)))).toMatchObject(
+			[{ openCents: 0, writtenOffCents: openCents }],
+		)
 	})
 
 	test("are the sum of their parts", async () => {
-		const { id, ...invoice } = await anyInvoice()
+		const { invoice } = await newInvoice()
 		const wrong = { ...invoice, sequence: 900_002, totalCents: invoice.totalCents + 1 }
 		expect(await constraintOf((tx) => tx.insert(invoices).values(wrong))).toBe("invoices_sum")
 	})
@@ -201,7 +215,7 @@ describe("invoices", () => {
 		const card = first(
 			await readProducer(producerId, (tx) => tx.select().from(payments).where(eq(payments.method, "card")).limit(1)),
 		)
-		const { id, ...again } = card
+		const { id, settledCents, returnedCents, ...again } = card
 		expect(await constraintOf((tx) => tx.insert(payments).values(again))).toBe("payments_card_payment_once")
 	})
 })

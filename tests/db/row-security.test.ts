@@ -46,6 +46,24 @@ async function changedBy(query: string): Promise<number> {
 	}
 }
 
+const NOTHING_SETTLED = {
+	paid_cents: 0,
+	credited_cents: 0,
+	discount_cents: 0,
+	written_off_cents: 0,
+	settled_cents: 0,
+	returned_cents: 0,
+}
+
+async function writtenColumns(table: string): Promise<string> {
+	const { rows } = await owner.query<{ columns: string }>(
+		`select string_agg(quote_ident(attname), ', ' order by attnum) as columns from pg_attribute
+		where attrelid = $1::regclass and attnum > 0 and not attisdropped and attgenerated = ''`,
+		[table],
+	)
+	return rows[0]?.columns ?? ""
+}
+
 describe.each(tables)("%s", (table) => {
 	test("has rows of both producers for this walk to mean something", async () => {
 		expect(await countBeyondSecurity(table, ours)).toBeGreaterThan(0)
@@ -79,15 +97,17 @@ describe.each(tables)("%s", (table) => {
 	test("refuses a row in their name, new or moved over from ours", async () => {
 		const row = await undone(owner, async () => {
 			await owner.query(`alter table ${table} no force row level security`)
-			const { rows } = await owner.query<{ row: unknown }>(
+			const { rows } = await owner.query<{ row: object }>(
 				`select to_jsonb(t) as row from ${table} t where producer_id = $1 limit 1`,
 				[theirs],
 			)
 			return rows[0]?.row
 		})
 		expect(row).toMatchObject({ producer_id: theirs })
-		const copy = `insert into ${table} select * from jsonb_populate_record(null::${table}, $1)`
-		const refused = await asOurs(() => refusalOf(app.query(copy, [JSON.stringify(row)])))
+		// What the database works out itself cannot be written, and what is settled begins at nothing.
+		const written = await writtenColumns(table)
+		const copy = `insert into ${table} (${written}) select ${written} from jsonb_populate_record(null::${table}, $1)`
+		const refused = await asOurs(() => refusalOf(app.query(copy, [JSON.stringify({ ...row, ...NOTHING_SETTLED })])))
 		expect(refused).toMatchObject({
 			code: INSUFFICIENT_PRIVILEGE,
 			message: expect.stringMatching(/row-level security policy|permission denied/),

@@ -228,7 +228,7 @@ test("the desk confirms a short order, packs and sends it; the store reads why, 
 		expect(twice).toEqual([{ deliveries: 2 }])
 		const paid = await askDatabase<{ payments: number; isPaid: boolean }>(
 			`select count(p.*)::int as payments, i.paid_cents = i.total_cents as "isPaid"
-			from invoices i join payment_parts p on p.producer_id = i.producer_id and p.invoice_id = i.id
+			from invoices i join settlements p on p.producer_id = i.producer_id and p.invoice_id = i.id
 			where i.year || '-' || lpad(i.sequence::text, 4, '0') = $1 group by i.id, i.paid_cents, i.total_cents`,
 			[invoice],
 		)

@@ -89,14 +89,19 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			year: 2001,
 			sequence: 1,
 			store_id: storeId,
-			order_id: orderId,
 			issued_on: LONG_AGO,
 			due_on: LONG_AGO,
 			lines_cents: 1000,
 			delivery_cents: 0,
 			tax_cents: 0,
 			total_cents: 1000,
-			paid_cents: 1000,
+		})
+		await insert("invoice_orders", { order_id: orderId, invoice_id: invoiceId })
+		await insert("settlements", {
+			invoice_id: invoiceId,
+			kind: "write-off",
+			amount_cents: 1000,
+			settled_on: LONG_AGO,
 		})
 		await insert("invoice_lines", {
 			invoice_id: invoiceId,
@@ -193,6 +198,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("market_days", "id", marketDayId)
 				await del("withdrawals", "number", WALKED_ORDER)
 				await del("invoice_lines", "invoice_id", invoiceId)
+				await del("settlements", "invoice_id", invoiceId)
+				await del("invoice_orders", "invoice_id", invoiceId)
 				await del("invoices", "id", invoiceId)
 				await del("order_events", "order_id", orderId)
 				await del("order_lines", "order_id", orderId)

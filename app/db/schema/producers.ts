@@ -1,5 +1,5 @@
 import { sql } from "drizzle-orm"
-import { bigint, check, integer, pgTable, primaryKey, smallint, text, unique, uuid } from "drizzle-orm/pg-core"
+import { bigint, boolean, check, integer, pgTable, primaryKey, smallint, text, unique, uuid } from "drizzle-orm/pg-core"
 import { instant, producerId } from "./columns"
 
 /** What anyone may know of a producer: the name in the URL and above the shop. All else is in `producer_settings`. */
@@ -48,11 +48,23 @@ export const producerSettings = pgTable(
 		bestBeforeDays: smallint("best_before_days").notNull().default(300),
 		/** Who carries what is delivered; named in the records that an inspector may ask for. */
 		carrier: text("carrier").notNull().default("own van"),
+		/** Days after delivery in which broken comb may be reported; common practice, no source. */
+		breakageDays: smallint("breakage_days").notNull().default(3),
+		/** Reminders of invoices go out by themselves. */
+		remindersOn: boolean("reminders_on").notNull().default(true),
+		/** Charged each month on what is overdue; 0 = no finance charge. */
+		financeChargeBasisPoints: integer("finance_charge_basis_points").notNull().default(0),
+		/** Days past due before a finance charge is reckoned. */
+		financeChargeAfterDays: smallint("finance_charge_after_days").notNull().default(30),
 	},
 	(t) => [
 		check(
 			"producer_settings_crop_sane",
 			sql`${t.readyCappedPercent} between 1 and 100 and ${t.cropFigure} in ('low','likely')`,
+		),
+		check(
+			"producer_settings_invoicing_sane",
+			sql`${t.breakageDays} between 0 and 60 and ${t.financeChargeBasisPoints} between 0 and 1000 and ${t.financeChargeAfterDays} between 0 and 365`,
 		),
 		check("producer_settings_best_before_sane", sql`${t.bestBeforeDays} between 1 and 1500`),
 	],
@@ -63,7 +75,7 @@ export const counters = pgTable(
 	"counters",
 	{
 		producerId: producerId().references(() => producers.id),
-		series: text("series", { enum: ["order", "invoice", "lot", "load", "withdrawal"] }).notNull(),
+		series: text("series", { enum: ["order", "invoice", "credit", "lot", "load", "withdrawal"] }).notNull(),
 		year: integer("year").notNull(),
 		last: integer("last").notNull().default(0),
 	},

@@ -87,6 +87,9 @@ export const sales = pgTable(
 		/** Rises with each try, so that a declined card is tried again under a new idempotency key. */
 		attempt: integer("attempt").notNull().default(1),
 		stripePaymentIntentId: text("stripe_payment_intent_id"),
+		/** What Stripe kept of a card sale, and the payout that brought the rest; null until known. */
+		feeCents: cents("fee_cents"),
+		stripePayoutId: text("stripe_payout_id"),
 		soldBy: uuid("sold_by")
 			.notNull()
 			.references(() => users.id),

@@ -13,6 +13,7 @@ import {
 	uuid,
 } from "drizzle-orm/pg-core"
 import { cents, day, id, instant, producerId } from "./columns"
+import { users } from "./people"
 import { priceTiers } from "./pricing"
 import { producers } from "./producers"
 
@@ -45,6 +46,25 @@ export const stores = pgTable(
 		resaleCertificateUntil: day("resale_certificate_until"),
 		/** In a sharing: 100 counts once, 200 twice. */
 		sharingWeightPercent: smallint("sharing_weight_percent").notNull().default(100),
+		/** Every order on an invoice of its own, or all of a month on one. */
+		invoicing: text("invoicing", { enum: ["each-order", "month-end"] })
+			.notNull()
+			.default("each-order"),
+		/** Names the place of `tax_rates` whose rate is charged; empty = the producer's own rate. */
+		taxPlace: text("tax_place").notNull().default(""),
+		/** What may be owed before the desk is warned; null = no limit. */
+		creditLimitCents: cents("credit_limit_cents"),
+		/** Orders are warned of until something is paid: the producer's own word. */
+		isStopped: boolean("is_stopped").notNull().default(false),
+		remindersHeld: boolean("reminders_held").notNull().default(false),
+		stripeCustomerId: text("stripe_customer_id"),
+		stripePaymentMethodId: text("stripe_payment_method_id"),
+		/** The kept way to pay as its owner knows it: "card ending in 4242". */
+		paysWithWords: text("pays_with_words").notNull().default(""),
+		/** What falls due is taken by itself; agreed to by `autopayAgreedBy`. */
+		paysAutomatically: boolean("pays_automatically").notNull().default(false),
+		autopayAgreedBy: uuid("autopay_agreed_by").references(() => users.id),
+		autopayAgreedAt: instant("autopay_agreed_at"),
 		isActive: boolean("is_active").notNull().default(true),
 		createdAt: instant("created_at").notNull().defaultNow(),
 	},
@@ -63,6 +83,12 @@ export const stores = pgTable(
 			sql`${t.minimumCents} >= 0 and ${t.deliveryChargeCents} >= 0 and coalesce(${t.freeAboveCents}, 0) >= 0`,
 		),
 		check("stores_sharing_weight_sane", sql`${t.sharingWeightPercent} between 10 and 1000`),
+		check("stores_invoicing_known", sql`${t.invoicing} in ('each-order','month-end')`),
+		check("stores_credit_limit_not_negative", sql`coalesce(${t.creditLimitCents}, 0) >= 0`),
+		check(
+			"stores_autopay_agreed",
+			sql`not ${t.paysAutomatically} or (${t.stripePaymentMethodId} is not null and ${t.autopayAgreedBy} is not null and ${t.autopayAgreedAt} is not null)`,
+		),
 		check("stores_terms_known", sql`${t.termsKind} in ('on-receipt','net','end-of-month')`),
 		check(
 			"stores_terms_sane",

@@ -44,13 +44,13 @@ export type InvoiceStanding = {
 
 /** How an invoice stands on `today`. A late day begins after the due date; a paid invoice is never late. */
 export function invoiceStanding(
-	invoice: { totalCents: number; paidCents: number; dueOn: Day },
+	invoice: { totalCents: number; openCents: number; dueOn: Day },
 	today: Day,
 ): InvoiceStanding {
-	const openCents = Math.max(0, invoice.totalCents - invoice.paidCents)
+	const { openCents } = invoice
 	if (openCents === 0) return { state: "paid", openCents, daysLate: 0 }
 	const daysLate = Math.max(0, daysBetween(invoice.dueOn, today))
-	return { state: invoice.paidCents > 0 ? "part-paid" : "open", openCents, daysLate }
+	return { state: openCents < invoice.totalCents ? "part-paid" : "open", openCents, daysLate }
 }
 
 /** A standing in words: "paid", "open", "part paid, 12 days late". */

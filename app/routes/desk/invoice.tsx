@@ -1,7 +1,8 @@
 import { randomUUID } from "node:crypto"
 import { data, Form, Link, redirect } from "react-router"
-import { dayWords } from "~/domain/calendar"
+import { dayInZone, dayWords } from "~/domain/calendar"
 import { formatMoney, plainMoney } from "~/domain/money"
+import { now as askClock } from "~/platform/clock.server"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { recordPayment } from "~/services/payments/record-payment.server"
 import { Button } from "~/ui/forms/button"
@@ -50,6 +51,7 @@ export const action = guard(admits.desk("owner", "desk"), async ({ request, para
 		amountCents: amount,
 		personId: scope.person.id,
 		paymentId,
+		receivedOn: dayInZone(askClock(), scope.producer.timeZone),
 	})
 	if (!noted.ok) throw data(null, { status: 404 })
 	throw redirect(`${url.pathname}?${new URLSearchParams({ noted: settledWords(noted) })}`)

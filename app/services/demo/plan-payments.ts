@@ -1,5 +1,5 @@
-import type { cardPayments, paymentParts, payments } from "~/db/schema"
-import { addDays, type Day, instantAt, weekday } from "~/domain/calendar"
+import type { onlinePaymentParts, onlinePayments, payments, settlements } from "~/db/schema"
+import { addDays, type Day, dayInZone, instantAt, weekday } from "~/domain/calendar"
 import type { Invoices } from "./plan-invoices"
 import type { OrderOfSeason } from "./plan-orders"
 import { grouped, minutesAfter, type Season } from "./season"
@@ -7,8 +7,9 @@ import { grouped, minutesAfter, type Season } from "./season"
 export type Payments = {
 	rows: {
 		payments: (typeof payments.$inferInsert)[]
-		parts: (typeof paymentParts.$inferInsert)[]
-		cardPayments: (typeof cardPayments.$inferInsert)[]
+		settlements: (typeof settlements.$inferInsert)[]
+		onlinePayments: (typeof onlinePayments.$inferInsert)[]
+		onlinePaymentParts: (typeof onlinePaymentParts.$inferInsert)[]
 	}
 	/** For the timelines. */
 	paid: { order: OrderOfSeason; at: Date; by: string; amountCents: number; invoiceId: string }[]
@@ -17,13 +18,15 @@ export type Payments = {
 type Invoice = Invoices["invoices"][number]
 
 /**
- * What the stores have paid so far, each in its way and at its pace, and sets `paidCents` of the invoices to it. A check
- * pays all that is due that week. The oldest overdue invoice of a store that pays by check is paid in part, and one of a
+ * What the stores have paid so far, each in its way and at its pace. A check pays all that is due that week. The oldest overdue invoice of a store that pays by check is paid in part, and one of a
  * store that pays by card has been tried with a card that was declined.
  */
 export function planPayments(season: Season, invoices: Invoices): Payments {
 	const { scenario, now } = season
-	const plan: Payments = { rows: { payments: [], parts: [], cardPayments: [] }, paid: [] }
+	const plan: Payments = {
+		rows: { payments: [], settlements: [], onlinePayments: [], onlinePaymentParts: [] },
+		paid: [],
+	}
 	const isPaidBy = (invoice: Invoice) => paidAt(invoice, scenario.timeZone) <= now
 	for (const group of grouped(invoices.invoices.filter(isPaidBy), groupKey).values()) {
 		pay(season, plan, group)
@@ -62,6 +65,7 @@ function pay(season: Season, plan: Payments, group: Invoice[]): void {
 	const by = store.paysBy === "card" ? (store.buyerId ?? userId(scenario.ownerEmail)) : userId(scenario.deskEmail)
 	const intentId = store.paysBy === "card" ? `pi_demo_${chance.hash().slice(0, 24)}` : null
 	const paymentId = chance.id()
+	const receivedOn = paidOn(first)
 	plan.rows.payments.push({
 		producerId,
 		id: paymentId,
@@ -69,18 +73,29 @@ function pay(season: Season, plan: Payments, group: Invoice[]): void {
 		method: store.paysBy,
 		amountCents: group.reduce((sum, { row }) => sum + row.totalCents, 0),
 		receivedAt: at,
+		receivedOn,
 		stripePaymentIntentId: intentId,
 		enteredBy: by,
 	})
 	for (const { row, order } of group) {
-		row.paidCents = row.totalCents
-		plan.rows.parts.push({ producerId, paymentId, invoiceId: row.id, amountCents: row.totalCents })
+		plan.rows.settlements.push({
+			producerId,
+			invoiceId: row.id,
+			kind: "payment",
+			paymentId,
+			amountCents: row.totalCents,
+			settledOn: receivedOn,
+			settledAt: at,
+			enteredBy: by,
+		})
 		plan.paid.push({ order, at, by, amountCents: row.totalCents, invoiceId: row.id })
 		if (intentId === null) continue
-		plan.rows.cardPayments.push({
+		const onlinePaymentId = chance.id()
+		plan.rows.onlinePaymentParts.push({ producerId, onlinePaymentId, invoiceId: row.id, amountCents: row.totalCents })
+		plan.rows.onlinePayments.push({
 			producerId,
-			id: chance.id(),
-			invoiceId: row.id,
+			id: onlinePaymentId,
+			storeId: store.id,
 			amountCents: row.totalCents,
 			state: "paid",
 			stripeSessionId: `cs_demo_${chance.hash().slice(0, 24)}`,
@@ -94,24 +109,38 @@ function pay(season: Season, plan: Payments, group: Invoice[]): void {
 function payPart({ producerId, chance, now, scenario, userId }: Season, plan: Payments, { row, order }: Invoice): void {
 	const paymentId = chance.id()
 	const amountCents = Math.floor(row.totalCents / 2)
-	row.paidCents = amountCents
+	const receivedAt = minutesAfter(now, -2 * 1440)
+	const receivedOn = dayInZone(receivedAt, scenario.timeZone)
+	const enteredBy = userId(scenario.deskEmail)
 	plan.rows.payments.push({
 		producerId,
 		id: paymentId,
 		storeId: order.store.id,
 		method: "cheque",
 		amountCents,
-		receivedAt: minutesAfter(now, -2 * 1440),
-		enteredBy: userId(scenario.deskEmail),
+		receivedAt,
+		receivedOn,
+		enteredBy,
 	})
-	plan.rows.parts.push({ producerId, paymentId, invoiceId: row.id, amountCents })
+	plan.rows.settlements.push({
+		producerId,
+		invoiceId: row.id,
+		kind: "payment",
+		paymentId,
+		amountCents,
+		settledOn: receivedOn,
+		settledAt: receivedAt,
+		enteredBy,
+	})
 }
 
 function decline({ producerId, chance, now, scenario, userId }: Season, plan: Payments, { row, order }: Invoice): void {
-	plan.rows.cardPayments.push({
+	const onlinePaymentId = chance.id()
+	plan.rows.onlinePaymentParts.push({ producerId, onlinePaymentId, invoiceId: row.id, amountCents: row.totalCents })
+	plan.rows.onlinePayments.push({
 		producerId,
-		id: chance.id(),
-		invoiceId: row.id,
+		id: onlinePaymentId,
+		storeId: order.store.id,
 		amountCents: row.totalCents,
 		state: "declined",
 		declineMessage: "The card has too little on it for this amount.",

@@ -9,20 +9,24 @@ import { insertAll } from "./insert-all.server"
 import { larkmoor } from "./larkmoor"
 import { type DemoPerson, demoPeople } from "./people"
 import { planAgreements } from "./plan-agreements"
+import { planBreakage } from "./plan-breakage.server"
 import { planCatalogue } from "./plan-catalogue"
 import { planHistory } from "./plan-history.server"
 import { planInvoices } from "./plan-invoices"
 import { planMarketDays } from "./plan-market-days"
 import { planOrders } from "./plan-orders"
 import { planPayments } from "./plan-payments"
+import { planReceivables } from "./plan-receivables.server"
 import { planRecords } from "./plan-records.server"
 import { planStanding } from "./plan-standing"
 import { planStock } from "./plan-stock"
 import { planStores } from "./plan-stores"
+import { planStripe } from "./plan-stripe"
 import type { DemoScenario } from "./scenario"
 import { minutesAfter, named, type Season, seasonDays } from "./season"
 import { tansyKnoll } from "./tansy-knoll"
 import { writeCounts, writeCrop, writeReleases } from "./write-history.server"
+import { writeMoney } from "./write-money.server"
 
 /**
  * Fills the database with two producers and a season of their work, as of today, and answers whom to sign in as. A
@@ -91,8 +95,12 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	const history = await planHistory({ ...season, chance }, { catalogue, stock, orders })
 	const agreements = planAgreements({ ...season, chance }, { catalogue, stores, standing, orders })
 	const invoices = planInvoices(season, orders)
-	const payments = planPayments(season, invoices)
-	const records = planRecords(season, { orders, invoices, payments })
+	const money = planPayments(season, invoices)
+	const ownChance = { ...season, chance: startChance(season.scenario.seed + 2) }
+	const receivables = await planReceivables(ownChance, { stores, invoices, money })
+	const stripe = planStripe(ownChance, { invoices, money, markets })
+	const breakage = await planBreakage(ownChance, { stock, invoices, money })
+	const records = planRecords(season, { orders, invoices, payments: money })
 	const { producerId } = season
 
 	await insertAll(tx, schema.priceTiers, catalogue.rows.tiers)
@@ -160,21 +168,13 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 	await insertAll(tx, schema.stockMoves, stock.moves)
 	await writeCounts(tx, history)
 	await insertAll(tx, schema.orderLineLots, stock.lineLots)
-	await insertAll(
-		tx,
-		schema.invoices,
-		invoices.invoices.map(({ row }) => row),
-	)
-	await insertAll(tx, schema.invoiceLines, invoices.lines)
-	await insertAll(tx, schema.payments, payments.rows.payments)
-	await insertAll(tx, schema.paymentParts, payments.rows.parts)
-	await insertAll(tx, schema.cardPayments, payments.rows.cardPayments)
+	await writeMoney(tx, { invoices, money, stripe, breakage, receivables })
 	await insertAll(tx, schema.sales, markets.rows.sales)
 	await insertAll(tx, schema.saleLines, markets.rows.saleLines)
 	await insertAll(tx, schema.saleLineLots, stock.saleLots)
 	await insertAll(tx, schema.orderEvents, records.events)
 	await insertAll(tx, schema.auditEntries, records.audit)
 	await insertAll(tx, schema.outboxMails, records.mails)
-	await insertAll(tx, schema.counters, [...records.counters, ...history.counters])
+	await insertAll(tx, schema.counters, [...records.counters, ...history.counters, ...breakage.counters])
 	await refreshExpected(tx, { producerId, today: season.today })
 }

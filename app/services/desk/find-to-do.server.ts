@@ -143,10 +143,10 @@ async function findHeldLots(tx: Tx, producerId: string): Promise<HeldLot[]> {
 async function findOverdue(tx: Tx, query: { producerId: string; today: Day }): Promise<OverdueInvoice[]> {
 	const { rows } = await tx.execute<Omit<OverdueInvoice, "number"> & { year: number; sequence: number }>(sql`
 		select i.year, i.sequence, s.name as "storeName", i.due_on::text as "dueOn",
-			i.total_cents - i.paid_cents as "openCents"
+			i.open_cents as "openCents"
 		from invoices i
 		join stores s on s.producer_id = i.producer_id and s.id = i.store_id
-		where i.producer_id = ${query.producerId} and i.paid_cents < i.total_cents and i.due_on < ${query.today}
+		where i.producer_id = ${query.producerId} and i.open_cents > 0 and i.due_on < ${query.today}
 		order by i.due_on, i.year, i.sequence
 		limit 20`)
 	return rows.map(({ year, sequence, ...invoice }) => ({ ...invoice, number: invoiceNumber(year, sequence) }))

@@ -48,8 +48,8 @@ export function listStores(query: { producerId: string }): Promise<ListedStore[]
 					) as who
 				), '[]'::json) as people,
 				coalesce((
-					select sum(i.total_cents - i.paid_cents) from invoices i
-					where i.producer_id = s.producer_id and i.store_id = s.id and i.paid_cents < i.total_cents
+					select sum(i.open_cents) from invoices i
+					where i.producer_id = s.producer_id and i.store_id = s.id and i.open_cents > 0
 				), 0)::int as "openCents"
 			from stores s
 			join price_tiers t on t.producer_id = s.producer_id and t.id = s.tier_id

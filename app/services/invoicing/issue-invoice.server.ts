@@ -1,5 +1,5 @@
 import { and, desc, eq, sql } from "drizzle-orm"
-import { invoiceLines, invoices, lots, orderEvents, orderLineLots, producerSettings } from "~/db/schema"
+import { invoiceLines, invoiceOrders, invoices, lots, orderEvents, orderLineLots, producerSettings } from "~/db/schema"
 import type { Tx } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
@@ -48,7 +48,7 @@ export async function issueInvoice(
 		discountBasisPoints: store.termsDiscountBasisPoints,
 		discountDays: store.termsDiscountDays,
 	}
-	const { dueOn } = dueDates(terms, issuedOn)
+	const { dueOn, discountUntil } = dueDates(terms, issuedOn)
 	const year = Number(issuedOn.slice(0, 4))
 	const lotCodes = await findLotCodes(tx, { producerId: producer.id, lineIds: lines.map(({ id }) => id) })
 	const shortNote = await findShortNote(tx, { producerId: producer.id, orderId: order.id })
@@ -61,9 +61,10 @@ export async function issueInvoice(
 			year,
 			sequence,
 			storeId: store.id,
-			orderId: order.id,
 			issuedOn,
 			dueOn,
+			discountUntil,
+			discountBasisPoints: terms.discountBasisPoints,
 			linesCents: totals.linesCents,
 			deliveryCents: totals.deliveryCents,
 			taxCents: totals.taxCents,
@@ -74,11 +75,14 @@ export async function issueInvoice(
 		})
 		.returning({ id: invoices.id })
 	if (!invoice) throw new Error("an insert returns its row")
+	await tx.insert(invoiceOrders).values({ producerId: producer.id, orderId: order.id, invoiceId: invoice.id })
 	await tx.insert(invoiceLines).values(
 		lines.map((line, index) => ({
 			producerId: producer.id,
 			invoiceId: invoice.id,
 			position: index + 1,
+			orderId: order.id,
+			orderLineId: line.id,
 			productId: line.productId,
 			code: line.product.code,
 			name: line.product.name,

@@ -9,11 +9,12 @@ export type InvoiceFilter = "open" | "late" | "paid" | "all"
 export type ListedInvoice = {
 	number: string
 	storeName: string
-	orderNumber: number
+	/** One number, or several: "318, 325"; empty on a charge. */
+	orderNumbers: string
 	issuedOn: Day
 	dueOn: Day
 	totalCents: number
-	paidCents: number
+	openCents: number
 }
 
 type Row = Omit<ListedInvoice, "number"> & { year: number; sequence: number; isPaid: boolean }
@@ -35,14 +36,18 @@ export function listInvoices(query: {
 	const ofStore = storeId ? sql`and i.store_id = ${storeId}` : sql``
 	return readProducer(producerId, async (tx) => {
 		const { rows } = await tx.execute<Row>(sql`
-			select i.year, i.sequence, s.name as "storeName", o.number as "orderNumber", i.issued_on::text as "issuedOn",
-				i.due_on::text as "dueOn", i.total_cents as "totalCents", i.paid_cents as "paidCents",
-				i.paid_cents >= i.total_cents as "isPaid"
+			select i.year, i.sequence, s.name as "storeName", o.numbers as "orderNumbers", i.issued_on::text as "issuedOn",
+				i.due_on::text as "dueOn", i.total_cents as "totalCents", i.open_cents as "openCents",
+				i.open_cents = 0 as "isPaid"
 			from invoices i
 			join stores s on s.producer_id = i.producer_id and s.id = i.store_id
-			join orders o on o.producer_id = i.producer_id and o.id = i.order_id
+			left join lateral (
+				select coalesce(string_agg(o.number::text, ', ' order by o.number), '') as numbers from invoice_orders x
+				join orders o on o.producer_id = x.producer_id and o.id = x.order_id
+				where x.producer_id = i.producer_id and x.invoice_id = i.id
+			) o on true
 			where i.producer_id = ${producerId} ${ofStore} ${filtered(query)} ${beyond(query.after)}
-			order by (i.paid_cents >= i.total_cents), i.year desc, i.sequence desc
+			order by (i.open_cents = 0), i.year desc, i.sequence desc
 			limit ${PAGE + 1}`)
 		const page = rows.slice(0, PAGE)
 		const last = page.at(-1)
@@ -57,9 +62,9 @@ export function listInvoices(query: {
 }
 
 function filtered({ filter, today }: { filter: InvoiceFilter; today: Day }) {
-	if (filter === "open") return sql`and i.paid_cents < i.total_cents`
-	if (filter === "late") return sql`and i.paid_cents < i.total_cents and i.due_on < ${today}`
-	return filter === "paid" ? sql`and i.paid_cents >= i.total_cents` : sql``
+	if (filter === "open") return sql`and i.open_cents > 0`
+	if (filter === "late") return sql`and i.open_cents > 0 and i.due_on < ${today}`
+	return filter === "paid" ? sql`and i.open_cents = 0` : sql``
 }
 
 function beyond(after: string | null) {
@@ -67,5 +72,5 @@ function beyond(after: string | null) {
 	const named = parseInvoiceNumber(number)
 	if (!named || (standing !== "paid" && standing !== "open")) return sql``
 	const isPaid = standing === "paid"
-	return sql`and ((i.paid_cents >= i.total_cents), -i.year::int, -i.sequence) > (${isPaid}::boolean, ${-named.year}::int, ${-named.sequence}::int)`
+	return sql`and ((i.open_cents = 0), -i.year::int, -i.sequence) > (${isPaid}::boolean, ${-named.year}::int, ${-named.sequence}::int)`
 }

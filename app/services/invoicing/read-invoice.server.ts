@@ -1,5 +1,15 @@
 import { and, asc, desc, eq } from "drizzle-orm"
-import { cardPayments, invoiceLines, invoices, orders, producers, stores, users } from "~/db/schema"
+import {
+	invoiceLines,
+	invoiceOrders,
+	invoices,
+	onlinePaymentParts,
+	onlinePayments,
+	orders,
+	producers,
+	stores,
+	users,
+} from "~/db/schema"
 import type { Tx } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
 import { parseInvoiceNumber } from "~/domain/invoicing/invoice-number"
@@ -37,7 +47,11 @@ export async function readInvoice(
 		.select({ invoice: invoices, store: stores, order: orders, orderedBy: users.name, timeZone: producers.timeZone })
 		.from(invoices)
 		.innerJoin(stores, and(eq(stores.producerId, invoices.producerId), eq(stores.id, invoices.storeId)))
-		.innerJoin(orders, and(eq(orders.producerId, invoices.producerId), eq(orders.id, invoices.orderId)))
+		.innerJoin(
+			invoiceOrders,
+			and(eq(invoiceOrders.producerId, invoices.producerId), eq(invoiceOrders.invoiceId, invoices.id)),
+		)
+		.innerJoin(orders, and(eq(orders.producerId, invoiceOrders.producerId), eq(orders.id, invoiceOrders.orderId)))
 		.innerJoin(producers, eq(producers.id, invoices.producerId))
 		.leftJoin(users, eq(users.id, orders.placedBy))
 		.where(
@@ -57,11 +71,18 @@ export async function readInvoice(
 		.orderBy(asc(invoiceLines.position))
 	const yard = await findYard(tx, producerId)
 	const visits = await tx
-		.select({ id: cardPayments.id, state: cardPayments.state, declineMessage: cardPayments.declineMessage })
-		.from(cardPayments)
-		.where(and(eq(cardPayments.producerId, producerId), eq(cardPayments.invoiceId, invoice.id)))
-		.orderBy(desc(cardPayments.createdAt))
-	const openCents = invoice.totalCents - invoice.paidCents
+		.select({ id: onlinePayments.id, state: onlinePayments.state, declineMessage: onlinePayments.declineMessage })
+		.from(onlinePaymentParts)
+		.innerJoin(
+			onlinePayments,
+			and(
+				eq(onlinePayments.producerId, onlinePaymentParts.producerId),
+				eq(onlinePayments.id, onlinePaymentParts.onlinePaymentId),
+			),
+		)
+		.where(and(eq(onlinePaymentParts.producerId, producerId), eq(onlinePaymentParts.invoiceId, invoice.id)))
+		.orderBy(desc(onlinePayments.createdAt))
+	const openCents = invoice.openCents
 	const reasons = shortReasons(invoice.shortNote, lines)
 	return {
 		orderNumber: order.number,

@@ -7,7 +7,7 @@ import type { Tx } from "~/db/transaction.server"
  */
 export async function takeNumber(
 	tx: Tx,
-	query: { producerId: string; series: "order" | "invoice" | "lot" | "load" | "withdrawal"; year: number },
+	query: { producerId: string; series: "order" | "invoice" | "credit" | "lot" | "load" | "withdrawal"; year: number },
 ): Promise<number> {
 	const { rows } = await tx.execute<{ last: number }>(sql`
 		insert into counters (producer_id, series, year, last) values (${query.producerId}, ${query.series}, ${query.year}, 1)

@@ -1,5 +1,6 @@
 import { and, asc, eq, sql } from "drizzle-orm"
 import {
+	invoiceOrders,
 	invoices,
 	lots,
 	orderEvents,
@@ -78,8 +79,12 @@ export function findDeskOrder(query: {
 		const { order, store } = found
 		const [invoice] = await tx
 			.select({ year: invoices.year, sequence: invoices.sequence })
-			.from(invoices)
-			.where(and(eq(invoices.producerId, producerId), eq(invoices.orderId, order.id)))
+			.from(invoiceOrders)
+			.innerJoin(
+				invoices,
+				and(eq(invoices.producerId, invoiceOrders.producerId), eq(invoices.id, invoiceOrders.invoiceId)),
+			)
+			.where(and(eq(invoiceOrders.producerId, producerId), eq(invoiceOrders.orderId, order.id)))
 		const letters = await tx
 			.select({ sentAt: outboxMails.sentAt, recipient: outboxMails.recipient })
 			.from(outboxMails)

@@ -1,5 +1,5 @@
 import { and, asc, eq } from "drizzle-orm"
-import { invoices, orderEvents, orderLines, orders, products, users } from "~/db/schema"
+import { invoiceOrders, invoices, orderEvents, orderLines, orders, products, users } from "~/db/schema"
 import { readProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import { isOpenToChange, type OrderState } from "~/domain/orders/order-states"
@@ -84,8 +84,12 @@ export function findOrder(query: {
 			.orderBy(asc(orderEvents.at))
 		const [invoice] = await tx
 			.select({ year: invoices.year, sequence: invoices.sequence })
-			.from(invoices)
-			.where(and(eq(invoices.producerId, producerId), eq(invoices.orderId, order.id)))
+			.from(invoiceOrders)
+			.innerJoin(
+				invoices,
+				and(eq(invoices.producerId, invoiceOrders.producerId), eq(invoices.id, invoiceOrders.invoiceId)),
+			)
+			.where(and(eq(invoiceOrders.producerId, producerId), eq(invoiceOrders.orderId, order.id)))
 		const day = deliveryDayOn(await findDeliverySchedule(tx, query), order.deliveryOn)
 		return {
 			number: order.number,

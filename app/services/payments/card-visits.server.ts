@@ -1,5 +1,5 @@
 import { and, desc, eq, gt, inArray, ne, or, sql } from "drizzle-orm"
-import { cardPayments, invoices } from "~/db/schema"
+import { invoices, onlinePaymentParts, onlinePayments } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import { parseInvoiceNumber } from "~/domain/invoicing/invoice-number"
 
@@ -40,31 +40,40 @@ export async function takeUpVisit(query: {
 			)
 			.for("update")
 		if (!invoice) return { ok: false, reason: "no-such-invoice" }
-		const openCents = invoice.totalCents - invoice.paidCents
+		const openCents = invoice.openCents
 		if (openCents <= 0) return { ok: false, reason: "nothing-open" }
 		const [open] = await tx
-			.select({ id: cardPayments.id, sessionId: cardPayments.stripeSessionId })
-			.from(cardPayments)
+			.select({ id: onlinePayments.id, sessionId: onlinePayments.stripeSessionId })
+			.from(onlinePayments)
+			.innerJoin(
+				onlinePaymentParts,
+				and(
+					eq(onlinePaymentParts.producerId, onlinePayments.producerId),
+					eq(onlinePaymentParts.onlinePaymentId, onlinePayments.id),
+				),
+			)
 			.where(
 				and(
-					eq(cardPayments.producerId, producerId),
-					eq(cardPayments.invoiceId, invoice.id),
-					eq(cardPayments.amountCents, openCents),
-					inArray(cardPayments.state, ["open", "declined"]),
+					eq(onlinePayments.producerId, producerId),
+					eq(onlinePaymentParts.invoiceId, invoice.id),
+					eq(onlinePayments.amountCents, openCents),
+					inArray(onlinePayments.state, ["open", "declined"]),
 					or(
-						sql`${cardPayments.stripeSessionId} is not null`,
-						gt(cardPayments.createdAt, sql`now() - interval '1 minute'`),
+						sql`${onlinePayments.stripeSessionId} is not null`,
+						gt(onlinePayments.createdAt, sql`now() - interval '1 minute'`),
 					),
 				),
 			)
-			.orderBy(desc(cardPayments.createdAt))
+			.orderBy(desc(onlinePayments.createdAt))
 			.limit(1)
 		if (open) return { ok: true, visit: open, invoice: { openCents } }
 		const [made] = await tx
-			.insert(cardPayments)
-			.values({ producerId, invoiceId: invoice.id, amountCents: openCents, startedBy: query.personId })
-			.returning({ id: cardPayments.id })
+			.insert(onlinePayments)
+			.values({ producerId, storeId, amountCents: openCents, startedBy: query.personId })
+			.returning({ id: onlinePayments.id })
 		if (!made) throw new Error("an insert returns its row")
+		const part = { producerId, onlinePaymentId: made.id, invoiceId: invoice.id, amountCents: openCents }
+		await tx.insert(onlinePaymentParts).values(part)
 		return { ok: true, visit: { id: made.id, sessionId: null }, invoice: { openCents } }
 	})
 }
@@ -73,12 +82,12 @@ export async function takeUpVisit(query: {
 export async function storeSession(query: { producerId: string; visitId: string; sessionId: string }): Promise<void> {
 	await withProducer(query.producerId, (tx) =>
 		tx
-			.update(cardPayments)
+			.update(onlinePayments)
 			.set({
 				stripeSessionId: query.sessionId,
-				state: sql`case ${cardPayments.state} when 'expired' then 'open' else ${cardPayments.state} end`,
+				state: sql`case ${onlinePayments.state} when 'expired' then 'open' else ${onlinePayments.state} end`,
 			})
-			.where(and(eq(cardPayments.producerId, query.producerId), eq(cardPayments.id, query.visitId))),
+			.where(and(eq(onlinePayments.producerId, query.producerId), eq(onlinePayments.id, query.visitId))),
 	)
 }
 
@@ -86,13 +95,13 @@ export async function storeSession(query: { producerId: string; visitId: string;
 export async function closeVisit(query: { producerId: string; visitId: string }): Promise<void> {
 	await withProducer(query.producerId, (tx) =>
 		tx
-			.update(cardPayments)
+			.update(onlinePayments)
 			.set({ state: "expired" })
 			.where(
 				and(
-					eq(cardPayments.producerId, query.producerId),
-					eq(cardPayments.id, query.visitId),
-					ne(cardPayments.state, "paid"),
+					eq(onlinePayments.producerId, query.producerId),
+					eq(onlinePayments.id, query.visitId),
+					ne(onlinePayments.state, "paid"),
 				),
 			),
 	)

@@ -30,8 +30,7 @@ export async function queueReceipt(
 			timeZone: producers.timeZone,
 			year: invoices.year,
 			sequence: invoices.sequence,
-			totalCents: invoices.totalCents,
-			paidCents: invoices.paidCents,
+			openCents: invoices.openCents,
 		})
 		.from(invoices)
 		.innerJoin(stores, and(eq(stores.producerId, invoices.producerId), eq(stores.id, invoices.storeId)))
@@ -42,7 +41,7 @@ export async function queueReceipt(
 	const applied = {
 		invoiceNumber: invoiceNumber(row.year, row.sequence),
 		cents: payment.settledCents,
-		openCents: row.totalCents - row.paidCents,
+		openCents: row.openCents,
 	}
 	await queueMail(tx, {
 		producerId,

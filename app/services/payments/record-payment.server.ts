@@ -1,6 +1,7 @@
-import { and, eq, inArray, sql } from "drizzle-orm"
-import { auditEntries, invoices, orderEvents, paymentParts, payments } from "~/db/schema"
+import { and, eq, gt, inArray } from "drizzle-orm"
+import { auditEntries, invoiceOrders, invoices, orderEvents, payments, settlements } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
+import type { Day } from "~/domain/calendar"
 import { invoiceNumber, parseInvoiceNumber } from "~/domain/invoicing/invoice-number"
 import { allocatePayment } from "~/domain/invoicing/payments"
 import type { Result } from "~/domain/result"
@@ -24,6 +25,8 @@ export async function recordPayment(query: {
 	amountCents: number
 	personId: string
 	paymentId: string
+	/** The day it counts: when the money came in. */
+	receivedOn: Day
 }): Promise<RecordedPayment> {
 	const { producerId, amountCents, paymentId, personId } = query
 	const named = parseInvoiceNumber(query.invoiceNumber)
@@ -45,6 +48,7 @@ export async function recordPayment(query: {
 				storeId: about.storeId,
 				method: query.method,
 				amountCents,
+				receivedOn: query.receivedOn,
 				enteredBy: personId,
 			})
 			.onConflictDoNothing()
@@ -59,12 +63,18 @@ export async function recordPayment(query: {
 			owed.filter((invoice) => invoice.id !== about.id),
 		)
 		const parts = [...first.parts, ...rest.parts]
-		for (const { invoiceId, cents } of parts) {
-			await tx.insert(paymentParts).values({ producerId, paymentId, invoiceId, amountCents: cents })
-			await tx
-				.update(invoices)
-				.set({ paidCents: sql`${invoices.paidCents} + ${cents}` })
-				.where(and(eq(invoices.producerId, producerId), eq(invoices.id, invoiceId)))
+		if (parts.length > 0) {
+			await tx.insert(settlements).values(
+				parts.map(({ invoiceId, cents }) => ({
+					producerId,
+					invoiceId,
+					kind: "payment" as const,
+					paymentId,
+					amountCents: cents,
+					settledOn: query.receivedOn,
+					enteredBy: personId,
+				})),
+			)
 		}
 		await record(tx, { producerId, paymentId, personId, method: query.method, amountCents, parts })
 		return readPayment(tx, { producerId, paymentId })
@@ -77,11 +87,7 @@ async function lockOpenInvoices(tx: Tx, query: { producerId: string; storeId: st
 		.select()
 		.from(invoices)
 		.where(
-			and(
-				eq(invoices.producerId, query.producerId),
-				eq(invoices.storeId, query.storeId),
-				sql`${invoices.paidCents} < ${invoices.totalCents}`,
-			),
+			and(eq(invoices.producerId, query.producerId), eq(invoices.storeId, query.storeId), gt(invoices.openCents, 0)),
 		)
 		.orderBy(invoices.id)
 		.for("update")
@@ -89,7 +95,7 @@ async function lockOpenInvoices(tx: Tx, query: { producerId: string; storeId: st
 		id: row.id,
 		number: invoiceNumber(row.year, row.sequence),
 		dueOn: row.dueOn,
-		openCents: row.totalCents - row.paidCents,
+		openCents: row.openCents,
 	}))
 }
 
@@ -107,13 +113,13 @@ async function record(
 	const { producerId, paymentId, personId, parts, ...detail } = payment
 	if (parts.length > 0) {
 		const about = await tx
-			.select({ id: invoices.id, orderId: invoices.orderId })
-			.from(invoices)
+			.select({ id: invoiceOrders.invoiceId, orderId: invoiceOrders.orderId })
+			.from(invoiceOrders)
 			.where(
 				and(
-					eq(invoices.producerId, producerId),
+					eq(invoiceOrders.producerId, producerId),
 					inArray(
-						invoices.id,
+						invoiceOrders.invoiceId,
 						parts.map(({ invoiceId }) => invoiceId),
 					),
 				),
@@ -145,10 +151,10 @@ async function readPayment(tx: Tx, query: { producerId: string; paymentId: strin
 		.from(payments)
 		.where(and(eq(payments.producerId, producerId), eq(payments.id, paymentId)))
 	const parts = await tx
-		.select({ year: invoices.year, sequence: invoices.sequence, cents: paymentParts.amountCents })
-		.from(paymentParts)
-		.innerJoin(invoices, and(eq(invoices.producerId, paymentParts.producerId), eq(invoices.id, paymentParts.invoiceId)))
-		.where(and(eq(paymentParts.producerId, producerId), eq(paymentParts.paymentId, paymentId)))
+		.select({ year: invoices.year, sequence: invoices.sequence, cents: settlements.amountCents })
+		.from(settlements)
+		.innerJoin(invoices, and(eq(invoices.producerId, settlements.producerId), eq(invoices.id, settlements.invoiceId)))
+		.where(and(eq(settlements.producerId, producerId), eq(settlements.paymentId, paymentId)))
 		.orderBy(invoices.dueOn, invoices.year, invoices.sequence)
 	const settled = parts.reduce((sum, part) => sum + part.cents, 0)
 	return {

@@ -7,11 +7,12 @@ import { listDay } from "~/ui/orders/state-words"
 type Row = {
 	number: string
 	storeName: string
-	orderNumber: number
+	/** "318", "318, 325"; empty on a charge that is about no order. */
+	orderNumbers: string
 	issuedOn: Day
 	dueOn: Day
 	totalCents: number
-	paidCents: number
+	openCents: number
 }
 
 /** Invoices with how each stands, in words. `showStore` where they are of several stores. */
@@ -81,9 +82,14 @@ function InvoiceRow({
 			</td>
 			{showStore && <td>{invoice.storeName}</td>}
 			<td className="max-desk:hidden">
-				<Link className="inline-block py-1 fig" to={`${base}/orders/${invoice.orderNumber}`}>
-					{invoice.orderNumber}
-				</Link>
+				{invoice.orderNumbers
+					.split(", ")
+					.filter((number) => number !== "")
+					.map((number) => (
+						<Link key={number} className="mr-2 inline-block py-1 fig" to={`${base}/orders/${number}`}>
+							{number}
+						</Link>
+					))}
 			</td>
 			<td className="max-desk:hidden">{listDay(invoice.issuedOn, today)}</td>
 			<td>

@@ -69,7 +69,7 @@ describe("where a payment goes", () => {
 })
 
 describe("how an invoice stands", () => {
-	const bill = { totalCents: 68_400, paidCents: 0, dueOn: "2026-08-01" }
+	const bill = { totalCents: 68_400, openCents: 68_400, dueOn: "2026-08-01" }
 
 	test("it is late from the day after it was due", () => {
 		expect(standingWords(invoiceStanding(bill, "2026-08-01"))).toBe("open")
@@ -78,10 +78,10 @@ describe("how an invoice stands", () => {
 	})
 
 	test("a part payment leaves the rest open, and a paid invoice is never late", () => {
-		const part = invoiceStanding({ ...bill, paidCents: 60_000 }, "2026-08-13")
+		const part = invoiceStanding({ ...bill, openCents: 8400 }, "2026-08-13")
 		expect(part).toEqual({ state: "part-paid", openCents: 8400, daysLate: 12 })
 		expect(standingWords(part)).toBe("part paid, 12 days late")
-		expect(standingWords(invoiceStanding({ ...bill, paidCents: 68_400 }, "2027-01-01"))).toBe("paid")
+		expect(standingWords(invoiceStanding({ ...bill, openCents: 0 }, "2027-01-01"))).toBe("paid")
 	})
 })
 

@@ -24,6 +24,7 @@ test("invoices come with what is owed first, the latest first, page by page, and
 			amountCents: 1_000,
 			personId,
 			paymentId: randomUUID(),
+			receivedOn: "2026-08-13",
 		})
 	}
 	const page = (after: string | null) =>

@@ -1,7 +1,7 @@
 import { eq } from "drizzle-orm"
 import Stripe from "stripe"
 import { afterAll, afterEach, describe, expect, test } from "vitest"
-import { cardPayments, stripeEvents } from "~/db/schema"
+import { onlinePayments, stripeEvents } from "~/db/schema"
 import { withPlatform, withProducer } from "~/db/transaction.server"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { applyStripeEvent } from "~/services/payments/apply-stripe-event.server"
@@ -85,7 +85,7 @@ describe("paying an invoice by card", () => {
 		const { yard, shop, number } = await openInvoice()
 		await typeCard(await openCardPage(yard, shop, number), GOOD_CARD)
 		await withProducer(yard.producerId, (tx) =>
-			tx.update(cardPayments).set({ stripeSessionId: null }).where(eq(cardPayments.producerId, yard.producerId)),
+			tx.update(onlinePayments).set({ stripeSessionId: null }).where(eq(onlinePayments.producerId, yard.producerId)),
 		)
 		await applyAll(service)
 		expect(await readBooks(yard)).toMatchObject({ paid: [92_990], visits: ["paid"] })
@@ -147,7 +147,7 @@ describe("paying an invoice by card", () => {
 		const first = await openCardPage(yard, shop, number)
 		// A visit given up here, while its page still stands open in another tab.
 		await withProducer(yard.producerId, (tx) =>
-			tx.update(cardPayments).set({ state: "expired" }).where(eq(cardPayments.producerId, yard.producerId)),
+			tx.update(onlinePayments).set({ state: "expired" }).where(eq(onlinePayments.producerId, yard.producerId)),
 		)
 		const second = await openCardPage(yard, shop, number)
 		expect(await typeCard(second, GOOD_CARD)).toBe(303)

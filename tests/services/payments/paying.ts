@@ -1,7 +1,7 @@
 import { createServer } from "node:http"
 import type { AddressInfo } from "node:net"
 import { eq } from "drizzle-orm"
-import { cardPayments, invoices, orders, paymentParts, payments } from "~/db/schema"
+import { invoiceOrders, invoices, onlinePayments, orders, payments, settlements } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
 import { applyStripeEvent } from "~/services/payments/apply-stripe-event.server"
@@ -70,19 +70,22 @@ export async function addInvoice(
 			.insert(orders)
 			.values({ producerId, number: sequence, storeId: shop.storeId, deliveryOn: "2026-08-13", state: "sent" })
 			.returning({ id: orders.id })
-		await tx.insert(invoices).values({
-			producerId,
-			year: 2026,
-			sequence,
-			storeId: shop.storeId,
-			orderId: order?.id ?? "",
-			issuedOn: "2026-07-30",
-			dueOn,
-			linesCents: totalCents,
-			deliveryCents: 0,
-			taxCents: 0,
-			totalCents,
-		})
+		const [invoice] = await tx
+			.insert(invoices)
+			.values({
+				producerId,
+				year: 2026,
+				sequence,
+				storeId: shop.storeId,
+				issuedOn: "2026-07-30",
+				dueOn,
+				linesCents: totalCents,
+				deliveryCents: 0,
+				taxCents: 0,
+				totalCents,
+			})
+			.returning({ id: invoices.id })
+		await tx.insert(invoiceOrders).values({ producerId, orderId: order?.id ?? "", invoiceId: invoice?.id ?? "" })
 	})
 	return invoiceNumber(2026, sequence)
 }
@@ -130,14 +133,14 @@ export function readBooks(yard: Yard) {
 			.where(eq(payments.producerId, yard.producerId))
 			.orderBy(payments.receivedAt, payments.id)
 		const parts = await tx
-			.select({ amountCents: paymentParts.amountCents })
-			.from(paymentParts)
-			.where(eq(paymentParts.producerId, yard.producerId))
+			.select({ amountCents: settlements.amountCents })
+			.from(settlements)
+			.where(eq(settlements.producerId, yard.producerId))
 		const visits = await tx
-			.select({ state: cardPayments.state })
-			.from(cardPayments)
-			.where(eq(cardPayments.producerId, yard.producerId))
-			.orderBy(cardPayments.createdAt)
+			.select({ state: onlinePayments.state })
+			.from(onlinePayments)
+			.where(eq(onlinePayments.producerId, yard.producerId))
+			.orderBy(onlinePayments.createdAt)
 		return {
 			paid: paid.map(({ paidCents }) => paidCents),
 			payments: money.map(({ method, amountCents }) => `${method} ${amountCents}`),

@@ -14,7 +14,15 @@ async function openInvoices() {
 	const named = await addInvoice(yard, shop, { sequence: 3, totalCents: 30_000, dueOn: "2026-10-20" })
 	await addInvoice(yard, await openStore(yard), { sequence: 4, totalCents: 99_000 })
 	const note = (amountCents: number, paymentId: string = randomUUID(), invoiceNumber = named) =>
-		recordPayment({ producerId: yard.producerId, invoiceNumber, method: "cheque", amountCents, personId, paymentId })
+		recordPayment({
+			receivedOn: "2026-08-13",
+			producerId: yard.producerId,
+			invoiceNumber,
+			method: "cheque",
+			amountCents,
+			personId,
+			paymentId,
+		})
 	return { yard, note, oldest, later, named }
 }
 
