@@ -272,7 +272,8 @@ test("a second run changes nothing", async () => {
 					(table) =>
 						`select '${table}' as name, count(*), md5(string_agg(t::text, '' order by t::text)) from ${table} t`,
 				)
-				.join(" union all "),
+				.join(" union all ")
+				.concat(" order by 1"),
 		)
 	const before = await fingerprints()
 	expect(await seedDemo()).toEqual(demoPeople)

@@ -27,6 +27,28 @@ const anyDay = fc
 	.map((days) => new Date(days * 86_400_000).toISOString().slice(0, 10))
 
 describe("days", () => {
+	test("a day exists where the calendar of the language says so, and nothing else is a day", () => {
+		fc.assert(
+			fc.property(
+				fc.integer({ min: 0, max: 9999 }),
+				fc.integer({ min: 0, max: 13 }),
+				fc.integer({ min: 0, max: 32 }),
+				(year, month, date) => {
+					const text = [
+						String(year).padStart(4, "0"),
+						String(month).padStart(2, "0"),
+						String(date).padStart(2, "0"),
+					].join("-")
+					const at = new Date(`${text}T00:00:00Z`)
+					expect(isDay(text)).toBe(!Number.isNaN(at.getTime()) && at.toISOString().slice(0, 10) === text)
+				},
+			),
+			{ numRuns: 2_000 },
+		)
+		for (const none of ["", "2026-1-1", "2026-01-01 ", "26-01-01", "2026-01-01T00:00:00Z", "twenty"])
+			expect(isDay(none)).toBe(false)
+	})
+
 	test("days are counted over month ends, leap days and year ends", () => {
 		expect(addDays("2026-02-28", 1)).toBe("2026-03-01")
 		expect(addDays("2028-02-28", 1)).toBe("2028-02-29")

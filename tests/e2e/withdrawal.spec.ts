@@ -31,7 +31,7 @@ async function someLot(): Promise<{ code: string }> {
 /** The secret link of the first notice that was mailed for the lot. */
 async function mailedLink(): Promise<string> {
 	const [mail] = await askDatabase<{ link: string }>(
-		"select props->>'noticeUrl' as link from outbox_mails where template = 'withdrawal' order by created_at, id limit 1",
+		"select props->>'noticeUrl' as link from outbox_mails where template = 'withdrawal' order by created_at desc, id limit 1",
 	)
 	return new URL(mail?.link ?? "").pathname
 }
