@@ -1,7 +1,9 @@
 import { z } from "zod"
-import { dayWords, fullDay } from "~/domain/calendar"
+import { dayWords, fullDay, monthDay } from "~/domain/calendar"
+import { discountWords } from "~/domain/invoicing/discount-words"
+import { openCents, settledParts } from "~/domain/invoicing/invoice-facts"
 import { formatMoney } from "~/domain/money"
-import { type InvoiceProps, invoiceProps, openCents, sampleInvoice, sentLines } from "./documents/invoice-props"
+import { type InvoiceProps, invoiceProps, sampleInvoice, sentLines } from "./documents/invoice-props"
 import { Button } from "./parts/button"
 import { Frame } from "./parts/frame"
 import { GivenTable } from "./parts/given-table"
@@ -41,13 +43,12 @@ export async function attachments({ invoice }: Props) {
 
 export default function Invoice(props: Props) {
 	const { invoice, sentTo, payUrl, pdfUrl } = props
-	const { yard, number, issuedOn, due, charges, totalCents, paidCents, notes } = invoice
+	const { yard, number, issuedOn, due, discount, charges, notes, delivered } = invoice
 	const open = openCents(invoice)
-	const paid = paidCents > 0 ? [{ label: "Paid, thank you", cents: -paidCents }] : []
 	return (
 		<Frame
 			title={subject(props)}
-			preview={`For ${dayWords(invoice.delivered.on)}; the printed page comes with this letter.`}
+			preview={`${delivered ? `For ${dayWords(delivered.on)}; the` : "The"} printed page comes with this letter.`}
 			yard={yard}
 			about={[`Invoice ${number}`, fullDay(issuedOn)]}
 			sentTo={sentTo}
@@ -62,6 +63,7 @@ export default function Invoice(props: Props) {
 				)}
 			</Title>
 			<Lead>{deliverySentence(invoice)}</Lead>
+			{discount && open > 0 && <Lead>{discountWords(discount)}.</Lead>}
 			<Button
 				href={payUrl}
 				words={open > 0 ? "Pay by card" : "Open the invoice"}
@@ -70,17 +72,22 @@ export default function Invoice(props: Props) {
 			<GivenTable
 				casesHead="Cases sent"
 				lines={sentLines(invoice)}
-				charges={[...charges, ...paid]}
-				total={{ label: "To pay", cents: totalCents - paidCents }}
+				charges={[...charges, ...settledParts(invoice)]}
+				total={{ label: "To pay", cents: open }}
 			/>
 			<Small lines={[`${KEEP_COMB} ${NOT_FOR_INFANTS}`, ...notes, mistakeWords(yard)]} />
 		</Frame>
 	)
 }
 
-/** "For Pantry & Plume: eight cases, Tuesday, August 18, 8:40 am, back door, signed for by Rosa Quill." */
-function deliverySentence({ store, delivered, lines }: InvoiceProps): string {
+/** "For Pantry & Plume: eight cases on Tuesday, August 18, 8:40 am, back door, signed for by Rosa Quill." */
+function deliverySentence({ store, delivered, lines, orders = [] }: InvoiceProps): string {
+	if (!delivered) return `For ${store.name}: ${lines.map(({ productName }) => productName).join(", ")}.`
 	const count = lines.reduce((sum, line) => sum + line.casesSent, 0)
+	if (delivered.from && delivered.from !== delivered.on) {
+		const span = `${monthDay(delivered.from)} to ${monthDay(delivered.on)}`
+		return `For ${store.name}: ${casesInSentence(count)} of ${orders.length} orders, ${span}.`
+	}
 	const signed = delivered.signedBy && `signed for by ${delivered.signedBy}`
 	const known = joinKnown([dayWords(delivered.on), delivered.at, delivered.place, signed])
 	return `For ${store.name}: ${casesInSentence(count)} on ${known}.`

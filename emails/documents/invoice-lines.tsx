@@ -1,14 +1,16 @@
 import { Text, View } from "@react-pdf/renderer"
-import { formatMoney, plainMoney } from "~/domain/money"
+import { linesByOrder } from "~/domain/invoicing/invoice-facts"
+import { poundPriceWords } from "~/domain/invoicing/weighed-words"
+import { plainMoney } from "~/domain/money"
 import { stripCells } from "../parts/strip-cells"
-import { DoubleRule, StripDrawing } from "./drawings"
+import { StripDrawing } from "./drawings"
 import type { InvoiceProps } from "./invoice-props"
 import { column, paper } from "./paper"
 
 type InvoiceLine = InvoiceProps["lines"][number]
 
 /** The lines of an invoice with the heads of the columns, which stand again on every further page. */
-export function InvoiceLines({ lines }: Pick<InvoiceProps, "lines">) {
+export function InvoiceLines({ lines, orders }: Pick<InvoiceProps, "lines" | "orders">) {
 	return (
 		<View>
 			<View style={paper.heads} fixed>
@@ -20,15 +22,26 @@ export function InvoiceLines({ lines }: Pick<InvoiceProps, "lines">) {
 				<Text style={{ width: column.price, textAlign: "right" }}>A case</Text>
 				<Text style={{ width: column.amount, textAlign: "right" }}>Amount</Text>
 			</View>
-			{lines.map((line, index) => (
-				// biome-ignore lint/suspicious/noArrayIndexKey: the same product may stand on two lines
-				<LineRow key={index} line={line} />
+			{linesByOrder(lines, orders).map((group, groupIndex) => (
+				// biome-ignore lint/suspicious/noArrayIndexKey: the groups of a document are never reordered
+				<View key={groupIndex}>
+					{group.head && (
+						<Text style={paper.orderHead} minPresenceAhead={40}>
+							{group.head}
+						</Text>
+					)}
+					{group.lines.map((line, index) => (
+						// biome-ignore lint/suspicious/noArrayIndexKey: the same product may stand on two lines
+						<LineRow key={index} line={line} />
+					))}
+				</View>
 			))}
 		</View>
 	)
 }
 
 function LineRow({ line }: { line: InvoiceLine }) {
+	const isCharge = line.casesAsked === 0
 	return (
 		<View style={paper.line} wrap={false}>
 			<Text style={[paper.figure, paper.soft, { width: column.number }]}>{line.sheetNumber ?? ""}</Text>
@@ -39,13 +52,18 @@ function LineRow({ line }: { line: InvoiceLine }) {
 			<Text style={[paper.figure, { width: column.lots, paddingRight: 4 }]}>{line.lots.join(", ")}</Text>
 			<Text style={[paper.figure, { width: column.weight, paddingRight: 4 }]}>{line.netWeight ?? ""}</Text>
 			<View style={{ width: column.cases }}>
-				<StripDrawing given={line.casesSent} asked={line.casesAsked} />
-				<Text style={paper.small}>{sentWords(line)}</Text>
+				{!isCharge && <StripDrawing given={line.casesSent} asked={line.casesAsked} />}
+				{!isCharge && <Text style={paper.small}>{sentWords(line)}</Text>}
 			</View>
-			<Text style={[paper.amount, { width: column.price }]}>{plainMoney(line.priceCents)}</Text>
+			<Text style={[paper.amount, { width: column.price }]}>{priceWords(line)}</Text>
 			<Text style={[paper.amount, { width: column.amount }]}>{plainMoney(line.amountCents)}</Text>
 		</View>
 	)
+}
+
+function priceWords({ casesAsked, priceCents, poundCents }: InvoiceLine): string {
+	if (casesAsked === 0) return ""
+	return poundCents ? poundPriceWords(poundCents) : plainMoney(priceCents)
 }
 
 /** "3 sent", "2 sent of 4 asked"; where one cell is five cases it says so. */
@@ -53,30 +71,4 @@ function sentWords({ casesSent, casesAsked }: InvoiceLine): string {
 	const { casesPerCell } = stripCells(casesSent, casesAsked)
 	const words = casesSent < casesAsked ? `${casesSent} sent of ${casesAsked} asked` : `${casesSent} sent`
 	return casesPerCell === 1 ? words : `${words}; one cell is ${casesPerCell} cases`
-}
-
-/** Delivery, tax and what has been paid, then what is left over a double rule; never parted by the end of a page. */
-export function InvoiceSums({
-	charges,
-	totalCents,
-	paidCents,
-}: Pick<InvoiceProps, "charges" | "totalCents" | "paidCents">) {
-	const paid = paidCents > 0 ? [{ label: "Paid, thank you", cents: -paidCents }] : []
-	return (
-		<View wrap={false}>
-			{[...charges, ...paid].map((charge) => (
-				<View key={charge.label} style={paper.charge}>
-					<Text style={[paper.text, { flex: 1 }]}>{charge.label}</Text>
-					<Text style={paper.amount}>{plainMoney(charge.cents)}</Text>
-				</View>
-			))}
-			<View style={paper.total}>
-				<Text style={paper.totalWords}>To pay</Text>
-				<View>
-					<Text style={[paper.totalWords, { marginBottom: 6 }]}>{formatMoney(totalCents - paidCents)}</Text>
-					<DoubleRule />
-				</View>
-			</View>
-		</View>
-	)
 }

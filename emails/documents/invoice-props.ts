@@ -3,8 +3,9 @@ import { sampleGivenLines, sumsUp } from "../order-props"
 import { cases, cents, charge, day, sampleYard, sentence, words, yard } from "../props"
 
 /**
- * One line of an invoice. Cases are what left the yard; the price is of one case, at the break that was agreed.
- * `sheetNumber` is the product's number on the order sheet, `reason` why the line is short, where there is one.
+ * One line of an invoice. Cases are what left the yard; the price is of one case, at the break that was agreed, or with
+ * `poundCents` of a pound of what was weighed. `sheetNumber` is the product's number on the order sheet, `reason` why the
+ * line is short, where there is one, `orderNumber` the order it fills. A charge that is no product has no cases.
  */
 const invoiceLine = z.object({
 	sheetNumber: words.nullish(),
@@ -15,14 +16,21 @@ const invoiceLine = z.object({
 	casesAsked: cases,
 	casesSent: cases,
 	priceCents: cents,
+	poundCents: cents.nullish(),
 	amountCents: cents,
 	reason: sentence.nullish(),
+	orderNumber: words.nullish(),
 })
+
+/** An order that an invoice is about; `poNumber` is the store's own number for it. */
+const invoicedOrder = z.object({ number: words, placedOn: day, deliveredOn: day, poNumber: words.nullish() })
 
 /**
  * Everything an invoice says. The letter, its PDF and the page in the portal are drawn from this one shape, so that they
  * cannot differ. Days are ISO days, money is cents; `delivered.at`, weights and terms are words from the domain, in the
- * producer's time zone. `paidCents` is what has been paid so far. Refused when the parts do not sum to `totalCents`.
+ * producer's time zone. What has been settled so far is told apart by how; `discount` is there while it may still be
+ * taken. `orders` are named where there are several; `order` and `delivered` are missing on a charge. Refused when the
+ * parts do not sum to `totalCents`.
  */
 export const invoiceProps = z
 	.object({
@@ -30,29 +38,33 @@ export const invoiceProps = z
 		number: words,
 		issuedOn: day,
 		store: z.object({ name: words, contactName: words.nullish(), address: words.nullish() }),
-		order: z.object({ number: words, placedOn: day }),
-		delivered: z.object({
-			on: day,
-			at: words.nullish(),
-			place: words.nullish(),
-			netWeight: words.nullish(),
-			signedBy: words.nullish(),
-		}),
+		order: z.object({ number: words, placedOn: day }).nullish(),
+		orders: z.array(invoicedOrder).max(500).optional(),
+		poNumbers: words.nullish(),
+		delivered: z
+			.object({
+				from: day.nullish(),
+				on: day,
+				at: words.nullish(),
+				place: words.nullish(),
+				netWeight: words.nullish(),
+				signedBy: words.nullish(),
+			})
+			.nullish(),
 		due: z.object({ on: day, termsWords: words }),
+		discount: z.object({ basisPoints: cents, cents, untilOn: day }).nullish(),
 		waysToPay: words,
-		lines: z.array(invoiceLine).min(1).max(1000),
+		lines: z.array(invoiceLine).min(1).max(5000),
 		charges: z.array(charge).max(20),
 		totalCents: cents.nonnegative(),
 		paidCents: cents.nonnegative(),
+		creditedCents: cents.nonnegative().optional(),
+		discountTakenCents: cents.nonnegative().optional(),
+		writtenOffCents: cents.nonnegative().optional(),
 		notes: z.array(sentence).max(5),
 	})
 	.refine(sumsUp, { path: ["totalCents"], message: "is not the sum of the lines and charges" })
 export type InvoiceProps = z.infer<typeof invoiceProps>
-
-/** What is still to be paid, never below zero. */
-export function openCents(invoice: Pick<InvoiceProps, "totalCents" | "paidCents">): number {
-	return Math.max(0, invoice.totalCents - invoice.paidCents)
-}
 
 /** The lines in the shape of an order's given lines: what was sent is what was given. */
 export function sentLines(invoice: Pick<InvoiceProps, "lines">) {

@@ -54,6 +54,14 @@ export const paper = StyleSheet.create({
 		paddingTop: 7.5,
 		paddingBottom: 6.5,
 	},
+	orderHead: {
+		fontFamily: serif,
+		fontStyle: "italic",
+		fontSize: 12,
+		color: color.inkSoft,
+		paddingTop: 10,
+		paddingBottom: 3,
+	},
 	charge: { flexDirection: "row", justifyContent: "space-between", paddingLeft: column.number, paddingVertical: 6.5 },
 	total: {
 		flexDirection: "row",

@@ -1,3 +1,4 @@
+import { poundPriceWords } from "~/domain/invoicing/weighed-words"
 import { joinKnown, shortSentences } from "../words"
 import { LineTable } from "./line-table"
 import { stripCaption } from "./strip-cells"
@@ -9,6 +10,9 @@ interface GivenTableProps {
 		productName: string
 		productNote?: string | null
 		lots?: readonly string[]
+		/** Said where the price is that of a pound. */
+		netWeight?: string | null
+		poundCents?: number | null
 		casesAsked: number
 		casesGiven: number
 		priceCents: number
@@ -28,10 +32,11 @@ export function GivenTable({ casesHead, lines, charges, total }: GivenTableProps
 				casesHead={casesHead}
 				lines={lines.map((line) => ({
 					name: line.productName,
-					note: joinKnown([line.productNote, lotWords(line.lots)], "; "),
-					cases: stripCaption(line.casesGiven, line.casesAsked),
-					strip: { given: line.casesGiven, asked: line.casesAsked },
+					note: joinKnown([line.productNote, lotWords(line.lots), line.poundCents ? line.netWeight : null], "; "),
+					cases: line.casesAsked > 0 ? stripCaption(line.casesGiven, line.casesAsked) : "",
+					...(line.casesAsked > 0 ? { strip: { given: line.casesGiven, asked: line.casesAsked } } : {}),
 					priceCents: line.priceCents,
+					priceWords: priceWords(line),
 					amount: line.amountCents,
 				}))}
 				charges={charges}
@@ -46,6 +51,11 @@ export function GivenTable({ casesHead, lines, charges, total }: GivenTableProps
 			)}
 		</>
 	)
+}
+
+function priceWords({ casesAsked, poundCents }: GivenTableProps["lines"][number]): string | undefined {
+	if (casesAsked === 0) return ""
+	return poundCents ? poundPriceWords(poundCents) : undefined
 }
 
 function lotWords(lots: readonly string[] = []): string | null {

@@ -13,6 +13,8 @@ interface TableLine {
 	cases: string
 	strip?: { given: number; asked: number }
 	priceCents: number
+	/** Stands in its place where the price is not that of a case. */
+	priceWords?: string | undefined
 	/** Cents, or words where there is no sum yet. */
 	amount: number | string
 }
@@ -106,7 +108,11 @@ function LineRow({ line }: { line: TableLine }) {
 				<span style={{ ...(line.strip ? type.caption : type.figure), color: color.inkSoft }}>{line.cases}</span>
 			</td>
 			<td align="right" style={{ ...type.figure, ...cell }}>
-				{plainMoney(line.priceCents)}
+				{line.priceWords === undefined ? (
+					plainMoney(line.priceCents)
+				) : (
+					<span style={type.caption}>{line.priceWords}</span>
+				)}
 			</td>
 			<td align="right" style={{ ...type.figure, ...cell, padding: "11px 0 11px 14px" }}>
 				{typeof line.amount === "number" ? (

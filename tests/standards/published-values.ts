@@ -16,7 +16,22 @@ const valuesSchema = z.looseObject({
 	comb_grades: combGradesShape.optional(),
 	storage_and_freezing: z.looseObject({ ...keepingShape, ...freezingShape }).optional(),
 	terms: z
-		.looseObject({ due_dates: z.array(z.record(text, day)).optional(), ageing: z.array(text).optional() })
+		.looseObject({
+			due_dates: z.array(z.record(text, day)).optional(),
+			ageing: z.array(text).optional(),
+			trade_credit: z
+				.array(
+					z.looseObject({
+						discount_pct: z.number(),
+						discount_days: z.number(),
+						paid_day: z.number(),
+						nominal_365: z.number().optional(),
+						nominal_360: z.number().optional(),
+						effective_365: z.number().optional(),
+					}),
+				)
+				.optional(),
+		})
 		.optional(),
 	planning: z
 		.looseObject({
@@ -94,6 +109,7 @@ export function readValues(path: string): PublishedValues {
 export const heldTo: Record<string, readonly string[]> = {
 	"terms.due_dates": [],
 	"terms.ageing": [],
+	"terms.trade_credit": ["discount_pct", "discount_days", "paid_day", "nominal_365", "nominal_360", "effective_365"],
 	"planning.atp": ["on_hand", "mps", "orders", "cumulative_without_lookahead", "cumulative_with_lookahead"],
 	"calendar.rrule": ["dtstart", "tzid", "rrule", "dates"],
 	...scaleHeldTo,

@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest"
 import { ageingBucket } from "~/domain/invoicing/ageing"
-import { dueDates, type Terms } from "~/domain/invoicing/terms"
+import { dueDates, missedDiscountRates, type Terms } from "~/domain/invoicing/terms"
 import type { PublishedValues } from "./published-values"
 
 const none = { discountBasisPoints: 0, discountDays: 0 }
@@ -15,6 +15,29 @@ function columnOf(key: string): { terms: Terms; asks: "dueOn" | "discountUntil" 
 	if (!percent || !discountDays) return null
 	const discount = { discountBasisPoints: Number(percent) * 100, discountDays: Number(discountDays) }
 	return { terms: { kind: "net", days: 365, ...discount }, asks: "discountUntil" }
+}
+
+type TradeCredit = NonNullable<NonNullable<PublishedValues["terms"]>["trade_credit"]>
+
+/** The yearly cost of a discount that was let go, in percent to the places that the file gives. */
+function holdTradeCredit(examples: TradeCredit): void {
+	if (examples.length === 0) return
+	test.each(examples)("$discount_pct % off within $discount_days days, let go and paid on day $paid_day", (example) => {
+		const rates = (yearDays: 360 | 365) =>
+			missedDiscountRates({
+				discountBasisPoints: Math.round(example.discount_pct * 100),
+				discountDays: example.discount_days,
+				paidDay: example.paid_day,
+				yearDays,
+			})
+		const given = [
+			[example.nominal_365, rates(365).simple],
+			[example.nominal_360, rates(360).simple],
+			[example.effective_365, rates(365).effective],
+		].filter((pair): pair is [number, number] => pair[0] !== undefined)
+		expect(given.length).toBeGreaterThan(0)
+		for (const [published, ours] of given) expect(Number(ours.toFixed(2))).toBe(published)
+	})
 }
 
 /** Makes one test of each due date and each ageing column. Columns without a rule are printed. */
@@ -38,6 +61,8 @@ export function holdTerms({ terms }: PublishedValues): void {
 			})
 		})
 	}
+
+	holdTradeCredit(terms?.trade_credit ?? [])
 
 	const buckets = terms?.ageing ?? []
 

@@ -1,70 +1,53 @@
-import { type Day, dayWords, fullDay, monthDay } from "~/domain/calendar"
+import { Fragment } from "react"
+import { type Day, fullDay } from "~/domain/calendar"
+import {
+	type InvoiceFacts,
+	invoiceParties,
+	invoiceSlip,
+	linesByOrder,
+	openCents,
+	settledParts,
+} from "~/domain/invoicing/invoice-facts"
+import { poundPriceWords } from "~/domain/invoicing/weighed-words"
 import { formatMoney, plainMoney } from "~/domain/money"
-import { casesWords } from "~/domain/quantity"
 import { InvoicePaper } from "~/ui/layout/invoice-paper"
 import { FillStrip } from "~/ui/stock/fill-strip"
 
 type Line = {
-	sheetNumber?: string | null
+	sheetNumber?: string | null | undefined
 	productName: string
-	productNote?: string | null
+	productNote?: string | null | undefined
 	lots: readonly string[]
-	netWeight?: string | null
+	netWeight?: string | null | undefined
 	casesAsked: number
 	casesSent: number
 	priceCents: number
+	poundCents?: number | null | undefined
 	amountCents: number
-	reason?: string | null
+	reason?: string | null | undefined
+	orderNumber?: string | null | undefined
 }
 
 /** All that an invoice says; the letter and the PDF are drawn from the same. */
-export type Invoice = {
-	yard: { name: string; address: string; email: string; phone?: string | null }
-	number: string
+export type Invoice = Omit<InvoiceFacts, "lines"> & {
+	yard: { name: string; address: string; email: string; phone?: string | null | undefined }
 	issuedOn: Day
-	store: { name: string; contactName?: string | null; address?: string | null }
-	order: { number: string; placedOn: Day }
-	delivered: { on: Day; netWeight?: string | null }
-	due: { on: Day; termsWords: string }
-	waysToPay: string
 	lines: readonly Line[]
 	charges: readonly { label: string; cents: number }[]
-	totalCents: number
-	paidCents: number
 	notes: readonly string[]
 }
 
 /** An invoice on its paper, as it prints. `care` says how to keep the comb. */
 export function InvoiceDocument({ invoice, care }: { invoice: Invoice; care: string }) {
-	const { yard, number, store, order, delivered, due, lines } = invoice
-	const openCents = invoice.totalCents - invoice.paidCents
-	const isPaid = openCents <= 0
-	const cases = lines.reduce((sum, line) => sum + line.casesSent, 0)
+	const { yard, number, lines, notes } = invoice
 	const reasons = [...new Set(lines.flatMap((line) => (line.casesSent < line.casesAsked && line.reason) || []))]
+	const hasCases = lines.some((line) => line.casesAsked > 0)
 	return (
 		<InvoicePaper
 			yard={{ name: yard.name, contact: [yard.address, yard.email, yard.phone].filter(Boolean).join(". ") }}
 			title={`Invoice ${number}`}
 			date={fullDay(invoice.issuedOn)}
-			blocks={[
-				{
-					title: "To",
-					name: store.name,
-					lines: [store.contactName, store.address, `Your order of ${monthDay(order.placedOn)}`].filter(Boolean),
-				},
-				{
-					title: "Delivered",
-					name: dayWords(delivered.on),
-					lines: [casesWords(cases), delivered.netWeight && `${delivered.netWeight} of comb, net`].filter(Boolean),
-				},
-				isPaid
-					? { title: "To pay", name: "Nothing", lines: ["This invoice is paid."] }
-					: {
-							title: "Please pay by",
-							name: dayWords(due.on),
-							lines: [due.termsWords, invoice.waysToPay, `Quote ${number}`],
-						},
-			]}
+			blocks={invoiceParties(invoice).map(({ group, name, facts }) => ({ title: group, name, lines: facts }))}
 			note={
 				reasons.length > 0 &&
 				reasons.map((reason) => (
@@ -73,17 +56,9 @@ export function InvoiceDocument({ invoice, care }: { invoice: Invoice; care: str
 					</p>
 				))
 			}
-			care={[care, ...invoice.notes].join(" ")}
-			slip={
-				isPaid
-					? undefined
-					: [
-							{ label: "Invoice", value: number },
-							{ label: "Store", value: store.name },
-							{ label: `By ${monthDay(due.on)}`, value: formatMoney(openCents) },
-						]
-			}
-			fine="One solid cell is one case sent; a bare line is one asked for and not sent."
+			care={(hasCases ? [care, ...notes] : notes).join(" ")}
+			slip={invoiceSlip(invoice)?.map(({ head, value }) => ({ label: head, value }))}
+			fine={hasCases ? "One solid cell is one case sent; a bare line is one asked for and not sent." : ""}
 		>
 			<table className="paper-table">
 				<thead>
@@ -108,9 +83,21 @@ export function InvoiceDocument({ invoice, care }: { invoice: Invoice; care: str
 					</tr>
 				</thead>
 				<tbody>
-					{lines.map((line, index) => (
+					{linesByOrder(lines, invoice.orders).map((group, groupIndex) => (
 						// biome-ignore lint/suspicious/noArrayIndexKey: the lines of an issued invoice are never reordered
-						<LineRow key={index} line={line} />
+						<Fragment key={groupIndex}>
+							{group.head && (
+								<tr className="order-head">
+									<th scope="rowgroup" colSpan={7}>
+										{group.head}
+									</th>
+								</tr>
+							)}
+							{group.lines.map((line, index) => (
+								// biome-ignore lint/suspicious/noArrayIndexKey: the lines of an issued invoice are never reordered
+								<LineRow key={index} line={line} />
+							))}
+						</Fragment>
 					))}
 				</tbody>
 				<Sums invoice={invoice} />
@@ -127,21 +114,28 @@ function LineRow({ line }: { line: Line }) {
 			<td>
 				<span className="name">{line.productName}</span>
 				{line.productNote && <span className="note">{line.productNote}</span>}
+				{line.poundCents && (
+					<span className="note block desk:hidden print:hidden">
+						{line.netWeight} at {poundPriceWords(line.poundCents)}
+					</span>
+				)}
 			</td>
 			<td className="fig wide-only">{line.lots.join(", ")}</td>
 			<td className="fig wide-only">{line.netWeight}</td>
 			<td>
-				<FillStrip
-					countsThrough
-					runs={[
-						{ state: "free", count: casesSent },
-						{ state: "short", count: Math.max(0, casesAsked - casesSent) },
-					]}
-					label={`${casesSent} sent of ${casesAsked} asked`}
-					caption={casesSent < casesAsked ? `${casesSent} sent of ${casesAsked} asked` : `${casesSent} sent`}
-				/>
+				{casesAsked > 0 && (
+					<FillStrip
+						countsThrough
+						runs={[
+							{ state: "free", count: casesSent },
+							{ state: "short", count: Math.max(0, casesAsked - casesSent) },
+						]}
+						label={`${casesSent} sent of ${casesAsked} asked`}
+						caption={casesSent < casesAsked ? `${casesSent} sent of ${casesAsked} asked` : `${casesSent} sent`}
+					/>
+				)}
 			</td>
-			<td className="money wide-only">{plainMoney(line.priceCents)}</td>
+			<td className="money wide-only">{priceWords(line)}</td>
 			<td className="money">{plainMoney(line.amountCents)}</td>
 		</tr>
 	)
@@ -159,11 +153,15 @@ function Between() {
 	)
 }
 
-function Sums({ invoice: { charges, totalCents, paidCents } }: { invoice: Invoice }) {
-	const paid = paidCents > 0 ? [{ label: "Paid, thank you", cents: -paidCents }] : []
+function priceWords({ casesAsked, priceCents, poundCents }: Line): string {
+	if (casesAsked === 0) return ""
+	return poundCents ? poundPriceWords(poundCents) : plainMoney(priceCents)
+}
+
+function Sums({ invoice }: { invoice: Invoice }) {
 	return (
 		<tfoot>
-			{[...charges, ...paid].map((charge) => (
+			{[...invoice.charges, ...settledParts(invoice)].map((charge) => (
 				<tr key={charge.label}>
 					<td className="wide-only" />
 					<td>{charge.label}</td>
@@ -175,7 +173,7 @@ function Sums({ invoice: { charges, totalCents, paidCents } }: { invoice: Invoic
 				<td className="wide-only" />
 				<td>To pay</td>
 				<Between />
-				<td className="money">{formatMoney(totalCents - paidCents)}</td>
+				<td className="money">{formatMoney(openCents(invoice))}</td>
 			</tr>
 		</tfoot>
 	)

@@ -16,7 +16,7 @@ type InvoicePaperProps = {
 	/** How to keep comb, what to do about breakage. */
 	care?: ReactNode
 	/** The tear-off at the foot, sent back with a check. */
-	slip?: readonly { label: string; value: ReactNode }[]
+	slip?: readonly { label: string; value: ReactNode }[] | undefined
 	/** One line of small print at the very foot. */
 	fine?: ReactNode
 }
