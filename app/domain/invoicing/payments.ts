@@ -7,7 +7,7 @@ export type OpenInvoice = { id: string; number: string; dueOn: Day; openCents: n
 export type PaymentPart = { invoiceId: string; cents: number }
 
 /** The order in which a payment goes to invoices: the one due first, then the lesser number. */
-function oldestFirst(a: OpenInvoice, b: OpenInvoice): number {
+export function oldestFirst(a: OpenInvoice, b: OpenInvoice): number {
 	return compareDays(a.dueOn, b.dueOn) || a.number.localeCompare(b.number, "en", { numeric: true })
 }
 
