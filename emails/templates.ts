@@ -1,5 +1,8 @@
 import type { ComponentType } from "react"
 import type { z } from "zod"
+import * as breakageDeclined from "./breakage-declined"
+import * as breakageReported from "./breakage-reported"
+import * as creditIssued from "./credit-issued"
 import * as invitation from "./invitation"
 import * as invoice from "./invoice"
 import * as orderAnswer from "./order-answer"
@@ -47,6 +50,9 @@ export const templates = {
 	"order-answer": letter(orderAnswer),
 	"order-message": letter(orderMessage),
 	invoice: letter(invoice),
+	"credit-issued": letter(creditIssued),
+	"breakage-reported": letter(breakageReported),
+	"breakage-declined": letter(breakageDeclined),
 	"payment-received": letter(paymentReceived),
 	"standing-order-reminder": letter(standingOrderReminder),
 	"standing-order-set": letter(standingOrderSet),

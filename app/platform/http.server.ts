@@ -9,6 +9,8 @@ const BODY_LIMIT_BYTES = 1024 * 1024
 const LARGER_BODIES: readonly [page: RegExp, bytes: number][] = [
 	// A check of a super with its photo of up to 10 MB.
 	[/^\/desk\/[^/]+\/crop\/(checks|yards\/[^/]+|supers\/[^/]+)$/, 11 * 1024 * 1024],
+	// A report of broken comb with up to three photos of 10 MB to a line.
+	[/^\/buy\/[^/]+\/[^/]+\/invoices\/[^/]+\/breakage$/, 61 * 1024 * 1024],
 	// A logger's file of up to 200 MB, which is read as it comes in.
 	[/^\/desk\/[^/]+\/cold-room\/\d+\/readings(\.json)?$/, 201 * 1024 * 1024],
 ]

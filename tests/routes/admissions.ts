@@ -71,6 +71,13 @@ export const admissions: Record<string, Admission> = {
 	// A buyer reads what is to pay; paying is the payer's.
 	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
 	"routes/buy/invoice-pdf": storePage,
+	// What is posted here lacks its report's own id.
+	"routes/buy/breakage": { loader: STORE, action: STORE },
+	"routes/buy/breakage-report": storePage,
+	"routes/buy/breakage-photo": storePage,
+	"routes/buy/credits": storePage,
+	"routes/buy/credit": storePage,
+	"routes/buy/credit-pdf": storePage,
 	"routes/buy/prices": storePage,
 	"routes/buy/prices-csv": storePage,
 	"routes/buy/prices-pdf": storePage,
@@ -142,6 +149,21 @@ export const admissions: Record<string, Admission> = {
 		post: { effective: { method: "cash", amount: "5.00", paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
 	},
 	"routes/desk/invoice-pdf": { loader: OFFICE },
+	// Without a reason nothing is credited.
+	"routes/desk/credit-new": { loader: OFFICE, action: OFFICE },
+	"routes/desk/breakage": { loader: OFFICE },
+	"routes/desk/breakage-where": { loader: OFFICE },
+	"routes/desk/breakage-where-csv": { loader: OFFICE },
+	// The walked report is answered: it is not answered again.
+	"routes/desk/breakage-report": {
+		loader: OFFICE,
+		action: OFFICE,
+		post: { admitted: [409, 422], fields: { intent: "decline", answer: "walked" } },
+	},
+	"routes/desk/breakage-photo": { loader: OFFICE },
+	"routes/desk/credits": { loader: OFFICE },
+	"routes/desk/credit": { loader: OFFICE },
+	"routes/desk/credit-pdf": { loader: OFFICE },
 	"routes/desk/stores": { loader: OFFICE },
 	"routes/desk/commitments": { loader: OFFICE, action: "desk: owner" },
 	"routes/desk/prices": { loader: OFFICE },

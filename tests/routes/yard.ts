@@ -50,6 +50,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const marketDayId = randomUUID()
 	const saleId = randomUUID()
 	const takeId = randomUUID()
+	const [creditId, reportId, brokenLineId, pictureId, invoiceLineId] = Array.from({ length: 5 }, () => randomUUID())
 	const [beeYardId, hiveId, superId, photoId] = [randomUUID(), randomUUID(), randomUUID(), randomUUID()]
 	const insert = async (table: string, row: Record<string, unknown>) => {
 		const columns = Object.keys(row)
@@ -104,6 +105,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			settled_on: LONG_AGO,
 		})
 		await insert("invoice_lines", {
+			id: invoiceLineId,
 			invoice_id: invoiceId,
 			position: 1,
 			product_id: productId,
@@ -115,6 +117,46 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			sent_cases: 1,
 			case_cents: 1000,
 			line_cents: 1000,
+		})
+		// All of it is credited, and what was reported broken is answered: nothing more can be done with either.
+		await insert("credits", {
+			id: creditId,
+			year: 2001,
+			sequence: 1,
+			store_id: storeId,
+			invoice_id: invoiceId,
+			issued_on: LONG_AGO,
+			kind: "goodwill",
+			reason: "walked",
+			lines_cents: 1000,
+			tax_cents: 0,
+			total_cents: 1000,
+			issued_by: sellerId,
+		})
+		await insert("credit_lines", { credit_id: creditId, position: 1, name: "Round section", line_cents: 1000 })
+		await insert("breakage_reports", {
+			id: reportId,
+			store_id: storeId,
+			invoice_id: invoiceId,
+			state: "declined",
+			answer: "walked",
+			reported_by: sellerId,
+			answered_at: new Date(),
+		})
+		await insert("breakage_lines", {
+			id: brokenLineId,
+			report_id: reportId,
+			invoice_line_id: invoiceLineId,
+			pieces: 1,
+			accepted_pieces: 0,
+		})
+		await insert("breakage_photos", {
+			id: pictureId,
+			line_id: brokenLineId,
+			content: Buffer.from("a photo"),
+			media_type: "image/jpeg",
+			width: 1,
+			height: 1,
 		})
 		await insert("withdrawals", { number: WALKED_ORDER, reason: "walked", instructions: "walked" })
 		await insert("market_days", { id: marketDayId, market_id: marketId, market_on: LONG_AGO, state: "closed" })
@@ -168,6 +210,9 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			store: STORE_SLUG,
 			number: WALKED_ORDER,
 			invoice: "2001-0001",
+			credit: "C2001-0001",
+			report: reportId,
+			picture: pictureId,
 			day: openDay,
 			code: lotCode,
 			placed,
@@ -197,6 +242,11 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("market_day_people", "market_day_id", marketDayId)
 				await del("market_days", "id", marketDayId)
 				await del("withdrawals", "number", WALKED_ORDER)
+				await del("breakage_photos", "id", pictureId)
+				await del("breakage_lines", "id", brokenLineId)
+				await del("breakage_reports", "id", reportId)
+				await del("credit_lines", "credit_id", creditId)
+				await del("credits", "id", creditId)
 				await del("invoice_lines", "invoice_id", invoiceId)
 				await del("settlements", "invoice_id", invoiceId)
 				await del("invoice_orders", "invoice_id", invoiceId)

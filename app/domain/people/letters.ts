@@ -20,6 +20,8 @@ const KIND_OF: Readonly<Record<string, LetterKind>> = {
 	"order-message": "messages",
 	"standing-order-reminder": "reminders",
 	invoice: "invoices",
+	"credit-issued": "invoices",
+	"breakage-declined": "invoices",
 	"payment-received": "invoices",
 }
 
