@@ -11,18 +11,25 @@ import type { Task } from "./task.server"
  */
 const tasks: Record<string, () => Promise<{ default: Task }>> = {
 	"apply-stripe-event": () => import("./apply-stripe-event.job.server"),
+	"chase-receivables": () => import("./chase-receivables.job.server"),
 	"clear-expired": () => import("./clear-expired.job.server"),
 	"free-stuck-jobs": () => import("./free-stuck-jobs.job.server"),
+	"issue-month-ends": () => import("./issue-month-ends.job.server"),
 	"make-standing-orders": () => import("./make-standing-orders.job.server"),
 	"refresh-expected": () => import("./refresh-expected.job.server"),
+	"send-invoice-run": () => import("./send-invoice-run.job.server"),
 	"send-mail": () => import("./send-mail.job.server"),
 	"send-sign-in-mail": () => import("./send-sign-in-mail.job.server"),
 	"sweep-expected": () => import("./sweep-expected.job.server"),
+	"sweep-month-ends": () => import("./sweep-month-ends.job.server"),
+	"sweep-receivables": () => import("./sweep-receivables.job.server"),
 	"sweep-standing-orders": () => import("./sweep-standing-orders.job.server"),
 }
 
 const everyMinute = ["free-stuck-jobs", "sweep-standing-orders"]
-const everyNight = ["clear-expired", "sweep-expected"]
+/** By the producer's own clock each does nothing before its hour. */
+const everyHour = ["sweep-receivables"]
+const everyNight = ["clear-expired", "sweep-expected", "sweep-month-ends"]
 
 const taskList: TaskList = Object.fromEntries(
 	Object.entries(tasks).map(([name, load]) => [
@@ -45,6 +52,7 @@ const runner = await run({
 	taskList,
 	crontab: [
 		...everyMinute.map((name) => `* * * * * ${name} ?max=3`),
+		...everyHour.map((name) => `11 * * * * ${name} ?max=3`),
 		...everyNight.map((name) => `17 8 * * * ${name} ?max=3`),
 	].join("\n"),
 })

@@ -71,6 +71,7 @@ export const admissions: Record<string, Admission> = {
 	// A buyer reads what is to pay; paying is the payer's.
 	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
 	"routes/buy/invoice-pdf": storePage,
+	"routes/buy/invoice-ubl": storePage,
 	// What is posted here lacks its report's own id.
 	"routes/buy/breakage": { loader: STORE, action: STORE },
 	"routes/buy/breakage-report": storePage,
@@ -149,6 +150,7 @@ export const admissions: Record<string, Admission> = {
 		post: { effective: { method: "cash", amount: "5.00", paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
 	},
 	"routes/desk/invoice-pdf": { loader: OFFICE },
+	"routes/desk/invoice-ubl": { loader: OFFICE },
 	// Without a reason nothing is credited.
 	"routes/desk/credit-new": { loader: OFFICE, action: OFFICE },
 	"routes/desk/breakage": { loader: OFFICE },

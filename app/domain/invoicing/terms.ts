@@ -41,7 +41,7 @@ export function dueDates(terms: Terms, invoicedOn: Day): DueDates {
 }
 
 /** What may be taken off `totalCents` when it is paid within the discount, rounded once to whole cents. */
-export function discountCents(terms: Terms, totalCents: number): number {
+export function discountCents(terms: Pick<Terms, "discountBasisPoints">, totalCents: number): number {
 	return percentOf(totalCents, terms.discountBasisPoints)
 }
 

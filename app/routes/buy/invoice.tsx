@@ -8,6 +8,7 @@ import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { startCardPayment } from "~/services/payments/start-card-payment.server"
 import { Button } from "~/ui/forms/button"
 import { InvoiceDocument } from "~/ui/invoicing/invoice-document"
+import { InvoiceLinks } from "~/ui/invoicing/invoice-links"
 import { PaymentOnItsWay } from "~/ui/invoicing/payment-on-its-way"
 import { MessageLine } from "~/ui/layout/sheet"
 import { admits, guard } from "../guard.server"
@@ -28,7 +29,7 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 		frame: await findBuyFrame(scope, { part: "invoices", now }),
 		invoice: page.document,
 		care: page.care,
-		orderNumber: page.orderNumber,
+		orderNumbers: page.orderNumbers,
 		openCents: page.openCents,
 		declineMessage: page.declineMessage,
 		canPay,
@@ -108,9 +109,7 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 					<Link className="py-1" to={`${base}/invoices/${invoice.number}.pdf`} reloadDocument>
 						Printed page (PDF)
 					</Link>
-					<Link className="py-1" to={`${base}/orders/${loaderData.orderNumber}`}>
-						Order {loaderData.orderNumber}
-					</Link>
+					<InvoiceLinks base={base} number={invoice.number} orderNumbers={loaderData.orderNumbers} />
 				</span>
 			</div>
 			<InvoiceDocument invoice={invoice} care={care} />

@@ -12,6 +12,7 @@ export const buyRoutes: RouteConfigEntry[] = [
 	route("buy/:producer/:store/invoices", "routes/buy/invoices.tsx"),
 	route("buy/:producer/:store/invoices/:invoice", "routes/buy/invoice.tsx"),
 	route("buy/:producer/:store/invoices/:invoice.pdf", "routes/buy/invoice-pdf.tsx"),
+	route("buy/:producer/:store/invoices/:invoice.xml", "routes/buy/invoice-ubl.ts"),
 	route("buy/:producer/:store/invoices/:invoice/breakage", "routes/buy/breakage.tsx"),
 	route("buy/:producer/:store/breakage/:report", "routes/buy/breakage-report.tsx"),
 	route("buy/:producer/:store/breakage-photos/:picture", "routes/buy/breakage-photo.ts"),

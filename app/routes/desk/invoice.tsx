@@ -9,6 +9,7 @@ import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
 import { SelectField, TextField } from "~/ui/forms/fields"
 import { InvoiceDocument } from "~/ui/invoicing/invoice-document"
+import { InvoiceLinks } from "~/ui/invoicing/invoice-links"
 import { MessageLine } from "~/ui/layout/sheet"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/invoice"
@@ -25,7 +26,7 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }
 		frame: await findDeskFrame(scope, { part: "invoices" }),
 		invoice: page.document,
 		care: page.care,
-		orderNumber: page.orderNumber,
+		orderNumbers: page.orderNumbers,
 		openCents: page.openCents,
 		paymentId: randomUUID(),
 		noted: url.searchParams.get("noted"),
@@ -92,9 +93,7 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 						<Link className="py-1" to={`${base}/invoices/${invoice.number}.pdf`} reloadDocument>
 							Printed page (PDF)
 						</Link>
-						<Link className="py-1" to={`${base}/orders/${loaderData.orderNumber}`}>
-							Order {loaderData.orderNumber}
-						</Link>
+						<InvoiceLinks base={base} number={invoice.number} orderNumbers={loaderData.orderNumbers} />
 					</span>
 				</div>
 				{openCents > 0 && <NotePayment loaderData={loaderData} actionData={actionData} />}

@@ -1,11 +1,12 @@
+import { sendingRefusalWords } from "~/domain/invoicing/refusal-words"
 import { casesWords } from "~/domain/quantity"
 
 type Refusal =
 	| { reason: "no-such-order" | "nothing-given" | "not-confirmed" | "already-told" }
-	| { reason: "not-placed" | "too-late" | "not-packed"; state: string }
+	| { reason: "not-placed" | "too-late"; state: string }
+	| Parameters<typeof sendingRefusalWords>[1]
 	| { reason: "not-confirmed"; state: string }
 	| { reason: "lines"; refused: { reason: "more-than-asked" | "more-than-free"; mostCases: number }[] }
-	| { reason: "lot-withdrawn"; lotCode: string }
 	| { reason: "nothing-changed" | "open-already" | "not-told" | "no-such-proposal" }
 	| { reason: "answered-already"; state: string }
 	| { reason: "change-lines"; refused: unknown[] }
@@ -23,7 +24,6 @@ export function orderProblem(number: number, refusal: Refusal): string {
 			return `The store has been told of order ${number}. A change is a new decision now.`
 		case "not-placed":
 		case "too-late":
-		case "not-packed":
 			return `Order ${number} is ${refusal.state} already. Nothing was changed.`
 		case "not-confirmed":
 			return "state" in refusal
@@ -45,10 +45,14 @@ export function orderProblem(number: number, refusal: Refusal): string {
 				: `That change was ${refusal.state} already.`
 		case "change-lines":
 			return "There are not enough free cases for that any more. Nothing was changed."
-		case "lot-withdrawn":
-			return `Order ${number} was packed from lot ${refusal.lotCode}, which is withdrawn. It must not leave: cancel it and put its pieces back.`
 		case "weights":
 			return `Order ${number} has comb that is priced by weight. Weigh it on the packing page. Nothing was moved.`
+		case "not-packed":
+		case "lot-withdrawn":
+		case "not-weighed":
+		case "no-tax-rate":
+		case "books-closed":
+			return sendingRefusalWords(number, refusal)
 		case "lots-too-few":
 			return `${refusal.missingPieces} pieces of ${refusal.productName.toLowerCase()} are missing on the shelves: no released lot has them. Nothing was moved.`
 	}

@@ -52,6 +52,7 @@ export const deskRoutes: RouteConfigEntry[] = [
 	route("desk/:producer/invoices", "routes/desk/invoices.tsx"),
 	route("desk/:producer/invoices/:invoice", "routes/desk/invoice.tsx"),
 	route("desk/:producer/invoices/:invoice.pdf", "routes/desk/invoice-pdf.tsx"),
+	route("desk/:producer/invoices/:invoice.xml", "routes/desk/invoice-ubl.ts"),
 	route("desk/:producer/invoices/:invoice/credit", "routes/desk/credit-new.tsx"),
 	route("desk/:producer/breakage", "routes/desk/breakage.tsx"),
 	route("desk/:producer/breakage/where", "routes/desk/breakage-where.tsx"),

@@ -12,9 +12,14 @@ import {
 } from "~/db/schema"
 import type { Tx } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
+import { percentWords } from "~/domain/invoicing/discount-words"
 import { parseInvoiceNumber } from "~/domain/invoicing/invoice-number"
+import { shortReasons } from "~/domain/invoicing/short-reasons"
+import { discountCents } from "~/domain/invoicing/terms"
+import { weighedWords } from "~/domain/invoicing/weighed-words"
 import { formatMoney } from "~/domain/money"
 import { weightWords } from "~/domain/weight"
+import { now } from "~/platform/clock.server"
 import { findYard, letterHead } from "~/services/producers/find-yard.server"
 import type { InvoiceProps } from "~emails/documents/invoice-props"
 import { KEEP_COMB, NOT_FOR_INFANTS } from "~emails/words"
@@ -22,7 +27,8 @@ import { KEEP_COMB, NOT_FOR_INFANTS } from "~emails/words"
 /** An invoice as its page shows it: the document itself, and what the buttons beside it need. */
 export type InvoicePage = {
 	document: InvoiceProps
-	orderNumber: number
+	/** The orders that it is about; none on a charge. */
+	orderNumbers: number[]
 	openCents: number
 	/** The bank's words when the last try to pay by card was refused and nothing has been paid since. */
 	declineMessage: string
@@ -44,16 +50,10 @@ export async function readInvoice(
 	const named = parseInvoiceNumber(number)
 	if (!named) return null
 	const [found] = await tx
-		.select({ invoice: invoices, store: stores, order: orders, orderedBy: users.name, timeZone: producers.timeZone })
+		.select({ invoice: invoices, store: stores, timeZone: producers.timeZone })
 		.from(invoices)
 		.innerJoin(stores, and(eq(stores.producerId, invoices.producerId), eq(stores.id, invoices.storeId)))
-		.innerJoin(
-			invoiceOrders,
-			and(eq(invoiceOrders.producerId, invoices.producerId), eq(invoiceOrders.invoiceId, invoices.id)),
-		)
-		.innerJoin(orders, and(eq(orders.producerId, invoiceOrders.producerId), eq(orders.id, invoiceOrders.orderId)))
 		.innerJoin(producers, eq(producers.id, invoices.producerId))
-		.leftJoin(users, eq(users.id, orders.placedBy))
 		.where(
 			and(
 				eq(invoices.producerId, producerId),
@@ -63,7 +63,8 @@ export async function readInvoice(
 			),
 		)
 	if (!found) return null
-	const { invoice, store, order, orderedBy, timeZone } = found
+	const { invoice, store, timeZone } = found
+	const about = await findOrders(tx, { producerId, invoiceId: invoice.id })
 	const lines = await tx
 		.select()
 		.from(invoiceLines)
@@ -82,10 +83,13 @@ export async function readInvoice(
 		)
 		.where(and(eq(onlinePaymentParts.producerId, producerId), eq(onlinePaymentParts.invoiceId, invoice.id)))
 		.orderBy(desc(onlinePayments.createdAt))
-	const openCents = invoice.openCents
+	const { openCents } = invoice
 	const reasons = shortReasons(invoice.shortNote, lines)
+	const numbers = new Map(about.map((order) => [order.id, String(order.number)]))
+	const [first] = about
+	const last = about.at(-1)
 	return {
-		orderNumber: order.number,
+		orderNumbers: about.map((order) => order.number),
 		openCents,
 		declineMessage: openCents > 0 && visits[0]?.state === "declined" ? visits[0].declineMessage : "",
 		unpaidVisits: visits.filter(({ state }) => state !== "paid").map(({ id }) => id),
@@ -94,38 +98,85 @@ export async function readInvoice(
 			yard: letterHead(yard),
 			number,
 			issuedOn: invoice.issuedOn,
-			store: { name: store.name, contactName: orderedBy, address: store.address || null },
-			order: { number: String(order.number), placedOn: dayInZone(order.placedAt, timeZone) },
-			delivered: {
-				on: order.deliveryOn,
+			store: { name: store.name, contactName: first?.orderedBy ?? null, address: store.address || null },
+			order: first && { number: String(first.number), placedOn: dayInZone(first.placedAt, timeZone) },
+			orders: about.map((order) => ({
+				number: String(order.number),
+				placedOn: dayInZone(order.placedAt, timeZone),
+				deliveredOn: order.deliveryOn,
+				poNumber: order.poNumber || null,
+			})),
+			poNumbers: invoice.poNumbers || null,
+			delivered: last && {
+				from: first?.deliveryOn ?? null,
+				on: last.deliveryOn,
 				netWeight: weightWords(lines.reduce((sum, line) => sum + line.netGrams, 0)),
 			},
-			due: {
-				on: invoice.dueOn,
-				termsWords: invoice.termsWords,
-			},
-			waysToPay: "Card or check",
-			lines: lines.map((line) => ({
-				sheetNumber: line.code,
+			due: { on: invoice.dueOn, termsWords: invoice.termsWords },
+			discount: takeableDiscount(invoice, dayInZone(now(), timeZone)),
+			waysToPay: "Card, bank or check",
+			lines: lines.map((line, index) => ({
+				sheetNumber: line.code || null,
 				productName: line.name,
 				productNote: line.detail || null,
 				lots: line.lotCodes ? line.lotCodes.split(", ") : [],
-				netWeight: weightWords(line.netGrams),
+				netWeight: lineWeight(line),
 				casesAsked: line.askedCases,
 				casesSent: line.sentCases,
 				priceCents: line.caseCents,
+				poundCents: line.poundCents,
 				amountCents: line.lineCents,
-				reason: reasons.get(line.id) ?? null,
+				reason: reasons[index] ?? null,
+				orderNumber: (line.orderId && numbers.get(line.orderId)) || null,
 			})),
-			charges: [
-				{ label: deliveryLabel(invoice.deliveryCents, store.freeAboveCents), cents: invoice.deliveryCents },
-				{ label: invoice.isForResale ? "Bought for resale: no sales tax" : "Sales tax", cents: invoice.taxCents },
-			],
+			charges: invoice.kind === "goods" ? chargesOf(invoice, store) : [],
 			totalCents: invoice.totalCents,
 			paidCents: invoice.paidCents,
+			creditedCents: invoice.creditedCents,
+			discountTakenCents: invoice.discountCents,
+			writtenOffCents: invoice.writtenOffCents,
 			notes: yard.invoiceNote === "" ? [] : [yard.invoiceNote],
 		},
 	}
+}
+
+type InvoiceRow = typeof invoices.$inferSelect
+
+function findOrders(tx: Tx, query: { producerId: string; invoiceId: string }) {
+	return tx
+		.select({
+			id: orders.id,
+			number: orders.number,
+			placedAt: orders.placedAt,
+			deliveryOn: orders.deliveryOn,
+			poNumber: orders.poNumber,
+			orderedBy: users.name,
+		})
+		.from(invoiceOrders)
+		.innerJoin(orders, and(eq(orders.producerId, invoiceOrders.producerId), eq(orders.id, invoiceOrders.orderId)))
+		.leftJoin(users, eq(users.id, orders.placedBy))
+		.where(and(eq(invoiceOrders.producerId, query.producerId), eq(invoiceOrders.invoiceId, query.invoiceId)))
+		.orderBy(asc(orders.deliveryOn), asc(orders.number))
+}
+
+/** The discount that whoever pays the rest on `today` may take; null when there is none, or no more. */
+function takeableDiscount(invoice: InvoiceRow, today: string) {
+	const { discountUntil: untilOn, discountBasisPoints: basisPoints, openCents } = invoice
+	if (untilOn === null || today > untilOn || invoice.discountCents > 0) return null
+	const cents = discountCents({ discountBasisPoints: basisPoints }, invoice.totalCents - invoice.creditedCents)
+	return cents > 0 && cents < openCents ? { basisPoints, cents, untilOn } : null
+}
+
+function lineWeight(line: typeof invoiceLines.$inferSelect): string | null {
+	if (line.netGrams === 0) return null
+	return line.poundCents === null ? weightWords(line.netGrams) : weighedWords(line.netGrams)
+}
+
+function chargesOf(invoice: InvoiceRow, store: { freeAboveCents: number | null }) {
+	return [
+		{ label: deliveryLabel(invoice.deliveryCents, store.freeAboveCents), cents: invoice.deliveryCents },
+		{ label: taxLabel(invoice), cents: invoice.taxCents },
+	]
 }
 
 function deliveryLabel(deliveryCents: number, freeAboveCents: number | null): string {
@@ -133,17 +184,9 @@ function deliveryLabel(deliveryCents: number, freeAboveCents: number | null): st
 	return `Delivery, free from ${formatMoney(freeAboveCents)}`
 }
 
-/**
- * Why each line is short, by line id: the note has one sentence to a line, in the order of the short lines. A note that
- * was written as a whole stands for all of them.
- */
-function shortReasons(
-	shortNote: string,
-	lines: readonly { id: string; askedCases: number; sentCases: number }[],
-): Map<string, string> {
-	if (shortNote === "") return new Map()
-	const short = lines.filter((line) => line.sentCases < line.askedCases)
-	const sentences = shortNote.split("\n")
-	const isOneToALine = sentences.length === short.length
-	return new Map(short.map((line, index) => [line.id, (isOneToALine && sentences[index]) || sentences.join(" ")]))
+/** "Sales tax, Teasel County, 7.25 %". */
+function taxLabel({ isForResale, taxCents, taxPlace, taxBasisPoints }: InvoiceRow): string {
+	if (isForResale) return "Bought for resale: no sales tax"
+	if (taxCents === 0) return "Sales tax"
+	return ["Sales tax", taxPlace, taxBasisPoints > 0 && percentWords(taxBasisPoints)].filter(Boolean).join(", ")
 }

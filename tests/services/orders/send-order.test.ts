@@ -4,6 +4,7 @@ import { invoices, orders } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { issueInvoice } from "~/services/invoicing/issue-invoice.server"
+import { planInvoice } from "~/services/invoicing/plan-invoice.server"
 import { confirmOrder } from "~/services/orders/confirm-order.server"
 import { lockOrder } from "~/services/orders/lock-order.server"
 import { markReceived } from "~/services/orders/mark-received.server"
@@ -104,7 +105,9 @@ test("invoice numbers have no gap when twenty are issued at once and half of the
 		withProducer(producer.id, async (tx) => {
 			const order = await lockOrder(tx, { producerId: producer.id, number })
 			if (!order) throw new Error("the order is there")
-			await issueInvoice(tx, { producer, order, personId })
+			const planned = await planInvoice(tx, { producerId: producer.id, orders: [order], issuedOn: "2026-08-13" })
+			if (!planned.ok) throw new Error(planned.reason)
+			await issueInvoice(tx, { producer, plan: planned.plan, personId })
 			if (fails) throw failure
 		})
 	const outcomes = await Promise.allSettled(numbers.map((number, index) => issue(number, index % 2 === 0)))
