@@ -9,8 +9,9 @@ import { findOutlooks, type ProductOutlook } from "~/services/promise/find-outlo
 /**
  * What is to be done when more is asked than is free: ask the buyer (`false`); keep all that is asked to be shared out,
  * with nothing sure (`true`, as standing orders do); take what is free and no more; or take it and wait for the rest.
+ * `share` leaves all of it to be shared out, also what is free: others ask for it at the same moment.
  */
-export type Keep = boolean | "free" | "rest"
+export type Keep = boolean | "free" | "rest" | "share"
 
 /** One product asked for. */
 export type AskedLine = {
@@ -93,7 +94,7 @@ function checkLine(line: AskedLine, product: StoreProduct, freeCases: number): C
 	const { cases, keep, leastCases = 0 } = line
 	const free = Math.max(0, freeCases)
 	const base = { product, leastCases: Math.min(leastCases, cases), isToShare: false, promisedCases: 0 }
-	if (cases <= freeCases) return { ...base, cases }
+	if (cases <= freeCases && keep !== "share") return { ...base, cases }
 	switch (keep) {
 		case false:
 			return { productId: line.productId, reason: "more-than-free", freeCases }
@@ -102,6 +103,7 @@ function checkLine(line: AskedLine, product: StoreProduct, freeCases: number): C
 		case "rest":
 			return { ...base, cases, isToShare: true, promisedCases: free }
 		case true:
+		case "share":
 			return { ...base, cases, isToShare: true }
 	}
 }

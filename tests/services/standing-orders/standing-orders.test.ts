@@ -168,6 +168,42 @@ describe("making orders at the cut-off", () => {
 		expect(made).toEqual([{ productId, asked: 3, isToShare: true }])
 	})
 
+	test("leaves a product that does not reach for all of one cut-off to be shared out, whoever comes first", async () => {
+		const { yard, shop, productId, producerId } = await openWithRound(8)
+		const stand = async (one: Shop, cases: number) => {
+			const lines = [{ productId, cases, leastCases: 0, substituteIds: [] }]
+			expect(await setStandingOrder(everyOtherTuesday(one, productId, { lines }))).toEqual({ ok: true })
+		}
+		const made = () =>
+			readProducer(producerId, (tx) =>
+				tx
+					.select({ asked: orderLines.askedCases, sure: orderLines.promisedCases, waits: orderLines.isToShare })
+					.from(orderLines)
+					.where(eq(orderLines.producerId, producerId))
+					.orderBy(orderLines.askedCases),
+			)
+		const waiting = (...asked: number[]) => asked.map((cases) => ({ asked: cases, sure: 0, waits: true }))
+		await stand(shop, 5)
+		await stand(await openStore(yard), 6)
+		expect(await makeDueOrders({ producerId, now: FRIDAY_NOON })).toEqual({ made: 2 })
+		expect(await made()).toEqual(waiting(5, 6))
+
+		// As a run that was cut short after two of three is finished: the third alone could be met, and waits with the others.
+		await stand(await openStore(yard), 2)
+		expect(await makeDueOrders({ producerId, now: HOURS_LATE })).toEqual({ made: 1 })
+		expect(await made()).toEqual(waiting(2, 5, 6))
+	})
+
+	test("promises at once what reaches for all of one cut-off", async () => {
+		const { yard, shop, productId, producerId } = await openWithRound(6)
+		for (const one of [shop, await openStore(yard)]) await setStandingOrder(everyOtherTuesday(one, productId))
+		await makeDueOrders({ producerId, now: FRIDAY_NOON })
+		const lines = await readProducer(producerId, (tx) =>
+			tx.select({ waits: orderLines.isToShare }).from(orderLines).where(eq(orderLines.producerId, producerId)),
+		)
+		expect(lines).toEqual([{ waits: false }, { waits: false }])
+	})
+
 	test("makes none for a skipped date, and a date that is put back again", async () => {
 		const { shop, productId, producerId } = await openWithRound()
 		await setStandingOrder(everyOtherTuesday(shop, productId))
