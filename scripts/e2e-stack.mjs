@@ -1,11 +1,23 @@
 import "./lib/node-version.mjs"
 import { rmSync } from "node:fs"
 import { join } from "node:path"
+import pg from "pg"
 import { ensureBuilt } from "./lib/build.mjs"
 import { supervise } from "./lib/crew.mjs"
 import { anyPort } from "./lib/ports.mjs"
 import { choosePorts, productEnv, runBuilt, startBuilt, startStandIns } from "./lib/product.mjs"
 import { clearDeadRuns, startTestCluster, testFolder } from "./lib/test-work.mjs"
+
+/** The database of a lane on the server at `serverUrl`, made if it is not there. */
+async function laneDatabase(serverUrl, lane) {
+	const name = `e2e_${lane.replace("/", "_of_")}`
+	const client = new pg.Client({ connectionString: serverUrl })
+	await client.connect()
+	const { rowCount } = await client.query("select from pg_database where datname = $1", [name])
+	if (rowCount === 0) await client.query(`create database ${client.escapeIdentifier(name)}`)
+	await client.end()
+	return Object.assign(new URL(serverUrl), { pathname: `/${name}` }).href
+}
 
 /**
  * Runs the built product with fresh demo data on stand-ins, for browser tests: on the server of TEST_DATABASE_URL, or
@@ -16,7 +28,8 @@ await supervise(
 	testFolder,
 	async (crew) => {
 		await clearDeadRuns()
-		const databaseUrl = process.env.TEST_DATABASE_URL ?? (await startTestCluster(crew))
+		const serverUrl = process.env.TEST_DATABASE_URL ?? (await startTestCluster(crew))
+		const databaseUrl = await laneDatabase(serverUrl, process.env.E2E_LANE ?? "1/1")
 		await ensureBuilt()
 		const ports = await choosePorts(anyPort)
 		const env = { ...productEnv({ databaseUrl, ports }), TEST_CLOCK_FILE: join(testFolder, "clock") }

@@ -1,10 +1,10 @@
 import { mkdirSync, rmSync } from "node:fs"
 import { join } from "node:path"
-import { build } from "./build.mjs"
+import { build, ensureBuilt } from "./build.mjs"
 import { visibly } from "./commands.mjs"
 import { root } from "./paths.mjs"
 import { explain } from "./say.mjs"
-import { ofCheck, ofPlaywright, ofVitest } from "./test-counts.mjs"
+import { ofCheck, ofPlaywright, ofVitest, sum } from "./test-counts.mjs"
 
 const bin = (...path) => join(root, "node_modules", ...path)
 
@@ -34,11 +34,25 @@ async function runBuild() {
 	}
 }
 
+/** In two lanes at once, each with a product and a database of its own: a journey waits more than it works. */
 async function runPlaywright({ env, folder, filters }) {
-	const report = freshReport(folder, "e2e")
-	const args = [bin("@playwright/test/cli.js"), "test", "--reporter=list,json", ...filters]
-	const code = await visibly(process.execPath, args, { env: { ...env, PLAYWRIGHT_JSON_OUTPUT_FILE: report } })
-	return ofPlaywright(report, code)
+	const lanes = filters.length > 0 ? ["1/1"] : ["1/2", "2/2"]
+	try {
+		await ensureBuilt()
+	} catch (error) {
+		explain(error)
+		return ofCheck(1)
+	}
+	return sum(
+		await Promise.all(
+			lanes.map(async (lane) => {
+				const report = freshReport(folder, `e2e-${lane.replace("/", "-of-")}`)
+				const args = [bin("@playwright/test/cli.js"), "test", "--reporter=list,json", ...filters]
+				const more = { E2E_LANE: lane, PLAYWRIGHT_JSON_OUTPUT_FILE: report }
+				return ofPlaywright(report, await visibly(process.execPath, args, { env: { ...env, ...more } }))
+			}),
+		),
+	)
 }
 
 function freshReport(folder, name) {
