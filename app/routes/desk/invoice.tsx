@@ -94,6 +94,9 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 							Printed page (PDF)
 						</Link>
 						<InvoiceLinks base={base} number={invoice.number} orderNumbers={loaderData.orderNumbers} />
+						<Link className="py-1" to={`${base}/invoices/${invoice.number}/credit`}>
+							Credit it
+						</Link>
 					</span>
 				</div>
 				{openCents > 0 && <NotePayment loaderData={loaderData} actionData={actionData} />}
