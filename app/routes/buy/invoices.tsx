@@ -1,3 +1,4 @@
+import { Link } from "react-router"
 import { dayInZone } from "~/domain/calendar"
 import { now as askClock } from "~/platform/clock.server"
 import { listInvoices } from "~/services/invoicing/list-invoices.server"
@@ -22,15 +23,20 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ url }: Rout
 
 export default function Invoices({ loaderData, params }: Route.ComponentProps) {
 	const { invoices, next, today, after } = loaderData
+	const base = `/buy/${params.producer}/${params.store}`
 	return (
 		<BuyBook frame={loaderData.frame}>
-			<SheetHead title="Invoices" lead="What is still to pay comes first, then what is paid, the latest first." />
+			<SheetHead
+				title="Invoices"
+				lead="What is still to pay comes first, then what is paid, the latest first."
+				action={<Link to={`${base}/credits`}>Credits</Link>}
+			/>
 			{invoices.length === 0 ? (
 				<EmptyLine>
 					{after ? "Nothing earlier." : "No invoice yet. The first comes with your first delivery."}
 				</EmptyLine>
 			) : (
-				<InvoiceTable invoices={invoices} today={today} base={`/buy/${params.producer}/${params.store}`} />
+				<InvoiceTable invoices={invoices} today={today} base={base} />
 			)}
 			<ListPages params={after ? { after } : {}} next={next} laterWords="Earlier invoices" />
 		</BuyBook>

@@ -34,7 +34,16 @@ export default function Invoices({ loaderData, params }: Route.ComponentProps) {
 	const base = `/desk/${params.producer}`
 	return (
 		<DeskBook frame={loaderData.frame}>
-			<SheetHead title="Invoices" lead="What is still to be paid comes first, then what is paid, the latest first." />
+			<SheetHead
+				title="Invoices"
+				lead="What is still to be paid comes first, then what is paid, the latest first."
+				action={
+					<span className="flex flex-wrap gap-x-5">
+						<Link to={`${base}/credits`}>Credits</Link>
+						<Link to={`${base}/breakage`}>Broken comb</Link>
+					</span>
+				}
+			/>
 			<FilterLinks
 				label="Invoices by how they stand"
 				name="standing"
