@@ -29,7 +29,17 @@ export const schema = z
 		paidOn: day,
 		way: z.enum(["card", "bank", "check", "cash", "transfer"]),
 		reference: words.nullish(),
-		applied: z.array(z.object({ invoiceNumber: words, cents: cents.positive(), openCents: cents.nonnegative() })),
+		/** The store has agreed that what falls due is taken by itself. */
+		isAutomatic: z.boolean().optional(),
+		applied: z.array(
+			z.object({
+				invoiceNumber: words,
+				cents: cents.positive(),
+				/** Taken off for paying early, beside what was paid. */
+				discountCents: cents.nonnegative().optional(),
+				openCents: cents.nonnegative(),
+			}),
+		),
 		onAccountCents: cents.nonnegative(),
 		invoicesUrl: webAddress,
 	})
@@ -49,7 +59,7 @@ export const sample = {
 	way: "card",
 	reference: "card ending 4242",
 	applied: [
-		{ invoiceNumber: "1203", cents: 92990, openCents: 0 },
+		{ invoiceNumber: "1203", cents: 92990, discountCents: 1898, openCents: 0 },
 		{ invoiceNumber: "1211", cents: 20000, openCents: 14450 },
 	],
 	onAccountCents: 0,
@@ -62,6 +72,10 @@ export function subject({ yard, amountCents }: Props): string {
 
 export default function PaymentReceived(props: Props) {
 	const { yard, sentTo, storeName, amountCents, paidOn, way, reference, applied, onAccountCents, invoicesUrl } = props
+	const byItself = props.isAutomatic
+		? ["It was taken by itself, as agreed; you can end that on your store’s pages."]
+		: []
+	const early = applied.filter(({ discountCents = 0 }) => discountCents > 0)
 	const stillOpen = applied.filter((part) => part.openCents > 0)
 	const kept = onAccountCents > 0 ? [{ label: "Kept on your account", cents: onAccountCents }] : []
 	return (
@@ -85,8 +99,13 @@ export default function PaymentReceived(props: Props) {
 				parts={[...applied.map((part) => ({ label: `Invoice ${part.invoiceNumber}`, cents: part.cents })), ...kept]}
 				total={{ label: "Paid", cents: amountCents }}
 			/>
-			{stillOpen.length > 0 && (
+			{stillOpen.length + early.length > 0 && (
 				<Note>
+					{early.map(({ invoiceNumber, discountCents = 0 }) => (
+						<div key={invoiceNumber}>
+							Invoice {invoiceNumber}: {formatMoney(discountCents)} taken off for paying early.
+						</div>
+					))}
 					{stillOpen.map((part) => (
 						<div key={part.invoiceNumber}>
 							On invoice {part.invoiceNumber} there is {formatMoney(part.openCents)} left to pay.
@@ -94,7 +113,7 @@ export default function PaymentReceived(props: Props) {
 					))}
 				</Note>
 			)}
-			<Small lines={["This letter is your receipt.", mistakeWords(yard)]} />
+			<Small lines={["This letter is your receipt.", ...byItself, mistakeWords(yard)]} />
 		</Frame>
 	)
 }

@@ -2,6 +2,8 @@ import type { ComponentType } from "react"
 import type { z } from "zod"
 import * as breakageDeclined from "./breakage-declined"
 import * as breakageReported from "./breakage-reported"
+import * as certificateAnswer from "./certificate-answer"
+import * as certificateExpiring from "./certificate-expiring"
 import * as creditIssued from "./credit-issued"
 import * as invitation from "./invitation"
 import * as invoice from "./invoice"
@@ -12,11 +14,15 @@ import * as orderMessage from "./order-message"
 import * as orderProposal from "./order-proposal"
 import * as orderReceived from "./order-received"
 import * as orderShared from "./order-shared"
+import * as paymentFailed from "./payment-failed"
 import * as paymentReceived from "./payment-received"
+import * as paymentRefunded from "./payment-refunded"
+import * as reminder from "./reminder"
 import * as signInCode from "./sign-in-code"
 import * as signInUnknown from "./sign-in-unknown"
 import * as standingOrderReminder from "./standing-order-reminder"
 import * as standingOrderSet from "./standing-order-set"
+import * as statement from "./statement"
 import * as withdrawal from "./withdrawal"
 
 /** A file that goes with a letter. */
@@ -54,8 +60,14 @@ export const templates = {
 	"breakage-reported": letter(breakageReported),
 	"breakage-declined": letter(breakageDeclined),
 	"payment-received": letter(paymentReceived),
+	"payment-failed": letter(paymentFailed),
+	"payment-refunded": letter(paymentRefunded),
 	"standing-order-reminder": letter(standingOrderReminder),
 	"standing-order-set": letter(standingOrderSet),
+	statement: letter(statement),
+	reminder: letter(reminder),
+	"certificate-expiring": letter(certificateExpiring),
+	"certificate-answer": letter(certificateAnswer),
 	withdrawal: letter(withdrawal),
 }
 

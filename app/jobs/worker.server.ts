@@ -11,15 +11,18 @@ import type { Task } from "./task.server"
  */
 const tasks: Record<string, () => Promise<{ default: Task }>> = {
 	"apply-stripe-event": () => import("./apply-stripe-event.job.server"),
+	"charge-due": () => import("./charge-due.job.server"),
 	"chase-receivables": () => import("./chase-receivables.job.server"),
 	"clear-expired": () => import("./clear-expired.job.server"),
 	"free-stuck-jobs": () => import("./free-stuck-jobs.job.server"),
 	"issue-month-ends": () => import("./issue-month-ends.job.server"),
 	"make-standing-orders": () => import("./make-standing-orders.job.server"),
+	"reconcile-stripe": () => import("./reconcile-stripe.job.server"),
 	"refresh-expected": () => import("./refresh-expected.job.server"),
 	"send-invoice-run": () => import("./send-invoice-run.job.server"),
 	"send-mail": () => import("./send-mail.job.server"),
 	"send-sign-in-mail": () => import("./send-sign-in-mail.job.server"),
+	"sweep-due": () => import("./sweep-due.job.server"),
 	"sweep-expected": () => import("./sweep-expected.job.server"),
 	"sweep-month-ends": () => import("./sweep-month-ends.job.server"),
 	"sweep-receivables": () => import("./sweep-receivables.job.server"),
@@ -54,6 +57,8 @@ const runner = await run({
 		...everyMinute.map((name) => `* * * * * ${name} ?max=3`),
 		...everyHour.map((name) => `11 * * * * ${name} ?max=3`),
 		...everyNight.map((name) => `17 8 * * * ${name} ?max=3`),
+		// In the morning of every zone of the country, so that a refusal is read on the day it is about.
+		"23 13 * * * sweep-due ?max=3",
 	].join("\n"),
 })
 runner.events.on("job:error", ({ job, error }) => {

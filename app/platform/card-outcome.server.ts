@@ -11,16 +11,9 @@ export type CardOutcome = {
 	declineMessage: string
 }
 
-/** Asks Stripe for the current state of a payment, by its own id or by that of its visit to the card page. */
-export async function findCardOutcome(by: { intentId: string } | { sessionId: string }): Promise<CardOutcome> {
-	if ("intentId" in by) return outcomeOf(await stripe().paymentIntents.retrieve(by.intentId))
-	const session = await stripe().checkout.sessions.retrieve(by.sessionId, { expand: ["payment_intent"] })
-	const intent = session.payment_intent
-	if (intent && typeof intent !== "string") {
-		const outcome = outcomeOf(intent)
-		return session.status === "expired" && outcome.state !== "paid" ? { ...outcome, state: "expired" } : outcome
-	}
-	return { state: session.status === "expired" ? "expired" : "open", intentId: null, paidCents: 0, declineMessage: "" }
+/** Asks Stripe for the current state of a payment. */
+export async function findCardOutcome({ intentId }: { intentId: string }): Promise<CardOutcome> {
+	return outcomeOf(await stripe().paymentIntents.retrieve(intentId))
 }
 
 function outcomeOf(intent: Stripe.PaymentIntent): CardOutcome {

@@ -5,8 +5,8 @@ import { type GivenAccount, methodOfAccount, startDebit } from "./debits"
 import { invalidRequest } from "./errors"
 import { fromPage } from "./events"
 import type { Fake } from "./fake"
-import { type Attempt, attempt, type GivenCard, openIntent, settleAuthentication } from "./payment-flow"
-import { recordMethod } from "./payment-methods"
+import { type Attempt, attempt, chargeCard, type GivenCard, openIntent, settleAuthentication } from "./payment-flow"
+import { keptMethod, recordMethod } from "./payment-methods"
 import { setUpMethod } from "./setup-intents"
 
 /** The payment intent of a session; made at the first try, as Stripe does. */
@@ -84,6 +84,30 @@ export function debitSession(fake: Fake, session: Stripe.Checkout.Session, accou
 	const { presented, method } = methodOfAccount(fake, account)
 	startDebit(fake, intentOf(fake, session), presented, method, fromPage)
 	complete(fake, session, account, "unpaid")
+}
+
+/** The kept methods that the page of a session offers: those of its customer, of its type, the latest first. */
+export function offeredMethods(fake: Fake, session: Stripe.Checkout.Session): Stripe.PaymentMethod[] {
+	if (session.mode !== "payment" || typeof session.customer !== "string") return []
+	const type = isByDebit(session) ? "us_bank_account" : "card"
+	return [...fake.store.methods.values()]
+		.filter((method) => method.customer === session.customer && method.type === type)
+		.reverse()
+}
+
+/** Pays a session with a kept method that its page offered. */
+export function payWithKept(fake: Fake, session: Stripe.Checkout.Session, methodId: string): Attempt {
+	const customer = typeof session.customer === "string" ? session.customer : null
+	const { presented, behaviour } = keptMethod(fake, methodId, customer)
+	const intent = intentOf(fake, session)
+	if ("bank" in behaviour) {
+		startDebit(fake, intent, presented, methodId, fromPage)
+		complete(fake, session, presented, "unpaid")
+		return { kind: "paid" }
+	}
+	const result = chargeCard(fake, intent, { outcome: behaviour.card, presented, method: methodId }, fromPage)
+	if (result.kind === "paid") complete(fake, session, presented)
+	return result
 }
 
 function keep(fake: Fake, session: Stripe.Checkout.Session, presented: Presented, method: string): void {

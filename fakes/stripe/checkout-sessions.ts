@@ -38,6 +38,9 @@ const createSchema = paramsOf<Stripe.Checkout.SessionCreateParams>()({
 			setup_future_usage: z.literal("off_session").optional(),
 		})
 		.optional(),
+	saved_payment_method_options: z
+		.strictObject({ allow_redisplay_filters: list(z.enum(["always", "limited", "unspecified"])).optional() })
+		.optional(),
 	setup_intent_data: z.strictObject({ metadata: metadata.optional() }).optional(),
 	submit_type: z.enum(["auto", "book", "donate", "pay"]).optional(),
 })

@@ -109,3 +109,19 @@ test("a session that keeps a card wants the customer it is kept for, and sells n
 	const selling = { ...sessionOf(2500), ...setup }
 	expect(await refusal(stripe.checkout.sessions.create(selling))).toMatchObject({ statusCode: 400 })
 })
+
+test("the page of a payment offers what is kept for its customer", async () => {
+	const { stripe } = await startFake()
+	const customer = await customerOf(stripe)
+	const method = await keep(stripe, customer, card("5555555555554444"))
+	const { customer_email, ...rest } = sessionOf(2500)
+	const session = await stripe.checkout.sessions.create({
+		...rest,
+		customer,
+		saved_payment_method_options: { allow_redisplay_filters: ["always", "limited"] },
+	})
+	expect(await (await fetch(String(session.url))).text()).toContain("Pay $25.00 with the kept card ending in 4444")
+	await postForm(session.url, { kept: method })
+	const done = await stripe.checkout.sessions.retrieve(session.id, { expand: ["payment_intent"] })
+	expect(done).toMatchObject({ payment_status: "paid", payment_intent: { payment_method: method } })
+})

@@ -83,6 +83,20 @@ export function layOldestFirst(
 	return layAsTold(paymentCents, told, invoices, day)
 }
 
+/** The invoices that are open still once the parts are laid, with what is open of them then. */
+export function afterParts<Invoice extends PayableInvoice>(
+	invoices: readonly Invoice[],
+	parts: readonly LaidPart[],
+): Invoice[] {
+	return invoices.flatMap((invoice) => {
+		const part = parts.find(({ invoiceId }) => invoiceId === invoice.id)
+		if (!part) return [invoice]
+		const openCents = invoice.openCents - part.cents - part.discountCents
+		const takenDiscountCents = invoice.takenDiscountCents + part.discountCents
+		return openCents > 0 ? [{ ...invoice, openCents, takenDiscountCents }] : []
+	})
+}
+
 /**
  * Takes `cents` back from what a payment has settled, what was laid last before the earlier; a discount goes with the last
  * cent of its part, since it was given for paying all. Answers what is taken, as positive cents. Throws RangeError when

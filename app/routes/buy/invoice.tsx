@@ -5,7 +5,7 @@ import { mayPay } from "~/domain/people/roles"
 import { now as askClock } from "~/platform/clock.server"
 import { findStoreDetails } from "~/services/delivery/find-store-details.server"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
-import { startCardPayment } from "~/services/payments/start-card-payment.server"
+import { startPayment } from "~/services/payments/start-payment.server"
 import { Button } from "~/ui/forms/button"
 import { InvoiceDocument } from "~/ui/invoicing/invoice-document"
 import { InvoiceLinks } from "~/ui/invoicing/invoice-links"
@@ -60,16 +60,17 @@ const PROBLEMS = {
 export const action = guard(admits.store("payer"), async ({ request, params }: Route.ActionArgs, scope) => {
 	const { producer, store, person } = scope
 	if ((await request.formData()).get("intent") !== "pay") throw data(null, { status: 400 })
-	const started = await startCardPayment({
-		producer,
-		store,
-		invoiceNumber: params.invoice,
-		personId: person.id,
-		personEmail: person.email,
-	})
+	const page = await findInvoice({ producerId: producer.id, storeId: store.id, number: params.invoice })
+	if (!page) throw data(null, { status: 404 })
+	const wishes = [{ number: params.invoice, cents: page.openCents }]
+	const started = await startPayment({ producer, store, person, wishes, method: "card" })
 	if (started.ok) throw redirect(started.url)
 	if (started.reason === "no-such-invoice") throw data(null, { status: 404 })
-	return data({ problem: PROBLEMS[started.reason] }, { status: started.reason === "no-answer" ? 503 : 409 })
+	if (!(started.reason in PROBLEMS)) throw data(null, { status: 400 })
+	return data(
+		{ problem: PROBLEMS[started.reason as keyof typeof PROBLEMS] },
+		{ status: started.reason === "no-answer" ? 503 : 409 },
+	)
 })
 
 export default function Invoice({ loaderData, actionData, params }: Route.ComponentProps) {
@@ -110,6 +111,9 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 						Printed page (PDF)
 					</Link>
 					<InvoiceLinks base={base} number={invoice.number} orderNumbers={loaderData.orderNumbers} />
+					<Link className="py-1" to={`${base}/invoices/${invoice.number}/breakage`}>
+						Something arrived broken
+					</Link>
 				</span>
 			</div>
 			<InvoiceDocument invoice={invoice} care={care} />

@@ -1,31 +1,23 @@
 import { eq, sql } from "drizzle-orm"
 import { z } from "zod"
 import { stripeEvents } from "~/db/schema"
-import { withPlatform, withProducer } from "~/db/transaction.server"
-import { findCardOutcome } from "~/platform/card-outcome.server"
-import { settleSale } from "~/services/stall/settle-sale.server"
-import { settleCardPayment } from "./settle-card-payment.server"
+import { withPlatform } from "~/db/transaction.server"
+import { bringIntent, bringSession } from "./bring-from-stripe.server"
+import { fillPayout } from "./fill-payout.server"
 
-/** What we wrote into every object at Stripe, and so find in every event about it. */
-const ours = z.object({ producer_id: z.uuid(), card_payment_id: z.uuid().optional(), sale_id: z.uuid().optional() })
+const idOrObject = z.union([z.string(), z.object({ id: z.string() }).transform(({ id }) => id), z.null()]).optional()
 
 const subject = z.object({
 	data: z.object({
-		object: z.object({
-			id: z.string(),
-			object: z.string(),
-			payment_intent: z
-				.union([z.string(), z.object({ id: z.string() }).transform((intent) => intent.id), z.null()])
-				.optional(),
-			metadata: z.record(z.string(), z.string()).nullish(),
-		}),
+		object: z.object({ id: z.string(), object: z.string(), payment_intent: idOrObject }),
 	}),
 })
 
 /**
- * Applies a stored event once. The event is a hint only: what counts is the state of the payment at Stripe now, so that
- * events may come twice and in any order. The effect and the mark "applied" are one transaction. Events about objects
- * that are not ours, or of no consequence, are marked and left. Throws when Stripe does not answer: tried again later.
+ * Applies a stored event once. The event is a hint only: what counts is what Stripe says now of the payment, visit or
+ * payout that it is about, so that events may come twice and in any order, and one that is applied again after a crash
+ * changes nothing more. Events of other kinds, or about what is not ours, are marked and left. Throws when Stripe does not
+ * answer: tried again later.
  */
 export async function applyStripeEvent({ eventId }: { eventId: string }): Promise<void> {
 	const event = await withPlatform(async (tx) => {
@@ -33,21 +25,22 @@ export async function applyStripeEvent({ eventId }: { eventId: string }): Promis
 		return row
 	})
 	if (!event || event.appliedAt) return
-	const mark = { appliedAt: sql`now()` }
 	const about = subject.safeParse(event.payload).data?.data.object
-	const owner = ours.safeParse(about?.metadata).data
-	const isPayment = about?.object === "checkout.session" || about?.object === "payment_intent"
-	if (!about || !owner || !isPayment) {
-		await withPlatform((tx) => tx.update(stripeEvents).set(mark).where(eq(stripeEvents.id, eventId)))
-		return
+	if (about) await bring(about)
+	await withPlatform((tx) => tx.update(stripeEvents).set({ appliedAt: sql`now()` }).where(eq(stripeEvents.id, eventId)))
+}
+
+async function bring(about: { id: string; object: string; payment_intent?: string | null | undefined }): Promise<void> {
+	switch (about.object) {
+		case "payment_intent":
+			return bringIntent(about.id)
+		case "checkout.session":
+			return about.payment_intent ? bringIntent(about.payment_intent) : bringSession(about.id)
+		case "charge":
+		case "refund":
+		case "dispute":
+			return about.payment_intent ? bringIntent(about.payment_intent) : undefined
+		case "payout":
+			return fillPayout(about.id)
 	}
-	const outcome = await findCardOutcome(
-		about.object === "payment_intent" ? { intentId: about.id } : { sessionId: about.id },
-	)
-	await withProducer(owner.producer_id, async (tx) => {
-		const settled = { producerId: owner.producer_id, outcome }
-		if (owner.card_payment_id) await settleCardPayment(tx, { ...settled, cardPaymentId: owner.card_payment_id })
-		if (owner.sale_id) await settleSale(tx, { ...settled, saleId: owner.sale_id })
-		await tx.update(stripeEvents).set(mark).where(eq(stripeEvents.id, eventId))
-	})
 }

@@ -1,63 +1,46 @@
-import { and, eq } from "drizzle-orm"
-import { invoices, producers, stores, users } from "~/db/schema"
+import { sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
-import { dayInZone } from "~/domain/calendar"
+import type { Day } from "~/domain/calendar"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
-import { env } from "~/platform/env.server"
 import { queueMail } from "~/services/mail/queue-mail.server"
-import { findYard, letterHead } from "~/services/producers/find-yard.server"
+import { findPayer, type Try } from "./find-payer.server"
 
-/** Queues the receipt of a card payment to the person who paid: once for each payment. */
+type Applied = { year: number; sequence: number; cents: number; discountCents: number; openCents: number }
+
+/** Queues the receipt of a payment through Stripe to the person who paid, or who agreed to it: once for each payment. */
 export async function queueReceipt(
 	tx: Tx,
-	payment: {
-		producerId: string
-		paymentId: string
-		invoiceId: string
-		userId: string
-		amountCents: number
-		settledCents: number
-		paidAt: Date
-	},
+	{ producerId, paymentId, visit }: { producerId: string; paymentId: string; visit: Try },
 ): Promise<void> {
-	const { producerId } = payment
-	const [row] = await tx
-		.select({
-			email: users.email,
-			storeName: stores.name,
-			storeSlug: stores.slug,
-			producerSlug: producers.slug,
-			timeZone: producers.timeZone,
-			year: invoices.year,
-			sequence: invoices.sequence,
-			openCents: invoices.openCents,
-		})
-		.from(invoices)
-		.innerJoin(stores, and(eq(stores.producerId, invoices.producerId), eq(stores.id, invoices.storeId)))
-		.innerJoin(producers, eq(producers.id, invoices.producerId))
-		.innerJoin(users, eq(users.id, payment.userId))
-		.where(and(eq(invoices.producerId, producerId), eq(invoices.id, payment.invoiceId)))
-	if (!row) throw new Error("a payment names an invoice and a person that are there")
-	const applied = {
-		invoiceNumber: invoiceNumber(row.year, row.sequence),
-		cents: payment.settledCents,
-		openCents: row.openCents,
-	}
+	const payer = await findPayer(tx, visit)
+	if (!payer) return
+	const [payment] = (
+		await tx.execute<{ amountCents: number; receivedOn: Day; method: string }>(sql`
+			select amount_cents as "amountCents", received_on::text as "receivedOn", method from payments
+			where producer_id = ${producerId} and id = ${paymentId}`)
+	).rows
+	if (!payment) throw new Error("a receipt is of a payment that is there")
+	const { rows } = await tx.execute<Applied>(sql`
+		select i.year, i.sequence, sum(t.amount_cents) filter (where t.kind = 'payment')::int as cents,
+			coalesce(sum(t.amount_cents) filter (where t.kind = 'discount'), 0)::int as "discountCents", i.open_cents as "openCents"
+		from settlements t join invoices i on i.producer_id = t.producer_id and i.id = t.invoice_id
+		where t.producer_id = ${producerId} and t.payment_id = ${paymentId}
+		group by i.year, i.sequence, i.open_cents, i.due_on
+		order by i.due_on, i.year, i.sequence`)
+	const applied = rows.map(({ year, sequence, ...part }) => ({ invoiceNumber: invoiceNumber(year, sequence), ...part }))
 	await queueMail(tx, {
 		producerId,
-		to: row.email,
-		onceKey: `payment-received:${payment.paymentId}`,
+		to: payer.email,
+		onceKey: `payment-received:${paymentId}`,
 		template: "payment-received",
 		props: {
-			yard: letterHead(await findYard(tx, producerId)),
-			sentTo: row.email,
-			storeName: row.storeName,
+			...payer.head,
 			amountCents: payment.amountCents,
-			paidOn: dayInZone(payment.paidAt, row.timeZone),
-			way: "card",
-			applied: payment.settledCents > 0 ? [applied] : [],
-			onAccountCents: payment.amountCents - payment.settledCents,
-			invoicesUrl: `${env.BASE_URL}/buy/${row.producerSlug}/${row.storeSlug}/invoices`,
+			paidOn: payment.receivedOn,
+			way: payment.method === "bank-debit" ? "bank" : "card",
+			isAutomatic: visit.kind === "automatic",
+			applied,
+			onAccountCents: payment.amountCents - applied.reduce((sum, { cents }) => sum + cents, 0),
 		},
 	})
 }

@@ -1,165 +1,137 @@
-import { and, eq, gt, inArray } from "drizzle-orm"
-import { auditEntries, invoiceOrders, invoices, orderEvents, payments, settlements } from "~/db/schema"
-import { type Tx, withProducer } from "~/db/transaction.server"
+import { and, eq, sql } from "drizzle-orm"
+import { auditEntries, payments } from "~/db/schema"
+import type { Tx } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import { invoiceNumber, parseInvoiceNumber } from "~/domain/invoicing/invoice-number"
-import { allocatePayment } from "~/domain/invoicing/payments"
+import { type LaidPart, layAsTold, layOldestFirst } from "~/domain/payments/lay-payment"
 import type { Result } from "~/domain/result"
+import { lockStoreAccount, withAccount } from "~/services/credits/lock-store-account.server"
+import { type OpenAccountInvoice, readPayable } from "./read-payable.server"
+import { writeSettlements } from "./write-settlements.server"
 
 export type HandMethod = "cheque" | "cash" | "transfer"
 
 export type RecordedPayment = Result<
-	{ settledInvoices: { number: string; cents: number }[]; onAccountCents: number },
-	{ ok: false; reason: "no-such-invoice" }
+	{ settledInvoices: { number: string; cents: number; discountCents: number }[]; onAccountCents: number },
+	| { ok: false; reason: "no-such-invoice" | "no-such-store" | "books-closed" | "told-more-than-paid" }
+	| { ok: false; reason: "told-more-than-open"; number: string }
 >
 
 /**
- * Notes money that came in by hand for an invoice: it settles that invoice first, then the store's others, the one due
- * first before the later; what is over stays on the store's account. `paymentId` is made with the form: a second send of
- * the same form finds the first payment and changes nothing.
+ * Where the money goes: to one invoice first and then to the store's others, the one due first before the later; to the
+ * store's invoices in that order; or to each as told, and the rest to the store's account.
+ */
+export type Aim =
+	| { invoiceNumber: string }
+	| { storeId: string }
+	| { storeId: string; told: readonly { number: string; cents: number }[] }
+
+/**
+ * Notes money that came in by hand. A discount is taken where what is put to an invoice pays all the rest of it in time;
+ * what is over stays on the store's account. `paymentId` is made with the form: a second send of the same form finds the
+ * first payment and changes nothing. `books-closed` where `receivedOn` lies in closed books.
  */
 export async function recordPayment(query: {
 	producerId: string
-	invoiceNumber: string
+	aim: Aim
 	method: HandMethod
 	amountCents: number
+	reference: string
 	personId: string
 	paymentId: string
 	/** The day it counts: when the money came in. */
 	receivedOn: Day
 }): Promise<RecordedPayment> {
-	const { producerId, amountCents, paymentId, personId } = query
-	const named = parseInvoiceNumber(query.invoiceNumber)
-	if (!named) return { ok: false, reason: "no-such-invoice" }
-	return withProducer(producerId, async (tx) => {
-		const [about] = await tx
-			.select({ id: invoices.id, storeId: invoices.storeId })
-			.from(invoices)
-			.where(
-				and(eq(invoices.producerId, producerId), eq(invoices.year, named.year), eq(invoices.sequence, named.sequence)),
-			)
-		if (!about) return { ok: false, reason: "no-such-invoice" }
-		const owed = await lockOpenInvoices(tx, { producerId, storeId: about.storeId })
+	const { producerId, aim, amountCents, paymentId, personId, receivedOn, method, reference } = query
+	const done = await withAccount<RecordedPayment>(producerId, async (tx) => {
+		const storeId = "storeId" in aim ? aim.storeId : await storeOfInvoice(tx, { producerId, number: aim.invoiceNumber })
+		if (!storeId) return { ok: false, reason: "no-such-invoice" }
+		await lockStoreAccount(tx, { producerId, storeId })
+		const open = await readPayable(tx, { producerId, storeId })
+		const laid =
+			"told" in aim ? layTold(query, aim.told, open) : { ok: true as const, parts: layFirst(query, aim, open) }
+		if (!laid.ok) return (await isNoted(tx, query)) ? readPayment(tx, query) : laid
 		const [payment] = await tx
 			.insert(payments)
-			.values({
-				producerId,
-				id: paymentId,
-				storeId: about.storeId,
-				method: query.method,
-				amountCents,
-				receivedOn: query.receivedOn,
-				enteredBy: personId,
-			})
+			.values({ producerId, id: paymentId, storeId, method, amountCents, receivedOn, reference, enteredBy: personId })
 			.onConflictDoNothing()
 			.returning({ id: payments.id })
-		if (!payment) return readPayment(tx, { producerId, paymentId })
-		const first = allocatePayment(
-			amountCents,
-			owed.filter((invoice) => invoice.id === about.id),
-		)
-		const rest = allocatePayment(
-			first.onAccountCents,
-			owed.filter((invoice) => invoice.id !== about.id),
-		)
-		const parts = [...first.parts, ...rest.parts]
-		if (parts.length > 0) {
-			await tx.insert(settlements).values(
-				parts.map(({ invoiceId, cents }) => ({
-					producerId,
-					invoiceId,
-					kind: "payment" as const,
-					paymentId,
-					amountCents: cents,
-					settledOn: query.receivedOn,
-					enteredBy: personId,
-				})),
-			)
-		}
-		await record(tx, { producerId, paymentId, personId, method: query.method, amountCents, parts })
-		return readPayment(tx, { producerId, paymentId })
+		if (!payment) return readPayment(tx, query)
+		await writeSettlements(tx, { producerId, settledOn: receivedOn, personId }, [{ paymentId, parts: laid.parts }])
+		await tx.insert(auditEntries).values({
+			producerId,
+			userId: personId,
+			action: "record payment",
+			subjectType: "payment",
+			subjectId: paymentId,
+			detail: { method, amountCents, receivedOn, reference, parts: laid.parts },
+		})
+		return readPayment(tx, query)
 	})
+	return done === "books-closed" ? { ok: false, reason: "books-closed" } : done
 }
 
-/** The store's invoices with something open, locked in the order of their ids, which is the same for everyone. */
-async function lockOpenInvoices(tx: Tx, query: { producerId: string; storeId: string }) {
-	const rows = await tx
-		.select()
-		.from(invoices)
-		.where(
-			and(eq(invoices.producerId, query.producerId), eq(invoices.storeId, query.storeId), gt(invoices.openCents, 0)),
-		)
-		.orderBy(invoices.id)
-		.for("update")
-	return rows.map((row) => ({
-		id: row.id,
-		number: invoiceNumber(row.year, row.sequence),
-		dueOn: row.dueOn,
-		openCents: row.openCents,
-	}))
+type Query = Parameters<typeof recordPayment>[0]
+
+async function storeOfInvoice(tx: Tx, query: { producerId: string; number: string }): Promise<string | null> {
+	const named = parseInvoiceNumber(query.number)
+	if (!named) return null
+	const { rows } = await tx.execute<{ storeId: string }>(sql`
+		select store_id as "storeId" from invoices
+		where producer_id = ${query.producerId} and year = ${named.year} and sequence = ${named.sequence}`)
+	return rows[0]?.storeId ?? null
 }
 
-async function record(
-	tx: Tx,
-	payment: {
-		producerId: string
-		paymentId: string
-		personId: string
-		method: HandMethod
-		amountCents: number
-		parts: readonly { invoiceId: string; cents: number }[]
-	},
-): Promise<void> {
-	const { producerId, paymentId, personId, parts, ...detail } = payment
-	if (parts.length > 0) {
-		const about = await tx
-			.select({ id: invoiceOrders.invoiceId, orderId: invoiceOrders.orderId })
-			.from(invoiceOrders)
-			.where(
-				and(
-					eq(invoiceOrders.producerId, producerId),
-					inArray(
-						invoiceOrders.invoiceId,
-						parts.map(({ invoiceId }) => invoiceId),
-					),
-				),
-			)
-		await tx.insert(orderEvents).values(
-			about.map(({ id, orderId }) => ({
-				producerId,
-				orderId,
-				kind: "paid" as const,
-				userId: personId,
-				detail: { invoiceId: id, amountCents: parts.find(({ invoiceId }) => invoiceId === id)?.cents ?? 0 },
-			})),
-		)
-	}
-	await tx.insert(auditEntries).values({
-		producerId,
-		userId: personId,
-		action: "record payment",
-		subjectType: "payment",
-		subjectId: paymentId,
-		detail: { ...detail, parts },
-	})
+function layFirst({ amountCents, receivedOn }: Query, aim: Aim, open: readonly OpenAccountInvoice[]): LaidPart[] {
+	const named = "invoiceNumber" in aim ? open.filter(({ number }) => number === aim.invoiceNumber) : []
+	const first = layOldestFirst(amountCents, named, receivedOn)
+	const others = open.filter(({ id }) => !named.some((invoice) => invoice.id === id))
+	return [...first.parts, ...layOldestFirst(first.onAccountCents, others, receivedOn).parts]
 }
 
-async function readPayment(tx: Tx, query: { producerId: string; paymentId: string }): Promise<RecordedPayment> {
-	const { producerId, paymentId } = query
+type Laid = { ok: true; parts: LaidPart[] } | Exclude<RecordedPayment, { ok: true }>
+
+function layTold(
+	{ amountCents, receivedOn }: Query,
+	told: readonly { number: string; cents: number }[],
+	open: readonly OpenAccountInvoice[],
+): Laid {
+	const byNumber = new Map(open.map((invoice) => [invoice.number, invoice]))
+	const wanted = told.filter(({ cents }) => cents > 0)
+	const beyond = wanted.find(({ number, cents }) => cents > (byNumber.get(number)?.openCents ?? 0))
+	if (beyond) return { ok: false, reason: "told-more-than-open", number: beyond.number }
+	if (wanted.reduce((sum, { cents }) => sum + cents, 0) > amountCents)
+		return { ok: false, reason: "told-more-than-paid" }
+	const parts = wanted.map(({ number, cents }) => ({ invoiceId: byNumber.get(number)?.id ?? "", cents }))
+	return { ok: true, parts: layAsTold(amountCents, parts, open, receivedOn).parts }
+}
+
+async function isNoted(tx: Tx, { producerId, paymentId }: Query): Promise<boolean> {
+	const [row] = await tx
+		.select({ id: payments.id })
+		.from(payments)
+		.where(and(eq(payments.producerId, producerId), eq(payments.id, paymentId)))
+	return row !== undefined
+}
+
+type Part = { year: number; sequence: number; cents: number; discountCents: number }
+
+async function readPayment(tx: Tx, { producerId, paymentId }: Query): Promise<RecordedPayment> {
+	const { rows: parts } = await tx.execute<Part>(sql`
+		select i.year, i.sequence, coalesce(sum(t.amount_cents) filter (where t.kind = 'payment'), 0)::int as cents,
+			coalesce(sum(t.amount_cents) filter (where t.kind = 'discount'), 0)::int as "discountCents"
+		from settlements t join invoices i on i.producer_id = t.producer_id and i.id = t.invoice_id
+		where t.producer_id = ${producerId} and t.payment_id = ${paymentId}
+		group by i.year, i.sequence, i.due_on
+		order by i.due_on, i.year, i.sequence`)
 	const [payment] = await tx
 		.select({ amountCents: payments.amountCents })
 		.from(payments)
 		.where(and(eq(payments.producerId, producerId), eq(payments.id, paymentId)))
-	const parts = await tx
-		.select({ year: invoices.year, sequence: invoices.sequence, cents: settlements.amountCents })
-		.from(settlements)
-		.innerJoin(invoices, and(eq(invoices.producerId, settlements.producerId), eq(invoices.id, settlements.invoiceId)))
-		.where(and(eq(settlements.producerId, producerId), eq(settlements.paymentId, paymentId)))
-		.orderBy(invoices.dueOn, invoices.year, invoices.sequence)
 	const settled = parts.reduce((sum, part) => sum + part.cents, 0)
 	return {
 		ok: true,
-		settledInvoices: parts.map((part) => ({ number: invoiceNumber(part.year, part.sequence), cents: part.cents })),
+		settledInvoices: parts.map(({ year, sequence, ...part }) => ({ number: invoiceNumber(year, sequence), ...part })),
 		onAccountCents: (payment?.amountCents ?? 0) - settled,
 	}
 }

@@ -7,7 +7,9 @@ import {
 	keepAccount,
 	keepCard,
 	knownEmail,
+	offeredMethods,
 	paySession,
+	payWithKept,
 } from "../checkout-payment"
 import { takeBankStep } from "../control"
 import { StripeRefusal } from "../errors"
@@ -49,7 +51,16 @@ function showPay({ fake, id, query }: Visit): Reply {
 	const lines = fake.store.sessionSecrets.get(id)?.lines ?? []
 	const intent = fake.store.intents.get(String(session.payment_intent))
 	const refusal = query.has("refused") ? intent?.last_payment_error?.message : undefined
-	return { status: 200, html: payPage({ session, lines, email: knownEmail(fake, session), refusal }) }
+	return {
+		status: 200,
+		html: payPage({
+			session,
+			lines,
+			email: knownEmail(fake, session),
+			offered: offeredMethods(fake, session),
+			refusal,
+		}),
+	}
 }
 
 function submitPay({ fake, id, form }: Visit): Reply {
@@ -60,15 +71,23 @@ function submitPay({ fake, id, form }: Visit): Reply {
 	if (session.status !== "open") return closed(session)
 	const lines = fake.store.sessionSecrets.get(id)?.lines ?? []
 	const email = knownEmail(fake, session)
+	const offered = offeredMethods(fake, session)
+	const kept = offered.find(({ id }) => id === form.kept)
+	if (kept) {
+		const result = payWithKept(fake, session, kept.id)
+		if (result.kind === "paid") return { to: successUrl(session) }
+		if (result.kind === "authenticate") return { to: result.url }
+		return { status: 402, html: payPage({ session, lines, email, offered, refusal: result.message }) }
+	}
 	if (isByDebit(session)) {
 		const { typed, errors, account } = readAccountForm(form, email === null)
-		if (!account) return { status: 422, html: payPage({ session, lines, email, typed, errors }) }
+		if (!account) return { status: 422, html: payPage({ session, lines, email, offered, typed, errors }) }
 		const take = session.mode === "setup" ? keepAccount : debitSession
 		take(fake, session, { ...account, email: email ?? typed.email })
 		return { to: successUrl(session) }
 	}
 	const { typed, errors, card } = readCardForm(form, email === null, fake.seconds())
-	if (!card) return { status: 422, html: payPage({ session, lines, email, typed, errors }) }
+	if (!card) return { status: 422, html: payPage({ session, lines, email, offered, typed, errors }) }
 	if (session.mode === "setup") {
 		keepCard(fake, session, { ...card, email: email ?? typed.email })
 		return { to: successUrl(session) }
@@ -76,7 +95,7 @@ function submitPay({ fake, id, form }: Visit): Reply {
 	const result = paySession(fake, session, { ...card, email: email ?? typed.email })
 	if (result.kind === "paid") return { to: successUrl(session) }
 	if (result.kind === "authenticate") return { to: result.url }
-	return { status: 402, html: payPage({ session, lines, email, typed, refusal: result.message }) }
+	return { status: 402, html: payPage({ session, lines, email, offered, typed, refusal: result.message }) }
 }
 
 function waitingIntent(fake: Fake, id: string): Stripe.PaymentIntent | undefined {

@@ -33,6 +33,13 @@ const testAccounts = `<details><summary>Test accounts</summary>
 </tbody></table>
 <p>The debit is on its way until the <a href="/bank">bank</a> answers.</p></details>`
 
+function keptForm(method: Stripe.PaymentMethod, total: string): string {
+	const { card, us_bank_account: bank } = method
+	const words = card ? `card ending in ${card.last4}` : `account ending in ${bank?.last4 ?? ""}`
+	return `<form method="post" class="actions"><input type="hidden" name="kept" value="${escapeHtml(method.id)}">
+<button type="submit">Pay ${total} with the kept ${words}</button></form>`
+}
+
 type Typed = Partial<TypedCard>
 
 function cardFields(typed: Typed | undefined, errors: CardErrors): string {
@@ -65,6 +72,7 @@ export function payPage(view: {
 	session: Stripe.Checkout.Session
 	lines: Stripe.LineItem[]
 	email: string | null
+	offered: Stripe.PaymentMethod[]
 	typed?: Typed
 	errors?: CardErrors & AccountErrors
 	refusal?: string | undefined
@@ -86,6 +94,7 @@ ${linesTable(view.lines)}`
 		`<h1>${title}</h1>
 ${keeps ? "<p>Nothing is charged now.</p>" : sum}
 ${summary(errors, view.refusal)}
+${view.offered.map((method) => keptForm(method, total)).join("\n")}
 <form method="post" novalidate>
 ${emailField}
 ${byDebit ? accountFields(typed, errors) : cardFields(typed, errors)}

@@ -4,12 +4,13 @@ import { eq } from "drizzle-orm"
 import { invoiceOrders, invoices, onlinePayments, orders, payments, settlements } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
+import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { applyStripeEvent } from "~/services/payments/apply-stripe-event.server"
 import { receiveStripeEvent } from "~/services/payments/receive-stripe-event.server"
-import { startCardPayment } from "~/services/payments/start-card-payment.server"
+import { startPayment } from "~/services/payments/start-payment.server"
 import { type StripeFake, startStripeFake } from "../../../fakes/stripe/start"
 import { producerOf } from "../desk/desk-steps"
-import type { Shop, Yard } from "../orders/place-yard"
+import { type Shop, type Yard, ZONE } from "../orders/place-yard"
 
 /** A payment fake that posts its events to an endpoint which takes them in as the product does. */
 export type PaymentService = {
@@ -90,15 +91,26 @@ export async function addInvoice(
 	return invoiceNumber(2026, sequence)
 }
 
-/** Opens the card page for an invoice, as the store's person. */
-export const startPaying = (yard: Yard, shop: Shop, number: string) =>
-	startCardPayment({
-		producer: producerOf(yard),
+/** Opens the page for so much of some invoices, as the store's person. */
+export const startPayingParts = (
+	yard: Yard,
+	shop: Shop,
+	wishes: readonly { number: string; cents: number }[],
+	method: "card" | "bank-debit" = "card",
+) =>
+	startPayment({
+		producer: { ...producerOf(yard), timeZone: ZONE },
 		store: { id: shop.storeId, slug: shop.slug },
-		invoiceNumber: number,
-		personId: shop.person.id,
-		personEmail: shop.person.email,
+		person: shop.person,
+		wishes,
+		method,
 	})
+
+/** Opens the card page for all that is open of an invoice, as the store's person. */
+export async function startPaying(yard: Yard, shop: Shop, number: string) {
+	const page = await findInvoice({ producerId: yard.producerId, number })
+	return startPayingParts(yard, shop, [{ number, cents: page?.openCents ?? 1_000 }])
+}
 
 /** Opens the card page and answers its address. Throws when there is none. */
 export async function openCardPage(yard: Yard, shop: Shop, number: string): Promise<string> {

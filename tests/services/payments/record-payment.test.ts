@@ -17,7 +17,8 @@ async function openInvoices() {
 		recordPayment({
 			receivedOn: "2026-08-13",
 			producerId: yard.producerId,
-			invoiceNumber,
+			aim: { invoiceNumber },
+			reference: "",
 			method: "cheque",
 			amountCents,
 			personId,
@@ -31,9 +32,9 @@ test("a check settles the invoice it names, then the store's others, the one due
 	expect(await note(45_000)).toEqual({
 		ok: true,
 		settledInvoices: [
-			{ number: oldest, cents: 10_000 },
-			{ number: later, cents: 5_000 },
-			{ number: named, cents: 30_000 },
+			{ number: oldest, cents: 10_000, discountCents: 0 },
+			{ number: later, cents: 5_000, discountCents: 0 },
+			{ number: named, cents: 30_000, discountCents: 0 },
 		],
 		onAccountCents: 0,
 	})
@@ -44,7 +45,7 @@ test("a part payment leaves the rest open", async () => {
 	const { yard, note, named } = await openInvoices()
 	expect(await note(12_345)).toEqual({
 		ok: true,
-		settledInvoices: [{ number: named, cents: 12_345 }],
+		settledInvoices: [{ number: named, cents: 12_345, discountCents: 0 }],
 		onAccountCents: 0,
 	})
 	expect(await readBooks(yard)).toMatchObject({ paid: [0, 0, 12_345, 0] })

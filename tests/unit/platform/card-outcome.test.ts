@@ -22,11 +22,6 @@ const intentAnswers = (intent: object) =>
 	stripe.use(
 		http.get("https://api.stripe.com/v1/payment_intents/pi_1", () => HttpResponse.json({ id: "pi_1", ...intent })),
 	)
-const sessionAnswers = (session: object) =>
-	stripe.use(
-		http.get("https://api.stripe.com/v1/checkout/sessions/cs_1", () => HttpResponse.json({ id: "cs_1", ...session })),
-	)
-
 test("a payment that went through counts with what was taken, not with what was asked", async () => {
 	intentAnswers({ status: "succeeded", amount: 5000, amount_received: 4990 })
 	expect(await findCardOutcome({ intentId: "pi_1" })).toEqual({
@@ -55,13 +50,6 @@ test("a payment that waits for a card, or is still being worked on, is open", as
 		intentAnswers({ status, last_payment_error: null })
 		expect((await findCardOutcome({ intentId: "pi_1" })).state, status).toBe("open")
 	}
-})
-
-test("a visit that ran out is over, unless its card went through first", async () => {
-	sessionAnswers({ status: "expired", payment_intent: null })
-	expect((await findCardOutcome({ sessionId: "cs_1" })).state).toBe("expired")
-	sessionAnswers({ status: "expired", payment_intent: { id: "pi_1", status: "succeeded", amount_received: 700 } })
-	expect(await findCardOutcome({ sessionId: "cs_1" })).toMatchObject({ state: "paid", paidCents: 700 })
 })
 
 test("an answer that is no answer is thrown, so that the job tries again", async () => {
