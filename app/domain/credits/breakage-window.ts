@@ -1,5 +1,8 @@
 import { addDays, type Day } from "~/domain/calendar"
 
+/** The most photos of one line of a report. */
+export const MOST_PHOTOS = 3
+
 /**
  * The last day on which comb delivered on `deliveryOn` may be reported as broken: `days` after the delivery, that day
  * included. Common practice, no source; the producer sets the days.

@@ -1,6 +1,7 @@
+import { MOST_PHOTOS } from "~/domain/credits/breakage-window"
 import { piecesWords } from "~/domain/quantity"
 import type { BreakableLine } from "~/services/breakage/find-breakage-form.server"
-import { MOST_PHOTOS, type RefusedLine, type ReportedLine } from "~/services/breakage/report-breakage.server"
+import type { RefusedLine, ReportedLine } from "~/services/breakage/report-breakage.server"
 import { type KeptPhoto, PHOTO_BYTES, reencodePhoto } from "~/services/uploads/reencode-photo.server"
 import type { TypedReport } from "~/ui/breakage/report-form"
 import { PHOTO_WORDS } from "~/ui/crop/check-words"

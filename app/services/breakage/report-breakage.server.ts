@@ -9,9 +9,6 @@ import type { KeptPhoto } from "~/services/uploads/reencode-photo.server"
 import { breakableLines, readBreakageDays } from "./find-breakage-form.server"
 import { tellDesk } from "./tell-desk.server"
 
-/** The most photos of one line. */
-export const MOST_PHOTOS = 3
-
 export type ReportedLine = { invoiceLineId: string; pieces: number; note: string; photos: readonly KeptPhoto[] }
 
 export type ReportBreakage = {
