@@ -150,6 +150,11 @@ export const admissions: Record<string, Admission> = {
 		post: { effective: { method: "cash", amount: "5.00", paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
 	},
 	"routes/desk/invoice-pdf": { loader: OFFICE },
+	// The bookkeeper's settings and the closing are the owner's; without a name or a day nothing is set or closed.
+	"routes/desk/books": { loader: OFFICE },
+	"routes/desk/books-csv": { loader: OFFICE },
+	"routes/desk/books-accounts": { loader: "desk: owner", action: "desk: owner" },
+	"routes/desk/books-close": { loader: "desk: owner", action: "desk: owner" },
 	"routes/desk/invoice-ubl": { loader: OFFICE },
 	// Without a reason nothing is credited.
 	"routes/desk/credit-new": { loader: OFFICE, action: OFFICE },

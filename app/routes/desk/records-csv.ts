@@ -2,6 +2,7 @@ import { data } from "react-router"
 import { dayInZone } from "~/domain/calendar"
 import { now } from "~/platform/clock.server"
 import { listReceived, listReleased } from "~/services/trace/list-records.server"
+import { csvStream } from "../csv-file"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/records-csv"
 import { recordsRange } from "./records-range"
@@ -12,22 +13,5 @@ export const loader = guard(admits.desk("owner", "desk"), ({ url }: Route.Loader
 	if (error) throw data(null, { status: 400 })
 	const isReceived = url.searchParams.get("of") === "received"
 	const lines = (isReceived ? listReceived : listReleased)({ producer, from, to })
-	const encoder = new TextEncoder()
-	const body = new ReadableStream<Uint8Array>({
-		async pull(controller) {
-			const { value, done } = await lines.next()
-			if (done) controller.close()
-			else controller.enqueue(encoder.encode(value))
-		},
-		async cancel() {
-			await lines.return(undefined)
-		},
-	})
-	return new Response(body, {
-		headers: {
-			"Content-Type": "text/csv; charset=utf-8",
-			"Content-Disposition": `attachment; filename="${isReceived ? "received" : "released"}-${from}-to-${to}.csv"`,
-			"Cache-Control": "private, no-store",
-		},
-	})
+	return csvStream(lines, `${isReceived ? "received" : "released"}-${from}-to-${to}.csv`)
 })

@@ -1,6 +1,6 @@
 import { sql } from "drizzle-orm"
 import { readProducer, type Tx } from "~/db/transaction.server"
-import { addDays, type Day, endOfMonth } from "~/domain/calendar"
+import { addDays, type Day, dayInZone, endOfMonth } from "~/domain/calendar"
 import { readClosings } from "./read-closings.server"
 
 /** What is still open up to a day: a count, and some of it by name, the earliest first. */
@@ -18,7 +18,7 @@ export type ClosingPage = {
 	/** The first day that is not closed yet; null where nothing is closed. */
 	firstOpen: Day | null
 	stillOpen: StillOpen[]
-	earlier: { until: Day; closedBy: string; closedAt: Date }[]
+	earlier: { until: Day; closedBy: string; closedOn: Day }[]
 }
 
 /** Named of each kind; the rest is counted. */
@@ -45,7 +45,11 @@ export function findClosing(query: {
 			latest,
 			firstOpen,
 			stillOpen: (await readStillOpen(tx, producer.id, until)).filter(({ count }) => count > 0),
-			earlier: closings.toReversed().map(({ until, closedBy, closedAt }) => ({ until, closedBy, closedAt })),
+			earlier: closings.toReversed().map(({ until, closedBy, closedAt }) => ({
+				until,
+				closedBy,
+				closedOn: dayInZone(closedAt, producer.timeZone),
+			})),
 		}
 	})
 }
