@@ -3,6 +3,7 @@ import { data, Link, redirect } from "react-router"
 import { z } from "zod"
 import { dayInZone, dayWords } from "~/domain/calendar"
 import { MOST_PHOTOS } from "~/domain/credits/breakage-window"
+import { piecesWords } from "~/domain/quantity"
 import { now as askClock } from "~/platform/clock.server"
 import { findBreakageForm } from "~/services/breakage/find-breakage-form.server"
 import { reportBreakage } from "~/services/breakage/report-breakage.server"
@@ -107,7 +108,7 @@ export default function Breakage({ loaderData, actionData, params }: Route.Compo
 								<Link className="inline-block py-1" to={`${base}/breakage/${report.id}`}>
 									{listDay(report.reportedOn, today)}
 								</Link>
-								: {reportWords(report)}
+								: {piecesWords(report.pieces)}, {reportWords(report)}
 							</li>
 						))}
 					</ul>

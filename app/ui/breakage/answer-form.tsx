@@ -1,7 +1,7 @@
 import { Form } from "react-router"
 import { formatMoney } from "~/domain/money"
 import { Button } from "~/ui/forms/button"
-import { QuantityField } from "~/ui/forms/quantity-field"
+import { TextField } from "~/ui/forms/fields"
 import { WordsField } from "~/ui/trace/words-field"
 import { ReportLines, type ShownLine } from "./report-lines"
 
@@ -72,10 +72,12 @@ function AcceptedField(field: {
 	const most = acceptable?.pieces ?? line.pieces
 	return (
 		<>
-			<QuantityField
+			<TextField
 				name={`accepted-${line.id}`}
 				label="Pieces to credit"
-				showLabel
+				inputMode="numeric"
+				autoComplete="off"
+				className="w-24"
 				defaultValue={typed ?? String(most)}
 				error={error}
 			/>

@@ -3,7 +3,6 @@ import { piecesWords } from "~/domain/quantity"
 import { Button } from "~/ui/forms/button"
 import { describedBy, FieldError, fieldId } from "~/ui/forms/field-error"
 import { TextField } from "~/ui/forms/fields"
-import { QuantityField } from "~/ui/forms/quantity-field"
 
 /** What was typed, by the name of the field; `kept` holds photos that came with a form that was not taken. */
 export type TypedReport = {
@@ -82,10 +81,12 @@ function ReportLine({ line, typed, errorOf, mostPhotos }: ReportLineProps) {
 				{leftPieces < sentPieces && `, ${leftPieces} not reported yet`}. Until {dayWords(until)}.
 			</p>
 			<div className="breakage-fields">
-				<QuantityField
+				<TextField
 					name={`pieces-${id}`}
 					label="Pieces broken"
-					showLabel
+					inputMode="numeric"
+					autoComplete="off"
+					className="w-24"
 					defaultValue={typed?.fields[`pieces-${id}`]}
 					error={errorOf(`pieces-${id}`)}
 				/>
@@ -112,7 +113,7 @@ function PhotoField(field: { lineId: string; kept: readonly string[]; mostPhotos
 				{kept.length > 0 ? "More photos" : "Photos"}
 			</label>
 			<input
-				className="breakage-files"
+				className="weigh-file"
 				type="file"
 				id={id}
 				name={name}

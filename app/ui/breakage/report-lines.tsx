@@ -29,9 +29,9 @@ export function ReportLines({ lines, photosHref, beside }: ReportLinesProps) {
 			{lines.map((line) => (
 				<li key={line.id}>
 					<div className="min-w-0">
-						<h3>
+						<h2>
 							<span className="fig text-ink-faint">{line.code}</span> <span className="name">{line.name}</span>
-						</h3>
+						</h2>
 						<p className="note">
 							{line.detail}
 							{line.lotCodes && `${line.detail ? ", " : ""}lot ${line.lotCodes}`}
