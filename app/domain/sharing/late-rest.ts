@@ -1,22 +1,23 @@
 /**
  * Members in a fixed order (0, 1, 2 …), some of which leave. Tells which of those beyond the first so many is the latest
- * by another order. Taking out and asking each cost the logarithm of the number of members.
+ * by another order, in which `late` is the place of each. Taking out and asking each cost the logarithm of the number of members.
  */
 export class LateRest {
-	readonly #isLater: (a: number, b: number) => boolean
+	readonly #late: Uint32Array
 	/** A binary tree in an array: node n has the children 2n and 2n + 1, the leaves begin at `#first`. */
 	readonly #first: number
 	readonly #counts: Int32Array
 	/** The latest member under each node, -1 where there is none. */
 	readonly #latest: Int32Array
 
-	constructor(isMember: Uint8Array, isLater: (a: number, b: number) => boolean) {
-		this.#isLater = isLater
+	constructor(isMember: Uint8Array, late: Uint32Array) {
+		this.#late = late
 		this.#first = 1
 		while (this.#first < isMember.length) this.#first *= 2
 		this.#counts = new Int32Array(2 * this.#first)
 		this.#latest = new Int32Array(2 * this.#first).fill(-1)
-		for (const [member, is] of isMember.entries()) {
+		for (let member = 0; member < isMember.length; member += 1) {
+			const is = isMember[member] as number
 			this.#counts[this.#first + member] = is
 			this.#latest[this.#first + member] = is ? member : -1
 		}
@@ -56,6 +57,6 @@ export class LateRest {
 
 	#later(a: number, b: number): number {
 		if (a === -1 || b === -1) return Math.max(a, b)
-		return this.#isLater(a, b) ? a : b
+		return (this.#late[a] as number) > (this.#late[b] as number) ? a : b
 	}
 }

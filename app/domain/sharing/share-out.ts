@@ -1,8 +1,8 @@
-import { LateRest } from "./late-rest"
-import { type Vessel, WaterLevel } from "./water-level"
+import { inOrder, ranksOf } from "./in-order"
+import { type ClaimColumns, setAsideHopeless, setAsideUnlifted } from "./set-aside"
+import { SharingLevel, type SharingRule } from "./sharing-level"
 
-/** How a short product is divided: see `exactShares`. */
-export type SharingRule = "equal-shares" | "in-proportion" | "equal-shortfall"
+export type { SharingRule } from "./sharing-level"
 
 /** Served one after the other: commitments made before the season, then standing orders, then single orders. */
 export const claimClasses = ["commitment", "standing", "single"] as const
@@ -29,14 +29,6 @@ export type ShareReason = "whole" | "shared" | "left-over" | "below-least" | "ca
 /** What one claim is given: `exact` before whole cases, in the sharing that decided it. */
 export type Share = { id: string; given: number; exact: number; reason: ShareReason }
 
-type Ranked = Claim & {
-	/** Its place in the order in which left-over cases are given: 0 first. */
-	rank: number
-}
-
-/** Figures nearer than this to a whole number are that number: sums of weights are not exact in binary. */
-const NEARLY = 1e-9
-
 /**
  * Divides `supply` cases of one product among `claims` by one of three rules, in whole cases.
  * Classes are served one after the other. Within a class each claim gets its exact share rounded down, and the left-over
@@ -57,15 +49,19 @@ export function shareOut(input: { supply: number; claims: readonly Claim[]; rule
 } {
 	const { supply, claims, rule } = input
 	requireSane(supply, claims)
-	const ranked = claims.toSorted(byLeftOver).map((claim, rank) => ({ ...claim, rank }))
-	const shares = new Map<string, Share>()
+	const { order, late } = turnsOf(claims)
+	const shares = new Array<Share>(claims.length)
 	let over = supply
 	for (const claimClass of claimClasses) {
-		const ofClass = ranked.filter((claim) => claim.claimClass === claimClass)
-		for (const share of shareClass(over, ofClass, rule)) shares.set(share.id, share)
-		for (const { id } of ofClass) over -= shares.get(id)?.given ?? 0
+		const members = order.filter((place) => (claims[place] as Claim).claimClass === claimClass)
+		const ofClass = shareClass(over, { claims, members, late }, rule)
+		for (let index = 0; index < members.length; index += 1) {
+			const share = ofClass[index] as Share
+			shares[members[index] as number] = share
+			over -= share.given
+		}
 	}
-	return { shares: claims.map(({ id }) => shares.get(id) as Share), over }
+	return { shares, over }
 }
 
 /**
@@ -79,63 +75,76 @@ export function exactShares(
 	claims: readonly { asked: number; weight: number }[],
 	rule: SharingRule,
 ): number[] {
-	const level = new Sharing(supply, claims, rule)
+	const asked = Float64Array.from(claims, (claim) => claim.asked)
+	const weight = Float64Array.from(claims, (claim) => claim.weight)
+	const level = new SharingLevel(supply, { asked, weight }, rule)
 	return claims.map((_, index) => level.share(index))
 }
 
-/** Exact shares from which claims can be taken out one by one. */
-class Sharing {
-	readonly #claims: readonly { asked: number; weight: number }[]
-	readonly #isOfLosses: boolean
-	readonly #supply: number
-	readonly #water: WaterLevel
-	#askedInAll = 0
-
-	constructor(supply: number, claims: readonly { asked: number; weight: number }[], rule: SharingRule) {
-		for (const { asked } of claims) this.#askedInAll += asked
-		this.#claims = claims
-		this.#supply = supply
-		this.#isOfLosses = rule === "equal-shortfall"
-		this.#water = new WaterLevel(
-			claims.map((claim) => vesselOf(claim, rule)),
-			this.#total(),
-		)
+/**
+ * The order of left-over cases where none lifts anybody, the smaller part when last short, the earlier order, the id; and
+ * the place of each claim by the time of its order and the id.
+ */
+function turnsOf(claims: readonly Claim[]): { order: Uint32Array; late: Uint32Array } {
+	const late = new Uint32Array(claims.length)
+	const placed = new Float64Array(claims.length)
+	const parts = new Float64Array(claims.length)
+	for (let index = 0; index < claims.length; index += 1) {
+		const claim = claims[index] as Claim
+		placed[index] = claim.placed
+		parts[index] = claim.lastPart ?? 1
 	}
-
-	share(index: number): number {
-		const { asked } = this.#claims[index] as { asked: number }
-		const held = this.#water.held(index)
-		return nearlyWhole(this.#isOfLosses ? asked - held : held)
+	const byTime = inOrder(placed)
+	const placedAt = (place: number) => placed[byTime[place] as number]
+	for (let from = 0; from < byTime.length; ) {
+		let to = from + 1
+		while (to < byTime.length && placedAt(to) === placedAt(from)) to += 1
+		const atOnce = byTime.subarray(from, to)
+		if (atOnce.length > 1) atOnce.sort((a, b) => text((claims[a] as Claim).id, (claims[b] as Claim).id))
+		for (let place = from; place < to; place += 1) late[byTime[place] as number] = place
+		from = to
 	}
-
-	setAside(index: number): void {
-		this.#askedInAll -= (this.#claims[index] as { asked: number }).asked
-		this.#water.takeOut(index, this.#total())
-	}
-
-	#total(): number {
-		return this.#isOfLosses ? Math.max(0, this.#askedInAll - this.#supply) : this.#supply
-	}
+	const { ranks } = ranksOf(parts)
+	const keys = parts.map((_, index) => (ranks[index] as number) * claims.length + (late[index] as number))
+	return { order: inOrder(keys), late }
 }
 
-function vesselOf({ asked, weight }: { asked: number; weight: number }, rule: SharingRule): Vessel {
-	if (rule === "equal-shares") return { cap: asked, rate: weight }
-	// A claim of nothing holds nothing at any rate, but a rate of 0 would fill at no level.
-	if (rule === "in-proportion") return { cap: asked, rate: Math.max(asked, NEARLY) * weight }
-	return { cap: asked, rate: 1 / weight }
+type ClassMembers = { claims: readonly Claim[]; members: Uint32Array; late: Uint32Array }
+
+function columnsOf({ claims, members, late }: ClassMembers): ClaimColumns {
+	const columns = {
+		asked: new Float64Array(members.length),
+		least: new Float64Array(members.length),
+		weight: new Float64Array(members.length),
+		late: new Uint32Array(members.length),
+	}
+	for (let index = 0; index < members.length; index += 1) {
+		const place = members[index] as number
+		const { asked, least, weight } = claims[place] as Claim
+		columns.asked[index] = asked
+		columns.least[index] = least
+		columns.weight[index] = weight
+		columns.late[index] = late[place] as number
+	}
+	return columns
 }
 
-function shareClass(supply: number, claims: readonly Ranked[], rule: SharingRule): Share[] {
-	const sharing = new Sharing(supply, claims, rule)
-	const wouldGet = claims.map((_, index) => sharing.share(index))
-	const isAside = setAsideHopeless(sharing, claims, rule)
-	setAsideUnlifted(sharing, claims, { supply, isAside })
-	const round = wholeCases(sharing, claims, isAside)
-	const back = comeBack(claims, { over: supply - round.sum, isAside })
-	return claims.map(({ id, asked }, index): Share => {
-		const given = isAside[index] ? (back.get(index) ?? 0) : (round.given[index] as number)
-		const exact = isAside[index] ? (wouldGet[index] as number) : sharing.share(index)
-		return { id, given, exact, reason: reasonOf({ asked, given, exact, isAside: isAside[index] === 1 }) }
+/** The shares of the members of one class, in the order of left-over cases. */
+function shareClass(supply: number, of: ClassMembers, rule: SharingRule): Share[] {
+	const columns = columnsOf(of)
+	const { asked } = columns
+	const sharing = new SharingLevel(supply, columns, rule)
+	const wouldGet = asked.map((_, index) => sharing.share(index))
+	const isAside = setAsideHopeless(sharing, columns, rule)
+	setAsideUnlifted(sharing, columns, { supply, isAside })
+	const round = wholeCases(sharing, columns, isAside)
+	const back = comeBack(columns, { over: supply - round.sum, isAside })
+	return Array.from(of.members, (place, index): Share => {
+		const aside = isAside[index] === 1
+		const given = aside ? (back.get(index) ?? 0) : (round.given[index] as number)
+		const exact = aside ? (wouldGet[index] as number) : sharing.share(index)
+		const reason = reasonOf({ asked: asked[index] as number, given, exact, isAside: aside })
+		return { id: (of.claims[place] as Claim).id, given, exact, reason }
 	})
 }
 
@@ -147,137 +156,25 @@ function reasonOf(facts: { asked: number; given: number; exact: number; isAside:
 	return given > exact ? "left-over" : "shared"
 }
 
-/**
- * Sets aside every claim that not even a left-over case would lift to its least acceptable, and answers which those are.
- * Shares only rise while others are set aside, so a claim is looked at again only when it may have become the furthest.
- * Claims that are always as far below as one another wait as one, the latest order of them last: else a thousand claims
- * with the same least acceptable would all be looked at again for each of them that goes.
- */
-function setAsideHopeless(sharing: Sharing, claims: readonly Ranked[], rule: SharingRule): Uint8Array {
-	const isAside = new Uint8Array(claims.length)
-	const leastOf = (index: number) => (claims[index] as Ranked).least
-	const isHopeless = (index: number) => leastOf(index) > Math.ceil(sharing.share(index))
-	const groups = new Map<string, number[]>()
-	for (const index of claims.keys()) {
-		if (!isHopeless(index)) continue
-		const key = alikeKey(claims[index] as Ranked, sharing.share(index), rule)
-		const group = groups.get(key)
-		if (group) group.push(index)
-		else groups.set(key, [index])
-	}
-	const lastOf = (group: Waiting) => group.members.at(-1) as number
-	const heap = new Heap((a, b) =>
-		Math.abs(a.below - b.below) > NEARLY ? a.below > b.below : isLater(claims, lastOf(a), lastOf(b)),
-	)
-	for (const members of groups.values()) {
-		members.sort((a, b) => (isLater(claims, a, b) ? 1 : -1))
-		const [first] = members as [number]
-		heap.push({ members, below: leastOf(first) - sharing.share(first) })
-	}
-	for (let group = heap.pop(); group; group = heap.pop()) {
-		const index = lastOf(group)
-		if (!isHopeless(index)) continue
-		const below = leastOf(index) - sharing.share(index)
-		if (group.below - below <= NEARLY) {
-			group.members.pop()
-			isAside[index] = 1
-			sharing.setAside(index)
-		}
-		if (group.members.length > 0) heap.push({ members: group.members, below })
-	}
-	return isAside
-}
-
-/**
- * Claims with one key stay equally far below their least acceptable as shares rise. Under equal shortfall a claim that
- * gets nothing yet rises later than others, so only its like is like it.
- */
-function alikeKey({ asked, least, weight }: Claim, share: number, rule: SharingRule): string {
-	if (rule === "equal-shares") return `${least} ${weight}`
-	if (rule === "in-proportion" || share === 0) return `${least} ${asked} ${weight}`
-	return `${least - asked} ${weight}`
-}
-
-/** Claims of one asking and weight: they have one exact share. `waiting` need a left-over case to reach their least. */
-type Alike = { member: number; count: number; whole: number; waiting: number[] }
-
-/**
- * Sets aside those that no left-over case is left for, though it would lift them to their least acceptable: the latest
- * order first, until the left-over cases reach. After `setAsideHopeless` each claim lacks one case at most, and shares
- * only rise, so that nobody joins those who wait. Takes time in proportion to the claims set aside times the kinds of
- * claims (one asking and weight), not times all claims.
- */
-function setAsideUnlifted(
-	sharing: Sharing,
-	claims: readonly Ranked[],
-	{ supply, isAside }: { supply: number; isAside: Uint8Array },
-): void {
-	const isWaiting = new Uint8Array(claims.length)
-	const kinds = new Map<string, Alike>()
-	const kindOf: Alike[] = []
-	let [askedInAll, wholeInAll] = [0, 0]
-	for (const [index, { asked, weight, least }] of claims.entries()) {
-		if (isAside[index]) continue
-		const key = `${asked} ${weight}`
-		const kind = kinds.get(key) ?? {
-			member: index,
-			count: 0,
-			whole: Math.floor(sharing.share(index)),
-			waiting: [],
-		}
-		kinds.set(key, kind)
-		kindOf[index] = kind
-		kind.count += 1
-		askedInAll += asked
-		wholeInAll += kind.whole
-		if (least <= kind.whole) continue
-		kind.waiting.push(index)
-		isWaiting[index] = 1
-	}
-	const waiting = new LateRest(isWaiting, (a, b) => isLater(claims, a, b))
-	for (;;) {
-		const latest = waiting.latestAfter(Math.max(0, Math.min(supply, askedInAll) - wholeInAll))
-		if (latest === null) return
-		const kind = kindOf[latest] as Alike
-		isAside[latest] = 1
-		waiting.takeOut(latest)
-		kind.count -= 1
-		askedInAll -= (claims[latest] as Ranked).asked
-		wholeInAll -= kind.whole
-		sharing.setAside(latest)
-		for (const one of kinds.values()) wholeInAll += riseOf(one, sharing, waiting)
-	}
-}
-
-/** Brings a kind's whole cases up to its share, which lifts all of it that waited; answers by how many cases in all. */
-function riseOf(kind: Alike, sharing: Sharing, waiting: LateRest): number {
-	const whole = Math.floor(sharing.share(kind.member))
-	if (whole === kind.whole) return 0
-	const rise = (whole - kind.whole) * kind.count
-	kind.whole = whole
-	for (const index of kind.waiting) waiting.takeOut(index)
-	kind.waiting = []
-	return rise
-}
-
 type Round = { given: Int32Array; sum: number }
 
 /** Exact shares rounded down, and the left-over cases given out. */
-function wholeCases(sharing: Sharing, claims: readonly Ranked[], isAside: Uint8Array): Round {
-	const given = new Int32Array(claims.length)
+function wholeCases(sharing: SharingLevel, { least }: ClaimColumns, isAside: Uint8Array): Round {
+	const given = new Int32Array(least.length)
 	const parts: number[] = []
 	let [sum, exactSum] = [0, 0]
-	for (const [index] of claims.entries()) {
+	for (let index = 0; index < least.length; index += 1) {
 		if (isAside[index]) continue
 		const exact = sharing.share(index)
-		given[index] = Math.floor(exact)
-		sum += given[index] as number
+		const whole = Math.floor(exact)
+		given[index] = whole
+		sum += whole
 		exactSum += exact
-		if (exact > Math.floor(exact)) parts.push(index)
+		if (exact > whole) parts.push(index)
 	}
 	const leftOver = Math.round(exactSum) - sum
-	const isLifted = (index: number) => (given[index] as number) + 1 === (claims[index] as Ranked).least
-	// `claims` come by rank, so both halves keep the order of left-over cases.
+	const isLifted = (index: number) => (given[index] as number) + 1 === least[index]
+	// The columns are in the order of left-over cases, so both halves keep it.
 	const inTurn = [...parts.filter(isLifted), ...parts.filter((index) => !isLifted(index))]
 	for (const index of inTurn.slice(0, leftOver)) given[index] = (given[index] as number) + 1
 	return { given, sum: sum + Math.min(leftOver, inTurn.length) }
@@ -285,20 +182,21 @@ function wholeCases(sharing: Sharing, claims: readonly Ranked[], isAside: Uint8A
 
 /** Who of those set aside gets something of what is over: first their least acceptable, then a case each in turn. */
 function comeBack(
-	claims: readonly Ranked[],
+	{ asked, least }: ClaimColumns,
 	{ over, isAside }: { over: number; isAside: Uint8Array },
 ): Map<number, number> {
 	const back = new Map<number, number>()
 	let left = over
-	for (const [index, { least }] of claims.entries()) {
-		if (!isAside[index] || least > left) continue
-		back.set(index, least)
-		left -= least
+	for (let index = 0; index < least.length; index += 1) {
+		const needed = least[index] as number
+		if (!isAside[index] || needed > left) continue
+		back.set(index, needed)
+		left -= needed
 	}
 	for (let gave = true; gave && left > 0; ) {
 		gave = false
 		for (const [index, given] of back) {
-			if (left === 0 || given >= (claims[index] as Ranked).asked) continue
+			if (left === 0 || given >= (asked[index] as number)) continue
 			back.set(index, given + 1)
 			left -= 1
 			gave = true
@@ -309,73 +207,15 @@ function comeBack(
 
 const text = (a: string, b: string) => (a < b ? -1 : a > b ? 1 : 0)
 
-/** The order of left-over cases where none lifts anybody: the smaller part when last short, the earlier order, the id. */
-function byLeftOver(a: Claim, b: Claim): number {
-	return (a.lastPart ?? 1) - (b.lastPart ?? 1) || a.placed - b.placed || text(a.id, b.id)
-}
-
-function isLater(claims: readonly Ranked[], a: number, b: number): boolean {
-	const [one, other] = [claims[a] as Ranked, claims[b] as Ranked]
-	return one.placed !== other.placed ? one.placed > other.placed : one.id > other.id
-}
-
-function nearlyWhole(share: number): number {
-	const whole = Math.round(share)
-	return Math.abs(share - whole) <= NEARLY * Math.max(1, whole) ? whole : share
-}
-
 function requireSane(supply: number, claims: readonly Claim[]): void {
 	const isWhole = (cases: number) => Number.isSafeInteger(cases) && cases >= 0
 	if (!isWhole(supply)) throw new RangeError(`not whole cases: ${supply}`)
+	const ids = new Set<string>()
 	for (const { id, asked, least, weight } of claims) {
+		ids.add(id)
 		if (!isWhole(asked) || !isWhole(least) || least > asked || !(weight > 0) || !Number.isFinite(weight)) {
 			throw new RangeError(`not a claim: ${id}`)
 		}
 	}
-	if (new Set(claims.map(({ id }) => id)).size !== claims.length) throw new RangeError("a claim is there twice")
-}
-
-/** Claims that are equally far below their least acceptable. */
-type Waiting = { members: number[]; below: number }
-
-/** A binary heap, the first by `isBefore` on top. */
-class Heap {
-	readonly #items: Waiting[] = []
-	readonly #isBefore: (a: Waiting, b: Waiting) => boolean
-
-	constructor(isBefore: (a: Waiting, b: Waiting) => boolean) {
-		this.#isBefore = isBefore
-	}
-
-	push(item: Waiting): void {
-		const items = this.#items
-		let at = items.length
-		items.push(item)
-		while (at > 0) {
-			const above = (at - 1) >> 1
-			if (!this.#isBefore(item, items[above] as Waiting)) break
-			items[at] = items[above] as Waiting
-			at = above
-		}
-		items[at] = item
-	}
-
-	pop(): Waiting | undefined {
-		const items = this.#items
-		const top = items[0]
-		const last = items.pop()
-		if (top === undefined || last === undefined || items.length === 0) return top
-		let at = 0
-		for (;;) {
-			let below = 2 * at + 1
-			if (below >= items.length) break
-			const right = below + 1
-			if (right < items.length && this.#isBefore(items[right] as Waiting, items[below] as Waiting)) below = right
-			if (!this.#isBefore(items[below] as Waiting, last)) break
-			items[at] = items[below] as Waiting
-			at = below
-		}
-		items[at] = last
-		return top
-	}
+	if (ids.size !== claims.length) throw new RangeError("a claim is there twice")
 }

@@ -1,17 +1,18 @@
-/** One vessel of the level: it takes `rate` for each unit that the level rises, until `cap` is reached. */
-export type Vessel = { cap: number; rate: number }
+import { inOrder } from "./in-order"
 
 /**
  * A total spread over vessels so that each holds min(cap, rate × level), the sum being the total or, where that is more
- * than all caps, their sum. Vessels can be taken out one by one and the level follows; in all that costs no more than
- * sorting them once, as long as the level only rises or only falls meanwhile. Equal shares, shares in proportion and
- * equal shortfalls are three choices of cap and rate.
+ * than all caps, their sum. A vessel takes `rate` for each unit that the level rises, until its cap is reached. Vessels can
+ * be taken out one by one and the level follows; in all that costs no more than sorting them once, as long as the level
+ * only rises or only falls meanwhile. Equal shares, shares in proportion and equal shortfalls are three choices of cap and
+ * rate.
  */
 export class WaterLevel {
-	readonly #vessels: readonly Vessel[]
+	readonly #caps: Float64Array
+	readonly #rates: Float64Array
 	/** Vessels in the order in which they fill, and the place of each in that order. */
-	readonly #order: readonly number[]
-	readonly #place: Int32Array
+	readonly #order: Uint32Array
+	readonly #place: Uint32Array
 	readonly #isOut: Uint8Array
 	#total: number
 	/** So many of `#order` are full or out; what the full ones hold together. */
@@ -21,18 +22,18 @@ export class WaterLevel {
 	#openCount: number
 	#openRate = 0
 
-	constructor(vessels: readonly Vessel[], total: number) {
-		const fullAt = Float64Array.from(vessels, ({ cap, rate }) => cap / rate)
-		this.#vessels = vessels
+	constructor(caps: Float64Array, rates: Float64Array, total: number) {
+		this.#caps = caps
+		this.#rates = rates
 		this.#total = total
-		this.#openCount = vessels.length
-		this.#order = vessels
-			.map((_, index) => index)
-			.sort((a, b) => (fullAt[a] as number) - (fullAt[b] as number) || a - b)
-		this.#place = new Int32Array(vessels.length)
-		this.#isOut = new Uint8Array(vessels.length)
-		for (const [place, index] of this.#order.entries()) this.#place[index] = place
-		for (const { rate } of vessels) this.#openRate += rate
+		this.#openCount = caps.length
+		this.#order = inOrder(caps.map((cap, index) => cap / (rates[index] as number)))
+		this.#place = new Uint32Array(caps.length)
+		this.#isOut = new Uint8Array(caps.length)
+		for (let place = 0; place < caps.length; place += 1) {
+			this.#place[this.#order[place] as number] = place
+			this.#openRate += rates[place] as number
+		}
 		this.#settle()
 	}
 
@@ -44,16 +45,14 @@ export class WaterLevel {
 
 	/** What a vessel holds at the present level. */
 	held(index: number): number {
-		const { cap, rate } = this.#vessels[index] as Vessel
-		return Math.min(cap, rate * this.level)
+		return Math.min(this.#caps[index] as number, (this.#rates[index] as number) * this.level)
 	}
 
 	/** Takes a vessel out; what is spread over the others is `total` from now on. */
 	takeOut(index: number, total: number): void {
-		const { cap, rate } = this.#vessels[index] as Vessel
 		this.#isOut[index] = 1
-		if ((this.#place[index] as number) < this.#fullCount) this.#fullHold -= cap
-		else this.#close(rate)
+		if ((this.#place[index] as number) < this.#fullCount) this.#fullHold -= this.#caps[index] as number
+		else this.#close(this.#rates[index] as number)
 		this.#total = total
 		this.#settle()
 	}
@@ -61,8 +60,8 @@ export class WaterLevel {
 	#settle(): void {
 		while (this.#fullCount < this.#order.length) {
 			const index = this.#order[this.#fullCount] as number
-			const { cap, rate } = this.#vessels[index] as Vessel
 			if (!this.#isOut[index]) {
+				const [cap, rate] = [this.#caps[index] as number, this.#rates[index] as number]
 				if (cap * this.#openRate > (this.#total - this.#fullHold) * rate) break
 				this.#fullHold += cap
 				this.#close(rate)
@@ -71,8 +70,8 @@ export class WaterLevel {
 		}
 		while (this.#fullCount > 0) {
 			const index = this.#order[this.#fullCount - 1] as number
-			const { cap, rate } = this.#vessels[index] as Vessel
 			if (!this.#isOut[index]) {
+				const [cap, rate] = [this.#caps[index] as number, this.#rates[index] as number]
 				if (cap * (this.#openRate + rate) <= (this.#total - this.#fullHold + cap) * rate) break
 				this.#fullHold -= cap
 				this.#openRate += rate
