@@ -51,6 +51,9 @@ const speaksForYard = z.union([
 	z
 		.object({ invoice: z.object({ yard: z.object({ email: z.string() }) }) })
 		.transform(({ invoice }) => invoice.yard.email),
+	z
+		.object({ statement: z.object({ yard: z.object({ email: z.string() }) }) })
+		.transform(({ statement }) => statement.yard.email),
 ])
 
 function answersTo(props: unknown): string | undefined {

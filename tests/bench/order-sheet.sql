@@ -18,7 +18,7 @@ where r.producer_id = :producer_id
 order by r.weekday;
 
 -- On which terms.
-select "address", "receiving_note", "minimum_cents", "delivery_charge_cents", "free_above_cents"
+select "address", "receiving_note", "minimum_cents", "delivery_charge_cents", "free_above_cents", "is_stopped", "credit_limit_cents"
 from "stores" where ("stores"."producer_id" = :producer_id and "stores"."id" = :store_id);
 
 -- What the store may buy, and its prices.

@@ -23,6 +23,9 @@ const KIND_OF: Readonly<Record<string, LetterKind>> = {
 	"credit-issued": "invoices",
 	"breakage-declined": "invoices",
 	"payment-received": "invoices",
+	statement: "invoices",
+	reminder: "reminders",
+	"certificate-expiring": "reminders",
 }
 
 /**

@@ -1,6 +1,6 @@
 import type { ReactNode } from "react"
 import { Form, Link, redirect } from "react-router"
-import { fullDay, instantAt, timeWords, type Weekday, weekdayName } from "~/domain/calendar"
+import { type Day, dayInZone, fullDay, instantAt, timeWords, type Weekday, weekdayName } from "~/domain/calendar"
 import { termsWords } from "~/domain/invoicing/terms"
 import { formatMoney } from "~/domain/money"
 import { letterKinds } from "~/domain/people/letters"
@@ -23,6 +23,7 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ url }: Rout
 	return {
 		frame: await findBuyFrame(scope, { part: "details", now }),
 		details,
+		today: dayInZone(now, producer.timeZone),
 		lettersOff: await findLettersOff({ producerId: producer.id, storeId: store.id, personId: person.id }),
 		email: person.email,
 		isSaved: url.searchParams.has("saved"),
@@ -57,6 +58,11 @@ function deliveryWords({ minimumCents, deliveryChargeCents, freeAboveCents }: St
 	return `${charge}${free}${minimum}`
 }
 
+function certificateWords(until: Day | null, today: Day): string {
+	if (until === null) return "none on file"
+	return until < today ? `ran out on ${fullDay(until)}` : `on file, good until ${fullDay(until)}`
+}
+
 function Fact({ label, children }: { label: string; children: ReactNode }) {
 	return (
 		<div className="grid gap-1 border-b border-rule px-4 py-3 desk:grid-cols-[14rem_minmax(0,1fr)] desk:px-8">
@@ -66,7 +72,9 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
 	)
 }
 
-export default function Details({ loaderData: { frame, details, lettersOff, email, isSaved } }: Route.ComponentProps) {
+export default function Details({
+	loaderData: { frame, details, today, lettersOff, email, isSaved },
+}: Route.ComponentProps) {
 	const { yard, people, rounds, resaleCertificateUntil } = details
 	const whom = yard.contactName ?? yard.name
 	return (
@@ -104,9 +112,17 @@ export default function Details({ loaderData: { frame, details, lettersOff, emai
 						Your prices
 					</Link>
 				</Fact>
-				<Fact label="Invoices are">{termsWords(details.terms)}</Fact>
+				<Fact label="Invoices are">
+					{termsWords(details.terms)}.{" "}
+					<Link to="../statement" relative="path">
+						Your statement
+					</Link>
+				</Fact>
 				<Fact label="Resale certificate">
-					{resaleCertificateUntil ? `on file, good until ${fullDay(resaleCertificateUntil)}` : "none on file"}
+					{certificateWords(resaleCertificateUntil, today)}.{" "}
+					<Link to="../certificate" relative="path">
+						Hand in a certificate
+					</Link>
 				</Fact>
 				<Fact label="Who orders and pays">
 					{people.map((person) => (

@@ -109,6 +109,11 @@ export default function Sheet({ loaderData, actionData, params }: Route.Componen
 								Last orders were <b>{closes.words}</b>. This delivery is fixed.
 							</>
 						)}
+						{isOpen && store.isLookedAtFirst && (
+							<span className="block">
+								The yard will look at this order first. <Link to={`${base}/statement`}>Your statement</Link>
+							</span>
+						)}
 						{orders
 							.filter(({ number }) => number !== start.changes)
 							.map((order) => (

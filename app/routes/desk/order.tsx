@@ -5,6 +5,7 @@ import { env } from "~/platform/env.server"
 import { findTimeline } from "~/services/messages/find-timeline.server"
 import { findDeskOrder } from "~/services/orders/find-desk-order.server"
 import { findProposal } from "~/services/orders/find-proposal.server"
+import { findOrderCredit } from "~/services/receivables/read-credit.server"
 import { ConfirmLines } from "~/ui/desk/confirm-lines"
 import { LateChangeForm } from "~/ui/desk/late-change-form"
 import { OrderSteps } from "~/ui/desk/order-steps"
@@ -16,6 +17,7 @@ import { MessageForm } from "~/ui/messages/message-form"
 import { OrderTimeline } from "~/ui/messages/order-timeline"
 import { Proposal } from "~/ui/messages/proposal"
 import { OrderLines, OrderSums } from "~/ui/orders/order-lines"
+import { CreditNote } from "~/ui/receivables/credit-note"
 import { admits, type DeskScope, guard } from "../guard.server"
 import type { Route } from "./+types/order"
 import { DeskBook } from "./desk-book"
@@ -58,6 +60,7 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }
 	return {
 		frame: await findDeskFrame(scope, { part: "orders", day: order.deliveryOn, now }),
 		order: shown,
+		credit: await findOrderCredit(asked),
 		timeline: timelineView(timeline, { zone, side: "desk", before }),
 		change: change && {
 			...change,
@@ -86,7 +89,7 @@ export function shouldRevalidate({ actionStatus, defaultShouldRevalidate }: Shou
 }
 
 export default function Order({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { order, timeline, change, messageKey, done, undoMinutes } = loaderData
+	const { order, credit, timeline, change, messageKey, done, undoMinutes } = loaderData
 	const base = `/desk/${params.producer}`
 	const errors = actionData?.errors ?? {}
 	const wrong = Object.entries(errors).map(([field, message]) => {
@@ -117,6 +120,7 @@ export default function Order({ loaderData, actionData, params }: Route.Componen
 				note={facts}
 			/>
 			<ErrorSummary title="Nothing was changed" errors={wrong} />
+			{credit && <CreditNote warning={credit.warning} storeHref={`${base}/stores/${credit.storeSlug}`} />}
 			{order.state === "placed" ? (
 				<ConfirmLines
 					order={order}

@@ -14,6 +14,7 @@ export const meta: Route.MetaFunction = () => [{ title: "Stores · Waxbill" }]
 export const loader = guard(admits.desk("owner", "desk"), async (_args: Route.LoaderArgs, scope) => ({
 	frame: await findDeskFrame(scope, { part: "stores" }),
 	stores: await listStores({ producerId: scope.producer.id }),
+	isOwner: scope.roles.includes("owner"),
 }))
 
 /** "$600.00 a delivery; $18.00 for the way, free from $600.00". */
@@ -25,10 +26,25 @@ function deliveryWords({ minimumCents, deliveryChargeCents, freeAboveCents }: Li
 }
 
 export default function Stores({ loaderData }: Route.ComponentProps) {
-	const { stores } = loaderData
+	const { stores, isOwner } = loaderData
 	return (
 		<DeskBook frame={loaderData.frame}>
-			<SheetHead title="Stores" lead="Who buys by the case: their prices, their terms, their days, and who orders." />
+			<SheetHead
+				title="Stores"
+				lead="Who buys by the case: their prices, their terms, their days, and who orders."
+				action={
+					<span className="flex flex-wrap gap-x-5">
+						<Link className="py-1" to="../receivables" relative="path">
+							Who owes what
+						</Link>
+						{isOwner && (
+							<Link className="py-1" to="new">
+								A new store
+							</Link>
+						)}
+					</span>
+				}
+			/>
 			{stores.length === 0 ? (
 				<EmptyLine>No store buys from you yet.</EmptyLine>
 			) : (
@@ -52,7 +68,7 @@ export default function Stores({ loaderData }: Route.ComponentProps) {
 						{stores.map((store) => (
 							<tr key={store.name} className={store.isActive ? undefined : "text-ink-faint"}>
 								<td className="py-2!">
-									<Link className="name block text-body!" to={`${store.slug}/standing`}>
+									<Link className="name block text-body!" to={store.slug}>
 										{store.name}
 									</Link>
 									<span className="note block">{store.address}</span>

@@ -13,6 +13,7 @@ import {
 } from "~/services/delivery/find-delivery-days.server"
 import { findStorePrices, type StoreProduct } from "~/services/pricing/find-store-prices.server"
 import { findOutlooks } from "~/services/promise/find-outlooks.server"
+import { readStoreCredit } from "~/services/receivables/read-credit.server"
 import { type CaseStrip, caseStrips } from "./cases-on-day.server"
 import { setFree } from "./check-asked.server"
 import { findCasesToShare, findOwnLines, type OwnLine } from "./find-asked-days.server"
@@ -37,7 +38,13 @@ export type SheetRow = StoreProduct & {
 export type OrderSheet = {
 	day: OpenOrClosedDay
 	fortnight: FortnightDay[]
-	store: { address: string; receivingNote: string; terms: DeliveryTerms }
+	store: {
+		address: string
+		receivingNote: string
+		terms: DeliveryTerms
+		/** The producer looks at its orders before promising anything: it is stopped, or owes more than its limit. */
+		isLookedAtFirst: boolean
+	}
 	rows: SheetRow[]
 	/** The store's orders for this day, the earliest first. */
 	orders: { number: number; state: OrderState; cases: number }[]
@@ -126,12 +133,15 @@ async function findStoreTerms(tx: Tx, query: { producerId: string; storeId: stri
 			minimumCents: stores.minimumCents,
 			deliveryChargeCents: stores.deliveryChargeCents,
 			freeAboveCents: stores.freeAboveCents,
+			isStopped: stores.isStopped,
+			creditLimitCents: stores.creditLimitCents,
 		})
 		.from(stores)
 		.where(and(eq(stores.producerId, query.producerId), eq(stores.id, query.storeId)))
 	if (!store) throw new Error("a sheet is for a store that is there")
-	const { address, receivingNote, ...terms } = store
-	return { address, receivingNote, terms }
+	const { address, receivingNote, isStopped, creditLimitCents, ...terms } = store
+	const isLookedAtFirst = isStopped || (creditLimitCents !== null && (await readStoreCredit(tx, query)) !== null)
+	return { address, receivingNote, terms, isLookedAtFirst }
 }
 
 function casesOn(lines: readonly OwnLine[], on: Day | undefined, productId: string): number {

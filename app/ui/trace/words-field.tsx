@@ -9,6 +9,7 @@ export function WordsField({
 	error,
 	defaultValue,
 	maxLength,
+	id = fieldId(name),
 }: {
 	name: string
 	label: string
@@ -16,8 +17,8 @@ export function WordsField({
 	error?: ReactNode
 	defaultValue?: string
 	maxLength: number
+	id?: string
 }) {
-	const id = fieldId(name)
 	return (
 		<div className="field">
 			<label className="field-label" htmlFor={id}>

@@ -48,6 +48,7 @@ export async function sheetOf(rows: SheetRows, { day, now, producerSlug, storeSl
 				deliveryChargeCents: terms.delivery_charge_cents,
 				freeAboveCents: terms.free_above_cents,
 			},
+			isLookedAtFirst: terms.is_stopped,
 		},
 		producerName: who.producer_name,
 		products: rows.prices.flatMap((row) => {
