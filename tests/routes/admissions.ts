@@ -97,6 +97,9 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/order": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "confirm" } } },
 	"routes/desk/sharing": { loader: OFFICE },
 	"routes/desk/sharing-product": { loader: OFFICE, action: OFFICE },
+	"routes/desk/packing-slip": { loader: COLD_ROOM },
+	"routes/desk/packing-slip-pdf": { loader: COLD_ROOM },
+	"routes/desk/invoice-run": { loader: COLD_ROOM },
 	"routes/desk/packing": { loader: COLD_ROOM, action: COLD_ROOM, post: { fields: onOrder("pack") } },
 	// The crop: whoever works in the yard sees it.
 	"routes/desk/crop": { loader: COLD_ROOM },
@@ -154,6 +157,8 @@ export const admissions: Record<string, Admission> = {
 		action: OFFICE,
 		post: { effective: { method: "cash", amount: "5.00", paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
 	},
+	"routes/desk/invoices-waiting": { loader: OFFICE, action: OFFICE },
+	"routes/desk/tax-rates": { loader: OFFICE, action: OFFICE },
 	"routes/desk/invoice-pdf": { loader: OFFICE },
 	// The bookkeeper's settings and the closing are the owner's; without a name or a day nothing is set or closed.
 	"routes/desk/books": { loader: OFFICE },

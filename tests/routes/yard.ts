@@ -47,6 +47,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const storeId = randomUUID()
 	const orderId = randomUUID()
 	const invoiceId = randomUUID()
+	const runId = randomUUID()
 	const marketDayId = randomUUID()
 	const saleId = randomUUID()
 	const takeId = randomUUID()
@@ -98,6 +99,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			total_cents: 1000,
 		})
 		await insert("invoice_orders", { order_id: orderId, invoice_id: invoiceId })
+		await insert("invoice_runs", { id: runId, started_by: sellerId, finished_at: new Date() })
 		await insert("settlements", {
 			invoice_id: invoiceId,
 			kind: "write-off",
@@ -224,6 +226,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			// The demo's first load of the freezer.
 			load: "1",
 			sale: saleId,
+			run: runId,
 			take: takeId,
 			tier: await asProducer(owner, ourId, () => idOf("select id from price_tiers order by name limit 1")),
 			product: "11",
@@ -250,6 +253,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("invoice_lines", "invoice_id", invoiceId)
 				await del("settlements", "invoice_id", invoiceId)
 				await del("invoice_orders", "invoice_id", invoiceId)
+				await del("invoice_runs", "id", runId)
 				await del("invoices", "id", invoiceId)
 				await del("order_events", "order_id", orderId)
 				await del("order_lines", "order_id", orderId)

@@ -39,6 +39,9 @@ export default function Invoices({ loaderData, params }: Route.ComponentProps) {
 				lead="What is still to be paid comes first, then what is paid, the latest first."
 				action={
 					<span className="flex flex-wrap gap-x-5">
+						<Link to={`${base}/invoices/waiting`}>To be invoiced</Link>
+						<Link to={`${base}/tax-rates`}>Sales tax</Link>
+						<Link to={`${base}/payments`}>Payments</Link>
 						<Link to={`${base}/credits`}>Credits</Link>
 						<Link to={`${base}/breakage`}>Broken comb</Link>
 					</span>

@@ -1,12 +1,15 @@
-import { data, Link, redirect } from "react-router"
+import { randomUUID } from "node:crypto"
+import { data, Form, Link, redirect } from "react-router"
 import { z } from "zod"
 import { dayWords, isDay, shortDay, shortMonthDay } from "~/domain/calendar"
 import { findPacking } from "~/services/desk/find-packing.server"
+import { startInvoiceRun } from "~/services/invoicing/start-invoice-run.server"
 import { packOrder } from "~/services/orders/pack-order.server"
 import { sendOrder } from "~/services/orders/send-order.server"
 import { FilterLinks } from "~/ui/desk/filter-links"
 import { counted, countHead } from "~/ui/desk/number-words"
 import { PackingOrders, PickTable } from "~/ui/desk/packing-sheet"
+import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
 import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { admits, guard } from "../guard.server"
@@ -31,6 +34,7 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 		picks: picks.map(({ bestBeforeOn, ...pick }) => ({ ...pick, bestBefore: shortMonthDay(bestBeforeOn) })),
 		orders,
 		done: url.searchParams.get("done"),
+		runId: randomUUID(),
 	}
 })
 
@@ -40,10 +44,19 @@ const step = z.object({
 	day: z.string().refine(isDay),
 })
 
+const sendAll = z.object({ intent: z.literal("send-all"), day: z.string().refine(isDay), runId: z.guid() })
+
 export const action = guard(
 	admits.desk("owner", "desk", "packer"),
 	async ({ request, url }: Route.ActionArgs, { producer, person }) => {
 		const form = await request.formData()
+		const all = sendAll.safeParse(Object.fromEntries(form))
+		if (all.success) {
+			const started = await startInvoiceRun({ ...all.data, producerId: producer.id, personId: person.id })
+			if (started.ok) throw redirect(`${url.pathname}/runs/${started.runId}`)
+			const problem = "Nothing of that day is packed any more: it was sent already, or taken back."
+			return data({ number: 0, values: {}, errors: {}, sure: {}, problem }, { status: 422 })
+		}
 		const parsed = step.safeParse(Object.fromEntries(form))
 		if (!parsed.success) throw data(null, { status: 400 })
 		const { intent, number, day } = parsed.data
@@ -84,7 +97,11 @@ export default function Packing({ loaderData, actionData, params }: Route.Compon
 					errors={Object.entries(actionData.errors).map(([field, message]) => ({ field, message }))}
 				/>
 			)}
-			<SheetHead title={day ? `Packing for ${dayWords(day)}` : "Packing"} lead={lead} />
+			<SheetHead
+				title={day ? `Packing for ${dayWords(day)}` : "Packing"}
+				lead={lead}
+				action={day && packed > 1 && <SendAll day={day} packed={packed} runId={loaderData.runId} />}
+			/>
 			{days.length > 1 && (
 				<div className="no-print">
 					<FilterLinks label="Days with orders to pack" name="day" chosen={day ?? ""} options={days} />
@@ -101,5 +118,18 @@ export default function Packing({ loaderData, actionData, params }: Route.Compon
 				</>
 			)}
 		</DeskBook>
+	)
+}
+
+/** Sends and invoices everything that is packed for the day; a page of its own then shows how far it is. */
+function SendAll({ day, packed, runId }: { day: string; packed: number; runId: string }) {
+	return (
+		<Form method="post" className="no-print">
+			<input type="hidden" name="day" value={day} />
+			<input type="hidden" name="runId" value={runId} />
+			<Button name="intent" value="send-all">
+				Send all {packed} packed, with their invoices
+			</Button>
+		</Form>
 	)
 }

@@ -40,6 +40,11 @@ export function OrderSteps({ order, base }: { order: Order; base: string }) {
 					Weigh and pack it
 				</Link>
 			)}
+			{(order.state === "packed" || order.state === "sent") && (
+				<Link className="btn" to={`${base}/orders/${order.number}/packing-slip`}>
+					Packing slip
+				</Link>
+			)}
 			{order.invoiceNumber && (
 				<Link className="btn" to={`${base}/invoices/${order.invoiceNumber}`}>
 					Invoice {order.invoiceNumber}

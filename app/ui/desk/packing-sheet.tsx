@@ -134,7 +134,23 @@ function OrderRow({
 	return (
 		<LedgerRow
 			name={order.storeName}
-			line={`Order ${order.number}, ${casesWords(cases)}`}
+			line={
+				<>
+					Order {order.number}, {casesWords(cases)}
+					{isPacked && (
+						<>
+							{" "}
+							<Link
+								className="no-print inline-block py-1"
+								relative="path"
+								to={`../orders/${order.number}/packing-slip`}
+							>
+								Packing slip
+							</Link>
+						</>
+					)}
+				</>
+			}
 			action={
 				<Form method="post" preventScrollReset id={form}>
 					<input type="hidden" name="number" value={order.number} />

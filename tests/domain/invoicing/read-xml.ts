@@ -7,7 +7,7 @@ const plain = (text: string) => text.replace(/&(?:amp|lt|gt|quot);/g, (sign) => 
 /** Reads XML of elements, attributes and text alone. Throws where it is not well formed or holds a sign that XML forbids. */
 export function readXml(xml: string): Element {
 	// biome-ignore lint/suspicious/noControlCharactersInRegex: these are what XML 1.0 forbids
-	if (/[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]/.test(xml) || !xml.isWellFormed())
+	if (/[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]|\p{Surrogate}/u.test(xml))
 		throw new Error("a sign that XML forbids")
 	const root: Element = { name: "", attributes: {}, text: "", children: [] }
 	const open = [root]
