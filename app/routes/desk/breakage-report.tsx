@@ -98,7 +98,9 @@ export default function Report({ loaderData, actionData, params }: Route.Compone
 			<ErrorSummary title="It was not answered" errors={actionData?.errors ?? []} />
 			{report.note && (
 				<div className="sheet-part">
-					<MarginNote>{report.note}</MarginNote>
+					<MarginNote>
+						{report.reportedBy} wrote: {report.note}
+					</MarginNote>
 				</div>
 			)}
 			{report.state === "open" ? (

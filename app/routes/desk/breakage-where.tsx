@@ -74,12 +74,19 @@ export default function WhereBroken({ loaderData, params }: Route.ComponentProps
 	)
 }
 
-function nameOf(row: BrokenRow, by: string, base: string) {
-	if (by !== "lot") return <span className={by === "product" ? "fig" : undefined}>{row.key}</span>
+function nameOf({ key, of }: BrokenRow, by: string, base: string) {
+	if (by === "round") return key
 	return (
-		<Link className="inline-block py-1 fig" to={`${base}/lots/${row.key}`}>
-			{row.key}
-		</Link>
+		<>
+			{by === "lot" ? (
+				<Link className="inline-block py-1 fig" to={`${base}/lots/${key}`}>
+					{key}
+				</Link>
+			) : (
+				<span className="fig text-ink-faint">{key}</span>
+			)}{" "}
+			{of}
+		</>
 	)
 }
 

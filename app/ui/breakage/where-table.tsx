@@ -33,10 +33,7 @@ export function WhereTable({ rows, head, name, sumLabel }: WhereTableProps) {
 			<tbody>
 				{rows.map((row) => (
 					<tr key={`${row.key} ${row.of}`}>
-						<td>
-							{name(row)}
-							{row.of && <span className="note block">{row.of}</span>}
-						</td>
+						<td>{name(row)}</td>
 						<td className="num fig">{row.sentPieces}</td>
 						<td className="num fig">{row.brokenPieces}</td>
 						<td className="num pr-4! desk:pr-8!">{shareWords(row.brokenPieces, row.sentPieces)}</td>

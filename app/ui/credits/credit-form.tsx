@@ -64,6 +64,9 @@ export function CreditForm({ storeName, lines, leftCents, creditId, typed, error
 								<span className="note block">{line.pieces > 0 ? piecesWords(line.pieces) : "no pieces"}</span>
 							</td>
 							<td>
+								<span className="note block desk:hidden" aria-hidden="true">
+									pieces
+								</span>
 								<QuantityField
 									name={`pieces-${line.id}`}
 									label={`Pieces of ${line.name}`}
@@ -72,6 +75,9 @@ export function CreditForm({ storeName, lines, leftCents, creditId, typed, error
 								/>
 							</td>
 							<td>
+								<span className="note block desk:hidden" aria-hidden="true">
+									or an amount
+								</span>
 								<QuantityField
 									name={`amount-${line.id}`}
 									className="wide"
