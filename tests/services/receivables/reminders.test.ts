@@ -4,8 +4,8 @@ import { describe, expect, test } from "vitest"
 import { onlinePaymentParts, onlinePayments, remindersSent, stores } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
 import { findRemindersPage } from "~/services/receivables/find-reminders-page.server"
-import { saveReminderStep, switchReminders, takeFirstSteps } from "~/services/receivables/set-reminders.server"
 import { sendReminders } from "~/services/receivables/send-reminders.server"
+import { saveReminderStep, switchReminders, takeFirstSteps } from "~/services/receivables/set-reminders.server"
 import { addHand } from "../desk/desk-steps"
 import { findOutbox, openStore, openYard, type Shop, type Yard } from "../orders/place-yard"
 import { openAccount } from "./account"
@@ -25,7 +25,9 @@ const send = (yard: Yard, now = MORNING) => sendReminders({ producerId: yard.pro
 
 async function lettersOf(yard: Yard) {
 	const letters = await findOutbox(yard.producerId)
-	return letters.filter(({ template }) => template === "reminder").map(({ recipient, props }) => ({ recipient, ...props }))
+	return letters
+		.filter(({ template }) => template === "reminder")
+		.map(({ recipient, props }) => ({ recipient, ...props }))
 }
 
 describe("a reminder", () => {
