@@ -6,6 +6,7 @@ import { measureCrop } from "../tests/bench/crop.mjs"
 import { actFor, openDatabase, signIn } from "../tests/bench/database.mjs"
 import { measureOrderSheet, orderSheetStatements } from "../tests/bench/order-sheet.mjs"
 import { measurePlacing } from "../tests/bench/place-order.mjs"
+import { measureReceivables } from "../tests/bench/receivables.mjs"
 import { tableOf } from "../tests/bench/report.mjs"
 import { buildReferences, startReferences, startWeb } from "../tests/bench/servers.mjs"
 import { measureShopFront, mustNeverBeStale } from "../tests/bench/shop-front.mjs"
@@ -28,6 +29,9 @@ const PACES = {
 }
 /** What one can ask for by itself, at the full pace: all that a producer with ten seasons waits for. */
 const CROP = "crop"
+/** The same of a producer with a million invoices. */
+const RECEIVABLES = "receivables"
+const BY_ITSELF = [CROP, RECEIVABLES]
 const OWNER = "owner@ten-seasons.example.test"
 const BUYER = { email: "rosa@pantryandplume.example.test", producer: "larkmoor", store: "pantry-and-plume" }
 
@@ -39,8 +43,8 @@ const BUYER = { email: "rosa@pantryandplume.example.test", producer: "larkmoor",
 await supervise(folder, async (crew) => {
 	const [name = "full"] = process.argv.slice(2)
 	const pace =
-		PACES[name === CROP ? "full" : name] ??
-		refuse(`There is no bench "${name}": it is npm run bench, or npm run bench -- quick or crop.`)
+		PACES[BY_ITSELF.includes(name) ? "full" : name] ??
+		refuse(`There is no bench "${name}": it is npm run bench, or npm run bench -- quick, crop or receivables.`)
 	await ensureInstalled()
 	const cluster = await startCluster({ folder: join(folder, "pg") })
 	crew.onStop(cluster.stop)
@@ -57,11 +61,12 @@ await supervise(folder, async (crew) => {
 	await database.client.query("vacuum (analyze)")
 	await startWeb(crew, env)
 	say(`Measuring on ${cpus().length} processors, load ${loadavg()[0].toFixed(1)}`)
-	const rows = name === CROP ? [] : await measureOrders({ crew, database, env, pace })
+	const rows = BY_ITSELF.includes(name) ? [] : await measureOrders({ crew, database, env, pace })
 	if (name !== "quick") {
 		await database.client.query("insert into users (email, name) values ($1, 'Owner') on conflict do nothing", [OWNER])
-		const cookie = await signIn(database, OWNER)
-		rows.push(...(await measureCrop({ database, web: env.BASE_URL, cookie, folder, env, ownerEmail: OWNER, say })))
+		const owned = { database, web: env.BASE_URL, cookie: await signIn(database, OWNER), ownerEmail: OWNER, say }
+		if (name !== RECEIVABLES) rows.push(...(await measureCrop({ ...owned, folder, env })))
+		if (name !== CROP) rows.push(...(await measureReceivables(owned)))
 	}
 
 	writeFileSync(result, `${JSON.stringify([...otherRows(rows), ...rows], null, "\t")}\n`)
@@ -70,7 +75,7 @@ await supervise(folder, async (crew) => {
 
 /** What an earlier run wrote that this one did not measure; a full run leaves nothing of an earlier one. */
 function otherRows(rows) {
-	if (!existsSync(result) || process.argv[2] !== CROP) return []
+	if (!existsSync(result) || !BY_ITSELF.includes(process.argv[2])) return []
 	const names = new Set(rows.map((row) => row.name))
 	return JSON.parse(readFileSync(result, "utf8")).filter((row) => !names.has(row.name))
 }
