@@ -68,6 +68,12 @@ export const admissions: Record<string, Admission> = {
 	"routes/buy/standing": { loader: STORE, action: STORE },
 	"routes/buy/standing-year": storePage,
 	"routes/buy/invoices": storePage,
+	"routes/buy/pay": { loader: "store: payer", action: "store: payer" },
+	"routes/buy/payment-method": {
+		loader: "store: payer",
+		action: "store: payer",
+		post: { fields: { intent: "automatic" } },
+	},
 	// A buyer reads what is to pay; paying is the payer's.
 	"routes/buy/invoice": { loader: STORE, action: "store: payer", post: { fields: { intent: "pay" } } },
 	"routes/buy/invoice-pdf": storePage,
@@ -155,7 +161,23 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/invoice": {
 		loader: OFFICE,
 		action: OFFICE,
-		post: { effective: { method: "cash", amount: "5.00", paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
+		post: {
+			effective: {
+				method: "cash",
+				amount: "5.00",
+				receivedOn: "2026-08-03",
+				paymentId: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11",
+			},
+		},
+	},
+	"routes/desk/payments": { loader: OFFICE },
+	"routes/desk/payment": { loader: OFFICE, action: OFFICE, post: { fields: { intent: "bounce" } } },
+	"routes/desk/payment-new": { loader: OFFICE, action: OFFICE },
+	// Nothing is found under an id that names no difference.
+	"routes/desk/stripe-differences": {
+		loader: OFFICE,
+		action: OFFICE,
+		post: { fields: { difference: "6f0c5a52-3a2c-4f0e-9f6b-2f4f5f1d9a11" } },
 	},
 	"routes/desk/invoices-waiting": { loader: OFFICE, action: OFFICE },
 	"routes/desk/tax-rates": { loader: OFFICE, action: OFFICE },
@@ -165,6 +187,8 @@ export const admissions: Record<string, Admission> = {
 	"routes/desk/books-csv": { loader: OFFICE },
 	"routes/desk/books-accounts": { loader: "desk: owner", action: "desk: owner" },
 	"routes/desk/books-close": { loader: "desk: owner", action: "desk: owner" },
+	"routes/desk/figures": { loader: OFFICE },
+	"routes/desk/figures-csv": { loader: OFFICE },
 	"routes/desk/invoice-ubl": { loader: OFFICE },
 	// Without a reason nothing is credited.
 	"routes/desk/credit-new": { loader: OFFICE, action: OFFICE },

@@ -48,6 +48,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const orderId = randomUUID()
 	const invoiceId = randomUUID()
 	const runId = randomUUID()
+	const paymentId = randomUUID()
 	const marketDayId = randomUUID()
 	const saleId = randomUUID()
 	const takeId = randomUUID()
@@ -99,6 +100,13 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			total_cents: 1000,
 		})
 		await insert("invoice_orders", { order_id: orderId, invoice_id: invoiceId })
+		await insert("payments", {
+			id: paymentId,
+			store_id: storeId,
+			method: "cash",
+			amount_cents: 500,
+			received_on: LONG_AGO,
+		})
 		await insert("invoice_runs", { id: runId, started_by: sellerId, finished_at: new Date() })
 		await insert("settlements", {
 			invoice_id: invoiceId,
@@ -212,6 +220,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			store: STORE_SLUG,
 			number: WALKED_ORDER,
 			invoice: "2001-0001",
+			payment: paymentId,
 			credit: "C2001-0001",
 			report: reportId,
 			picture: pictureId,
@@ -252,6 +261,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("credits", "id", creditId)
 				await del("invoice_lines", "invoice_id", invoiceId)
 				await del("settlements", "invoice_id", invoiceId)
+				await del("payments", "id", paymentId)
 				await del("invoice_orders", "invoice_id", invoiceId)
 				await del("invoice_runs", "id", runId)
 				await del("invoices", "id", invoiceId)

@@ -9,6 +9,8 @@ export const buyRoutes: RouteConfigEntry[] = [
 	route("buy/:producer/:store/deliveries", "routes/buy/deliveries.tsx"),
 	route("buy/:producer/:store/standing", "routes/buy/standing.tsx"),
 	route("buy/:producer/:store/standing/year", "routes/buy/standing-year.tsx"),
+	route("buy/:producer/:store/pay", "routes/buy/pay.tsx"),
+	route("buy/:producer/:store/payment-method", "routes/buy/payment-method.tsx"),
 	route("buy/:producer/:store/invoices", "routes/buy/invoices.tsx"),
 	route("buy/:producer/:store/invoices/:invoice", "routes/buy/invoice.tsx"),
 	route("buy/:producer/:store/invoices/:invoice.pdf", "routes/buy/invoice-pdf.tsx"),

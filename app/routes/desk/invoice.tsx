@@ -1,73 +1,64 @@
 import { randomUUID } from "node:crypto"
-import { data, Form, Link, redirect } from "react-router"
+import { data, Link, redirect } from "react-router"
 import { dayInZone, dayWords } from "~/domain/calendar"
 import { formatMoney, plainMoney } from "~/domain/money"
 import { now as askClock } from "~/platform/clock.server"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
+import { findInvoicePayments } from "~/services/payments/find-invoice-payments.server"
 import { recordPayment } from "~/services/payments/record-payment.server"
-import { Button } from "~/ui/forms/button"
 import { ErrorSummary } from "~/ui/forms/error-summary"
-import { SelectField, TextField } from "~/ui/forms/fields"
 import { InvoiceDocument } from "~/ui/invoicing/invoice-document"
 import { InvoiceLinks } from "~/ui/invoicing/invoice-links"
 import { MessageLine } from "~/ui/layout/sheet"
+import { InvoicePayments } from "~/ui/payments/invoice-payments"
+import { NotePayment } from "~/ui/payments/note-payment"
+import { settledWords } from "~/ui/payments/settled-words"
 import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/invoice"
 import { DeskBook } from "./desk-book"
 import { findDeskFrame } from "./frame.server"
-import { paymentForm } from "./payment-form"
+import { BOOKS_CLOSED, readPayment } from "./payment-form"
 
 export const meta: Route.MetaFunction = ({ params }) => [{ title: `Invoice ${params.invoice} · Waxbill` }]
 
 export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }: Route.LoaderArgs, scope) => {
-	const page = await findInvoice({ producerId: scope.producer.id, number: params.invoice })
-	if (!page) throw data(null, { status: 404 })
+	const query = { producerId: scope.producer.id, number: params.invoice }
+	const page = await findInvoice(query)
+	const found = await findInvoicePayments(query)
+	if (!page || !found) throw data(null, { status: 404 })
 	return {
 		frame: await findDeskFrame(scope, { part: "invoices" }),
 		invoice: page.document,
 		care: page.care,
 		orderNumbers: page.orderNumbers,
 		openCents: page.openCents,
+		...found,
+		today: dayInZone(askClock(), scope.producer.timeZone),
 		paymentId: randomUUID(),
 		noted: url.searchParams.get("noted"),
 	}
 })
 
 export const action = guard(admits.desk("owner", "desk"), async ({ request, params, url }: Route.ActionArgs, scope) => {
-	const form = await request.formData()
-	const values = Object.fromEntries(
-		["method", "amount", "paymentId"].map((name) => [name, String(form.get(name) ?? "").slice(0, 100)]),
-	)
-	const parsed = paymentForm.safeParse(values)
-	if (!parsed.success) {
-		const errors = parsed.error.issues.map(({ path, message }) => ({ field: String(path[0]), message }))
-		if (errors.some(({ field }) => field === "paymentId")) throw data(null, { status: 400 })
-		return data({ errors, values }, { status: 422 })
-	}
-	const { method, amount, paymentId } = parsed.data
+	const { producer, person } = scope
+	const today = dayInZone(askClock(), producer.timeZone)
+	const read = readPayment(await request.formData(), today)
+	if (!read.ok) return data(read.refused, { status: 422 })
+	const { amount, ...payment } = read.payment
 	const noted = await recordPayment({
-		producerId: scope.producer.id,
-		invoiceNumber: params.invoice,
-		method,
+		producerId: producer.id,
+		aim: { invoiceNumber: params.invoice },
 		amountCents: amount,
-		personId: scope.person.id,
-		paymentId,
-		receivedOn: dayInZone(askClock(), scope.producer.timeZone),
+		personId: person.id,
+		...payment,
 	})
-	if (!noted.ok) throw data(null, { status: 404 })
-	throw redirect(`${url.pathname}?${new URLSearchParams({ noted: settledWords(noted) })}`)
+	if (noted.ok) throw redirect(`${url.pathname}?${new URLSearchParams({ noted: settledWords(noted) })}`)
+	if (noted.reason !== "books-closed") throw data(null, { status: 404 })
+	return data({ errors: [{ field: "receivedOn", message: BOOKS_CLOSED }], values: read.values }, { status: 422 })
 })
 
-/** "It settles $929.90 of invoice 2026-0012; $20.00 stays on account." */
-function settledWords(noted: { settledInvoices: { number: string; cents: number }[]; onAccountCents: number }): string {
-	const parts = noted.settledInvoices.map(({ number, cents }) => `${formatMoney(cents)} of invoice ${number}`)
-	const settles = parts.length > 0 ? [`It settles ${parts.join(", ")}`] : []
-	const over = noted.onAccountCents > 0 ? [`${formatMoney(noted.onAccountCents)} stays on the store’s account`] : []
-	return `${[...settles, ...over].join("; ")}.`
-}
-
 export default function Invoice({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { invoice, care, openCents, noted } = loaderData
+	const { invoice, care, openCents, noted, today, storeSlug, payments, onItsWayCents } = loaderData
 	const base = `/desk/${params.producer}`
 	return (
 		<DeskBook frame={loaderData.frame}>
@@ -81,7 +72,8 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 				<div className="invoice-bar">
 					{openCents > 0 ? (
 						<p>
-							<b>{formatMoney(openCents)}</b> to be paid by {dayWords(invoice.due.on)}.
+							<b>{formatMoney(openCents)}</b> to be paid by {dayWords(invoice.due.on)}
+							{onItsWayCents > 0 && `; ${formatMoney(onItsWayCents)} of it is on its way`}.
 						</p>
 					) : (
 						<p>
@@ -94,49 +86,27 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 							Printed page (PDF)
 						</Link>
 						<InvoiceLinks base={base} number={invoice.number} orderNumbers={loaderData.orderNumbers} />
+						<Link className="py-1" to={`${base}/stores/${storeSlug}/payment`}>
+							Payment for several
+						</Link>
 						<Link className="py-1" to={`${base}/invoices/${invoice.number}/credit`}>
 							Credit it
 						</Link>
 					</span>
 				</div>
-				{openCents > 0 && <NotePayment loaderData={loaderData} actionData={actionData} />}
+				<InvoicePayments payments={payments} href={`${base}/payments`} />
+				{openCents > 0 && (
+					<NotePayment
+						paymentId={loaderData.paymentId}
+						today={today}
+						amount={plainMoney(openCents)}
+						amountHint={`What is over goes to ${invoice.store.name}’s other open invoices, the oldest first.`}
+						values={actionData?.values}
+						errors={actionData?.errors ?? []}
+					/>
+				)}
 			</div>
 			<InvoiceDocument invoice={invoice} care={care} />
 		</DeskBook>
-	)
-}
-
-function NotePayment({ loaderData, actionData }: Pick<Route.ComponentProps, "loaderData" | "actionData">) {
-	const { openCents, invoice, paymentId } = loaderData
-	const errorOf = (field: string) => actionData?.errors.find((error) => error.field === field)?.message
-	return (
-		<Form method="post" className="payment-form" noValidate aria-label="Note a payment">
-			<input type="hidden" name="paymentId" value={actionData?.values.paymentId ?? paymentId} />
-			<SelectField
-				name="method"
-				label="Money came as"
-				options={[
-					{ value: "cheque", label: "a check" },
-					{ value: "cash", label: "cash" },
-					{ value: "transfer", label: "a bank transfer" },
-				]}
-				defaultValue={actionData?.values.method ?? "cheque"}
-				error={errorOf("method")}
-			/>
-			<TextField
-				name="amount"
-				label="How much"
-				inputMode="decimal"
-				autoComplete="off"
-				hint={`What is over goes to ${invoice.store.name}’s other open invoices, the oldest first.`}
-				defaultValue={actionData?.values.amount ?? plainMoney(openCents)}
-				error={errorOf("amount")}
-			/>
-			<div className="payment-button">
-				<Button variant="primary" name="intent" value="note">
-					Note the payment
-				</Button>
-			</div>
-		</Form>
 	)
 }

@@ -10,15 +10,14 @@ import { bringIntent } from "./bring-from-stripe.server"
 import { openDay } from "./open-day.server"
 
 export type RefundAnswer =
-	| { ok: true; isAnswered: boolean }
-	| { ok: false; reason: "no-such-payment" | "not-by-stripe" | "refused" }
+	| { ok: true; state: "answered" | "no-answer" | "refused" }
+	| { ok: false; reason: "no-such-payment" | "not-by-stripe" }
 	| { ok: false; reason: "too-much"; leftCents: number }
 
 /**
  * Gives back part of a payment through Stripe, or all: never more than was paid less what went back. It is asked for here
  * first, under an id made with the form, so that a second send of the form, or a line that breaks, gives back once. Where
- * Stripe does not answer (`isAnswered` false) it stays asked for, and the nightly look asks again; `refused` is Stripe's
- * own no. What it settled is taken back when Stripe says that it is done.
+ * Stripe does not answer it stays asked for, and the nightly look asks again; `refused` is Stripe's own no. What it settled is taken back when Stripe says that it is done.
  */
 export async function refundPayment(query: {
 	producerId: string
@@ -31,7 +30,7 @@ export async function refundPayment(query: {
 }): Promise<RefundAnswer> {
 	const asked = await askRefund(query)
 	if (!asked.ok) return asked
-	return { ok: true, ...(await pushRefund({ ...query, intentId: asked.intentId })) }
+	return { ok: true, state: await pushRefund({ ...query, intentId: asked.intentId }) }
 }
 
 type Asked = Exclude<RefundAnswer, { ok: true }> | { ok: true; intentId: string }
@@ -77,21 +76,21 @@ export async function pushRefund(query: {
 	returnId: string
 	intentId: string
 	amountCents: number
-}): Promise<{ isAnswered: boolean }> {
+}): Promise<"answered" | "no-answer" | "refused"> {
 	const { producerId, returnId, intentId, amountCents } = query
 	try {
 		await refund({ returnId, intentId, amountCents })
 		await bringIntent(intentId)
-		return { isAnswered: true }
+		return "answered"
 	} catch (error) {
 		log.warn({ err: error, returnId }, "a refund was not answered, or refused")
-		if (!isRefusal(error)) return { isAnswered: false }
+		if (!isRefusal(error)) return "no-answer"
 		await withProducer(producerId, (tx) =>
 			tx
 				.update(paymentReturns)
 				.set({ state: "failed" })
 				.where(and(eq(paymentReturns.producerId, producerId), eq(paymentReturns.id, returnId), sql`state = 'asked'`)),
 		)
-		return { isAnswered: true }
+		return "refused"
 	}
 }

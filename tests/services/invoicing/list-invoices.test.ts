@@ -19,7 +19,8 @@ test("invoices come with what is owed first, the latest first, page by page, and
 	for (const invoiceNumber of paid) {
 		await recordPayment({
 			producerId: yard.producerId,
-			invoiceNumber,
+			aim: { invoiceNumber },
+			reference: "",
 			method: "cash",
 			amountCents: 1_000,
 			personId,
