@@ -32,6 +32,7 @@ export function toDoGroups(toDo: Omit<ToDo, "settled" | "overdue">, moment: Mome
 		...toDo.packing.map((day) => packingRow(day, moment)),
 		...toDo.heldLots.map((lot) => lotRow(lot, moment)),
 		...toDo.shortages.map((shortage) => shortRow(shortage, moment)),
+		...storeRows(toDo, moment),
 	].toSorted((a, b) => (a.at === b.at ? a.order - b.order : a.at < b.at ? -1 : 1))
 	const groups: ToDoGroup[] = []
 	for (const { when, row, note } of placed) {
@@ -42,6 +43,69 @@ export function toDoGroups(toDo: Omit<ToDo, "settled" | "overdue">, moment: Mome
 		} else groups.push({ when, rows: [row], ...(note ? { note } : {}) })
 	}
 	return groups
+}
+
+/** Stands behind all that has a day. */
+const LAST = { when: "From stores", at: "9999" }
+
+/** What stores wait for an answer to, and what is to look at about them. */
+function storeRows(
+	{ reports, toLookAt, differences }: Pick<ToDo, "reports" | "toLookAt" | "differences">,
+	moment: Moment,
+) {
+	const { base } = moment
+	const rows: Placed[] = [
+		...reports.map((report) => ({
+			...LAST,
+			order: 4,
+			row: {
+				key: `broken ${report.id}`,
+				name: `${report.storeName} reports ${report.pieces} broken ${report.pieces === 1 ? "piece" : "pieces"}`,
+				line: `On invoice ${report.invoiceNumber}.`,
+				link: {
+					to: `${base}/breakage/${report.id}`,
+					label: "Answer",
+					about: `${report.storeName}, invoice ${report.invoiceNumber}`,
+				},
+			},
+		})),
+		...toLookAt.map((one) => ({ ...LAST, order: 5, row: lookAtRow(one, moment) })),
+	]
+	if (differences > 0) {
+		rows.push({
+			when: "Money",
+			at: "99999",
+			order: 6,
+			row: {
+				key: "differences",
+				name: `${counted(differences, "payment")} ${differences === 1 ? "stands" : "stand"} otherwise at Stripe`,
+				line: "The nightly look found something other there than here.",
+				link: { to: `${base}/stripe-differences`, label: "Look", about: "differences from Stripe" },
+			},
+		})
+	}
+	return rows
+}
+
+function lookAtRow(
+	{ kind, storeSlug, storeName, on, amountCents }: ToDo["toLookAt"][number],
+	{ base }: Moment,
+): ToDoRow {
+	const [name, line] =
+		kind === "certificate-waits"
+			? [`${storeName} has handed in a resale certificate`, `By itself it would hold until ${monthDay(on)}.`]
+			: kind === "certificate-ends"
+				? [`The certificate of ${storeName} runs out`, `It holds until ${monthDay(on)}; the store has been written to.`]
+				: [
+						`${storeName} promised to pay by ${monthDay(on)}`,
+						`${formatMoney(amountCents ?? 0)}; say whether it was kept.`,
+					]
+	return {
+		key: `${kind} ${storeSlug} ${on}`,
+		name,
+		line,
+		link: { to: `${base}/stores/${storeSlug}`, label: "Open the store", about: storeName },
+	}
 }
 
 /** The invoices past their day, in words. */
@@ -61,7 +125,10 @@ export function owedRows(overdue: readonly OverdueInvoice[], { today, base }: Mo
 
 /** The packing rows alone, for a packer. */
 export function packingGroups(packing: PackingDay[], moment: Moment): ToDoGroup[] {
-	return toDoGroups({ waiting: [], packing, heldLots: [], shortages: [] }, moment)
+	return toDoGroups(
+		{ waiting: [], packing, heldLots: [], shortages: [], reports: [], toLookAt: [], differences: 0 },
+		moment,
+	)
 }
 
 /** "Before noon tomorrow", "Before noon on Wednesday"; an instant that has passed is "Orders closed". */

@@ -3,9 +3,11 @@ import { readProducer, type Tx } from "~/db/transaction.server"
 import { type Day, dayInZone } from "~/domain/calendar"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
 import { wholeCases } from "~/domain/quantity"
+import { findOpenReports, type OpenReport } from "~/services/breakage/find-open-reports.server"
 import { deliveryDayOn, findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { mostCases, promiseDay, promisedCases } from "~/services/orders/find-most-cases.server"
 import { findOutlooks, type ProductOutlook } from "~/services/promise/find-outlooks.server"
+import { readToLookAt, type ToLookAt } from "~/services/receivables/find-to-look-at.server"
 import { findOpenOrders, type OpenOrder } from "./find-open-orders.server"
 import { findSettledToday, type SettledToday } from "./find-settled-today.server"
 import { findShortages, type Shortage } from "./shortages.server"
@@ -37,6 +39,11 @@ export type ToDo = {
 	packing: PackingDay[]
 	heldLots: HeldLot[]
 	shortages: Shortage[]
+	/** Broken comb that stores have reported, and certificates and promises to look at. */
+	reports: OpenReport[]
+	toLookAt: ToLookAt[]
+	/** Payments that stand otherwise here than at Stripe. */
+	differences: number
 	overdue: OverdueInvoice[]
 	settled: SettledToday
 }
@@ -60,6 +67,9 @@ export function findToDo(query: { producerId: string; now: Date; zone: string })
 			packing: packingDays(orders),
 			heldLots: await findHeldLots(tx, producerId),
 			shortages: findShortages({ orders, outlooks, today }),
+			reports: await findOpenReports(tx, { producerId }),
+			toLookAt: await readToLookAt(tx, { producerId, today }),
+			differences: await countDifferences(tx, producerId),
 			overdue: await findOverdue(tx, { producerId, today }),
 			settled: await findSettledToday(tx, { producerId, now, zone }),
 		}
@@ -138,6 +148,13 @@ async function findHeldLots(tx: Tx, producerId: string): Promise<HeldLot[]> {
 		group by l.code, p.name, p.pieces_per_case, l.expected_release_on
 		order by l.expected_release_on, l.code`)
 	return rows.map(({ piecesPerCase, ...lot }) => ({ ...lot, cases: wholeCases(lot.pieces, piecesPerCase) }))
+}
+
+async function countDifferences(tx: Tx, producerId: string): Promise<number> {
+	const { rows } = await tx.execute<{ count: number }>(sql`
+		select count(*)::int as count from stripe_differences d
+		where d.producer_id = ${producerId} and d.settled_at is null`)
+	return rows[0]?.count ?? 0
 }
 
 async function findOverdue(tx: Tx, query: { producerId: string; today: Day }): Promise<OverdueInvoice[]> {

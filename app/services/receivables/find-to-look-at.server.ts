@@ -1,5 +1,5 @@
 import { sql } from "drizzle-orm"
-import type { Tx } from "~/db/transaction.server"
+import { readProducer, type Tx } from "~/db/transaction.server"
 import { addDays, type Day } from "~/domain/calendar"
 import { CERTIFICATE_NOTICE_DAYS } from "~/domain/receivables/certificate"
 
@@ -16,8 +16,13 @@ export type ToLookAt = {
 
 const MOST = 50
 
+/** As `readToLookAt`, in a transaction of its own. */
+export function findToLookAt(query: { producerId: string; today: Day }): Promise<ToLookAt[]> {
+	return readProducer(query.producerId, (tx) => readToLookAt(tx, query))
+}
+
 /** All that is to be looked at, the earliest day first, at most 50. */
-export async function findToLookAt(tx: Tx, query: { producerId: string; today: Day }): Promise<ToLookAt[]> {
+export async function readToLookAt(tx: Tx, query: { producerId: string; today: Day }): Promise<ToLookAt[]> {
 	const { producerId, today } = query
 	const { rows } = await tx.execute<ToLookAt>(sql`
 			select found.kind, s.slug as "storeSlug", s.name as "storeName", found.day::text as "on",

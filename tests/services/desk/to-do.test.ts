@@ -1,6 +1,6 @@
 import { eq } from "drizzle-orm"
 import { describe, expect, test } from "vitest"
-import { lots } from "~/db/schema"
+import { exemptionCertificates, lots, stripeDifferences } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import { confirmWhole, undoWhole } from "~/services/desk/confirm-whole.server"
 import { findDeskFortnight } from "~/services/desk/find-desk-fortnight.server"
@@ -98,6 +98,30 @@ describe("what is to do", () => {
 		expect((await toDoOf(yard)).shortages).toEqual([])
 		await withdraw(yard)
 		expect((await toDoOf(yard)).shortages).toMatchObject([{ overPromisedCases: 3, shortCases: 3 }])
+	})
+})
+
+test("what stores wait for and what stands otherwise at Stripe is to do as well", async () => {
+	const yard = await openYard()
+	const { producerId } = yard
+	const { storeId, person } = await openStore(yard)
+	expect(await toDoOf(yard)).toMatchObject({ reports: [], toLookAt: [], differences: 0 })
+	await withProducer(producerId, async (tx) => {
+		await tx.insert(exemptionCertificates).values({
+			producerId,
+			storeId,
+			number: "RC-1",
+			validUntil: "2027-06-30",
+			fileName: "certificate.pdf",
+			mediaType: "application/pdf",
+			content: Buffer.from("%PDF-"),
+			handedInBy: person.id,
+		})
+		await tx.insert(stripeDifferences).values({ producerId, kind: "missing-here", stripeId: "pi_1", theirCents: 100 })
+	})
+	expect(await toDoOf(yard)).toMatchObject({
+		toLookAt: [{ kind: "certificate-waits", storeName: "Pantry & Plume", on: "2027-06-30" }],
+		differences: 1,
 	})
 })
 
