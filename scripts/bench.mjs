@@ -4,6 +4,7 @@ import { cpus, loadavg } from "node:os"
 import { join } from "node:path"
 import { measureCrop } from "../tests/bench/crop.mjs"
 import { actFor, openDatabase, signIn } from "../tests/bench/database.mjs"
+import { measureInvoices } from "../tests/bench/invoices.mjs"
 import { measureOrderSheet, orderSheetStatements } from "../tests/bench/order-sheet.mjs"
 import { measurePlacing } from "../tests/bench/place-order.mjs"
 import { measureReceivables } from "../tests/bench/receivables.mjs"
@@ -24,14 +25,16 @@ const result = join(root, "tests/bench/last.json")
 
 /** How long each measurement takes, and how often it is taken. */
 const PACES = {
-	full: { rounds: 5, seconds: 6, warmUpSeconds: 6, orders: 800, warmUpOrders: 400 },
-	quick: { rounds: 3, seconds: 2, warmUpSeconds: 2, orders: 200, warmUpOrders: 80 },
+	full: { rounds: 5, seconds: 6, warmUpSeconds: 6, orders: 800, warmUpOrders: 400, invoices: 1000 },
+	quick: { rounds: 3, seconds: 2, warmUpSeconds: 2, orders: 200, warmUpOrders: 80, invoices: 200 },
 }
 /** What one can ask for by itself, at the full pace: all that a producer with ten seasons waits for. */
 const CROP = "crop"
 /** The same of a producer with a million invoices. */
 const RECEIVABLES = "receivables"
-const BY_ITSELF = [CROP, RECEIVABLES]
+/** Many packed orders sent and invoiced in one go. */
+const INVOICES = "invoices"
+const BY_ITSELF = [CROP, RECEIVABLES, INVOICES]
 const OWNER = "owner@ten-seasons.example.test"
 const BUYER = { email: "rosa@pantryandplume.example.test", producer: "larkmoor", store: "pantry-and-plume" }
 
@@ -44,12 +47,14 @@ await supervise(folder, async (crew) => {
 	const [name = "full"] = process.argv.slice(2)
 	const pace =
 		PACES[BY_ITSELF.includes(name) ? "full" : name] ??
-		refuse(`There is no bench "${name}": it is npm run bench, or npm run bench -- quick, crop or receivables.`)
+		refuse(
+			`There is no bench "${name}": it is npm run bench, or npm run bench -- quick, crop, receivables or invoices.`,
+		)
 	await ensureInstalled()
 	const cluster = await startCluster({ folder: join(folder, "pg") })
 	crew.onStop(cluster.stop)
 	await ensureBuilt()
-	await buildReferences()
+	if (name !== INVOICES) await buildReferences()
 	const env = productEnv({ databaseUrl: cluster.url(), ports: await choosePorts(anyPort) })
 	await runBuilt("reset", "The database could not be emptied.", env)
 	await runBuilt("migrate", "The database could not be brought up to date.", env)
@@ -62,7 +67,9 @@ await supervise(folder, async (crew) => {
 	await startWeb(crew, env)
 	say(`Measuring on ${cpus().length} processors, load ${loadavg()[0].toFixed(1)}`)
 	const rows = BY_ITSELF.includes(name) ? [] : await measureOrders({ crew, database, env, pace })
-	if (name !== "quick") {
+	if (name !== CROP && name !== RECEIVABLES)
+		rows.push(...(await measureInvoices({ crew, database, env, count: pace.invoices, say })))
+	if (name !== "quick" && name !== INVOICES) {
 		await database.client.query("insert into users (email, name) values ($1, 'Owner') on conflict do nothing", [OWNER])
 		const owned = { database, web: env.BASE_URL, cookie: await signIn(database, OWNER), ownerEmail: OWNER, say }
 		if (name !== RECEIVABLES) rows.push(...(await measureCrop({ ...owned, folder, env })))
