@@ -2,7 +2,7 @@ import { Link } from "react-router"
 import { now as askClock } from "~/platform/clock.server"
 import { findSeason } from "~/services/desk/find-season.server"
 import { countHead } from "~/ui/desk/number-words"
-import { EmptyLine, SheetHead } from "~/ui/layout/sheet"
+import { EmptyLine, MessageLine, SheetHead } from "~/ui/layout/sheet"
 import { SeasonPicture } from "~/ui/season/season-picture"
 import { SeasonTable } from "~/ui/season/season-table"
 import { admits, guard } from "../guard.server"
@@ -21,11 +21,12 @@ export const loader = guard(admits.desk("owner", "desk"), async (_args: Route.Lo
 		frame: await findDeskFrame(scope, { part: "crop", now }),
 		from: fromWords(season),
 		products: seasonView(season),
+		unreadStores: season.unreadStores,
 	}
 })
 
 export default function Season({ loaderData, params }: Route.ComponentProps) {
-	const { frame, from, products } = loaderData
+	const { frame, from, products, unreadStores } = loaderData
 	const base = `/desk/${params.producer}`
 	const short = products.filter(({ sentence }) => sentence !== null).length
 	const lead =
@@ -40,9 +41,18 @@ export default function Season({ loaderData, params }: Route.ComponentProps) {
 				note={
 					<>
 						Deliveries are served in turn; the reserve for stall and shop is kept. <Link to={`${base}/crop`}>Crop</Link>
+						. <Link to={`${base}/figures`}>What was sold</Link>
 					</>
 				}
 			/>
+			{unreadStores.length > 0 && (
+				<MessageLine
+					tone="problem"
+					title={`The standing ${unreadStores.length === 1 ? "order" : "orders"} of ${unreadStores.join(", ")} cannot be read.`}
+				>
+					Nothing is reckoned or ordered by it until the store sets it anew. Tell them.
+				</MessageLine>
+			)}
 			{products.length === 0 ? (
 				<EmptyLine action={<Link to={`${base}/crop`}>See the crop</Link>}>
 					Nothing is in stock, expected or asked for yet.

@@ -20,7 +20,7 @@ export function findMoneyShare(query: {
 					where s.producer_id = ${producer.id} and s.state = 'paid' and d.market_on >= ${from} and d.market_on < ${to}
 				) as "consumerCents",
 				(select coalesce(sum(i.lines_cents), 0)::int from invoices i
-					where i.producer_id = ${producer.id} and i.issued_on >= ${from} and i.issued_on < ${to}) as "otherCents"`)
+					where i.producer_id = ${producer.id} and i.kind = 'goods' and i.issued_on >= ${from} and i.issued_on < ${to}) as "otherCents"`)
 		const share = rows[0] ?? { consumerCents: 0, otherCents: 0 }
 		return { year, ...share, isRetail: isRetailFoodEstablishment(share) }
 	})
