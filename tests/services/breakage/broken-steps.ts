@@ -24,8 +24,10 @@ export async function openDelivery(yardGiven?: Yard, cases = 2) {
 	const orderNumber = await packed(yard, shop, handId, [productId, cases])
 	const sent = await sendOrder({ producer: producerOf(yard), number: orderNumber, personId: handId })
 	if (!sent.ok) throw new Error(sent.reason)
-	const [lineId = ""] = await lineIdsOf(yard, shop, sent.invoiceNumber)
-	return { yard, shop, handId, productId, lotCode: `L-${code}`, invoiceNumber: sent.invoiceNumber, lineId }
+	const { invoiceNumber } = sent
+	if (invoiceNumber === null) throw new Error("the order is not invoiced yet")
+	const [lineId = ""] = await lineIdsOf(yard, shop, invoiceNumber)
+	return { yard, shop, handId, productId, lotCode: `L-${code}`, invoiceNumber, lineId }
 }
 
 export type Delivery = Awaited<ReturnType<typeof openDelivery>>
