@@ -1,6 +1,5 @@
 import { Text, View } from "@react-pdf/renderer"
 import { linesByOrder } from "~/domain/invoicing/invoice-facts"
-import { poundPriceWords } from "~/domain/invoicing/weighed-words"
 import { plainMoney } from "~/domain/money"
 import { stripCells } from "../parts/strip-cells"
 import { StripDrawing } from "./drawings"
@@ -55,15 +54,13 @@ function LineRow({ line }: { line: InvoiceLine }) {
 				{!isCharge && <StripDrawing given={line.casesSent} asked={line.casesAsked} />}
 				{!isCharge && <Text style={paper.small}>{sentWords(line)}</Text>}
 			</View>
-			<Text style={[paper.amount, { width: column.price }]}>{priceWords(line)}</Text>
+			<View style={{ width: column.price }}>
+				{!isCharge && <Text style={paper.amount}>{plainMoney(line.poundCents ?? line.priceCents)}</Text>}
+				{line.poundCents && <Text style={[paper.small, { textAlign: "right" }]}>a lb</Text>}
+			</View>
 			<Text style={[paper.amount, { width: column.amount }]}>{plainMoney(line.amountCents)}</Text>
 		</View>
 	)
-}
-
-function priceWords({ casesAsked, priceCents, poundCents }: InvoiceLine): string {
-	if (casesAsked === 0) return ""
-	return poundCents ? poundPriceWords(poundCents) : plainMoney(priceCents)
 }
 
 /** "3 sent", "2 sent of 4 asked"; where one cell is five cases it says so. */

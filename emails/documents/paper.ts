@@ -6,7 +6,7 @@ import { sans, serif } from "./fonts"
 export const margin = { top: 43.2, side: 50.4, bottom: 43.2 }
 
 /** Widths of the columns beside the product, which takes what is left. */
-export const column = { number: 24, lots: 31, weight: 68, cases: 104, price: 46, amount: 60 }
+export const column = { number: 30, lots: 31, weight: 68, cases: 104, price: 46, amount: 60 }
 
 /** Ink on white: the fine rule is a little darker than on the screen, so that it survives a cheap printer. */
 const fineRule = "#a99d8e"

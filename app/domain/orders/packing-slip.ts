@@ -1,4 +1,4 @@
-import { type Day, dayWords, monthDay } from "~/domain/calendar"
+import { type Day, dayWords, monthDay, shortMonthDay } from "~/domain/calendar"
 import type { Party } from "~/domain/invoicing/invoice-facts"
 import { casesWords, piecesWords } from "~/domain/quantity"
 
@@ -55,7 +55,7 @@ export function slipParties(slip: PackingSlip): Party[] {
 	]
 }
 
-/** "R09, 24 pieces, best before January 12". */
+/** "R09, 24 pieces, best before Jan 12". */
 export function lotWords({ code, pieces, bestBeforeOn }: PackingSlip["lines"][number]["lots"][number]): string {
-	return `${code}, ${piecesWords(pieces)}, best before ${monthDay(bestBeforeOn)}`
+	return `${code}, ${piecesWords(pieces)}, best before ${shortMonthDay(bestBeforeOn)}`
 }
