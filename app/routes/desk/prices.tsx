@@ -30,12 +30,30 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ url }: Route.
 type Break = { minCases: number; caseCents: number }
 
 function Breaks({ breaks }: { breaks: readonly Break[] }) {
-	return breaks.map(({ minCases, caseCents }, index) => (
-		<span key={minCases} className={index === 0 ? "block" : "block text-ink-soft"}>
-			{index > 0 && <span className="note">from {minCases} </span>}
-			{plainMoney(caseCents)}
+	return (
+		<span className="breaks">
+			{breaks.map(({ minCases, caseCents }, index) => (
+				<span key={minCases} className={index === 0 ? "block" : "block text-ink-soft"}>
+					{index > 0 && <span className="note">from {minCases} </span>}
+					{plainMoney(caseCents)}
+				</span>
+			))}
 		</span>
-	))
+	)
+}
+
+/** Files, not pages: the browser takes them. */
+function TierFiles({ page, tier }: { page: string; tier: { id: string; name: string } }) {
+	return (
+		<>
+			<a href={`${page}/${tier.id}.pdf`} aria-label={`Prices for ${tier.name}, to print`}>
+				print
+			</a>{" "}
+			<a href={`${page}/${tier.id}.csv`} aria-label={`Prices for ${tier.name}, for a spreadsheet`}>
+				CSV
+			</a>
+		</>
+	)
 }
 
 export default function Prices({ loaderData, params }: Route.ComponentProps) {
@@ -62,7 +80,7 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 			) : (
 				// biome-ignore lint/a11y/noNoninteractiveTabindex: a table wider than the screen is scrolled by keyboard too
 				<section className="overflow-x-auto" aria-label="Price list" tabIndex={0}>
-					<table className="sheet-table">
+					<table className="sheet-table price-list stacked-rows">
 						<thead>
 							<tr>
 								<th scope="col">No.</th>
@@ -74,13 +92,7 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 									<th key={tier.id} scope="col" className="num">
 										{tier.name}
 										<span className="note block">
-											{/* Files, not pages: the browser takes them. */}
-											<a href={`${page}/${tier.id}.pdf`} aria-label={`Prices for ${tier.name}, to print`}>
-												print
-											</a>{" "}
-											<a href={`${page}/${tier.id}.csv`} aria-label={`Prices for ${tier.name}, for a spreadsheet`}>
-												CSV
-											</a>
+											<TierFiles page={page} tier={tier} />
 										</span>
 									</th>
 								))}
@@ -92,9 +104,12 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 						<tbody>
 							{products.map((product) => (
 								<tr key={product.code}>
-									<td className="fig text-ink-faint">{product.code}</td>
-									<td className="min-w-44 py-2!">
-										<span className="name block text-body!">{product.name}</span>
+									<td className="fig text-ink-faint max-desk:hidden">{product.code}</td>
+									<td className="desk:min-w-44 desk:py-2!">
+										<span className="name block text-body!">
+											<span className="fig text-ink-faint desk:hidden">{product.code} </span>
+											{product.name}
+										</span>
 										<span className="note">{product.detail}</span>
 									</td>
 									<td className="max-desk:hidden">
@@ -102,17 +117,26 @@ export default function Prices({ loaderData, params }: Route.ComponentProps) {
 										<span className="note block">{weightWords(product.pieceNetGrams * product.piecesPerCase)} net</span>
 									</td>
 									{tiers.map((tier) => (
-										<td key={tier.id} className="money py-2!">
+										<td key={tier.id} className="of-tier money desk:py-2!">
+											<span className="note desk:hidden">{tier.name}</span>
 											<Breaks breaks={product.tiers.find((one) => one.tierId === tier.id)?.breaks ?? []} />
 										</td>
 									))}
-									<td className="money pr-4! desk:pr-8!">
+									<td className="of-tier money desk:pr-8!">
+										<span className="note desk:hidden">One piece, to the public</span>
 										{product.pieceCents === null ? "not sold singly" : formatMoney(product.pieceCents)}
 									</td>
 								</tr>
 							))}
 						</tbody>
 					</table>
+					<ul className="grid gap-2 px-4 py-4 desk:hidden">
+						{tiers.map((tier) => (
+							<li key={tier.id}>
+								{tier.name}: <TierFiles page={page} tier={tier} />
+							</li>
+						))}
+					</ul>
 				</section>
 			)}
 		</DeskBook>

@@ -38,7 +38,7 @@ export function ConfirmLines({ order, whyHref, shareHref, values, errors }: Conf
 	const isSending = useNavigation().formMethod === "POST"
 	return (
 		<Form method="post" noValidate>
-			<table className="confirm-table">
+			<table className="confirm-table stacked-rows">
 				<thead>
 					<tr>
 						<th scope="col" className="no">

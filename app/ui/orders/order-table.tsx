@@ -25,7 +25,7 @@ const twoLines = (lines: TwoLines) => (
 /** The order sheet of a store: rows are products, one field per row. Stands on a ruled sheet. */
 export function OrderTable({ breaks, day, children }: OrderTableProps) {
 	return (
-		<table className="order-table">
+		<table className="order-table stacked-rows">
 			<thead>
 				<tr>
 					<th className="no">No.</th>

@@ -128,7 +128,7 @@ function stepsOf(sheet: NetContentsWorksheet, lotPackages: number): Step[] {
 /** Each step to the decision with its figures, as it would be worked on paper. */
 export function WorksheetSteps({ sheet, lotPackages }: { sheet: NetContentsWorksheet; lotPackages: number }) {
 	return (
-		<table className="sheet-table worksheet-steps">
+		<table className="sheet-table worksheet-steps stacked-rows">
 			<caption className="head-italic px-4 pt-4 pb-1 text-left desk:px-8">Step by step</caption>
 			<thead>
 				<tr>

@@ -32,7 +32,7 @@ export function CountReview({ lots, idempotencyKey, values, errors, sheetHref }:
 	return (
 		<Form method="post" noValidate>
 			<input type="hidden" name="key" value={idempotencyKey} />
-			<table className="confirm-table">
+			<table className="confirm-table stacked-rows">
 				<thead>
 					<tr>
 						<th scope="col" className="lot">
