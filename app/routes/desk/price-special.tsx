@@ -1,6 +1,8 @@
 import { data, Link, redirect } from "react-router"
+import { z } from "zod"
 import { dayInZone } from "~/domain/calendar"
 import { now as askClock } from "~/platform/clock.server"
+import { endPromotion, endStorePrice } from "~/services/pricing/end-special.server"
 import { findOwnPrices } from "~/services/pricing/find-own-prices.server"
 import { addPromotion, setStorePrice, setStoreTier } from "~/services/pricing/set-store-terms.server"
 import { ErrorSummary } from "~/ui/forms/error-summary"
@@ -27,10 +29,17 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ url }: Route.
 })
 
 const WORDS = {
-	"not-known": "The store, product or tier is no longer there.",
+	"not-known": "It is no longer there. Nothing was changed.",
 	"in-the-past": "Choose today or a later day: what was in force is not changed.",
 	"days-out-of-order": "The last day is before the first.",
 } as const
+
+/** Which price or promotion a button stands beside. Throws 400 where a form names none. */
+function readId(form: FormData): string {
+	const read = z.guid().safeParse(form.get("id"))
+	if (!read.success) throw data(null, { status: 400 })
+	return read.data
+}
 
 export const action = guard(admits.desk("owner", "desk"), async ({ request, url }: Route.ActionArgs, scope) => {
 	const now = askClock()
@@ -52,6 +61,8 @@ export const action = guard(admits.desk("owner", "desk"), async ({ request, url 
 			const read = readStoreTier(typed, today)
 			return read.ok ? setStoreTier({ ...by, storeId: read.storeId, tierId: read.tierId }) : read
 		},
+		"end-own": () => endStorePrice({ ...by, id: readId(form) }),
+		"end-promotion": () => endPromotion({ ...by, id: readId(form) }),
 	}
 	const intent = String(form.get("intent"))
 	if (!Object.hasOwn(steps, intent)) return refuse([{ message: "Send one of the forms of this page." }], 400)
@@ -79,9 +90,9 @@ export default function PriceSpecial({ loaderData, actionData, params }: Route.C
 			/>
 			<ErrorSummary errors={errors} />
 			{isSaved && errors.length === 0 && <MessageLine tone="saved" title="Kept." />}
-			<OwnPriceTable own={own} />
+			<OwnPriceTable own={own} today={today} />
 			<OwnPriceForm field={field} stores={stores} products={products} today={today} />
-			<PromotionTable promotions={promotions} />
+			<PromotionTable promotions={promotions} today={today} />
 			<PromotionForm field={field} tiers={tiers} products={products} today={today} />
 			<StoreTierForm field={field} stores={stores} tiers={tiers} />
 		</DeskBook>

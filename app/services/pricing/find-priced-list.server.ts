@@ -74,7 +74,12 @@ export function findStoreList(query: {
 			yard,
 			forName: store.name,
 			day,
-			products: products.map((product) => ({ ...product, poundCents: null })),
+			products: products.map((product) => ({ ...product, poundCents: poundsOf(product) })),
 		}
 	})
+}
+
+/** The prices of a pound at each break; null where the product is priced by the case. */
+function poundsOf({ breaks }: { breaks: readonly CaseBreak[] }): number[] | null {
+	return breaks[0]?.poundCents == null ? null : breaks.map(({ poundCents }) => poundCents ?? 0)
 }

@@ -1,5 +1,7 @@
+import { Form } from "react-router"
 import { fullDay } from "~/domain/calendar"
 import { plainMoney } from "~/domain/money"
+import { Button } from "~/ui/forms/button"
 import { EmptyLine } from "~/ui/layout/sheet"
 
 type OwnPrice = {
@@ -25,8 +27,23 @@ type Promotion = {
 	endsOn: string
 }
 
+type EndFormProps = { intent: "end-own" | "end-promotion"; id: string; hasBegun: boolean; about: string }
+
+/** Ends what runs; takes off what has not begun. */
+function EndForm({ intent, id, hasBegun, about }: EndFormProps) {
+	const words = hasBegun ? "End it today" : "Take it off"
+	return (
+		<Form method="post" preventScrollReset>
+			<input type="hidden" name="id" value={id} />
+			<Button size="small" name="intent" value={intent} aria-label={`${words}: ${about}`}>
+				{words}
+			</Button>
+		</Form>
+	)
+}
+
 /** Prices that single stores have for themselves, those to come included. */
-export function OwnPriceTable({ own }: { own: readonly OwnPrice[] }) {
+export function OwnPriceTable({ own, today }: { own: readonly OwnPrice[]; today: string }) {
 	return (
 		<section aria-labelledby="own-prices">
 			<div className="sheet-part">
@@ -42,8 +59,11 @@ export function OwnPriceTable({ own }: { own: readonly OwnPrice[] }) {
 						<tr>
 							<th scope="col">Store</th>
 							<th scope="col">Product</th>
-							<th scope="col" className="num pr-4! desk:pr-8!">
+							<th scope="col" className="num">
 								Price
+							</th>
+							<th scope="col" className="num pr-4! desk:pr-8!">
+								<span className="sr-only">End</span>
 							</th>
 						</tr>
 					</thead>
@@ -60,10 +80,18 @@ export function OwnPriceTable({ own }: { own: readonly OwnPrice[] }) {
 								<td>
 									<span className="fig text-ink-faint">{price.code}</span> {price.productName}
 								</td>
-								<td className="money pr-4! desk:pr-8!">
+								<td className="money">
 									{price.minCases > 1 && <span className="note">from {price.minCases} </span>}
 									{plainMoney(price.poundCents ?? price.caseCents)}
 									{price.poundCents !== null && <span className="note"> a lb</span>}
+								</td>
+								<td className="num pr-4! desk:pr-8!">
+									<EndForm
+										intent="end-own"
+										id={price.id}
+										hasBegun={price.validFrom < today}
+										about={`${price.code} ${price.productName} for ${price.storeName}`}
+									/>
 								</td>
 							</tr>
 						))}
@@ -75,7 +103,7 @@ export function OwnPriceTable({ own }: { own: readonly OwnPrice[] }) {
 }
 
 /** Promotions that run or are to come. */
-export function PromotionTable({ promotions }: { promotions: readonly Promotion[] }) {
+export function PromotionTable({ promotions, today }: { promotions: readonly Promotion[]; today: string }) {
 	return (
 		<section aria-labelledby="promotions">
 			<div className="sheet-part">
@@ -91,8 +119,11 @@ export function PromotionTable({ promotions }: { promotions: readonly Promotion[
 						<tr>
 							<th scope="col">Name</th>
 							<th scope="col">Product</th>
-							<th scope="col" className="num pr-4! desk:pr-8!">
+							<th scope="col" className="num">
 								Off
+							</th>
+							<th scope="col" className="num pr-4! desk:pr-8!">
+								<span className="sr-only">End</span>
 							</th>
 						</tr>
 					</thead>
@@ -108,7 +139,15 @@ export function PromotionTable({ promotions }: { promotions: readonly Promotion[
 								<td>
 									<span className="fig text-ink-faint">{one.code}</span> {one.productName}
 								</td>
-								<td className="money pr-4! desk:pr-8!">{one.basisPoints / 100} %</td>
+								<td className="money">{one.basisPoints / 100} %</td>
+								<td className="num pr-4! desk:pr-8!">
+									<EndForm
+										intent="end-promotion"
+										id={one.id}
+										hasBegun={one.startsOn < today}
+										about={`${one.name}, ${one.code} ${one.productName}`}
+									/>
+								</td>
 							</tr>
 						))}
 					</tbody>

@@ -46,7 +46,7 @@ describe("a price list that is handed out", () => {
 		const store = { id: shop.storeId, name: "Pantry & Plume" }
 		const list = await findStoreList({ producerId, store, day: DAY })
 		expect(list?.products.map(({ code, breaks }) => [code, breaks])).toEqual([
-			["11", [{ minCases: 1, caseCents: 9900 }]],
+			["11", [{ minCases: 1, caseCents: 9900, poundCents: null }]],
 		])
 		if (!list) throw new Error("no list")
 		const pdf = await drawPriceList(list)
