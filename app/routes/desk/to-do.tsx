@@ -195,7 +195,7 @@ function Settled({ settled }: { settled: SettledProps }) {
 			{undoableInAll > 1 && (
 				<Form method="post" className="py-2" preventScrollReset>
 					<Button name="intent" value="undo-whole">
-						{undoableInAll > 100 ? "Take the latest 100 back" : `Take all ${undoableInAll} back`}
+						Take all {undoableInAll} back
 					</Button>
 				</Form>
 			)}

@@ -1,5 +1,5 @@
 import type { ReactNode } from "react"
-import { Form, Link } from "react-router"
+import { Form, Link, useNavigation } from "react-router"
 import { Button, ButtonLink } from "~/ui/forms/button"
 import { LedgerGroup, LedgerRow } from "~/ui/layout/ledger"
 import { FillStrip } from "~/ui/stock/fill-strip"
@@ -46,10 +46,19 @@ export function ToDoGroups({ groups }: { groups: readonly ToDoGroup[] }) {
 /** The first thing to do has the one filled button of the page. */
 function Row({ row, isFirst }: { row: ToDoRow; isFirst: boolean }) {
 	const variant = isFirst ? "primary" : "second"
+	const sent = useNavigation().formData
+	const isConfirming = sent?.get("intent") === "confirm-whole" && sent.get("day") === row.confirmAll?.day
 	const action = row.confirmAll ? (
 		<Form method="post" preventScrollReset>
 			<input type="hidden" name="day" value={row.confirmAll.day} />
-			<Button variant={variant} name="intent" value="confirm-whole" aria-keyshortcuts="y">
+			<Button
+				variant={variant}
+				name="intent"
+				value="confirm-whole"
+				aria-keyshortcuts="y"
+				busy={isConfirming}
+				busyLabel="Confirming"
+			>
 				{row.confirmAll.label}
 			</Button>
 		</Form>
