@@ -10,6 +10,7 @@ import {
 	type SeasonWeek,
 	seasonWeeks,
 } from "~/domain/orders/season"
+import { cadenceOf } from "~/domain/standing-orders/cadence"
 import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
 import { findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { readStandingOrders } from "~/services/standing-orders/read-standing-orders.server"
@@ -22,7 +23,13 @@ const WEEKS = 26
 export type SeasonRow = { productId: string; code: string; name: string; piecesPerCase: number; weeks: SeasonWeek[] }
 
 /** The season ahead; `figure` is the figure of the crop that the producer counts on. Products with nothing are left out. */
-export type Season = { weeks: Day[]; figure: "low" | "likely"; products: SeasonRow[] }
+export type Season = {
+	weeks: Day[]
+	figure: "low" | "likely"
+	products: SeasonRow[]
+	/** Stores whose standing order has a rule that cannot be read: it makes no orders until it is set anew. */
+	unreadStores: string[]
+}
 
 type Facts = {
 	code: string
@@ -48,10 +55,11 @@ export function findSeason(query: { producerId: string; now: Date; zone: string 
 		const { products, figure } = await findProducts(tx, producerId)
 		await addSupplies(tx, { producerId, today, to, products })
 		const made = await addOrders(tx, { producerId, today, to, products })
-		await addStanding(tx, { ...query, to, products, made })
+		const unreadStores = await addStanding(tx, { ...query, to, products, made })
 		return {
 			weeks,
 			figure,
+			unreadStores,
 			products: [...products]
 				.filter(([, one]) => one.demands.length + one.stock.length + one.expected.length > 0)
 				.map(([productId, { code, name, piecesPerCase, ...facts }]) => ({
@@ -143,14 +151,14 @@ async function addOrders(
 	return new Set(rows.flatMap(({ standing }) => standing ?? []))
 }
 
-/** Adds the dates of running standing orders that are still to become orders. */
+/** Adds the dates of running standing orders that are still to become orders; answers the stores of those that cannot be read. */
 async function addStanding(
 	tx: Tx,
 	query: { producerId: string; now: Date; zone: string; to: Day; products: Products; made: ReadonlySet<string> },
-): Promise<void> {
+): Promise<string[]> {
 	const { producerId, to, products, made } = query
 	const standing = await readStandingOrders(tx, producerId, sql`so.ended_at is null`)
-	if (standing.length === 0) return
+	if (standing.length === 0) return []
 	const all = await findDeliverySchedule(tx, { ...query, storeId: null })
 	const weekdays = await findWeekdays(tx, producerId)
 	for (const order of standing) {
@@ -165,6 +173,20 @@ async function addStanding(
 			}
 		}
 	}
+	const unread = standing.filter(({ rule }) => cadenceOf(rule) === null)
+	return findStoreNames(
+		tx,
+		producerId,
+		unread.map(({ storeId }) => storeId),
+	)
+}
+
+async function findStoreNames(tx: Tx, producerId: string, storeIds: readonly string[]): Promise<string[]> {
+	if (storeIds.length === 0) return []
+	const { rows } = await tx.execute<{ name: string }>(sql`
+		select name from stores
+		where producer_id = ${producerId} and id = any(${sql.param([...storeIds])}::uuid[]) order by name`)
+	return rows.map(({ name }) => name)
 }
 
 /** On which weekdays the van comes to each store. */

@@ -1,5 +1,6 @@
 import { type Day, weekday } from "~/domain/calendar"
 import { cutoffAt, isOpen } from "~/domain/delivery/delivery-days"
+import { cadenceOf } from "~/domain/standing-orders/cadence"
 import { nextDeliveryDates, type StandingDate } from "~/domain/standing-orders/delivery-dates"
 import type { DeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 
@@ -20,10 +21,12 @@ export type DueDate = StandingDate & { cutoffAt: Date; isOpen: boolean }
 
 /**
  * The next `count` dates from today on that are this standing order's to make: last orders fall after it was set and, where
- * it has ended, no later than its end. A date closes at the cut-off of the day on which the van really comes.
+ * it has ended, no later than its end. A date closes at the cut-off of the day on which the van really comes. A rule that
+ * nobody here writes has no dates, so that one spoilt row stops neither the others nor a page.
  */
 export function standingDates(standing: DatedRule, schedule: DeliverySchedule, count: number): DueDate[] {
 	const { rounds, shutDays, zone, today, now } = schedule
+	if (cadenceOf(standing.rule) === null) return []
 	const since = standing.createdAt ?? now
 	// Cut-offs lie at most a fortnight ahead: at most fifteen daily dates can have closed before it was set.
 	const dates = nextDeliveryDates(

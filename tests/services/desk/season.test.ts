@@ -4,6 +4,8 @@ import { expectedSupplies, standingOrderLines, standingOrderSkips, standingOrder
 import { withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import { findSeason } from "~/services/desk/find-season.server"
+import { makeDueOrders } from "~/services/standing-orders/make-due-orders.server"
+import { remindDates } from "~/services/standing-orders/remind-dates.server"
 import { addProduct, openStore, openYard, type Shop, THURSDAY, type Yard, ZONE } from "../orders/place-yard"
 import { place, standOnThursday } from "./desk-steps"
 
@@ -13,17 +15,18 @@ const seasonOf = (yard: Yard) => findSeason({ producerId: yard.producerId, now: 
 
 async function addStanding(
 	shop: Shop,
-	standing: { productId: string; cases: number; isCommitment?: boolean; skips?: Day[]; endsOn?: Day },
+	standing: { productId: string; cases: number; isCommitment?: boolean; skips?: Day[]; endsOn?: Day; rule?: string },
 ): Promise<string> {
 	const { producerId, storeId, person } = shop
 	const { productId, cases, isCommitment = false, skips = [], endsOn = null } = standing
+	const { rule = "FREQ=WEEKLY;BYDAY=TU" } = standing
 	const id = randomUUID()
 	await withProducer(producerId, async (tx) => {
 		await tx.insert(standingOrders).values({
 			producerId,
 			id,
 			storeId,
-			rule: "FREQ=WEEKLY;BYDAY=TU",
+			rule,
 			startsOn: "2026-08-25",
 			endsOn,
 			isCommitment,
@@ -73,4 +76,17 @@ test("commitments, standing orders and single orders stand apart, week by week, 
 
 test("a season without stores, crop or stock has no products to show", async () => {
 	expect((await seasonOf(await openYard())).products).toEqual([])
+})
+
+test("a standing order whose rule is spoilt is named, and stops neither the page nor the orders of others", async () => {
+	const yard = await openYard()
+	const round = await addProduct(yard, { code: "11", readyCases: 9 })
+	await addStanding(await openStore(yard), { productId: round, cases: 3, endsOn: "2026-08-25" })
+	await addStanding(await openStore(yard), { productId: round, cases: 2, rule: "FREQ=FORTNIGHTLY" })
+	const { products, unreadStores } = await seasonOf(yard)
+	expect(unreadStores).toEqual(["Pantry & Plume"])
+	expect(products[0]?.weeks.map(({ wanted }) => wanted.standing).filter((pieces) => pieces > 0)).toEqual([36])
+	const afterLastOrders = new Date("2026-08-21T17:00:00Z")
+	expect(await makeDueOrders({ producerId: yard.producerId, now: afterLastOrders })).toEqual({ made: 1 })
+	expect(await remindDates({ producerId: yard.producerId, now: afterLastOrders })).toEqual({ reminded: 0 })
 })
