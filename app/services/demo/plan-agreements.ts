@@ -221,7 +221,7 @@ function claimOf({ line, order }: Sharing["lines"][number]): Claim {
 		id: line.id,
 		claimClass: order.standing ? "standing" : "single",
 		asked: line.asked,
-		least: 0,
+		least: line.least,
 		weight: 1,
 		lastPart: null,
 		placed: order.number,

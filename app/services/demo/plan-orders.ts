@@ -14,6 +14,7 @@ export type LineOfSeason = {
 	id: string
 	product: CatalogueProduct
 	asked: number
+	least: number
 	given: number | null
 	isToShare: boolean
 	caseCents: number
@@ -42,7 +43,7 @@ export type OrderOfSeason = {
 	cancelledAt: Date | null
 }
 
-type Asked = { code: string; cases: number; isToShare?: boolean; given?: number }
+type Asked = { code: string; cases: number; least?: number; isToShare?: boolean; given?: number }
 
 /** All orders of the season, the earlier placed first, numbered from 1. */
 export function planOrders(
@@ -175,10 +176,11 @@ function makeOrder(
 		store,
 		on: day.on,
 		state,
-		lines: products.map(({ product, cases, given, isToShare }, index) => ({
+		lines: products.map(({ product, cases, least = 0, given, isToShare }, index) => ({
 			id: chance.id(),
 			product,
 			asked: cases,
+			least,
 			given: isDecided ? (given ?? cases) : null,
 			isToShare: isToShare ?? false,
 			caseCents: price.lines[index]?.caseCents ?? 0,

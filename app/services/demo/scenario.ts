@@ -88,7 +88,7 @@ export type DemoComingOrder = {
 	/** Counted among the delivery days whose orders are still open; -1 is the day before, whose orders are made up. */
 	openDay: number
 	state: "placed" | "confirmed" | "packed" | "cancelled"
-	lines: readonly { code: string; cases: number; isToShare?: boolean; given?: number }[]
+	lines: readonly { code: string; cases: number; least?: number; isToShare?: boolean; given?: number }[]
 	hoursAgo: number
 	note?: string
 	poNumber?: string

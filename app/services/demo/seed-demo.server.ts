@@ -148,6 +148,7 @@ async function writeSeason(tx: Tx, season: Season): Promise<void> {
 				orderId: order.id,
 				productId: line.product.id,
 				askedCases: line.asked,
+				leastCases: line.least,
 				isToShare: line.isToShare,
 				givenCases: line.given,
 				caseCents: line.caseCents,

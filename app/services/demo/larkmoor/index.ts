@@ -166,6 +166,19 @@ export const larkmoor: DemoScenario = {
 			lines: [{ code: "41", cases: 2 }],
 			hoursAgo: 2,
 		},
+		// A short day far enough ahead to be shared out at leisure.
+		...[
+			{ store: "ferry-lane-co-op", cases: 6, least: 2, hoursAgo: 47 },
+			{ store: "thornback-cheese-counter", cases: 5, least: 2, hoursAgo: 46 },
+			{ store: "the-brass-whisk", cases: 4, least: 3, hoursAgo: 44 },
+			{ store: "wren-street-larder", cases: 2, least: 1, hoursAgo: 27 },
+		].map(({ store, cases, least, hoursAgo }) => ({
+			store,
+			openDay: 3,
+			state: "placed" as const,
+			lines: [{ code: "21", cases, least, isToShare: true }],
+			hoursAgo,
+		})),
 	],
 	seasonWeeks: 24,
 	marketWeeks: 6,
