@@ -43,7 +43,7 @@ export function CreditForm({ storeName, lines, leftCents, creditId, typed, error
 					error={errorOf("reason")}
 				/>
 			</div>
-			<table className="sheet-table credit-lines">
+			<table className="sheet-table stacked-rows credit-lines">
 				<thead>
 					<tr>
 						<th scope="col">Product</th>
