@@ -44,6 +44,8 @@ export default function Invoices({ loaderData, params }: Route.ComponentProps) {
 						<Link to={`${base}/payments`}>Payments</Link>
 						<Link to={`${base}/credits`}>Credits</Link>
 						<Link to={`${base}/breakage`}>Broken comb</Link>
+						<Link to={`${base}/books`}>Books</Link>
+						<Link to={`${base}/figures`}>What was sold</Link>
 					</span>
 				}
 			/>

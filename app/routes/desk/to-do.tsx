@@ -47,7 +47,7 @@ export const loader = guard(admits.desk("owner", "desk", "packer"), async ({ url
 		groups,
 		owed,
 		toSettle,
-		seasonHref: seesAll ? `${base}/season` : null,
+		lookHrefs: seesAll ? { season: `${base}/season`, figures: `${base}/figures` } : null,
 		settled: toDo && {
 			...toDo.settled,
 			undoableInAll: toDo.settled.undoable.length,
@@ -107,7 +107,7 @@ function partOfDay(now: Date, zone: string): string {
 }
 
 export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
-	const { groups, owed, toSettle, settled, title, done, more, isUndone, seasonHref } = loaderData
+	const { groups, owed, toSettle, settled, title, done, more, isUndone, lookHrefs } = loaderData
 	useConfirmKey()
 	const things = `${countHead(toSettle)} ${toSettle === 1 ? "thing" : "things"} to settle.`
 	return (
@@ -135,9 +135,10 @@ export default function ToDo({ loaderData, actionData }: Route.ComponentProps) {
 				title={title}
 				lead={toSettle === 0 ? "Nothing to settle." : things}
 				note={
-					seasonHref && (
+					lookHrefs && (
 						<>
-							Which weeks will be short? <Link to={seasonHref}>The season ahead</Link>
+							Which weeks will be short? <Link to={lookHrefs.season}>The season ahead</Link>.{" "}
+							<Link to={lookHrefs.figures}>What was sold</Link>
 						</>
 					)
 				}
