@@ -6,7 +6,7 @@ import { color } from "../theme"
 import { column, paper } from "./paper"
 import { Notes, Paper, Parties, renderPaper } from "./paper-parts"
 
-const width = { lots: 158, weight: 98, cases: 116 }
+const width = { lots: 104, weight: 70, cases: 116 }
 const BOX = { size: 10, gap: 4, inRow: 8 }
 
 /**

@@ -6,7 +6,7 @@ const AIM_PER_SECOND = 10
 /** Flat: what one worker holds more at the end than after its first tenth, in megabytes. */
 const AIM_MEGABYTES = 64
 const LOOK_MS = 200
-const DEADLINE_MS = 900_000
+const DEADLINE_MS = 300_000
 const TICKS_PER_SECOND = 100
 const PAGE_BYTES = 4096
 const MEGABYTE = 1_048_576

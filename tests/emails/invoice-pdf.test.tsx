@@ -88,6 +88,74 @@ describe("the printed invoice", () => {
 		expect(page).not.toContain("Tear here")
 	})
 
+	it("shows what was weighed at the price of the pound, the store's number, and the discount with its day", async () => {
+		const [first, ...others] = sampleInvoice.lines
+		const weighed = { ...first, productName: "Bulk frame", netWeight: "9.751 lb (4,423 g)", poundCents: 1_250 } as const
+		const { pages } = readPdf(
+			await renderInvoicePdf({
+				...sampleInvoice,
+				lines: [weighed, ...others] as InvoiceProps["lines"],
+				poNumbers: "4471",
+				discount: { basisPoints: 200, cents: 1860, untilOn: "2026-08-28" },
+			}),
+		)
+
+		const page = flat(pages[0])
+		expect(page).toContain("Your number: 4471")
+		expect(page).toContain("2 % off, $18.60, if paid by August 28")
+		expect(page).toContain("9.751 lb (4,423 g) 3 sent 12.50 a lb 324.90")
+		expect(page).toContain("By August 28 $911.30 By September 1 $929.90")
+	})
+
+	it("puts a line of words above the lines of each order, and takes off what was settled in each way", async () => {
+		const orders = [
+			{ number: "318", placedOn: "2026-08-01", deliveredOn: "2026-08-04", poNumber: "4471" },
+			{ number: "325", placedOn: "2026-08-08", deliveredOn: "2026-08-11" },
+		]
+		const lines = sampleInvoice.lines.map((line, index) => ({ ...line, orderNumber: index < 2 ? "318" : "325" }))
+		const { pages } = readPdf(
+			await renderInvoicePdf({
+				...sampleInvoice,
+				lines,
+				orders,
+				delivered: { from: "2026-08-04", on: "2026-08-11" },
+				creditedCents: 2_990,
+				paidCents: 50_000,
+			}),
+		)
+
+		const page = flat(pages.join(" "))
+		expect(page).toContain("August 4 to August 11 2 orders, 8 cases")
+		expect(page).toMatch(/Order 318, delivered Tuesday, August 4, your number 4471 11 Round.*Order 325, delivered/)
+		expect(page).toContain("Credited -29.90 Paid, thank you -500.00 To pay $400.00")
+	})
+
+	it("draws a charge that is no product without cases, weight or care of comb", async () => {
+		const charge = {
+			productName: "Charge for paying late",
+			lots: [],
+			casesAsked: 0,
+			casesSent: 0,
+			priceCents: 0,
+			amountCents: 1_500,
+		}
+		const { pages } = readPdf(
+			await renderInvoicePdf({
+				...sampleInvoice,
+				lines: [charge],
+				charges: [],
+				totalCents: 1_500,
+				order: null,
+				delivered: null,
+				notes: [],
+			}),
+		)
+
+		const page = flat(pages[0])
+		expect(page).toContain("Charge for paying late 15.00 To pay $15.00")
+		expect(page).not.toMatch(/sent|infants|Delivered/)
+	})
+
 	it("asks for the rest when a part is paid", async () => {
 		const { pages } = readPdf(await renderInvoicePdf({ ...sampleInvoice, paidCents: 90000 }))
 

@@ -24,6 +24,9 @@ type Issuing = {
 	personId: string | null
 }
 
+/** After every day: whatever was sent goes on it, also ahead of its day. */
+const EVER = "9999-12-31"
+
 /**
  * Issues one invoice for every sent order of a store that is on none yet, dated today, because somebody at the desk asks
  * for it. `formId` is made with the form: sent again it finds what it made. Recorded on each order.
@@ -40,7 +43,7 @@ export function issueWaitingNow(query: {
 		issueTogether(tx, {
 			producer,
 			storeId,
-			until: addDays(today, 366),
+			until: EVER,
 			issuedOn: today,
 			onceKey: `by-hand:${formId}`,
 			personId,
