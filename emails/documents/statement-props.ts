@@ -12,7 +12,7 @@ export const statementProps = z.object({
 	broughtForwardCents: cents,
 	lines: z
 		.array(z.object({ on: day, name: words, note: z.string().max(2000), amountCents: cents, balanceCents: cents }))
-		.max(50_000),
+		.max(20_000),
 	closingCents: cents,
 	ageing: z.array(z.object({ label: words, cents })).max(5),
 	onAccountCents: cents,
