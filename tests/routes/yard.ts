@@ -52,6 +52,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const marketDayId = randomUUID()
 	const saleId = randomUUID()
 	const takeId = randomUUID()
+	const certificateId = randomUUID()
 	const [creditId, reportId, brokenLineId, pictureId, invoiceLineId] = Array.from({ length: 5 }, () => randomUUID())
 	const [beeYardId, hiveId, superId, photoId] = [randomUUID(), randomUUID(), randomUUID(), randomUUID()]
 	const insert = async (table: string, row: Record<string, unknown>) => {
@@ -192,6 +193,16 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			state: "off",
 			off_on: LONG_AGO,
 		})
+		await insert("exemption_certificates", {
+			id: certificateId,
+			store_id: storeId,
+			number: "walked",
+			valid_until: LONG_AGO,
+			file_name: "walked.pdf",
+			media_type: "application/pdf",
+			content: Buffer.from("%PDF-1.7"),
+			handed_in_by: sellerId,
+		})
 		await insert("stock_takes", { id: takeId, place: "ready", taken_on: LONG_AGO })
 		await insert("uploads", { id: photoId, media_type: "image/jpeg", content: Buffer.from("a photo") })
 		return idOf("select id from stores where slug = 'mossgate-grocers'")
@@ -237,6 +248,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			sale: saleId,
 			run: runId,
 			take: takeId,
+			certificate: certificateId,
 			tier: await asProducer(owner, ourId, () => idOf("select id from price_tiers order by name limit 1")),
 			product: "11",
 			grading: await paperOf("gradings"),
@@ -268,6 +280,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 				await del("order_events", "order_id", orderId)
 				await del("order_lines", "order_id", orderId)
 				await del("orders", "id", orderId)
+				await del("exemption_certificates", "id", certificateId)
 				await del("stock_takes", "id", takeId)
 				await del("uploads", "id", photoId)
 				await del("supers", "id", superId)
