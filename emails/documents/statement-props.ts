@@ -1,6 +1,9 @@
 import { z } from "zod"
 import { cents, day, sampleYard, words, yard } from "../props"
 
+/** More lines than this are for a file and not for paper. */
+export const MOST_STATEMENT_LINES = 20_000
+
 /**
  * Everything a statement says; its page, letter and PDF are drawn from the same. Money is cents: `amountCents` is signed by
  * what it does to the balance. The ageing is of what was open at the end of `range.until`.
@@ -12,7 +15,7 @@ export const statementProps = z.object({
 	broughtForwardCents: cents,
 	lines: z
 		.array(z.object({ on: day, name: words, note: z.string().max(2000), amountCents: cents, balanceCents: cents }))
-		.max(20_000),
+		.max(MOST_STATEMENT_LINES),
 	closingCents: cents,
 	ageing: z.array(z.object({ label: words, cents })).max(5),
 	onAccountCents: cents,

@@ -50,6 +50,9 @@ export default function Invoices({ loaderData, params }: Route.ComponentProps) {
 								Pay several at once
 							</Link>
 						)}
+						<Link className="py-1" to={`${base}/statement`}>
+							Statement
+						</Link>
 						<Link className="py-1" to={`${base}/credits`}>
 							Credits
 						</Link>

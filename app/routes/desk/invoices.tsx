@@ -42,6 +42,7 @@ export default function Invoices({ loaderData, params }: Route.ComponentProps) {
 						<Link to={`${base}/invoices/waiting`}>To be invoiced</Link>
 						<Link to={`${base}/tax-rates`}>Sales tax</Link>
 						<Link to={`${base}/payments`}>Payments</Link>
+						<Link to={`${base}/receivables`}>Who owes what</Link>
 						<Link to={`${base}/credits`}>Credits</Link>
 						<Link to={`${base}/breakage`}>Broken comb</Link>
 						<Link to={`${base}/books`}>Books</Link>

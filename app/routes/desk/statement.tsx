@@ -44,6 +44,11 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }
 	return data(answer, { status: asked.error ? 400 : 200 })
 })
 
+const UNMAILED = {
+	nobody: "Nobody of this store has an address yet. Invite a buyer first.",
+	"too-long": "These days have more lines than a letter carries. Choose fewer days.",
+} as const
+
 export const action = guard(admits.desk("owner", "desk"), async ({ request, params, url }: Route.ActionArgs, scope) => {
 	const { producer, person } = scope
 	const store = await findStoreBySlug({ producerId: producer.id, slug: params.store })
@@ -53,12 +58,9 @@ export const action = guard(admits.desk("owner", "desk"), async ({ request, para
 	const today = dayInZone(askClock(), producer.timeZone)
 	const { range } = statementRange(url.searchParams, today)
 	const query = { producerId: producer.id, storeId: store.id, range, today }
-	const { told } = await mailStatement({ ...query, personId: person.id, mailKey: key.data })
-	if (told.length === 0) {
-		const message = "Nobody of this store has an address yet. Invite a buyer first."
-		return data({ errors: [{ message }] }, { status: 422 })
-	}
-	throw redirect(`${url.pathname}?${new URLSearchParams({ ...range, mailed: told.join(", ") })}`)
+	const mailed = await mailStatement({ ...query, personId: person.id, mailKey: key.data })
+	if (!mailed.ok) return data({ errors: [{ message: UNMAILED[mailed.reason] }] }, { status: 422 })
+	throw redirect(`${url.pathname}?${new URLSearchParams({ ...range, mailed: mailed.told.join(", ") })}`)
 })
 
 export default function DeskStatement({ loaderData, actionData, params }: Route.ComponentProps) {

@@ -98,6 +98,9 @@ export default function Store({ loaderData, actionData, params }: Route.Componen
 						<Link className="py-1" to={`${here}/statement`}>
 							Statement
 						</Link>
+						<Link className="py-1" to={`${here}/payment`}>
+							Note a payment
+						</Link>
 						<Link className="py-1" to={`${here}/standing`}>
 							Standing order
 						</Link>

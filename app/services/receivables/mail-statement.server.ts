@@ -2,15 +2,18 @@ import { auditEntries } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
 import type { StatementRange } from "~/domain/receivables/statement"
+import type { Result } from "~/domain/result"
 import { env } from "~/platform/env.server"
 import { queueMails } from "~/services/mail/queue-mails.server"
 import { findStorePeople } from "~/services/orders/order-people.server"
+import { MOST_STATEMENT_LINES } from "~emails/documents/statement-props"
 import { readStatement } from "./find-statement.server"
 import { statementDocument } from "./statement-document.server"
 
 /**
  * Mails a store its whole statement: to each of its people who takes invoices by letter, with the printed pages. `mailKey`
- * is made with the button: a second press sends nothing more. Answers whom it goes to, by name. Recorded.
+ * is made with the button: a second press sends nothing more. Answers whom it goes to, by name. Refused when nobody is
+ * there to read it, or it has more lines than a letter carries. Recorded.
  */
 export function mailStatement(query: {
 	producerId: string
@@ -19,12 +22,13 @@ export function mailStatement(query: {
 	today: Day
 	personId: string
 	mailKey: string
-}): Promise<{ told: string[] }> {
+}): Promise<Result<{ told: string[] }, { ok: false; reason: "nobody" | "too-long" }>> {
 	const { producerId, storeId, range, personId, mailKey } = query
 	return withProducer(producerId, async (tx) => {
 		const people = await findStorePeople(tx, { producerId, storeId, kind: "invoices" })
-		if (people.length === 0) return { told: [] }
+		if (people.length === 0) return { ok: false, reason: "nobody" }
 		const found = await readStatement(tx, { ...query, isWhole: true })
+		if (found.lines.length > MOST_STATEMENT_LINES) return { ok: false, reason: "too-long" }
 		const statement = statementDocument(found)
 		const address = `${env.BASE_URL}/buy/${found.store.producerSlug}/${found.store.slug}/statement`
 		const search = new URLSearchParams(range)
@@ -52,6 +56,6 @@ export function mailStatement(query: {
 			subjectId: storeId,
 			detail: { ...range, told },
 		})
-		return { told }
+		return { ok: true, told }
 	})
 }

@@ -138,7 +138,7 @@ test("a statement is mailed once for a press of the button, whole, to the store'
 	const { yard, shop, personId, account } = await openShop()
 	for (let count = 0; count < 105; count += 1) await account.invoice(100)
 	const query = { ...shop, range: { from: "2026-08-01", until: TODAY }, today: TODAY, personId, mailKey: randomUUID() }
-	expect(await mailStatement(query)).toEqual({ told: ["Rosa Quill"] })
+	expect(await mailStatement(query)).toEqual({ ok: true, told: ["Rosa Quill"] })
 	await mailStatement(query)
 	const letters = await findOutbox(yard.producerId)
 	expect(letters).toMatchObject([{ props: { statement: { lines: { length: 105 }, closingCents: 10_500 } } }])
