@@ -16,9 +16,22 @@ const RULES = [
 	["constrained_equal_losses", "equal-shortfall"],
 ] as const
 
+/**
+ * Up to half of all claims, equal awards over the halves; beyond, the other half and equal losses over it.
+ * Source: Aumann and Maschler, Journal of Economic Theory 36 (1985).
+ */
+function halvesRule(estate: number, claims: readonly number[]): number[] {
+	const halves = claims.map((claim) => ({ asked: claim / 2, weight: 1 }))
+	const half = halves.reduce((sum, { asked }) => sum + asked, 0)
+	if (estate <= half) return exactShares(estate, halves, "equal-shares")
+	const beyond = exactShares(estate - half, halves, "equal-shortfall")
+	return halves.map(({ asked }, index) => asked + (beyond[index] ?? 0))
+}
+
 /** Makes one test of each column of a table of the claims problem, and of each split by largest remainder. */
 export function holdAllocation({ allocation }: PublishedValues): void {
 	const examples = allocation?.largest_remainder ?? []
+	const ofTalmud = (allocation?.tables ?? []).flatMap(({ talmud, ...table }) => (talmud ? [{ ...table, talmud }] : []))
 	const columns = (allocation?.tables ?? []).flatMap((table) =>
 		RULES.flatMap(([column, rule]) => {
 			const shares = table[column]
@@ -36,6 +49,16 @@ export function holdAllocation({ allocation }: PublishedValues): void {
 				)
 				expect(ours).toHaveLength(shares.length)
 				for (const [index, { decimal }] of shares.entries()) expect(ours[index]).toBeCloseTo(decimal, 5)
+			})
+		})
+	}
+
+	if (ofTalmud.length > 0) {
+		describe("the bankruptcies of the Talmud, from two rules of the product on half of each claim", () => {
+			test.each(ofTalmud)("talmud of $estate over $claims", ({ estate, claims, talmud }) => {
+				const ours = halvesRule(estate, claims)
+				expect(ours).toHaveLength(talmud.length)
+				for (const [index, { decimal }] of talmud.entries()) expect(ours[index]).toBeCloseTo(decimal, 5)
 			})
 		})
 	}

@@ -20,7 +20,38 @@ function outlookOf(example: Example, periods = example.orders.length) {
 	}
 }
 
-/** Makes two tests of each planning table: free to promise with and without a look at later periods. */
+/** The periods that begin with a receipt; the first begins with what is on hand. */
+const receiptsOf = ({ mps }: Example) =>
+	mps.flatMap((quantity, period) => (quantity > 0 || period === 0 ? [period] : []))
+
+/** What each receipt leaves over once the promises until the next receipt are kept, by the product's own rule. */
+function discreteFigures(example: Example): (number | null)[] {
+	const receipts = receiptsOf(example)
+	return example.orders.map((_, period) => {
+		if (!receipts.includes(period)) return null
+		const next = receipts.find((one) => one > period) ?? example.orders.length
+		const received = (example.mps[period] ?? 0) + (period === 0 ? example.on_hand : 0)
+		const promises = example.orders.flatMap((quantity, on) =>
+			on >= period && on < next ? [{ on: dayOf(on), quantity }] : [],
+		)
+		const supplies = [{ on: dayOf(period), quantity: received, kind: "free" as const }]
+		return freeToPromise({ supplies, promises, reserve: 0, days: [dayOf(period)] })[0]?.raw ?? null
+	})
+}
+
+/** What each receipt adds to what is safe to promise: a receipt that is promised beyond itself takes from those before. */
+function carriedBackFigures(example: Example): (number | null)[] {
+	const days = example.orders.map((_, period) => dayOf(period))
+	const safe = freeToPromise({ ...outlookOf(example), days }).map(({ raw }) => raw)
+	const receipts = receiptsOf(example)
+	return safe.map((figure, period) => {
+		if (!receipts.includes(period)) return null
+		const before = receipts.findLast((one) => one < period)
+		return figure - (before === undefined ? 0 : (safe[before] ?? 0))
+	})
+}
+
+/** Makes the tests of each planning table: free to promise with and without a look at later periods, and by receipt. */
 export function holdPlanning({ planning }: PublishedValues): void {
 	const examples = planning?.atp ?? []
 	const withoutLookAhead = examples.filter((example) => example.cumulative_without_lookahead)
@@ -34,6 +65,26 @@ export function holdPlanning({ planning }: PublishedValues): void {
 					return there?.raw
 				})
 				expect(figures).toEqual(example.cumulative_without_lookahead)
+			})
+		})
+	}
+
+	const byReceipt = examples.flatMap(({ discrete_raw, ...example }) =>
+		discrete_raw ? [{ ...example, discrete_raw }] : [],
+	)
+	if (byReceipt.length > 0) {
+		describe("available to promise by receipt", () => {
+			test.each(byReceipt)("$id: what each receipt leaves over until the next", (example) => {
+				expect(discreteFigures(example)).toEqual(example.discrete_raw)
+			})
+		})
+	}
+
+	const carriedBack = examples.filter((example) => example.discrete_after_carry_back)
+	if (carriedBack.length > 0) {
+		describe("available to promise by receipt, carried back", () => {
+			test.each(carriedBack)("$id: what each receipt adds to what is safe to promise", (example) => {
+				expect(carriedBackFigures(example)).toEqual(example.discrete_after_carry_back)
 			})
 		})
 	}

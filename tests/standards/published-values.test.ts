@@ -98,11 +98,11 @@ test("a topic without a rule and a column that nothing reads are both told", () 
 	const told = notYetRuled({
 		meta: { title: "not a topic" },
 		routing: { tours: { rule: "…" }, source: "a book" },
-		planning: { atp: [{ id: "X", on_hand: 1, discrete_raw: [1] }], newsvendor: [{ id: "NV" }] },
+		planning: { atp: [{ id: "X", on_hand: 1, projected_on_hand: [1] }], newsvendor: [{ id: "NV" }] },
 	})
 	expect(told).toEqual([
 		"No rule yet for routing: tours",
 		"No rule yet for planning: newsvendor",
-		"No rule yet for part of planning.atp: discrete_raw",
+		"No rule yet for part of planning.atp: projected_on_hand",
 	])
 })
