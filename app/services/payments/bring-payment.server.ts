@@ -55,8 +55,8 @@ async function moveVisit(tx: Tx, visit: Visit, facts: PaymentFacts): Promise<voi
 		.update(onlinePayments)
 		.set({ state: facts.state, declineMessage: facts.declineMessage, stripePaymentIntentId: facts.intentId })
 		.where(and(eq(onlinePayments.producerId, visit.producerId), eq(onlinePayments.id, visit.id)))
-	const isRefused = facts.state === "declined" && visit.state !== "declined"
-	if (isRefused && visit.kind === "automatic" && visit.state === "open") await queueFailure(tx, { visit, facts })
+	const isRefused = facts.state === "declined" && visit.state === "open"
+	if (isRefused && visit.kind === "automatic") await queueFailure(tx, { visit, facts })
 }
 
 const isPayment = ({ producerId, id }: { producerId: string; id: string }) =>
@@ -81,12 +81,11 @@ async function movePayment(
 	if (facts.state === "on-its-way") {
 		return known ?? writePayment(tx, { visit, facts, state: "on-its-way", receivedOn: madeOn })
 	}
-	if (facts.state === "declined" && known?.state === "on-its-way") {
-		await tx
-			.update(payments)
-			.set({ state: "returned", receivedOn: await openDay(tx, { producerId, day: today }) })
-			.where(isPayment(known))
+	if (facts.state === "declined" && facts.method === "bank-debit" && facts.madeAt) {
 		await queueFailure(tx, { visit, facts })
+		if (!known) return writePayment(tx, { visit, facts, state: "returned", receivedOn: today })
+		const receivedOn = await openDay(tx, { producerId, day: today })
+		await tx.update(payments).set({ state: "returned", receivedOn }).where(isPayment(known))
 		return { ...known, state: "returned" }
 	}
 	if (facts.state !== "paid" || known?.state === "settled") return known
@@ -103,7 +102,7 @@ async function movePayment(
 
 async function writePayment(
 	tx: Tx,
-	of: { visit: Visit; facts: PaymentFacts; state: "on-its-way" | "settled"; receivedOn: Day },
+	of: { visit: Visit; facts: PaymentFacts; state: Payment["state"]; receivedOn: Day },
 ): Promise<Payment> {
 	const { visit, facts, state } = of
 	const { producerId } = visit

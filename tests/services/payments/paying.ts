@@ -1,13 +1,14 @@
 import { createServer } from "node:http"
 import type { AddressInfo } from "node:net"
 import { eq } from "drizzle-orm"
-import { invoiceOrders, invoices, onlinePayments, orders, payments, settlements } from "~/db/schema"
+import { invoiceOrders, invoices, onlinePayments, orders, paymentReturns, payments, settlements } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
 import { invoiceNumber } from "~/domain/invoicing/invoice-number"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { applyStripeEvent } from "~/services/payments/apply-stripe-event.server"
 import { receiveStripeEvent } from "~/services/payments/receive-stripe-event.server"
 import { startPayment } from "~/services/payments/start-payment.server"
+import type { BankStep } from "../../../fakes/stripe/control"
 import { type StripeFake, startStripeFake } from "../../../fakes/stripe/start"
 import { producerOf } from "../desk/desk-steps"
 import { type Shop, type Yard, ZONE } from "../orders/place-yard"
@@ -62,10 +63,16 @@ export async function applyAll(
 export async function addInvoice(
 	yard: Yard,
 	shop: Shop,
-	invoice: { sequence: number; totalCents: number; dueOn?: string },
+	invoice: {
+		sequence: number
+		totalCents: number
+		dueOn?: string
+		discountUntil?: string
+		discountBasisPoints?: number
+	},
 ): Promise<string> {
 	const { producerId } = yard
-	const { sequence, totalCents, dueOn = "2026-08-27" } = invoice
+	const { sequence, totalCents, dueOn = "2026-08-27", discountUntil, discountBasisPoints } = invoice
 	await withProducer(producerId, async (tx) => {
 		const [order] = await tx
 			.insert(orders)
@@ -84,6 +91,7 @@ export async function addInvoice(
 				deliveryCents: 0,
 				taxCents: 0,
 				totalCents,
+				...(discountUntil && { discountUntil, discountBasisPoints }),
 			})
 			.returning({ id: invoices.id })
 		await tx.insert(invoiceOrders).values({ producerId, orderId: order?.id ?? "", invoiceId: invoice?.id ?? "" })
@@ -128,6 +136,67 @@ export async function typeCard(url: string, number: string): Promise<number> {
 	const answer = await fetch(url, { method: "POST", body, redirect: "manual" })
 	await answer.arrayBuffer()
 	return answer.status
+}
+
+export const GOOD_ACCOUNT = "000123456789"
+export const EMPTY_ACCOUNT = "000222222227"
+
+/** Pays so much of some invoices by a debit of an account; answers the payment's id at Stripe. */
+export async function debit(
+	{ fake }: PaymentService,
+	yard: Yard,
+	shop: Shop,
+	of: { wishes: readonly { number: string; cents: number }[]; account: string },
+): Promise<string> {
+	const started = await startPayingParts(yard, shop, of.wishes, "bank-debit")
+	if (!started.ok) throw new Error(`no page: ${started.reason}`)
+	const body = new URLSearchParams({ routing: "110000000", account: of.account, name: "Pantry & Plume" })
+	const answer = await fetch(started.url, { method: "POST", body, redirect: "manual" })
+	await answer.arrayBuffer()
+	if (answer.status !== 303) throw new Error(`the debit was not taken: ${answer.status}`)
+	return String([...fake.state.sessions.values()].at(-1)?.payment_intent)
+}
+
+/** Has the payer's bank do something. */
+export function bankSays({ fake }: PaymentService, step: BankStep): void {
+	fake.bank(step)
+}
+
+/**
+ * The account of a yard: what is open and what discount was taken by invoice, payments and what went back in words, and
+ * what is on account. `payments` are ids instead where those are asked for.
+ */
+export function readAccount(yard: Yard, as: "words" | "ids" = "words") {
+	return readProducer(yard.producerId, async (tx) => {
+		const invoiced = await tx
+			.select({ open: invoices.openCents, discount: invoices.discountCents })
+			.from(invoices)
+			.where(eq(invoices.producerId, yard.producerId))
+			.orderBy(invoices.sequence)
+		const paid = await tx
+			.select()
+			.from(payments)
+			.where(eq(payments.producerId, yard.producerId))
+			.orderBy(payments.receivedAt, payments.amountCents, payments.stripePaymentIntentId)
+		const gone = await tx
+			.select()
+			.from(paymentReturns)
+			.where(eq(paymentReturns.producerId, yard.producerId))
+			.orderBy(paymentReturns.kind, paymentReturns.amountCents, paymentReturns.state)
+		const left = (one: (typeof paid)[number]) =>
+			one.state === "settled" ? one.amountCents - one.settledCents - one.returnedCents : 0
+		return {
+			open: invoiced.map(({ open }) => open),
+			discount: invoiced.map(({ discount }) => discount),
+			payments: paid.map((one) =>
+				as === "ids"
+					? one.id
+					: `${one.method} ${one.amountCents} ${one.state} settled ${one.settledCents} returned ${one.returnedCents}`,
+			),
+			onAccountCents: paid.reduce((sum, one) => sum + left(one), 0),
+			returns: gone.map(({ kind, state, amountCents }) => `${kind} ${state} ${amountCents}`),
+		}
+	})
 }
 
 /** What the producer's books say: invoices by sequence, payments with what they settle, visits by state. */
