@@ -2,7 +2,7 @@ const FULL = { stores: 2000, invoices: 1_000_000, statement: 5000 }
 const DAYS = 3650
 const LOOKS = 25
 const WARM_UP = 5
-const AIMS = { receivablesMs: 100, statementMs: 150 }
+const AIMS = { receivablesMs: 100, statementMs: 150, fileMs: 1000 }
 const SLUG = "million-invoices"
 
 /**
@@ -21,7 +21,7 @@ export async function measureReceivables({ database, web, cookie, ownerEmail, sa
 		["Receivables by name, page", `${desk}/receivables?by=name`, AIMS.receivablesMs],
 		["Statement of a store with 5,000 invoices, page", `${statement}?from=2000-01-01`, AIMS.statementMs],
 		["Statement until a day long past, page", `${statement}?from=2000-01-01&until=${counts.longAgo}`, AIMS.statementMs],
-		["Statement of a store with 5,000 invoices, whole as CSV", `${statement}.csv?from=2000-01-01`, AIMS.statementMs],
+		["Statement of a store with 5,000 invoices, whole as CSV", `${statement}.csv?from=2000-01-01`, AIMS.fileMs],
 	]
 	const rows = []
 	for (const [name, url, aim] of looks) rows.push(aimRow(name, await medianOf(url, cookie), aim))

@@ -21,9 +21,13 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ url }: Route.
 	const by = url.searchParams.get("by") === "name" ? "name" : "owed"
 	const after = url.searchParams.get("after")
 	const today = dayInZone(now, scope.producer.timeZone)
-	const list = await listReceivables({ producerId: scope.producer.id, today, by, after })
-	const toLookAt = await findToLookAt({ producerId: scope.producer.id, today })
-	return { frame: await findDeskFrame(scope, { part: "invoices", now }), by, after, toLookAt, ...list }
+	const producerId = scope.producer.id
+	const [list, toLookAt, frame] = await Promise.all([
+		listReceivables({ producerId, today, by, after }),
+		findToLookAt({ producerId, today }),
+		findDeskFrame(scope, { part: "invoices", now }),
+	])
+	return { frame, by, after, toLookAt, ...list }
 })
 
 /** "has promised $929.90 by August 18, 2026", "hands in a certificate that waits for your answer". */

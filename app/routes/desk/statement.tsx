@@ -39,7 +39,7 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }
 		after,
 		next,
 		mailKey: randomUUID(),
-		mailedTo: url.searchParams.get("mailed"),
+		isMailed: url.searchParams.has("mailed"),
 	}
 	return data(answer, { status: asked.error ? 400 : 200 })
 })
@@ -60,18 +60,18 @@ export const action = guard(admits.desk("owner", "desk"), async ({ request, para
 	const query = { producerId: producer.id, storeId: store.id, range, today }
 	const mailed = await mailStatement({ ...query, personId: person.id, mailKey: key.data })
 	if (!mailed.ok) return data({ errors: [{ message: UNMAILED[mailed.reason] }] }, { status: 422 })
-	throw redirect(`${url.pathname}?${new URLSearchParams({ ...range, mailed: mailed.told.join(", ") })}`)
+	throw redirect(`${url.pathname}?${new URLSearchParams({ ...range, mailed: "" })}`)
 })
 
 export default function DeskStatement({ loaderData, actionData, params }: Route.ComponentProps) {
-	const { storeName, statement, asked, after, next, mailKey, mailedTo } = loaderData
+	const { storeName, statement, asked, after, next, mailKey, isMailed } = loaderData
 	const base = `/desk/${params.producer}`
 	const here = `${base}/stores/${params.store}`
 	return (
 		<DeskBook frame={loaderData.frame}>
-			{mailedTo && !actionData && (
+			{isMailed && !actionData && (
 				<MessageLine tone="saved" title="The statement is on its way.">
-					To {mailedTo}.
+					It goes to everyone of {storeName} who takes invoices by letter.
 				</MessageLine>
 			)}
 			<SheetHead

@@ -1,13 +1,14 @@
 import { type SQL, sql } from "drizzle-orm"
-import type { Day } from "~/domain/calendar"
+import { addDays, type Day } from "~/domain/calendar"
 import { AGEING_MOST_DAYS, ageingBuckets } from "~/domain/invoicing/ageing"
 
 /** What is open, summed into the ageing columns in their order, as an array; null where a column has nothing. */
 export function agedSums(dueOn: SQL, openCents: SQL, today: Day): SQL {
-	const most = Object.values(AGEING_MOST_DAYS)
+	// Days and not sums of days: what is reckoned here is not reckoned again for every invoice.
+	const firstDueOn = Object.values(AGEING_MOST_DAYS).map((days) => addDays(today, -days))
 	const columns = ageingBuckets.map((_, index) => {
-		const above = index === 0 ? sql`true` : sql`${dueOn} < ${today}::date - ${most[index - 1]}::int`
-		const within = index === most.length ? sql`true` : sql`${dueOn} >= ${today}::date - ${most[index]}::int`
+		const above = index === 0 ? sql`true` : sql`${dueOn} < ${firstDueOn[index - 1]}`
+		const within = index === firstDueOn.length ? sql`true` : sql`${dueOn} >= ${firstDueOn[index]}`
 		return sql`sum(${openCents}) filter (where ${above} and ${within})::float8`
 	})
 	return sql`array[${sql.join(columns, sql`, `)}]`
