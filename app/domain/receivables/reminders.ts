@@ -31,7 +31,7 @@ export function stepToWrite<Step extends ReminderStep>(
 /** The blanks that the words of a step may have, and what stands in them. */
 export const BLANKS = {
 	store: "the store’s name",
-	invoice: "which invoices, by number",
+	invoice: "the number of the invoice, or the numbers of several",
 	amount: "what is still to pay on them",
 	due: "the day the first of them fell or falls due",
 	yard: "your own name",
@@ -56,23 +56,24 @@ export type Reminded = {
 
 /**
  * Fills the blanks of a step's words, each once: what is put in is not looked at again. A blank that there is not stays as
- * it is. More than three invoices are counted and not named, since the letter lists them.
+ * it is. Of more than four invoices three are named and the others counted: the letter lists them all.
  */
 export function fillBlanks(text: string, { storeName, yardName, invoices }: Reminded): string {
-	const numbers = invoices.map(({ number }) => number)
 	const values: Record<Blank, string> = {
 		store: storeName,
-		invoice:
-			numbers.length === 1
-				? `invoice ${numbers[0]}`
-				: numbers.length > 3
-					? `${numbers.length} invoices`
-					: `invoices ${numbers.slice(0, -1).join(", ")} and ${numbers.at(-1)}`,
+		invoice: numbersInWords(invoices.map(({ number }) => number)),
 		amount: formatMoney(invoices.reduce((sum, { openCents }) => sum + openCents, 0)),
 		due: invoices.length === 0 ? "" : fullDay(invoices.map(({ dueOn }) => dueOn).toSorted(compareDays)[0] as Day),
 		yard: yardName,
 	}
 	return text.replace(BLANK, (whole, name: string) => (isBlank(name) ? values[name] : whole))
+}
+
+/** "2026-0012", "2026-0012 and 2026-0013", "2026-0012, 2026-0013, 2026-0014 and 5 more". */
+function numbersInWords(numbers: readonly string[]): string {
+	if (numbers.length < 2) return numbers.join("")
+	const named = numbers.length > 4 ? numbers.slice(0, 3) : numbers.slice(0, -1)
+	return `${named.join(", ")} and ${numbers.length > 4 ? `${numbers.length - 3} more` : numbers.at(-1)}`
 }
 
 /** "3 days before it falls due", "on the day it falls due", "1 day after it fell due". */
@@ -87,16 +88,16 @@ export const FIRST_STEPS: readonly { daysAfterDue: number; subject: string; body
 	{
 		daysAfterDue: -3,
 		subject: "{yard}: {amount} is due on {due}",
-		body: "Dear {store},\n\nthis is only to say that {amount} for {invoice} is due on {due}. If it is on its way already, there is nothing to do.\n\nThank you, {yard}",
+		body: "Dear {store},\n\nthis is only to say that {amount} for invoice {invoice} is due on {due}. If it is on its way already, there is nothing to do.\n\nThank you, {yard}",
 	},
 	{
 		daysAfterDue: 7,
 		subject: "{yard}: {amount} was due on {due}",
-		body: "Dear {store},\n\nwe have not had {amount} for {invoice} yet, which was due on {due}. Would you look whether it was overlooked? If something on it is not right, tell us and we will mend it.\n\nThank you, {yard}",
+		body: "Dear {store},\n\nwe have not had {amount} for invoice {invoice} yet, which was due on {due}. Would you look whether it was overlooked? If something on it is not right, tell us and we will mend it.\n\nThank you, {yard}",
 	},
 	{
 		daysAfterDue: 21,
 		subject: "{yard}: {amount} is three weeks late",
-		body: "Dear {store},\n\nwe still wait for {amount} for {invoice}, due since {due}. Please pay it this week, or call us so that we can agree on a day.\n\n{yard}",
+		body: "Dear {store},\n\nwe still wait for {amount} for invoice {invoice}, due since {due}. Please pay it this week, or call us so that we can agree on a day.\n\n{yard}",
 	},
 ]

@@ -47,7 +47,7 @@ describe("a reminder", () => {
 				{ number: "2026-0002", openCents: 10_010 },
 			],
 		})
-		expect(letter).toHaveProperty("body", expect.stringContaining("invoices 2026-0001 and 2026-0002"))
+		expect(letter).toHaveProperty("body", expect.stringContaining("invoice 2026-0001 and 2026-0002"))
 	})
 
 	test("goes once, however often the job runs, hours late, and by two workers at once", async () => {
