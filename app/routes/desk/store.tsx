@@ -92,7 +92,7 @@ export default function Store({ loaderData, actionData, params }: Route.Componen
 			{done && DONE[done] && !actionData && <MessageLine tone="saved" title={DONE[done]} />}
 			<SheetHead
 				title={terms.name}
-				lead={`${terms.address ? `${terms.address}. ` : ""}${store.tierName} prices, ${termsWords(terms.terms)}.`}
+				lead={`${terms.address ? `${terms.address}. ` : ""}${store.tierName}, ${termsWords(terms.terms)}.`}
 				action={
 					<span className="flex flex-wrap gap-x-5">
 						<Link className="py-1" to={`${here}/statement`}>

@@ -13,7 +13,7 @@ type Certificate = {
 }
 
 /** How a certificate stands, in words. */
-export function certificateWords({ state, validUntil, answer, decidedBy }: Certificate, today: Day): ReactNode {
+function certificateWords({ state, validUntil, answer, decidedBy }: Certificate, today: Day): ReactNode {
 	if (state === "handed-in") return <>waits to be looked at; said to be good until {fullDay(validUntil)}</>
 	if (state === "refused") {
 		return (

@@ -73,7 +73,7 @@ export function StoreOwed({
 	)
 }
 
-export function Fact({ label, children }: { label: string; children: ReactNode }) {
+function Fact({ label, children }: { label: string; children: ReactNode }) {
 	return (
 		<div className="grid gap-1 border-b border-rule px-4 py-3 desk:grid-cols-[14rem_minmax(0,1fr)] desk:px-8">
 			<dt className="text-ink-soft">{label}</dt>

@@ -4,6 +4,7 @@ import { ageing, ageingBuckets } from "~/domain/invoicing/ageing"
 import { certificateNotice, certificateType } from "~/domain/receivables/certificate"
 import { creditWarning } from "~/domain/receivables/credit-standing"
 import { chargedMonth, financeCharge } from "~/domain/receivables/finance-charge"
+import { isStoreSlug, slugOf } from "~/domain/receivables/store-slug"
 
 test("an order is to be looked at when the store is stopped, or owes more with it than its limit", () => {
 	const facts = { isStopped: false, creditLimitCents: 100_000, owedCents: 90_000 }
@@ -76,4 +77,17 @@ test("the end of a certificate is told 30 and 7 days before, and not once it has
 	expect(certificateNotice("2026-10-01", "2026-09-24")).toBe(7)
 	expect(certificateNotice("2026-10-01", "2026-10-01")).toBe(7)
 	expect(certificateNotice("2026-10-01", "2026-10-02")).toBeNull()
+})
+
+test("a store's name in addresses is made of what can stand there, and is none that a page has", () => {
+	expect(slugOf("Pantry & Plume")).toBe("pantry-and-plume")
+	expect(slugOf("  Café d’Été №5 ")).toBe("cafe-dete-5")
+	expect(slugOf("蜂")).toBe("")
+	fc.assert(
+		fc.property(fc.string({ unit: "grapheme" }), (name) => {
+			const slug = slugOf(name)
+			expect(slug === "" || slug === "new" || isStoreSlug(slug)).toBe(true)
+		}),
+	)
+	for (const slug of ["", "new", "-a", "a--b", "A", "a b", "x".repeat(61)]) expect(isStoreSlug(slug)).toBe(false)
 })
