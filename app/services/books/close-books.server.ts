@@ -2,13 +2,13 @@ import { randomUUID } from "node:crypto"
 import { sql } from "drizzle-orm"
 import { auditEntries, bookClosings } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
-import { addTotals, type Totals, totalsOf } from "~/domain/books/trial-balance"
+import { addTotals, type Totals } from "~/domain/books/trial-balance"
 import { addDays, type Day } from "~/domain/calendar"
 import type { Result } from "~/domain/result"
 import { CLOSING, type ClosingNote } from "./read-closings.server"
 import { type RareEvent, readRareEvents } from "./read-rare-events.server"
 import { type BookViews, readViews } from "./read-views.server"
-import { FIRST_DAY, sumFrequent } from "./sum-books.server"
+import { FIRST_DAY, sumBooks } from "./sum-books.server"
 
 export type ClosedBooks = Result<
 	{ totals: Totals },
@@ -36,8 +36,7 @@ export async function closeBooks(query: {
 		if (last && last.until >= until) return { ok: false, reason: "closed-already", until: last.until }
 		const period = { producer, from: last ? addDays(last.until, 1) : FIRST_DAY, to: until }
 		const rare = await readRareEvents(tx, period, views)
-		const entered = [...(await sumFrequent(tx, period)), ...rare.map(({ event }) => event)]
-		const totals = addTotals(last?.totals ?? {}, totalsOf(entered))
+		const totals = addTotals(last?.totals ?? {}, await sumBooks(tx, period, rare))
 		const id = randomUUID()
 		await tx
 			.insert(bookClosings)

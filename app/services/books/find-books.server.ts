@@ -27,8 +27,8 @@ export function findBooks(query: BooksQuery & { today: Day }): Promise<Books> {
 	return readProducer(producer.id, async (tx) => {
 		const views = await readViews(tx, producer.id)
 		const before = await sumBefore(tx, { producer, day: from }, views)
-		const entered = await sumBooks(tx, query, views)
 		const rare = await readRareEvents(tx, query, views)
+		const entered = await sumBooks(tx, query, rare)
 		return {
 			chart: views.on(to).chart,
 			balance: trialBalance(before, entered),

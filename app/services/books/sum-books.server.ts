@@ -1,5 +1,6 @@
 import { sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
+import type { DatedEvent } from "~/domain/books/dated-event"
 import type { BookEvent } from "~/domain/books/entries"
 import { addTotals, type Totals, totalsOf } from "~/domain/books/trial-balance"
 import { addDays, type Day } from "~/domain/calendar"
@@ -12,9 +13,8 @@ export const FIRST_DAY: Day = "1900-01-01"
 
 type Row = { of: string; a: string; b: string; c: string }
 
-/** The totals of all entries of a period: added up in the database by kind, then entered by the same rules as each one. */
-export async function sumBooks(tx: Tx, query: BooksQuery, views: BookViews): Promise<Totals> {
-	const rare = await readRareEvents(tx, query, views)
+/** The totals of a period: of its many events added up in the database, and of the `rare` ones as they were read. */
+export async function sumBooks(tx: Tx, query: BooksQuery, rare: readonly DatedEvent[]): Promise<Totals> {
 	return totalsOf([...(await sumFrequent(tx, query)), ...rare.map(({ event }) => event)])
 }
 
@@ -27,7 +27,9 @@ export async function sumBefore(
 	const closing = views.closings.findLast(({ until }) => until < query.day)
 	const from = closing ? addDays(closing.until, 1) : FIRST_DAY
 	const to = addDays(query.day, -1)
-	const since = from > to ? {} : await sumBooks(tx, { producer: query.producer, from, to }, views)
+	if (from > to) return closing?.totals ?? {}
+	const period = { producer: query.producer, from, to }
+	const since = await sumBooks(tx, period, await readRareEvents(tx, period, views))
 	return addTotals(closing?.totals ?? {}, since)
 }
 
@@ -35,7 +37,7 @@ export async function sumBefore(
  * The events of which there are many, one for all of a kind in a period. What a discount or bad debt took back is summed
  * apart: a debit and a credit do not cancel in the totals.
  */
-export async function sumFrequent(tx: Tx, { producer, from, to }: BooksQuery): Promise<BookEvent[]> {
+async function sumFrequent(tx: Tx, { producer, from, to }: BooksQuery): Promise<BookEvent[]> {
 	const { rows } = await tx.execute<Row>(sql`
 		select kind as of, sum(lines_cents) as a, sum(delivery_cents) as b, sum(tax_cents) as c from invoices
 		where producer_id = ${producer.id} and issued_on between ${from}::date and ${to}::date group by kind
