@@ -36,7 +36,7 @@ export function WhereTable({ rows, head, name, sumLabel }: WhereTableProps) {
 						<td>{name(row)}</td>
 						<td className="num fig">{row.sentPieces}</td>
 						<td className="num fig">{row.brokenPieces}</td>
-						<td className="num pr-4! desk:pr-8!">{shareWords(row.brokenPieces, row.sentPieces)}</td>
+						<td className="num whitespace-nowrap pr-4! desk:pr-8!">{shareWords(row.brokenPieces, row.sentPieces)}</td>
 					</tr>
 				))}
 			</tbody>
@@ -47,7 +47,9 @@ export function WhereTable({ rows, head, name, sumLabel }: WhereTableProps) {
 					</td>
 					<td className="num fig">{sum("sentPieces")}</td>
 					<td className="num fig">{sum("brokenPieces")}</td>
-					<td className="num pr-4! desk:pr-8!">{shareWords(sum("brokenPieces"), sum("sentPieces"))}</td>
+					<td className="num whitespace-nowrap pr-4! desk:pr-8!">
+						{shareWords(sum("brokenPieces"), sum("sentPieces"))}
+					</td>
 				</tr>
 			</tfoot>
 		</table>
