@@ -1,4 +1,4 @@
-import { sql } from "drizzle-orm"
+import { and, eq, sql } from "drizzle-orm"
 import { onlinePaymentParts, onlinePayments } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { type Day, dayInZone } from "~/domain/calendar"
@@ -8,9 +8,10 @@ import { now } from "~/platform/clock.server"
 import { chargeKept, isRefusal, type KeptCharge } from "~/platform/stripe-kept.server"
 import { lockStoreAccount } from "~/services/credits/lock-store-account.server"
 import { bringIntent } from "./bring-from-stripe.server"
+import { queueFailure } from "./queue-failure.server"
 import { readPayable } from "./read-payable.server"
 import { titleOf } from "./start-payment.server"
-import { closeVisit, LEAST_CENTS, leftToPay } from "./visits.server"
+import { LEAST_CENTS, leftToPay } from "./visits.server"
 
 /**
  * Takes what is due from the stores that have agreed to it: one payment a store and day, of the invoices that fell due
@@ -28,11 +29,30 @@ export async function chargeDue({ producerId }: { producerId: string }): Promise
 			await bringIntent(await chargeKept(charge))
 		} catch (error) {
 			// A request that is refused is refused again; whatever else went wrong is tried anew.
-			if (isRefusal(error)) await closeVisit({ producerId, visitId: charge.key })
+			if (isRefusal(error)) await withProducer(producerId, (tx) => noteRefusal(tx, { producerId, charge }))
 			else failure = error
 		}
 	}
 	if (failure) throw failure
+}
+
+/** Stripe takes nothing from this way to pay any more: the payer is told, as when the bank refuses. */
+async function noteRefusal(tx: Tx, { producerId, charge }: { producerId: string; charge: KeptCharge }): Promise<void> {
+	const declineMessage = "The kept way to pay cannot be used any more."
+	const [visit] = await tx
+		.update(onlinePayments)
+		.set({ state: "declined", declineMessage })
+		.where(
+			and(
+				eq(onlinePayments.producerId, producerId),
+				eq(onlinePayments.id, charge.key),
+				eq(onlinePayments.state, "open"),
+			),
+		)
+		.returning()
+	if (!visit) return
+	const { method, amountCents } = visit
+	await queueFailure(tx, { visit, facts: { intentId: visit.id, method, madeAt: null, amountCents, declineMessage } })
 }
 
 type DueStore = { storeId: string; zone: string; invoiceIds: string[] }
@@ -53,6 +73,7 @@ async function readDueStores(tx: Tx, producerId: string): Promise<DueStore[]> {
 			and not exists (
 				select from online_payment_parts x
 				join online_payments o on o.producer_id = x.producer_id and o.id = x.online_payment_id and o.kind = 'automatic'
+					and o.state <> 'expired'
 				where x.producer_id = i.producer_id and x.invoice_id = i.id
 			)
 		group by s.id, p.time_zone order by s.id`)

@@ -78,7 +78,7 @@ async function lookUp(intentId: string) {
 	return { status, amountCents, returnedCents: done.reduce((sum, one) => sum + one.amountCents, 0) }
 }
 
-/** Our payments and sales by card that Stripe listed, and those of the same days that it did not. */
+/** Our payments and sales by card that Stripe listed, those of the same days that it did not, and debits on their way. */
 async function readOurs(tx: Tx, { producerId, since, intents }: Query): Promise<OurPayment[]> {
 	const listed = sql.param(intents.map(({ intentId }) => intentId))
 	const { rows } = await tx.execute<OurPayment>(sql`
@@ -89,7 +89,7 @@ async function readOurs(tx: Tx, { producerId, since, intents }: Query): Promise<
 				and r.payment_id = p.id and r.kind = 'refund' and r.state in ('asked', 'done')), 0)::int as "returnedCents"
 		from payments p
 		where p.producer_id = ${producerId} and p.stripe_payment_intent_id is not null
-			and (p.received_at >= ${since.toISOString()} or p.stripe_payment_intent_id = any(${listed}::text[]))
+			and (p.received_at >= ${since.toISOString()} or p.state = 'on-its-way' or p.stripe_payment_intent_id = any(${listed}::text[]))
 		union all
 		select s.stripe_payment_intent_id, case s.state when 'paid' then 'paid' else 'not-paid' end, s.total_cents, null
 		from sales s

@@ -15,7 +15,16 @@ type Payment = Pick<
 type Back = { stripeId: string; amountCents: number; on: Day; note: string }
 
 /** Tells whoever paid that a debit came back before it cleared, or that what should go by itself was refused: once. */
-export async function queueFailure(tx: Tx, { visit, facts }: { visit: Try; facts: PaymentFacts }): Promise<void> {
+export async function queueFailure(
+	tx: Tx,
+	{
+		visit,
+		facts,
+	}: {
+		visit: Try
+		facts: Pick<PaymentFacts, "intentId" | "method" | "madeAt" | "amountCents" | "declineMessage">
+	},
+): Promise<void> {
 	await queueLetter(tx, visit, {
 		onceKey: `payment-failed:${facts.intentId}`,
 		why: facts.method === "bank-debit" && facts.madeAt ? "debit-returned" : "automatic-refused",

@@ -118,6 +118,21 @@ test("while Stripe does not answer nothing is taken, and the job that comes agai
 	})
 })
 
+test("a card that Stripe knows no more is told like a refusal, and not tried again", async () => {
+	const { yard, shop, of } = await keeping(GOOD_CARD)
+	await addInvoice(yard, shop, { sequence: 1, totalCents: 40_000, dueOn: daysOn(1) })
+	await setAutomatic({ ...of, isOn: true })
+	for (const method of service.fake.state.methods.values()) method.customer = null
+	for (const days of [2, 3]) {
+		vi.useFakeTimers({ toFake: ["Date"], now: Date.now() + days * 86_400_000 })
+		await chargeDue(of)
+		vi.useRealTimers()
+	}
+	expect(await tries(yard)).toEqual(["declined 40000"])
+	const letters = (await findOutbox(yard.producerId)).filter(({ template }) => template === "payment-failed")
+	expect(letters.map(({ recipient }) => recipient)).toEqual([shop.person.email])
+})
+
 test("what was due before the store agreed is left to the store", async () => {
 	const { yard, shop, of } = await keeping(GOOD_CARD)
 	await addInvoice(yard, shop, { sequence: 1, totalCents: 40_000, dueOn: daysOn(-5) })

@@ -1,7 +1,7 @@
 import { eq } from "drizzle-orm"
 import Stripe from "stripe"
 import { afterAll, afterEach, describe, expect, test } from "vitest"
-import { onlinePayments, stripeEvents } from "~/db/schema"
+import { credits, invoices, onlinePayments, settlements, stripeEvents } from "~/db/schema"
 import { withPlatform, withProducer } from "~/db/transaction.server"
 import { findInvoice } from "~/services/invoicing/find-invoice.server"
 import { applyStripeEvent } from "~/services/payments/apply-stripe-event.server"
@@ -14,8 +14,10 @@ import {
 	DECLINED_CARD,
 	GOOD_CARD,
 	openCardPage,
+	readAccount,
 	readBooks,
 	startPaying,
+	startPayingParts,
 	startPaymentService,
 	typeCard,
 } from "./paying"
@@ -158,6 +160,53 @@ describe("paying an invoice by card", () => {
 			payments: ["card 92990", "card 92990"],
 			settledCents: 92_990,
 			visits: ["paid", "paid"],
+		})
+	})
+
+	test("a second tab that pays another part closes the page of the first", async () => {
+		const { yard, shop, number } = await openInvoice()
+		const whole = await openCardPage(yard, shop, number)
+		const part = await startPayingParts(yard, shop, [{ number, cents: 10_000 }])
+		expect(await typeCard(whole, GOOD_CARD)).toBe(410)
+		expect(await typeCard(part.ok ? part.url : "", GOOD_CARD)).toBe(303)
+		await applyAll(service)
+		expect(await readBooks(yard)).toMatchObject({
+			paid: [10_000],
+			payments: ["card 10000"],
+			visits: ["expired", "paid"],
+		})
+	})
+
+	test("of an invoice that was credited while its page stood open, what is over stays on the store's account", async () => {
+		const { yard, shop, number } = await openInvoice()
+		const { producerId } = yard
+		const url = await openCardPage(yard, shop, number)
+		await withProducer(producerId, async (tx) => {
+			const [invoice] = await tx.select().from(invoices).where(eq(invoices.producerId, producerId))
+			const [credit] = await tx
+				.insert(credits)
+				.values({
+					...{ producerId, year: 2026, sequence: 1, storeId: shop.storeId, issuedOn: "2026-08-13", kind: "goodwill" },
+					...{
+						reason: "Six combs weep.",
+						linesCents: 12_990,
+						taxCents: 0,
+						totalCents: 12_990,
+						issuedBy: shop.person.id,
+					},
+				})
+				.returning()
+			await tx.insert(settlements).values({
+				...{ producerId, invoiceId: invoice?.id ?? "", kind: "credit", creditId: credit?.id ?? "" },
+				...{ amountCents: 12_990, settledOn: "2026-08-13" },
+			})
+		})
+		expect(await typeCard(url, GOOD_CARD)).toBe(303)
+		await applyAll(service)
+		expect(await readAccount(yard)).toMatchObject({
+			open: [0],
+			payments: ["card 92990 settled settled 80000 returned 0"],
+			onAccountCents: 12_990,
 		})
 	})
 
