@@ -21,6 +21,7 @@ export default defineConfig({
 				migrate: "scripts/entries/migrate.ts",
 				seed: "scripts/entries/seed.ts",
 				reset: "scripts/entries/reset.ts",
+				"draw-invoices": "scripts/entries/draw-invoices.ts",
 				"draw-statement": "scripts/entries/draw-statement.ts",
 			},
 		},

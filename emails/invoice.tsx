@@ -8,7 +8,7 @@ import { Button } from "./parts/button"
 import { Frame } from "./parts/frame"
 import { GivenTable } from "./parts/given-table"
 import { Lead, Small, Title } from "./parts/text"
-import { mailAddress, webAddress } from "./props"
+import { type DrawElsewhere, mailAddress, webAddress } from "./props"
 import { casesInSentence, joinKnown, KEEP_COMB, mistakeWords, NOT_FOR_INFANTS } from "./words"
 
 /** An invoice with the places to pay it and to print it; the PDF goes with the letter. */
@@ -35,10 +35,11 @@ export function subject({ invoice }: Props): string {
 }
 
 /** The PDF that goes with the letter. Loaded only here, since the drawing of PDFs takes a second to load. */
-export async function attachments({ invoice }: Props) {
-	const { renderInvoicePdf } = await import("./documents/invoice")
+export async function attachments({ invoice }: Props, draw?: DrawElsewhere) {
 	const name = `invoice-${invoice.number.replace(/[^\w-]+/g, "-")}.pdf`
-	return [{ filename: name, content: await renderInvoicePdf(invoice), contentType: "application/pdf" }]
+	const drawn = await draw?.("draw-invoices", invoice)
+	const content = drawn ? Buffer.from(drawn) : await (await import("./documents/invoice")).renderInvoicePdf(invoice)
+	return [{ filename: name, content, contentType: "application/pdf" }]
 }
 
 export default function Invoice(props: Props) {

@@ -13,6 +13,9 @@ export const mailAddress = z.email()
 /** Only web addresses: a link of another scheme has no place in a letter. */
 export const webAddress = z.url({ protocol: /^https?$/ })
 
+/** Draws a document elsewhere, by the name of the program that does; null where there is none, and it is drawn here. */
+export type DrawElsewhere = (program: "draw-invoices", props: unknown) => Promise<Uint8Array> | null
+
 /** The producer at the head and foot of a letter; answers go to `email`. `contactName` is whom to ask for. */
 export const yard = z.object({
 	name: words,

@@ -1,5 +1,6 @@
 import { render, toPlainText } from "react-email"
 import { z } from "zod"
+import type { DrawElsewhere } from "./props"
 import { isTemplateName, type MailAttachment, type Template, templates } from "./templates"
 
 /** A letter ready to be sent; answers go to `replyTo`, the producer it speaks for. */
@@ -19,9 +20,10 @@ export class UnwritableMailError extends Error {
 /**
  * Writes the letter `template` with `props`, which are plain JSON as read from the outbox. Answers subject, HTML, the
  * text version made from that HTML, and the files that go with it. Throws UnwritableMailError, naming each fault but no
- * value, when the name is unknown or the props do not fit, as in a row that another version wrote.
+ * value, when the name is unknown or the props do not fit, as in a row that another version wrote. What goes with it is
+ * drawn by `draw` where that is given and can.
  */
-export async function renderMail(template: string, props: unknown): Promise<RenderedMail> {
+export async function renderMail(template: string, props: unknown, draw?: DrawElsewhere): Promise<RenderedMail> {
 	if (!isTemplateName(template)) throw new UnwritableMailError(`There is no letter named "${template}".`)
 	// The union of all letters has no common props; the schema of the same letter has just vouched for these.
 	const letter = templates[template] as Template<unknown>
@@ -37,7 +39,7 @@ export async function renderMail(template: string, props: unknown): Promise<Rend
 		// Titles are sentences, and a sentence in capitals shouts.
 		text: toPlainText(html, { selectors: [{ selector: "h1", options: { uppercase: false } }] }),
 		replyTo: answersTo(parsed.data),
-		attachments: (await letter.attachments?.(parsed.data)) ?? [],
+		attachments: (await letter.attachments?.(parsed.data, draw)) ?? [],
 	}
 }
 

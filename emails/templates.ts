@@ -17,6 +17,7 @@ import * as orderShared from "./order-shared"
 import * as paymentFailed from "./payment-failed"
 import * as paymentReceived from "./payment-received"
 import * as paymentRefunded from "./payment-refunded"
+import type { DrawElsewhere } from "./props"
 import * as reminder from "./reminder"
 import * as signInCode from "./sign-in-code"
 import * as signInUnknown from "./sign-in-unknown"
@@ -38,7 +39,7 @@ export interface Template<Props> {
 	default: ComponentType<Props & object>
 	subject: (props: Props) => string
 	sample: Props
-	attachments?: (props: Props) => Promise<MailAttachment[]>
+	attachments?: (props: Props, draw?: DrawElsewhere) => Promise<MailAttachment[]>
 }
 
 const letter = <Props>(template: Template<Props>): Template<Props> => template

@@ -37,6 +37,10 @@ export async function measureInvoices({ crew, database, env, count, say }) {
 	}
 	const seconds = (performance.now() - began) / 1000
 	await mustBeWhole(client, { producerId, count, pdfs: sink.counts.pdfs })
+	const shares = [0.1, 0.25, 0.5, 0.75, 1].map((share) => memory.find(({ letters }) => letters >= count * share))
+	say(
+		`The worker at a tenth, a quarter, a half, three quarters and the end: ${shares.map((at) => at?.megabytes.toFixed(0)).join(", ")} MB`,
+	)
 	const settled = memory.find(({ letters }) => letters >= count / 10)?.megabytes ?? 0
 	const most = Math.max(...memory.filter(({ letters }) => letters >= count / 10).map(({ megabytes }) => megabytes))
 	say(

@@ -1,5 +1,4 @@
 import { sql } from "drizzle-orm"
-import { breaksConstraint } from "~/db/errors.server"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { sendingRefusalWords } from "~/domain/invoicing/refusal-words"
 import { log } from "~/platform/log.server"
@@ -18,19 +17,21 @@ export async function sendInvoiceRun({ producerId, runId }: Run): Promise<void> 
 	const producer = await findInvoicingProducer(producerId)
 	const failures = new Map<string, unknown>()
 	for (;;) {
-		const next = await withProducer(producerId, (tx) => findNext(tx, { producerId, runId, but: [...failures.keys()] }))
-		if (!next) break
+		const taken: { order: Waiting | null } = { order: null }
 		try {
 			await withProducer(producerId, async (tx) => {
-				if (!(await lockWaiting(tx, { producerId, runId, orderId: next.orderId }))) return
-				const sent = await sendOrderIn(tx, { producer, number: next.number, personId: next.startedBy })
-				const problem = sent.ok ? "" : sendingRefusalWords(next.number, sent)
-				await mark(tx, { producerId, runId, orderId: next.orderId, problem })
+				taken.order = await lockNext(tx, { producerId, runId, but: [...failures.keys()] })
+				if (!taken.order) return
+				const { orderId, number, startedBy } = taken.order
+				const sent = await sendOrderIn(tx, { producer, number, personId: startedBy })
+				const problem = sent.ok ? "" : sendingRefusalWords(number, sent)
+				await mark(tx, { producerId, runId, orderId, problem })
 			})
+			if (!taken.order) break
 		} catch (error) {
-			failures.set(next.orderId, error)
-			if (breaksConstraint(error, "books_closed")) continue
-			log.error({ err: error, runId, orderNumber: next.number }, "an order of a run was not sent")
+			if (!taken.order) throw error
+			failures.set(taken.order.orderId, error)
+			log.error({ err: error, runId, orderNumber: taken.order.number }, "an order of a run was not sent")
 		}
 	}
 	await withProducer(producerId, (tx) =>
@@ -43,7 +44,8 @@ export async function sendInvoiceRun({ producerId, runId }: Run): Promise<void> 
 	if (failures.size > 0) throw [...failures.values()][0]
 }
 
-async function findNext(tx: Tx, query: Run & { but: readonly string[] }): Promise<Waiting | null> {
+/** Takes the next waiting order of the run in hand, past those that other workers have; null when none is left. */
+async function lockNext(tx: Tx, query: Run & { but: readonly string[] }): Promise<Waiting | null> {
 	const { producerId, runId, but } = query
 	const { rows } = await tx.execute<Waiting>(sql`
 		select w.order_id as "orderId", o.number, r.started_by as "startedBy"
@@ -52,17 +54,8 @@ async function findNext(tx: Tx, query: Run & { but: readonly string[] }): Promis
 		join orders o on o.producer_id = w.producer_id and o.id = w.order_id
 		where w.producer_id = ${producerId} and w.run_id = ${runId} and w.state = 'waiting'
 			and w.order_id <> all(${sql.param([...but])}::uuid[])
-		order by o.number limit 1`)
+		order by o.number limit 1 for update of w skip locked`)
 	return rows[0] ?? null
-}
-
-/** Takes one order of the run in hand; false when another worker did it meanwhile. */
-async function lockWaiting(tx: Tx, query: Run & { orderId: string }): Promise<boolean> {
-	const { producerId, runId, orderId } = query
-	const { rows } = await tx.execute<{ state: string }>(sql`
-		select state from invoice_run_orders
-		where producer_id = ${producerId} and run_id = ${runId} and order_id = ${orderId} for update`)
-	return rows[0]?.state === "waiting"
 }
 
 async function mark(tx: Tx, query: Run & { orderId: string; problem: string }): Promise<void> {

@@ -1,6 +1,7 @@
 import { and, eq, isNull, sql } from "drizzle-orm"
 import { outboxMails } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
+import { askThread } from "~/platform/lasting-thread.server"
 import { log } from "~/platform/log.server"
 import { sendMail } from "~/platform/mailer.server"
 import { renderMail, UnwritableMailError } from "~emails/render"
@@ -22,7 +23,7 @@ export async function sendQueuedMail(query: { producerId: string; mailId: string
 			.for("update", { skipLocked: true })
 		if (!mail) return null
 		try {
-			const letter = await renderMail(mail.template, mail.props)
+			const letter = await renderMail(mail.template, mail.props, askThread)
 			await sendMail({ ...letter, to: mail.recipient, messageId: `<${mail.id}@waxbill>` })
 			await tx
 				.update(outboxMails)
