@@ -1,6 +1,6 @@
 import { z } from "zod"
 import { dayWords, fullDay, monthDay } from "~/domain/calendar"
-import { discountWords } from "~/domain/invoicing/discount-words"
+import { discountWords, missedDiscountWords } from "~/domain/invoicing/discount-words"
 import { openCents, settledParts } from "~/domain/invoicing/invoice-facts"
 import { formatMoney } from "~/domain/money"
 import { type InvoiceProps, invoiceProps, sampleInvoice, sentLines } from "./documents/invoice-props"
@@ -64,7 +64,7 @@ export default function Invoice(props: Props) {
 				)}
 			</Title>
 			<Lead>{deliverySentence(invoice)}</Lead>
-			{discount && open > 0 && <Lead>{discountWords(discount)}.</Lead>}
+			{discount && open > 0 && <Lead>{discountSentences({ issuedOn, dueOn: due.on, discount })}</Lead>}
 			<Button
 				href={payUrl}
 				words={open > 0 ? "Pay by card" : "Open the invoice"}
@@ -79,6 +79,11 @@ export default function Invoice(props: Props) {
 			<Small lines={[`${KEEP_COMB} ${NOT_FOR_INFANTS}`, ...notes, mistakeWords(yard)]} />
 		</Frame>
 	)
+}
+
+/** What may be taken off until when, and what it costs to let that go. */
+function discountSentences(invoice: Parameters<typeof missedDiscountWords>[0]): string {
+	return joinKnown([`${discountWords(invoice.discount)}.`, missedDiscountWords(invoice)], " ")
 }
 
 /** "For Pantry & Plume: eight cases on Tuesday, August 18, 8:40 am, back door, signed for by Rosa Quill." */

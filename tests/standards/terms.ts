@@ -1,6 +1,7 @@
 import { describe, expect, test } from "vitest"
 import { ageingBucket } from "~/domain/invoicing/ageing"
-import { dueDates, missedDiscountRates, type Terms } from "~/domain/invoicing/terms"
+import { missedDiscountRates } from "~/domain/invoicing/missed-discount"
+import { dueDates, type Terms } from "~/domain/invoicing/terms"
 import type { PublishedValues } from "./published-values"
 
 const none = { discountBasisPoints: 0, discountDays: 0 }

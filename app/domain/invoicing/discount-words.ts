@@ -1,5 +1,7 @@
-import { type Day, monthDay } from "~/domain/calendar"
-import { formatMoney, plainMoney } from "~/domain/money"
+import { type Day, daysBetween, monthDay } from "~/domain/calendar"
+import { formatMoney } from "~/domain/money"
+import { missedDiscountRates } from "./missed-discount"
+import { percentWords } from "./percent-words"
 
 /** A discount for paying early: so many basis points off, `cents` in all, until the end of a day. */
 export type EarlyDiscount = { basisPoints: number; cents: number; untilOn: Day }
@@ -9,7 +11,18 @@ export function discountWords({ basisPoints, cents, untilOn }: EarlyDiscount): s
 	return `${percentWords(basisPoints)} off, ${formatMoney(cents)}, if paid by ${monthDay(untilOn)}`
 }
 
-/** Basis points as a percentage without needless digits: 200 is "2 %", 725 "7.25 %". */
-export function percentWords(basisPoints: number): string {
-	return `${plainMoney(basisPoints).replace(/\.?0+$/, "")} %`
+/**
+ * What it costs to let a discount go until the due day, as a yearly rate: "Paying on September 17 instead costs as much as
+ * borrowing at 37 % a year." Null where the due day is no later than the discount's.
+ */
+export function missedDiscountWords(invoice: { issuedOn: Day; dueOn: Day; discount: EarlyDiscount }): string | null {
+	const { issuedOn, dueOn, discount } = invoice
+	if (dueOn <= discount.untilOn) return null
+	const { simple } = missedDiscountRates({
+		discountBasisPoints: discount.basisPoints,
+		discountDays: daysBetween(issuedOn, discount.untilOn),
+		paidDay: daysBetween(issuedOn, dueOn),
+		yearDays: 365,
+	})
+	return `Paying on ${monthDay(dueOn)} instead costs as much as borrowing at ${Math.round(simple)} % a year.`
 }

@@ -1,6 +1,6 @@
 import { addDays, type Day, endOfMonth } from "~/domain/calendar"
 import { percentOf } from "~/domain/money"
-import { percentWords } from "./discount-words"
+import { percentWords } from "./percent-words"
 
 /**
  * When a store pays. `days` counts from the invoice ("net") or from the end of its month ("end-of-month"), and means
@@ -43,27 +43,6 @@ export function dueDates(terms: Terms, invoicedOn: Day): DueDates {
 /** What may be taken off `totalCents` when it is paid within the discount, rounded once to whole cents. */
 export function discountCents(terms: Pick<Terms, "discountBasisPoints">, totalCents: number): number {
 	return percentOf(totalCents, terms.discountBasisPoints)
-}
-
-/**
- * What a store pays for letting the discount go, as a yearly rate in percent: it keeps the money from the last day of the
- * discount to `paidDay`, both counted from the invoice, and pays the discount for that. `simple` takes the cost as many
- * times as the span goes into the year; `effective` lets it grow each time. `yearDays` is 365, or 360 as bankers count.
- * Throws RangeError when nothing can be let go. Source: published values "terms" (trade_credit).
- */
-export function missedDiscountRates(terms: {
-	discountBasisPoints: number
-	discountDays: number
-	paidDay: number
-	yearDays: 360 | 365
-}): { simple: number; effective: number } {
-	const { discountBasisPoints, discountDays, paidDay, yearDays } = terms
-	const daysKept = paidDay - discountDays
-	if (discountBasisPoints <= 0 || discountBasisPoints >= 10_000 || daysKept <= 0)
-		throw new RangeError("no discount is let go")
-	const costOfSpan = discountBasisPoints / (10_000 - discountBasisPoints)
-	const spans = yearDays / daysKept
-	return { simple: costOfSpan * spans * 100, effective: ((1 + costOfSpan) ** spans - 1) * 100 }
 }
 
 /** Terms in words: "due on receipt", "net 30 days", "2 % off within 10 days, net 30 days", "10 days after the month ends". */

@@ -1,7 +1,7 @@
 import { data, Form, Link, redirect } from "react-router"
 import { z } from "zod"
 import { dayInZone, fullDay } from "~/domain/calendar"
-import { percentWords } from "~/domain/invoicing/discount-words"
+import { percentWords } from "~/domain/invoicing/percent-words"
 import { plainMoney } from "~/domain/money"
 import { now as askClock } from "~/platform/clock.server"
 import { dropTaxRate, findTaxRates, setOwnTaxRate, setTaxRate } from "~/services/invoicing/tax-rates.server"
