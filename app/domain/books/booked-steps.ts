@@ -4,7 +4,7 @@ import { addDays, type Day } from "~/domain/calendar"
 export type NotedStates = { until: Day; states: Readonly<Record<string, string>> }
 
 /** A change of state and the day on which it is entered. */
-export type BookedStep<State extends string> = { on: Day; from: State | null; to: State }
+type BookedStep<State extends string> = { on: Day; from: State | null; to: State }
 
 /**
  * On which days the states of a thing are entered, when it is dated `on` and only its present state is known. A state that

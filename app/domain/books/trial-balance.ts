@@ -2,7 +2,7 @@ import { accountsInOrder, type BookAccountKey } from "./accounts"
 import { type BookEvent, type BookLine, entriesOf } from "./entries"
 
 /** Debit and credit of an account, added up. */
-export type AccountTotal = { debitCents: number; creditCents: number }
+type AccountTotal = { debitCents: number; creditCents: number }
 
 /** The totals of the accounts that something was entered on. */
 export type Totals = Partial<Record<BookAccountKey, AccountTotal>>
@@ -42,7 +42,7 @@ export function balanceOf(totals: Totals, account: BookAccountKey): number {
 }
 
 /** One account of a trial balance: what was on it before, what was entered, what is on it. Balances as `balanceOf`. */
-export type BalanceRow = { account: BookAccountKey; beforeCents: number; afterCents: number } & AccountTotal
+type BalanceRow = { account: BookAccountKey; beforeCents: number; afterCents: number } & AccountTotal
 
 export type TrialBalance = {
 	rows: BalanceRow[]

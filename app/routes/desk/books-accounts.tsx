@@ -29,7 +29,7 @@ export const action = guard(admits.desk("owner"), async ({ request, url }: Route
 export default function BooksAccounts({ loaderData, actionData, params }: Route.ComponentProps) {
 	const errors = actionData?.errors ?? []
 	return (
-		<DeskBook frame={loaderData.frame} ruled>
+		<DeskBook frame={loaderData.frame}>
 			<SheetHead
 				title="Names of accounts"
 				lead={

@@ -1,5 +1,5 @@
 import { data, Form, Link, redirect, useNavigation } from "react-router"
-import { dayInZone, fullDay, isDay } from "~/domain/calendar"
+import { addDays, type Day, dayInZone, fullDay, isDay } from "~/domain/calendar"
 import { now as askClock } from "~/platform/clock.server"
 import { type ClosedBooks, closeBooks } from "~/services/books/close-books.server"
 import { findClosing } from "~/services/books/find-closing.server"
@@ -21,15 +21,13 @@ export const meta: Route.MetaFunction = () => [{ title: "Close the books · Waxb
 export const loader = guard(admits.desk("owner"), async ({ url }: Route.LoaderArgs, scope) => {
 	const { producer } = scope
 	const now = askClock()
+	const today = dayInZone(now, producer.timeZone)
 	const asked = url.searchParams.get("until")
-	const error = asked !== null && !isDay(asked) ? "Choose a day." : null
+	const page = await findClosing({ producer, until: asked !== null && isDay(asked) ? asked : null, today })
+	const error = asked === null ? null : problemOf(asked, page)
 	const answer = {
 		frame: await findDeskFrame(scope, { part: "invoices", now }),
-		...(await findClosing({
-			producer,
-			until: error ? null : asked,
-			today: dayInZone(now, producer.timeZone),
-		})),
+		...page,
 		error,
 		closed: url.searchParams.get("closed"),
 	}
@@ -46,6 +44,14 @@ export const action = guard(admits.desk("owner"), async ({ request, url }: Route
 	throw redirect(`${url.pathname}?closed=${until}`)
 })
 
+/** Why the books cannot be closed until that day; null when they can. */
+function problemOf(until: string, { latest, firstOpen }: { latest: Day; firstOpen: Day | null }): string | null {
+	if (!isDay(until)) return "Choose a day."
+	if (until > latest) return refusalWords({ ok: false, reason: "not-over-yet" })
+	if (firstOpen === null || until >= firstOpen) return null
+	return refusalWords({ ok: false, reason: "closed-already", until: addDays(firstOpen, -1) })
+}
+
 function refusalWords(refusal: ClosedBooks & { ok: false }): string {
 	return refusal.reason === "not-over-yet"
 		? "Choose a day before today: more may still be entered today."
@@ -54,12 +60,12 @@ function refusalWords(refusal: ClosedBooks & { ok: false }): string {
 
 export default function BooksClose({ loaderData, actionData, params }: Route.ComponentProps) {
 	const { until, latest, firstOpen, stillOpen, earlier, closed } = loaderData
+	const canClose = !loaderData.error && until <= latest && (!firstOpen || until >= firstOpen)
 	const isBusy = useNavigation().formMethod === "POST"
 	const error = actionData?.error ?? loaderData.error
 	const base = `/desk/${params.producer}/books`
-	const canClose = until <= latest && (!firstOpen || until >= firstOpen)
 	return (
-		<DeskBook frame={loaderData.frame} ruled>
+		<DeskBook frame={loaderData.frame}>
 			<SheetHead
 				title="Close the books"
 				lead={

@@ -4,14 +4,14 @@ import { addDays, type Day, dayInZone, endOfMonth } from "~/domain/calendar"
 import { readClosings } from "./read-closings.server"
 
 /** What is still open up to a day: a count, and some of it by name, the earliest first. */
-export type StillOpen = {
+type StillOpen = {
 	of: "sent-not-invoiced" | "on-its-way" | "refund-asked" | "stripe-differs" | "market-open"
 	count: number
 	/** Numbers of orders, names of stores with amounts, markets with days. */
 	examples: { words: string; on: Day; cents: number | null }[]
 }
 
-export type ClosingPage = {
+type ClosingPage = {
 	until: Day
 	/** The last day that can be chosen. */
 	latest: Day
@@ -44,7 +44,7 @@ export function findClosing(query: {
 			until,
 			latest,
 			firstOpen,
-			stillOpen: (await readStillOpen(tx, producer.id, until)).filter(({ count }) => count > 0),
+			stillOpen: (await readStillOpen(tx, producer, until)).filter(({ count }) => count > 0),
 			earlier: closings.toReversed().map(({ until, closedBy, closedAt }) => ({
 				until,
 				closedBy,
@@ -63,7 +63,11 @@ function suggested(today: Day, firstOpen: Day | null): Day {
 type Row = { of: StillOpen["of"]; words: string; on: Day; cents: number | null; count: number }
 
 /** Each kind along its own index, its first few with the count of all. */
-async function readStillOpen(tx: Tx, producerId: string, until: Day): Promise<StillOpen[]> {
+async function readStillOpen(
+	tx: Tx,
+	{ id: producerId, timeZone }: { id: string; timeZone: string },
+	until: Day,
+): Promise<StillOpen[]> {
 	const { rows } = await tx.execute<Row>(sql`
 		select * from (
 			(select 'sent-not-invoiced' as of, o.number::text || ', ' || s.name as words, o.delivery_on::text as on, null::int as cents,
@@ -84,7 +88,7 @@ async function readStillOpen(tx: Tx, producerId: string, until: Day): Promise<St
 			where r.producer_id = ${producerId} and r.state = 'asked' and r.returned_on <= ${until}::date
 			order by r.returned_on, r.id limit ${NAMED})
 			union all
-			(select 'stripe-differs', d.stripe_id, d.found_at::date::text, coalesce(d.their_cents, d.our_cents), count(*) over ()::int
+			(select 'stripe-differs', d.stripe_id, (d.found_at at time zone ${timeZone})::date::text, coalesce(d.their_cents, d.our_cents), count(*) over ()::int
 			from stripe_differences d where d.producer_id = ${producerId} and d.settled_at is null
 			order by d.found_at, d.id limit ${NAMED})
 			union all

@@ -5,7 +5,7 @@ import type { Day } from "~/domain/calendar"
 import { type Closing, readClosings, type StallTax } from "./read-closings.server"
 
 /** How accounts, stores and markets are called, and the tax that the stall's prices contain. */
-export type BookView = { chart: Chart; names: ReadonlyMap<string, string>; stallTax: StallTax }
+type BookView = { chart: Chart; names: ReadonlyMap<string, string>; stallTax: StallTax }
 
 export type BookViews = {
 	closings: readonly Closing[]

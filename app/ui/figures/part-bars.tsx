@@ -1,9 +1,9 @@
 import type { ReactNode } from "react"
 
 /** How a part of a bar is drawn; its words stand beside the bar. */
-export type PartFill = "money-in" | "money-out" | "crop-sold" | "crop-stock" | "crop-lost" | "crop-cut"
+type PartFill = "money-in" | "money-out" | "crop-sold" | "crop-stock" | "crop-lost" | "crop-cut"
 
-export type PartBar = {
+type PartBar = {
 	key: string
 	name: ReactNode
 	parts: readonly { fill: PartFill; amount: number }[]
