@@ -2,7 +2,8 @@ import { randomUUID } from "node:crypto"
 import { credits, invoices, paymentReturns, payments, settlements } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
-import type { Shop } from "../orders/place-yard"
+import { renderMail } from "~emails/render"
+import { findOutbox, type Shop } from "../orders/place-yard"
 
 type Kind = (typeof settlements.$inferInsert)["kind"]
 
@@ -93,4 +94,10 @@ export function openAccount(shop: Shop, personId: string, numberedFrom = 0) {
 	}
 }
 
-export type Account = ReturnType<typeof openAccount>
+/** Writes every letter that waits in a producer's outbox as the worker would. Throws at the first that cannot be written. */
+export async function writeLetters(producerId: string): Promise<string[]> {
+	const subjects: string[] = []
+	for (const { template, props } of await findOutbox(producerId))
+		subjects.push((await renderMail(template, props)).subject)
+	return subjects
+}

@@ -11,6 +11,7 @@ import { remindCertificates } from "~/services/certificates/remind-certificates.
 import { findToLookAt } from "~/services/receivables/find-to-look-at.server"
 import { addHand } from "../desk/desk-steps"
 import { findOutbox, openStore, openYard, type Shop, ZONE } from "../orders/place-yard"
+import { writeLetters } from "./account"
 
 const TODAY = "2026-08-31"
 const NOW = new Date("2026-08-31T14:00:00Z")
@@ -99,6 +100,7 @@ describe("the producer's answer", () => {
 		expect(first).toEqual({ ok: true })
 		expect(await untilOf(shop)).toBe("2027-03-31")
 		expect(await again()).toEqual({ ok: false, reason: "answered-already" })
+		expect(await writeLetters(yard.producerId)).toEqual([expect.stringContaining("on file until March 31, 2027")])
 		const letters = await findOutbox(yard.producerId)
 		expect(letters).toMatchObject([
 			{ template: "certificate-answer", props: { validUntil: "2027-03-31", reason: null } },

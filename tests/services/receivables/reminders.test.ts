@@ -8,7 +8,7 @@ import { sendReminders } from "~/services/receivables/send-reminders.server"
 import { saveReminderStep, switchReminders, takeFirstSteps } from "~/services/receivables/set-reminders.server"
 import { addHand } from "../desk/desk-steps"
 import { findOutbox, openStore, openYard, type Shop, type Yard } from "../orders/place-yard"
-import { openAccount } from "./account"
+import { openAccount, writeLetters } from "./account"
 
 /** A week after invoices due on August 15; nine in the morning in the yard's zone. */
 const MORNING = new Date("2026-08-22T13:00:00Z")
@@ -47,6 +47,7 @@ describe("a reminder", () => {
 				{ number: "2026-0002", openCents: 10_010 },
 			],
 		})
+		expect(await writeLetters(yard.producerId)).toEqual(["Larkmoor Bee Yard: $1,030.00 was due on August 15, 2026"])
 		expect(letter).toHaveProperty("body", expect.stringContaining("invoice 2026-0001 and 2026-0002"))
 	})
 

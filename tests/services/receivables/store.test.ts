@@ -14,7 +14,7 @@ import { saveStore } from "~/services/receivables/save-store.server"
 import { writeOff } from "~/services/receivables/write-off.server"
 import { addHand, place } from "../desk/desk-steps"
 import { addProduct, findOutbox, openStore, openYard, type Shop, type Yard } from "../orders/place-yard"
-import { openAccount } from "./account"
+import { openAccount, writeLetters } from "./account"
 
 const TODAY = "2026-08-31"
 
@@ -184,7 +184,7 @@ describe("the charge for paying late", () => {
 		expect(runs.flatMap(({ charged }) => charged)).toEqual(["2026-0003"])
 		const { openInvoices } = await pageOf(shop)
 		expect(openInvoices.map(({ number, openCents }) => [number, openCents])).toContainEqual(["2026-0003", 1_500])
-		expect(await findOutbox(yard.producerId)).toMatchObject([{ template: "invoice" }])
+		expect(await writeLetters(yard.producerId)).toEqual([expect.stringContaining("invoice 2026-0003, $15.00 by")])
 		expect(await charge(new Date("2026-11-01T13:00:00Z"))).toEqual({ charged: ["2026-0004"] })
 		const after = await pageOf(shop)
 		// In November both invoices are late by more than 30 days; the charge of October is not charged on.
