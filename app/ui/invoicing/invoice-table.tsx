@@ -82,14 +82,7 @@ function InvoiceRow({
 			</td>
 			{showStore && <td>{invoice.storeName}</td>}
 			<td className="max-desk:hidden">
-				{invoice.orderNumbers
-					.split(", ")
-					.filter((number) => number !== "")
-					.map((number) => (
-						<Link key={number} className="mr-2 inline-block py-1 fig" to={`${base}/orders/${number}`}>
-							{number}
-						</Link>
-					))}
+				<OrderLinks numbers={invoice.orderNumbers.split(", ").filter((number) => number !== "")} base={base} />
 			</td>
 			<td className="max-desk:hidden">{listDay(invoice.issuedOn, today)}</td>
 			<td>
@@ -100,5 +93,22 @@ function InvoiceRow({
 			<td className="money max-desk:hidden">{formatMoney(invoice.totalCents)}</td>
 			<td className="money pr-4! desk:pr-8!">{standing.openCents > 0 ? formatMoney(standing.openCents) : ""}</td>
 		</tr>
+	)
+}
+
+/** More would make the row of a month's invoice taller than the page. */
+const MOST_ORDERS = 4
+
+function OrderLinks({ numbers, base }: { numbers: readonly string[]; base: string }) {
+	const more = numbers.length - MOST_ORDERS
+	return (
+		<>
+			{numbers.slice(0, MOST_ORDERS).map((number) => (
+				<Link key={number} className="mr-2 inline-block py-1 fig" to={`${base}/orders/${number}`}>
+					{number}
+				</Link>
+			))}
+			{more > 0 && <span className="note">and {more} more</span>}
+		</>
 	)
 }
