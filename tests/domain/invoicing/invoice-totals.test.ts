@@ -2,6 +2,7 @@ import fc from "fast-check"
 import { describe, expect, test } from "vitest"
 import { invoiceTotals } from "~/domain/invoicing/invoice-totals"
 import { salesTax } from "~/domain/invoicing/sales-tax"
+import { lineAmount } from "~/domain/pricing/weighed-line"
 
 const lines = [
 	{ amountCents: 32_490, isTaxable: false },
@@ -72,6 +73,35 @@ describe("the sums of an invoice", () => {
 					if (!someLines[index]?.isTaxable) expect(cents).toBe(0)
 				}
 			}),
+		)
+	})
+
+	test("whatever was weighed, and at whatever rate: the total is the lines, the delivery and the tax, to the cent", () => {
+		const anyLine = fc.record({
+			cases: fc.integer({ min: 0, max: 40 }),
+			caseCents: fc.nat(50_000),
+			poundCents: fc.option(fc.integer({ min: 1, max: 5_000 })),
+			weighedGrams: fc.nat(60_000),
+			isTaxable: fc.boolean(),
+		})
+		fc.assert(
+			fc.property(
+				fc.array(anyLine, { maxLength: 20 }),
+				fc.nat(5_000),
+				fc.nat(3_000),
+				fc.boolean(),
+				fc.boolean(),
+				(packed, deliveryCents, taxBasisPoints, isDeliveryTaxable, isExempt) => {
+					const priced = packed.map((line) => ({ amountCents: lineAmount(line).cents, isTaxable: line.isTaxable }))
+					const totals = invoiceTotals({ lines: priced, deliveryCents, isDeliveryTaxable, taxBasisPoints, isExempt })
+					const sum = (cents: readonly number[]) => cents.reduce((a, b) => a + b, 0)
+					expect(totals.linesCents).toBe(sum(priced.map(({ amountCents }) => amountCents)))
+					expect(totals.totalCents).toBe(totals.linesCents + totals.deliveryCents + totals.taxCents)
+					expect(sum(totals.lineTaxCents) + totals.deliveryTaxCents).toBe(totals.taxCents)
+					if (isExempt) expect(totals.taxCents).toBe(0)
+					for (const cents of [totals.taxCents, ...totals.lineTaxCents]) expect(Number.isSafeInteger(cents)).toBe(true)
+				},
+			),
 		)
 	})
 })
