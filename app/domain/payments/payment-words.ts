@@ -18,14 +18,15 @@ export type PaymentState = "on-its-way" | "settled" | "returned"
 
 type Kept = { state: PaymentState; amountCents: number; settledCents: number; returnedCents: number }
 
-/** How a payment stands: "on its way", "came back", "part on account", "settled". */
+/** How a payment stands: "on its way", "came back" before it had cleared, "went back", "part on account", "settled". */
 export function paymentWords(payment: Kept): string {
 	const { state, amountCents, settledCents, returnedCents } = payment
 	if (state === "on-its-way") return "on its way"
-	if (state === "returned" || returnedCents === amountCents) return "came back"
+	if (state === "returned") return "came back"
+	if (returnedCents === amountCents) return "went back"
 	const onAccount = amountCents - settledCents - returnedCents
 	const parts = [
-		...(returnedCents > 0 ? ["part came back"] : []),
+		...(returnedCents > 0 ? ["part went back"] : []),
 		...(onAccount > 0 ? [settledCents > 0 ? "part on account" : "on account"] : []),
 	]
 	return parts.length > 0 ? parts.join(", ") : "settled"

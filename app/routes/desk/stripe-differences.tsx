@@ -47,12 +47,14 @@ export default function StripeDifferences({ loaderData, params }: Route.Componen
 				<table className="sheet-table">
 					<thead>
 						<tr>
-							<th scope="col">Found</th>
+							<th scope="col" className="max-desk:hidden">
+								Found
+							</th>
 							<th scope="col">What differs</th>
-							<th scope="col" className="num">
+							<th scope="col" className="num max-desk:hidden">
 								Here
 							</th>
-							<th scope="col" className="num">
+							<th scope="col" className="num max-desk:hidden">
 								At Stripe
 							</th>
 							<th scope="col" className="pr-4! desk:pr-8!">
@@ -63,9 +65,12 @@ export default function StripeDifferences({ loaderData, params }: Route.Componen
 					<tbody>
 						{differences.map((one) => (
 							<tr key={one.id}>
-								<td>{fullDay(one.foundOn)}</td>
+								<td className="max-desk:hidden">{fullDay(one.foundOn)}</td>
 								<td>
 									<b className="name">{differenceWords(one.kind)}</b>
+									<span className="note block desk:hidden">
+										{fullDay(one.foundOn)}: here {amountWords(one.ourCents)}, at Stripe {amountWords(one.theirCents)}.
+									</span>
 									<span className="note block">
 										{one.detail}{" "}
 										{one.paymentId ? (
@@ -75,8 +80,8 @@ export default function StripeDifferences({ loaderData, params }: Route.Componen
 										)}
 									</span>
 								</td>
-								<td className="money">{one.ourCents === null ? "" : formatMoney(one.ourCents)}</td>
-								<td className="money">{one.theirCents === null ? "" : formatMoney(one.theirCents)}</td>
+								<td className="money max-desk:hidden">{one.ourCents === null ? "" : formatMoney(one.ourCents)}</td>
+								<td className="money max-desk:hidden">{one.theirCents === null ? "" : formatMoney(one.theirCents)}</td>
 								<td className="pr-4! text-right desk:pr-8!">
 									<Form method="post">
 										<input type="hidden" name="difference" value={one.id} />
@@ -91,3 +96,5 @@ export default function StripeDifferences({ loaderData, params }: Route.Componen
 		</DeskBook>
 	)
 }
+
+const amountWords = (cents: number | null) => (cents === null ? "nothing" : formatMoney(cents))

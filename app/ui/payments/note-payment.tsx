@@ -20,7 +20,7 @@ type NotePaymentProps = {
 export function NotePayment({ paymentId, today, amount, amountHint, values, errors, children }: NotePaymentProps) {
 	const errorOf = (field: string) => errors.find((error) => error.field === field)?.message
 	return (
-		<Form method="post" className="payment-form" noValidate aria-label="Note a payment">
+		<Form method="post" className="payment-form hand-payment" noValidate aria-label="Note a payment">
 			<input type="hidden" name="paymentId" value={values?.paymentId ?? paymentId} />
 			<SelectField
 				name="method"

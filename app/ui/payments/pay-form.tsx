@@ -1,5 +1,5 @@
 import { Form } from "react-router"
-import { type Day, dayWords, shortMonthDay } from "~/domain/calendar"
+import { type Day, dayWords, shortDay, shortMonthDay } from "~/domain/calendar"
 import { formatMoney, plainMoney } from "~/domain/money"
 import { Button } from "~/ui/forms/button"
 import { QuantityField } from "~/ui/forms/quantity-field"
@@ -36,7 +36,7 @@ export function PayForm({ lines, ticked, values, errors, keptWords, isLeaving }:
 					<tr>
 						<th scope="col">Pay</th>
 						<th scope="col">Due</th>
-						<th scope="col" className="num">
+						<th scope="col" className="num max-desk:hidden">
 							Still open
 						</th>
 						<th scope="col" className="num pr-4! desk:pr-8!">
@@ -61,10 +61,14 @@ export function PayForm({ lines, ticked, values, errors, keptWords, isLeaving }:
 								</label>
 							</td>
 							<td>
-								{dayWords(line.dueOn)}
+								<span className="max-desk:hidden">{dayWords(line.dueOn)}</span>
+								<span className="desk:hidden">
+									{shortDay(line.dueOn).split(" ")[0]}, {shortMonthDay(line.dueOn)}
+								</span>
+								<span className="note block desk:hidden">{formatMoney(line.openCents)} open</span>
 								<LineNote line={line} />
 							</td>
-							<td className="money">{plainMoney(line.openCents)}</td>
+							<td className="money max-desk:hidden">{plainMoney(line.openCents)}</td>
 							<td className="pr-4! text-right desk:pr-8!">
 								{line.leftCents === 0 ? (
 									<span className="note">nothing</span>

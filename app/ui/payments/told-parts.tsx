@@ -1,5 +1,5 @@
 import { type Day, dayWords } from "~/domain/calendar"
-import { formatMoney, plainMoney } from "~/domain/money"
+import { formatMoney } from "~/domain/money"
 import { QuantityField } from "~/ui/forms/quantity-field"
 
 type Open = { number: string; dueOn: Day; openCents: number; onItsWayCents: number }
@@ -54,7 +54,6 @@ export function ToldParts({
 							name={`told-${invoice.number}`}
 							className="wide"
 							label={`Of it to invoice ${invoice.number}`}
-							placeholder={plainMoney(invoice.openCents)}
 							defaultValue={values?.[`told-${invoice.number}`]}
 							error={errors.find(({ field }) => field === `told-${invoice.number}`)?.message}
 						/>

@@ -9,8 +9,8 @@ test("a payment says how it stands", () => {
 	expect(paymentWords({ ...payment, state: "returned", settledCents: 0 })).toBe("came back")
 	expect(paymentWords({ ...payment, settledCents: 60 })).toBe("part on account")
 	expect(paymentWords({ ...payment, settledCents: 0 })).toBe("on account")
-	expect(paymentWords({ ...payment, settledCents: 60, returnedCents: 30 })).toBe("part came back, part on account")
-	expect(paymentWords({ ...payment, settledCents: 0, returnedCents: 100 })).toBe("came back")
+	expect(paymentWords({ ...payment, settledCents: 60, returnedCents: 30 })).toBe("part went back, part on account")
+	expect(paymentWords({ ...payment, settledCents: 0, returnedCents: 100 })).toBe("went back")
 })
 
 test("a dispute that is lost says that the money is gone, and one that is open does not", () => {
