@@ -9,7 +9,7 @@ export default {
 		"server.ts",
 		"app/jobs/worker.server.ts",
 		"scripts/*.mjs",
-		"scripts/entries/{migrate,seed,reset,draw-invoices,draw-statement}.ts",
+		"scripts/entries/{migrate,seed,reset,draw-invoices,draw-statements}.ts",
 		"fakes/*/server.ts",
 		// Started by name from scripts: a preview in tsx, a build by Vite.
 		"scripts/email-preview.tsx",

@@ -22,7 +22,7 @@ export default defineConfig({
 				seed: "scripts/entries/seed.ts",
 				reset: "scripts/entries/reset.ts",
 				"draw-invoices": "scripts/entries/draw-invoices.ts",
-				"draw-statement": "scripts/entries/draw-statement.ts",
+				"draw-statements": "scripts/entries/draw-statements.ts",
 			},
 		},
 	},

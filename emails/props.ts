@@ -14,7 +14,7 @@ export const mailAddress = z.email()
 export const webAddress = z.url({ protocol: /^https?$/ })
 
 /** Draws a document elsewhere, by the name of the program that does; null where there is none, and it is drawn here. */
-export type DrawElsewhere = (program: "draw-invoices", props: unknown) => Promise<Uint8Array> | null
+export type DrawElsewhere = (program: "draw-invoices" | "draw-statements", props: unknown) => Promise<Uint8Array> | null
 
 /** The producer at the head and foot of a letter; answers go to `email`. `contactName` is whom to ask for. */
 export const yard = z.object({

@@ -6,12 +6,18 @@ import { Button } from "./parts/button"
 import { Frame } from "./parts/frame"
 import { SumTable } from "./parts/sum-table"
 import { Lead, Small, Title } from "./parts/text"
-import { mailAddress, webAddress } from "./props"
+import { cents, type DrawElsewhere, mailAddress, webAddress } from "./props"
 import { mistakeWords } from "./words"
 
-/** A store's statement, sent by the producer; the whole of it goes with the letter as a PDF. */
+/**
+ * A store's statement, sent by the producer; the whole of it goes with the letter as a PDF. One that is too long for a letter
+ * comes without lines, and is opened by the links. What raised the balance and what lowered it are sums in cents.
+ */
 export const schema = z.object({
 	statement: statementProps,
+	isTooLong: z.boolean(),
+	raisedCents: cents,
+	loweredCents: cents,
 	sentTo: mailAddress,
 	statementUrl: webAddress,
 	pdfUrl: webAddress,
@@ -20,6 +26,9 @@ type Props = z.infer<typeof schema>
 
 export const sample = {
 	statement: sampleStatement,
+	isTooLong: false,
+	raisedCents: 92990,
+	loweredCents: -69588,
 	sentTo: "rosa@pantryandplume.example.test",
 	statementUrl: "https://waxbill.example.test/buy/larkmoor/pantry-and-plume/statement",
 	pdfUrl: "https://waxbill.example.test/buy/larkmoor/pantry-and-plume/statement.pdf",
@@ -32,22 +41,27 @@ export function subject({ statement }: Props): string {
 }
 
 /** The PDF that goes with the letter. Loaded only here, since the drawing of PDFs takes a second to load. */
-export async function attachments({ statement }: Props) {
-	const { renderStatementPdf } = await import("./documents/statement")
+export async function attachments({ statement, isTooLong }: Props, draw?: DrawElsewhere) {
+	if (isTooLong) return []
 	const filename = `statement-${statement.range.until}.pdf`
-	return [{ filename, content: await renderStatementPdf(statement), contentType: "application/pdf" }]
+	const drawn = await draw?.("draw-statements", statement)
+	const content = drawn
+		? Buffer.from(drawn)
+		: await (await import("./documents/statement")).renderStatementPdf(statement)
+	return [{ filename, content, contentType: "application/pdf" }]
 }
 
 export default function Statement(props: Props) {
-	const { statement, sentTo, statementUrl, pdfUrl } = props
-	const { yard, store, range, broughtForwardCents, lines, closingCents, ageing } = statement
-	const sumOf = (isRaising: boolean) =>
-		lines.filter(({ amountCents }) => amountCents > 0 === isRaising).reduce((sum, line) => sum + line.amountCents, 0)
+	const { statement, isTooLong, raisedCents, loweredCents, sentTo, statementUrl, pdfUrl } = props
+	const { yard, store, range, broughtForwardCents, closingCents, ageing } = statement
+	const where = isTooLong
+		? "It has too many lines for a letter: every one stands on the printed pages behind the link."
+		: "Every line is in the printed pages with this letter."
 	const late = ageing.slice(1).reduce((sum, { cents }) => sum + cents, 0)
 	return (
 		<Frame
 			title={subject(props)}
-			preview={`From ${fullDay(range.from)}; every line comes with this letter.`}
+			preview={`From ${fullDay(range.from)} until ${fullDay(range.until)}.`}
 			yard={yard}
 			about={["Statement", fullDay(range.until)]}
 			sentTo={sentTo}
@@ -70,12 +84,12 @@ export default function Statement(props: Props) {
 				head="In these days"
 				parts={[
 					{ label: "Brought forward", cents: broughtForwardCents },
-					{ label: "Invoiced", cents: sumOf(true) },
-					{ label: "Paid, credited and taken off", cents: sumOf(false) },
+					{ label: "Invoiced, and paid back to you", cents: raisedCents },
+					{ label: "Paid, credited and taken off", cents: loweredCents },
 				]}
 				total={{ label: closingCents < 0 ? "In your favor" : "Owed", cents: closingCents }}
 			/>
-			<Small lines={["Every line is in the printed pages with this letter.", mistakeWords(yard)]} />
+			<Small lines={[where, mistakeWords(yard)]} />
 		</Frame>
 	)
 }

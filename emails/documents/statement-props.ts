@@ -1,8 +1,11 @@
 import { z } from "zod"
 import { cents, day, sampleYard, words, yard } from "../props"
 
-/** More lines than this are for a file and not for paper. */
-export const MOST_STATEMENT_LINES = 20_000
+/**
+ * A letter brings the printed pages of so many lines at most: they are drawn while its row of the outbox is held, which is
+ * for seconds only. A longer statement is opened by its link.
+ */
+export const MOST_MAILED_LINES = 1_000
 
 /**
  * Everything a statement says; its page, letter and PDF are drawn from the same. Money is cents: `amountCents` is signed by
@@ -15,7 +18,7 @@ export const statementProps = z.object({
 	broughtForwardCents: cents,
 	lines: z
 		.array(z.object({ on: day, name: words, note: z.string().max(2000), amountCents: cents, balanceCents: cents }))
-		.max(MOST_STATEMENT_LINES),
+		.max(MOST_MAILED_LINES),
 	closingCents: cents,
 	ageing: z.array(z.object({ label: words, cents })).max(5),
 	onAccountCents: cents,

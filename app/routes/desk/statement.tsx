@@ -46,7 +46,6 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ params, url }
 
 const UNMAILED = {
 	nobody: "Nobody of this store has an address yet. Invite a buyer first.",
-	"too-long": "These days have more lines than a letter carries. Choose fewer days.",
 } as const
 
 export const action = guard(admits.desk("owner", "desk"), async ({ request, params, url }: Route.ActionArgs, scope) => {

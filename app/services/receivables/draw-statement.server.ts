@@ -1,6 +1,6 @@
 import type { Day } from "~/domain/calendar"
 import type { StatementRange } from "~/domain/receivables/statement"
-import { runApart } from "~/platform/thread.server"
+import { askThread } from "~/platform/lasting-thread.server"
 import { findStatement } from "./find-statement.server"
 import { statementDocument } from "./statement-document.server"
 
@@ -15,7 +15,7 @@ export async function drawStatement(query: {
 	today: Day
 }): Promise<Uint8Array<ArrayBuffer>> {
 	const document = statementDocument(await findStatement({ ...query, isWhole: true }))
-	const apart = document.lines.length > FEW_LINES ? runApart("draw-statement", document) : null
+	const apart = document.lines.length > FEW_LINES ? askThread("draw-statements", document) : null
 	if (apart) return apart
 	// The drawing of PDFs takes a second to load, so that no other page should wait for it.
 	const { renderStatementPdf } = await import("~emails/documents/statement")

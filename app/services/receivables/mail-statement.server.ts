@@ -1,19 +1,19 @@
 import { auditEntries } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import type { Day } from "~/domain/calendar"
-import type { StatementRange } from "~/domain/receivables/statement"
+import { effectOf, type StatementRange } from "~/domain/receivables/statement"
 import type { Result } from "~/domain/result"
 import { env } from "~/platform/env.server"
 import { queueMails } from "~/services/mail/queue-mails.server"
 import { findStorePeople } from "~/services/orders/order-people.server"
-import { MOST_STATEMENT_LINES } from "~emails/documents/statement-props"
+import { MOST_MAILED_LINES } from "~emails/documents/statement-props"
 import { readStatement } from "./find-statement.server"
 import { statementDocument } from "./statement-document.server"
 
 /**
- * Mails a store its whole statement: to each of its people who takes invoices by letter, with the printed pages. `mailKey`
- * is made with the button: a second press sends nothing more. Answers whom it goes to, by name. Refused when nobody is
- * there to read it, or it has more lines than a letter carries. Recorded.
+ * Mails a store its whole statement: to each of its people who takes invoices by letter, with the printed pages, or with the
+ * link to them where they are too long for a letter. `mailKey` is made with the button: a second press sends nothing more.
+ * Answers whom it goes to, by name. Refused when nobody is there to read it. Recorded.
  */
 export function mailStatement(query: {
 	producerId: string
@@ -22,14 +22,17 @@ export function mailStatement(query: {
 	today: Day
 	personId: string
 	mailKey: string
-}): Promise<Result<{ told: string[] }, { ok: false; reason: "nobody" | "too-long" }>> {
+}): Promise<Result<{ told: string[] }, { ok: false; reason: "nobody" }>> {
 	const { producerId, storeId, range, personId, mailKey } = query
 	return withProducer(producerId, async (tx) => {
 		const people = await findStorePeople(tx, { producerId, storeId, kind: "invoices" })
 		if (people.length === 0) return { ok: false, reason: "nobody" }
 		const found = await readStatement(tx, { ...query, isWhole: true })
-		if (found.lines.length > MOST_STATEMENT_LINES) return { ok: false, reason: "too-long" }
-		const statement = statementDocument(found)
+		const isTooLong = found.lines.length > MOST_MAILED_LINES
+		const statement = statementDocument(isTooLong ? { ...found, lines: [] } : found)
+		const effects = found.lines.map(effectOf)
+		const sumOf = (isRaising: boolean) =>
+			effects.filter((cents) => cents > 0 === isRaising).reduce((sum, cents) => sum + cents, 0)
 		const address = `${env.BASE_URL}/buy/${found.store.producerSlug}/${found.store.slug}/statement`
 		const search = new URLSearchParams(range)
 		await queueMails(
@@ -41,6 +44,9 @@ export function mailStatement(query: {
 				onceKey: `statement:${mailKey}`,
 				props: {
 					statement,
+					isTooLong,
+					raisedCents: sumOf(true),
+					loweredCents: sumOf(false),
 					sentTo: email,
 					statementUrl: `${address}?${search}`,
 					pdfUrl: `${address}.pdf?${search}`,

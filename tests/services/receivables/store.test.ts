@@ -1,5 +1,5 @@
 import { randomUUID } from "node:crypto"
-import { eq } from "drizzle-orm"
+import { eq, sql } from "drizzle-orm"
 import { describe, expect, test } from "vitest"
 import { auditEntries, bookClosings, producerSettings, stores } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
@@ -142,6 +142,32 @@ test("a statement is mailed once for a press of the button, whole, to the store'
 	await mailStatement(query)
 	const letters = await findOutbox(yard.producerId)
 	expect(letters).toMatchObject([{ props: { statement: { lines: { length: 105 }, closingCents: 10_500 } } }])
+})
+
+test("a statement that is too long for a letter is mailed without its lines, with all of its sums and a link", async () => {
+	const { yard, shop, personId, account } = await openShop()
+	await account.invoice(500)
+	await account.payment(300)
+	await withProducer(yard.producerId, (tx) =>
+		tx.execute(sql`
+			insert into invoices (producer_id, year, sequence, store_id, issued_on, due_on, lines_cents, delivery_cents, tax_cents,
+				total_cents)
+			select ${yard.producerId}, 2025, n, ${shop.storeId}, '2026-08-02', '2026-08-16', 100, 0, 0, 100
+			from generate_series(1, 1000) n`),
+	)
+	const range = { from: "2026-08-01", until: TODAY }
+	await mailStatement({ ...shop, range, today: TODAY, personId, mailKey: randomUUID() })
+	expect(await findOutbox(yard.producerId)).toMatchObject([
+		{
+			props: {
+				isTooLong: true,
+				raisedCents: 100_500,
+				loweredCents: -300,
+				statement: { lines: [], closingCents: 100_200 },
+			},
+		},
+	])
+	expect(await writeLetters(yard.producerId)).toEqual([expect.stringContaining("$1,002.00 owed")])
 })
 
 test("an order is to be looked at when its store is stopped, or owes more with it than its limit", async () => {
