@@ -33,7 +33,7 @@ export async function takeStep(query: { form: FormData; order: DeskOrder; scope:
 		case "pack":
 			return answered(order.number, "packed", await packOrder(step))
 		case "send":
-			return answered(order.number, "sent", await sendOrder({ ...step, producer }))
+			return send(order.number, await sendOrder({ ...step, producer }))
 		case "cancel":
 			return answered(order.number, "cancelled", await cancelFromDesk(step))
 		case "receive":
@@ -53,6 +53,11 @@ export async function takeStep(query: { form: FormData; order: DeskOrder; scope:
 		default:
 			throw data(null, { status: 400 })
 	}
+}
+
+function send(number: number, sent: Awaited<ReturnType<typeof sendOrder>>): Step {
+	const isMonthly = sent.ok && sent.invoiceNumber === null
+	return answered(number, isMonthly ? "sent-for-month" : "sent", sent)
 }
 
 async function confirm({ form, order, scope }: { form: FormData; order: DeskOrder; scope: DeskScope }): Promise<Step> {

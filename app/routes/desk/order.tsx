@@ -40,6 +40,7 @@ const DONE: Record<string, string> = {
 	confirmed: "is confirmed",
 	packed: "is packed",
 	sent: "is sent, and its invoice is on its way",
+	"sent-for-month": "is sent; it goes on the invoice of the month",
 	received: "has arrived",
 	cancelled: "is cancelled",
 	undone: "waits again; no letter went out",

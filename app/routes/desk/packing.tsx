@@ -65,7 +65,7 @@ export const action = guard(
 		if (Object.keys(typed.errors).length > 0) return data({ number, values, ...typed, problem: null }, { status: 422 })
 		const answer = intent === "pack" ? await packOrder({ ...query, weighed }) : await sendOrder({ ...query, producer })
 		if (answer.ok) {
-			const done = `Order ${number} is ${intent === "pack" ? "packed" : "sent, and its invoice is on its way"}.`
+			const done = `Order ${number} is ${"invoiceNumber" in answer ? sentWords(answer.invoiceNumber) : "packed"}.`
 			throw redirect(`${url.pathname}?${new URLSearchParams({ day, done })}`)
 		}
 		if (answer.reason === "no-such-order") throw data(null, { status: 404 })
@@ -75,6 +75,11 @@ export const action = guard(
 		return data({ number, values, ...typed, problem: orderProblem(number, answer) }, { status: 422 })
 	},
 )
+
+function sentWords(invoiceNumber: string | null): string {
+	if (invoiceNumber !== null) return `sent, and its invoice ${invoiceNumber} is on its way`
+	return "sent; it goes on the invoice of the month"
+}
 
 export default function Packing({ loaderData, actionData, params }: Route.ComponentProps) {
 	const { days, day, picks, orders, done } = loaderData
