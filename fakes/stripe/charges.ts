@@ -8,13 +8,9 @@ import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { page } from "./lists"
 import { expandable, paging, paramsOf, readParams } from "./params"
+import type { Presented } from "./presented"
 import type { Endpoints } from "./router"
 
-/** What is charged: a card that was typed on a page or presented to a reader, or an account at a bank. */
-export type Presented = { name: string | null; email: string | null } & (
-	| { card: Card; reader?: string }
-	| { bank: BankAccount }
-)
 export type Decline = Extract<CardOutcome, { kind: "decline" }>
 
 function typedCard(card: Card, amount: number): Stripe.Charge.PaymentMethodDetails.Card {

@@ -1,12 +1,12 @@
 import type Stripe from "stripe"
 import { canBeKept, describeCard, outcomeOf } from "./cards"
-import type { Presented } from "./charges"
 import { type GivenAccount, methodOfAccount, startDebit } from "./debits"
 import { invalidRequest } from "./errors"
 import { fromPage } from "./events"
 import type { Fake } from "./fake"
 import { type Attempt, attempt, chargeCard, type GivenCard, openIntent, settleAuthentication } from "./payment-flow"
 import { keptMethod, recordMethod } from "./payment-methods"
+import type { Presented } from "./presented"
 import { setUpMethod } from "./setup-intents"
 
 /** The payment intent of a session; made at the first try, as Stripe does. */

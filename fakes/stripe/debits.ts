@@ -1,12 +1,13 @@
 import type Stripe from "stripe"
 import { recordBalance } from "./balance"
 import { type BankAccount, type BankOutcome, bankOutcomeOf, describeAccount } from "./banks"
-import { getCharge, type Presented, recordCharge } from "./charges"
+import { getCharge, recordCharge } from "./charges"
 import { invalidRequest } from "./errors"
 import { type Cause, fromPage } from "./events"
 import type { Fake } from "./fake"
 import { keepIfAsked } from "./payment-flow"
 import { recordMethod } from "./payment-methods"
+import type { Presented } from "./presented"
 
 /** An account as it is given: the number is looked at once and never stored. */
 export type GivenAccount = { accountNumber: string; routingNumber: string; name: string; email: string | null }

@@ -1,11 +1,12 @@
 import type Stripe from "stripe"
 import { type CardOutcome, describeCard, outcomeOf } from "./cards"
-import { type Decline, type Presented, recordCharge } from "./charges"
+import { type Decline, recordCharge } from "./charges"
 import { invalidRequest } from "./errors"
 import type { Cause } from "./events"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { attachMethod, recordMethod } from "./payment-methods"
+import type { Presented } from "./presented"
 
 /** What came of an attempt to pay. `message` is the sentence for the person with the card. */
 export type Attempt =

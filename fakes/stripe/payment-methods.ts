@@ -2,13 +2,13 @@ import type Stripe from "stripe"
 import { z } from "zod"
 import type { BankAccount } from "./banks"
 import type { Card } from "./cards"
-import type { Presented } from "./charges"
 import { invalidRequest, noSuch } from "./errors"
 import type { Cause } from "./events"
 import type { Fake } from "./fake"
 import { newId } from "./ids"
 import { page } from "./lists"
 import { expandable, paging, readParams } from "./params"
+import type { Presented } from "./presented"
 import type { Endpoints } from "./router"
 import type { Behaviour } from "./store"
 
@@ -69,7 +69,7 @@ export function recordMethod(fake: Fake, presented: Presented, behaviour: Behavi
 }
 
 /** The method named `id`; refuses with 404 `resource_missing`. */
-export function getMethod(fake: Fake, id: string, param?: string): Stripe.PaymentMethod {
+function getMethod(fake: Fake, id: string, param?: string): Stripe.PaymentMethod {
 	const method = fake.store.methods.get(id)
 	if (!method) throw noSuch("PaymentMethod", id, param)
 	return method

@@ -1,7 +1,7 @@
 import type Stripe from "stripe"
 import type { BankOutcome } from "./banks"
 import type { CardOutcome } from "./cards"
-import type { Presented } from "./charges"
+import type { Presented } from "./presented"
 import { seedReaders } from "./seed"
 
 /** The answer kept for an idempotency key, with what was asked, so that another body under the same key is refused. */

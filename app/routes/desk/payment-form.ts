@@ -33,7 +33,7 @@ const amount = (missing: string) =>
 	})
 
 /** A day that has begun: nothing is noted ahead of time. */
-export const pastDay = (today: Day) =>
+const pastDay = (today: Day) =>
 	z
 		.string()
 		.refine(isDay, "Choose a day.")

@@ -68,7 +68,7 @@ async function writeRows(tx: Tx, entry: Entry, laid: readonly Laid[]): Promise<v
 }
 
 /** What a payment has settled, in the order in which it was laid; nothing that was taken back. */
-export async function readLaid(tx: Tx, query: { producerId: string; paymentId: string }): Promise<LaidPart[]> {
+async function readLaid(tx: Tx, query: { producerId: string; paymentId: string }): Promise<LaidPart[]> {
 	const { rows } = await tx.execute<LaidPart>(sql`
 		select t.invoice_id as "invoiceId", coalesce(sum(t.amount_cents) filter (where t.kind = 'payment'), 0)::int as cents,
 			coalesce(sum(t.amount_cents) filter (where t.kind = 'discount'), 0)::int as "discountCents"
