@@ -1,5 +1,5 @@
 import { Form, Link } from "react-router"
-import { type Day, fullDay } from "~/domain/calendar"
+import { type Day, fullDay, shortMonthDay } from "~/domain/calendar"
 import { type Ageing, ageingBuckets } from "~/domain/invoicing/ageing"
 import { formatMoney, plainMoney } from "~/domain/money"
 import { AGEING_HEADS } from "~/domain/receivables/ageing-words"
@@ -93,7 +93,7 @@ export function StatementTable({
 				</thead>
 				<tbody>
 					<tr className="carried">
-						<td>{isFirst ? fullDay(range.from) : ""}</td>
+						<td>{isFirst && <EntryDay on={range.from} />}</td>
 						<th scope="row">{isFirst ? "Brought forward" : "Carried over"}</th>
 						<td className="money sm:hidden">{plainMoney(carried)}</td>
 						<td className="money max-sm:hidden" />
@@ -106,7 +106,9 @@ export function StatementTable({
 				{isLast && (
 					<tfoot>
 						<tr className="closing">
-							<td>{fullDay(range.until)}</td>
+							<td>
+								<EntryDay on={range.until} />
+							</td>
 							<th scope="row">{closingCents < 0 ? "In your favor" : "Owed"}</th>
 							<td className="money sm:hidden">{formatMoney(Math.abs(closingCents))}</td>
 							<td className="max-sm:hidden" />
@@ -120,14 +122,28 @@ export function StatementTable({
 	)
 }
 
+/** A day with its month written out, and cut short on a phone. */
+function EntryDay({ on }: { on: Day }) {
+	return (
+		<>
+			<span className="whitespace-nowrap max-sm:hidden">{fullDay(on)}</span>
+			<span className="whitespace-nowrap sm:hidden">
+				{shortMonthDay(on)}, {on.slice(0, 4)}
+			</span>
+		</>
+	)
+}
+
 function LineRow({ line, invoiceHref }: { line: Line; invoiceHref: (number: string) => string }) {
 	const { name, note } = entryWords(line)
 	return (
 		<tr>
-			<td className="whitespace-nowrap">{fullDay(line.on)}</td>
+			<td>
+				<EntryDay on={line.on} />
+			</td>
 			<th scope="row">
 				{line.kind === "invoice" && line.number ? (
-					<Link className="inline-block py-1" to={invoiceHref(line.number)}>
+					<Link className="inline-block py-1 whitespace-nowrap" to={invoiceHref(line.number)}>
 						{name}
 					</Link>
 				) : (
