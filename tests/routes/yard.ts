@@ -30,6 +30,8 @@ const STORE_SLUG = "walked-store"
 /** The number of that order. */
 export const WALKED_ORDER = "900900"
 const LONG_AGO = "2001-02-06"
+/** A day for which the books are open. */
+const TODAY = new Date().toISOString().slice(0, 10)
 
 /**
  * Opens the yard: a store whose one order has been received and paid, and a market day that is closed with one card sale.
@@ -93,8 +95,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			year: 2001,
 			sequence: 1,
 			store_id: storeId,
-			issued_on: LONG_AGO,
-			due_on: LONG_AGO,
+			issued_on: TODAY,
+			due_on: TODAY,
 			lines_cents: 1000,
 			delivery_cents: 0,
 			tax_cents: 0,
@@ -106,14 +108,14 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			store_id: storeId,
 			method: "cash",
 			amount_cents: 500,
-			received_on: LONG_AGO,
+			received_on: TODAY,
 		})
 		await insert("invoice_runs", { id: runId, started_by: sellerId, finished_at: new Date() })
 		await insert("settlements", {
 			invoice_id: invoiceId,
 			kind: "write-off",
 			amount_cents: 1000,
-			settled_on: LONG_AGO,
+			settled_on: TODAY,
 		})
 		await insert("invoice_lines", {
 			id: invoiceLineId,
@@ -136,7 +138,7 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 			sequence: 1,
 			store_id: storeId,
 			invoice_id: invoiceId,
-			issued_on: LONG_AGO,
+			issued_on: TODAY,
 			kind: "goodwill",
 			reason: "walked",
 			lines_cents: 1000,
