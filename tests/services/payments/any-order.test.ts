@@ -30,7 +30,7 @@ type Deed =
 	| { do: "decide"; which: number; won: boolean }
 	/** Events that came so far are applied now, in an order of their own, some of them twice. */
 	| { do: "apply"; order: number; twice: boolean }
-	/** Whatever comes from here on to the next deed is lost. */
+	/** The events of the next deed are lost. */
 	| { do: "lose" }
 
 const TOTALS: [number, number] = [10_000, 7_500]
@@ -164,8 +164,8 @@ test("whatever order, repetition or loss the events of a store's payments meet, 
 				await addInvoice(yard, shop, { sequence: 2, totalCents: TOTALS[1], dueOn: "2026-08-27" }),
 			]
 			for (const one of deeds) {
-				service.fake.switch({ muteEvents: false })
 				await act(yard, shop, numbers, one)
+				if (one.do !== "lose") service.fake.switch({ muteEvents: false })
 			}
 			service.fake.switch({ muteEvents: false })
 			// The night: what was lost is found, and the rest of what came is applied the other way round.
@@ -188,9 +188,9 @@ test("whatever order, repetition or loss the events of a store's payments meet, 
 			await reconcileStripe()
 			expect(await outcome(yard)).toEqual(ended)
 		}),
-		{ numRuns: Number(process.env.EVENT_RUNS ?? 12), interruptAfterTimeLimit: 50_000, markInterruptAsFailure: false },
+		{ numRuns: Number(process.env.EVENT_RUNS ?? 12) },
 	)
-}, 90_000)
+}, 240_000)
 
 test("the same deeds end the same when events are applied one by one, all at once, backwards, or are lost", async () => {
 	const end = async (manner: "one-by-one" | "at-once" | "backwards" | "lost") => {
