@@ -17,14 +17,16 @@ export function RunProgress({ done, refused, waiting }: { done: number; refused:
 	}, [waiting, state, revalidate])
 	const words = `${done + refused} of ${all} ${all === 1 ? "order" : "orders"}`
 	return (
-		<p className="px-4 py-3 desk:px-8" role="status">
+		<>
 			{waiting > 0 && (
 				<noscript>
 					<meta httpEquiv="refresh" content="3" />
 				</noscript>
 			)}
-			<progress className="cold-progress" max={all} value={done + refused} aria-label={words} /> {words}
-			{refused > 0 && <span className="short font-semibold">, {refused} of them refused</span>}
-		</p>
+			<p className="px-4 py-3 desk:px-8" role="status">
+				<progress className="cold-progress" max={all} value={done + refused} aria-label={words} /> {words}
+				{refused > 0 && <span className="short font-semibold">, {refused} of them refused</span>}
+			</p>
+		</>
 	)
 }
