@@ -1,4 +1,4 @@
-import { randomUUID } from "node:crypto"
+import { createHash, randomUUID } from "node:crypto"
 import pg from "pg"
 import { e2eAddresses } from "../setup/e2e-addresses"
 
@@ -57,12 +57,12 @@ export async function openSeasonYard() {
 	for (const [index, store] of others.entries()) await addStanding(store, index === 0 ? 6 : 2)
 
 	/** So many cases come off and are released. */
-	async function addLot(code: string, cases: number): Promise<void> {
+	async function addLot(code: string, cases: number, ofProduct = productId): Promise<void> {
 		const lotId = randomUUID()
 		await ask(
 			`insert into lots (producer_id, id, code, product_id, state, harvested_on, expected_release_on, best_before_on, pieces_harvested)
 			values ($1, $2, $3, $4, 'released', current_date - 30, current_date - 20, current_date + 300, $5)`,
-			[producerId, lotId, code, productId, cases * 12],
+			[producerId, lotId, code, ofProduct, cases * 12],
 		)
 		await ask(
 			"insert into stock_moves (producer_id, lot_id, to_place, pieces, reason) values ($1, $2, 'ready', $3, 'harvest')",
@@ -94,6 +94,57 @@ export async function openSeasonYard() {
 		return store
 	}
 
+	/** So many signed-in buyers, ten to a store: where each orders for a day, and with which cookie. */
+	async function addBuyers(count: number, day: string): Promise<{ path: string; cookie: string }[]> {
+		const stores: Store[] = []
+		while (stores.length * 10 < count)
+			stores.push(await addStore(`Store ${stores.length + 1}`, `racer-${stores.length}`))
+		const buyers = Array.from({ length: count }, (_, index) => ({
+			id: randomUUID(),
+			token: randomUUID(),
+			store: stores[Math.floor(index / 10)] as Store,
+		}))
+		const columns = [
+			buyers.map(({ id }) => id),
+			buyers.map(({ token }) => createHash("sha256").update(token).digest("hex")),
+			buyers.map(({ store }) => store.id),
+		]
+		const rows = "unnest($1::uuid[], $2::text[], $3::uuid[]) as buyer(id, hash, store_id)"
+		await ask(
+			`insert into users (id, name, email) select id, 'Buyer', id || '@stores.example.test' from ${rows}`,
+			columns,
+		)
+		await ask(
+			`insert into sessions (user_id, token_hash, expires_at) select id, hash, now() + interval '1 day' from ${rows}`,
+			columns,
+		)
+		await ask(
+			`insert into memberships (producer_id, user_id, role, store_id) select $4, id, 'buyer', store_id from ${rows}`,
+			[...columns, producerId],
+		)
+		return buyers.map(({ token, store }) => ({
+			path: `/buy/${slug}/${store.slug}/sheet/${day}`,
+			cookie: `waxbill-session=${token}`,
+		}))
+	}
+
+	/** Comb that is sold by weight, ten cases of it on the shelf: a case of 12 pieces of 340 g, at 16.00 a lb. */
+	async function addCombByWeight(): Promise<void> {
+		const id = randomUUID()
+		await ask(
+			`insert into products (producer_id, id, code, name, form, colour, detail, piece_net_grams, pieces_per_case,
+				break_family, priced_by)
+			values ($1, $2, '61', 'Cut comb', 'cut-comb', 'light', 'by weight', 340, 12, 'sections', 'weight')`,
+			[producerId, id],
+		)
+		await ask(
+			`insert into prices (producer_id, tier_id, product_id, min_cases, case_cents, pound_cents, valid_from)
+			values ($1, $2, $3, 1, 14392, 1600, '2020-01-01')`,
+			[producerId, tierId, id],
+		)
+		await addLot("W1", 10, id)
+	}
+
 	async function addStanding(store: Store, cases: number): Promise<void> {
 		const weekday = ["MO", "TU", "WE", "TH", "FR", "SA", "SU"][isoWeekday(days[0] ?? "") - 1]
 		const id = randomUUID()
@@ -116,6 +167,9 @@ export async function openSeasonYard() {
 		others,
 		days: days as [string, string, string],
 		addLot,
+		addBuyers,
+		addCombByWeight,
+		productId,
 		/** So many hours after last orders for a day, which are at noon two days before, in summer an hour earlier than here. */
 		afterLastOrders: (day: string, hours: number) =>
 			new Date(new Date(`${day}T17:00:00Z`).getTime() - 2 * A_DAY + hours * 3_600_000),
