@@ -1,8 +1,8 @@
-import { sql } from "drizzle-orm"
+import { type SQL, sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
 import type { Period } from "~/domain/books/period"
 import type { Day } from "~/domain/calendar"
-import { fillSpans, type SoldSpan, type Span } from "~/domain/figures/spans"
+import { fillSpans, type SoldSpan, type Span, spanFor } from "~/domain/figures/spans"
 
 /** Whose sales, and of which days: of issue for stores, of the market for the stall. Amounts are without tax and delivery. */
 export type SalesQuery = Period & { producerId: string }
@@ -12,16 +12,16 @@ const asNumber = (value: string | number | null) => Number(value ?? 0)
 /** Sales by week, month or year, from the first with sales to the last. */
 export async function findSpans(tx: Tx, { producerId, from, to }: SalesQuery, span: Span): Promise<SoldSpan[]> {
 	const { rows } = await tx.execute<{ startOn: Day; stores: string; stall: string }>(sql`
-		select start::text as "startOn", sum(stores) as stores, sum(stall) as stall from (
-			select date_trunc(${span}, i.issued_on)::date as start, sum(i.lines_cents) as stores, 0 as stall from invoices i
+		select date_trunc(${span}, day)::date::text as "startOn", sum(stores) as stores, sum(stall) as stall from (
+			select i.issued_on as day, sum(i.lines_cents) as stores, 0 as stall from invoices i
 			where i.producer_id = ${producerId} and i.kind = 'goods' and i.issued_on between ${from}::date and ${to}::date
-			group by 1
+			group by i.issued_on
 			union all
-			select date_trunc(${span}, d.market_on)::date, 0, sum(s.total_cents) from market_days d
+			select d.market_on, 0, sum(s.total_cents) from market_days d
 			join sales s on s.producer_id = d.producer_id and s.market_day_id = d.id and s.state = 'paid'
 			where d.producer_id = ${producerId} and d.market_on between ${from}::date and ${to}::date
-			group by 1
-		) as sold group by start order by start`)
+			group by d.market_on
+		) as sold group by 1 order by 1`)
 	const sold = rows.map(({ startOn, stores, stall }) => ({
 		startOn,
 		storeCents: asNumber(stores),
@@ -40,12 +40,25 @@ export type SoldProduct = {
 	stallPieces: number
 }
 
+/**
+ * The lines `l` of invoices `i`. Those of one season are looked up invoice by invoice, half the time of a join, which reads
+ * the lines of all seasons; those of many are joined.
+ */
+function linesOfInvoices(query: SalesQuery): SQL {
+	if (spanFor(query) !== "week")
+		return sql`join invoice_lines l on l.producer_id = i.producer_id and l.invoice_id = i.id`
+	return sql`cross join lateral (
+		select product_id, line_cents, sent_cases from invoice_lines
+		where producer_id = i.producer_id and invoice_id = i.id offset 0
+	) as l`
+}
+
 /** Sales by product, the most money first. */
 export async function findProducts(tx: Tx, { producerId, from, to }: SalesQuery): Promise<SoldProduct[]> {
 	const { rows } = await tx.execute<SoldProduct>(sql`
 		with stores as (
 			select l.product_id, sum(l.line_cents) as cents, sum(l.sent_cases) as cases from invoices i
-			join invoice_lines l on l.producer_id = i.producer_id and l.invoice_id = i.id
+			${linesOfInvoices({ producerId, from, to })}
 			where i.producer_id = ${producerId} and i.kind = 'goods' and i.issued_on between ${from}::date and ${to}::date
 				and l.product_id is not null
 			group by l.product_id
@@ -101,11 +114,12 @@ export async function findChannels(tx: Tx, { producerId, from, to }: SalesQuery)
 		where producer_id = ${producerId} and kind = 'goods' and issued_on between ${from}::date and ${to}::date
 		having count(*) > 0
 		union all
-		select m.name, sum(s.total_cents), count(*)::int from market_days d
-		join markets m on m.producer_id = d.producer_id and m.id = d.market_id
-		join sales s on s.producer_id = d.producer_id and s.market_day_id = d.id and s.state = 'paid'
-		where d.producer_id = ${producerId} and d.market_on between ${from}::date and ${to}::date
-		group by m.id, m.name
+		select m.name, x.cents, x.count from (
+			select d.market_id, sum(s.total_cents) as cents, count(*)::int as count from market_days d
+			join sales s on s.producer_id = d.producer_id and s.market_day_id = d.id and s.state = 'paid'
+			where d.producer_id = ${producerId} and d.market_on between ${from}::date and ${to}::date
+			group by d.market_id
+		) as x join markets m on m.producer_id = ${producerId} and m.id = x.market_id
 		order by cents desc`)
 	return rows.map((row) => ({ ...row, cents: asNumber(row.cents) }))
 }

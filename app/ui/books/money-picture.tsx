@@ -1,6 +1,7 @@
 import type { MoneyWeek } from "~/domain/books/dated-event"
 import { type Day, monthDay, shortMonthDay } from "~/domain/calendar"
 import { formatMoney } from "~/domain/money"
+import { FillKey } from "~/ui/figures/fill-key"
 
 const LEFT = 16
 const STEP = 76
@@ -27,11 +28,12 @@ export function MoneyPicture({ weeks }: { weeks: readonly MoneyWeek[] }) {
 	const all = (key: "inCents" | "outCents") => weeks.reduce((sum, week) => sum + week[key], 0)
 	return (
 		<>
-			<p className="books-key note">
-				<Key shape="money-in" words={`came in, ${formatMoney(all("inCents"))}`} />
-				<Key shape="money-out" words={`went out, ${formatMoney(all("outCents"))}`} />
-				<span>by the week that begins on Monday</span>
-			</p>
+			<FillKey
+				fills={[
+					["money-in", `came in, ${formatMoney(all("inCents"))}`],
+					["money-out", `went out, ${formatMoney(all("outCents"))}`],
+				]}
+			/>
 			{/* biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls sideways is reached by keyboard */}
 			<section className="books-picture" aria-label="Money by week, drawn" tabIndex={0}>
 				<svg
@@ -103,16 +105,5 @@ function Week({
 				{shortMonthDay(weekOn)}
 			</text>
 		</g>
-	)
-}
-
-function Key({ shape, words }: { shape: "money-in" | "money-out"; words: string }) {
-	return (
-		<span>
-			<svg width="14" height="14" viewBox="0 0 14 14" aria-hidden="true">
-				<path className={shape} d="M1.5 1.5h11v11h-11z" />
-			</svg>
-			{words}
-		</span>
 	)
 }

@@ -7,7 +7,7 @@ export function MoneyTable({ weeks }: { weeks: readonly MoneyWeek[] }) {
 	return (
 		<details className="season-table">
 			<summary>Week by week</summary>
-			<table className="sheet-table">
+			<table className="sheet-table figure-table">
 				<thead>
 					<tr>
 						<th scope="col">Week of</th>

@@ -1,6 +1,7 @@
 import { type CropPieces, harvestedPieces, soldPercent } from "~/domain/figures/shares"
 import { FigurePart } from "./figure-part"
 import { FigureTable } from "./figure-table"
+import { FillKey } from "./fill-key"
 import { PartBars } from "./part-bars"
 
 type Crop = CropPieces & { code: string; name: string; detail: string }
@@ -11,6 +12,13 @@ const PLACES = [
 	["wastePieces", "waste"],
 	["missingPieces", "missing"],
 	["cutUpPieces", "cut up"],
+] as const
+
+const FILLS = [
+	["crop-sold", "sold"],
+	["crop-stock", "in stock"],
+	["crop-lost", "waste or missing"],
+	["crop-cut", "cut up"],
 ] as const
 
 /** "312 of 480 sold, 140 in stock, 28 waste". */
@@ -34,8 +42,10 @@ export function CropPart({ crop, csvHref }: { crop: readonly Crop[]; csvHref: st
 			tableName="The crop as a table"
 			table={crop.length === 0 ? undefined : <CropTable crop={crop} />}
 		>
+			{crop.length > 0 && <FillKey fills={FILLS} />}
 			<PartBars
 				label="Where the crop is"
+				isWordy
 				bars={crop.map((one) => ({
 					key: one.code,
 					name: (

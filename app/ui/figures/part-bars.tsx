@@ -1,7 +1,5 @@
 import type { ReactNode } from "react"
-
-/** How a part of a bar is drawn; its words stand beside the bar. */
-type PartFill = "money-in" | "money-out" | "crop-sold" | "crop-stock" | "crop-lost" | "crop-cut"
+import type { PartFill } from "./fill-key"
 
 type PartBar = {
 	key: string
@@ -14,11 +12,20 @@ type PartBar = {
 }
 
 /** One bar a row, each divided into parts; the longest fills the width. */
-export function PartBars({ label, bars }: { label: string; bars: readonly PartBar[] }) {
+export function PartBars({
+	label,
+	bars,
+	isWordy = false,
+}: {
+	label: string
+	bars: readonly PartBar[]
+	/** The words are more than a figure: on a phone they stand below their bar. */
+	isWordy?: boolean
+}) {
 	const sum = ({ parts }: PartBar) => parts.reduce((all, { amount }) => all + amount, 0)
 	const most = Math.max(1, ...bars.map(sum))
 	return (
-		<ul className="part-bars" aria-label={label}>
+		<ul className={isWordy ? "part-bars wordy" : "part-bars"} aria-label={label}>
 			{bars.map((bar) => (
 				<li key={bar.key}>
 					<span className="part-name">{bar.name}</span>

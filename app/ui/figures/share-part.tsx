@@ -21,6 +21,7 @@ export function SharePart({ share, recordsHref }: { share: Share; recordsHref: s
 				<>
 					<PartBars
 						label="Sales to the public and to stores"
+						isWordy
 						bars={[
 							{
 								key: "share",

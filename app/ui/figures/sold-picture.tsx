@@ -1,5 +1,6 @@
 import { type SoldSpan, type Span, spanWords } from "~/domain/figures/spans"
 import { formatMoney } from "~/domain/money"
+import { FillKey } from "./fill-key"
 
 const LEFT = 16
 const STEP = 64
@@ -9,7 +10,7 @@ const HEIGHT = 140
 const FOOT = 22
 
 /** Whole dollars, for a label over a bar. */
-export const dollars = (cents: number) => formatMoney(Math.round(cents / 100) * 100).replace(".00", "")
+const dollars = (cents: number) => formatMoney(Math.round(cents / 100) * 100).replace(".00", "")
 
 /**
  * Sales by week, month or year: what stores bought is the solid foot of each bar, what was sold at the stall stands on it,
@@ -27,11 +28,12 @@ export function SoldPicture({ spans, span }: { spans: readonly SoldSpan[]; span:
 	)
 	return (
 		<>
-			<p className="books-key note">
-				<Key shape="money-in" words="stores" />
-				<Key shape="money-out" words="stall" />
-				<span>by {span}</span>
-			</p>
+			<FillKey
+				fills={[
+					["money-in", "stores"],
+					["money-out", "stall"],
+				]}
+			/>
 			{/* biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls sideways is reached by keyboard */}
 			<section className="books-picture" aria-label={`Sales by ${span}, drawn`} tabIndex={0}>
 				<svg
@@ -68,16 +70,5 @@ export function SoldPicture({ spans, span }: { spans: readonly SoldSpan[]; span:
 				</svg>
 			</section>
 		</>
-	)
-}
-
-function Key({ shape, words }: { shape: "money-in" | "money-out"; words: string }) {
-	return (
-		<span>
-			<svg width="14" height="14" viewBox="0 0 14 14" aria-hidden="true">
-				<path className={shape} d="M1.5 1.5h11v11h-11z" />
-			</svg>
-			{words}
-		</span>
 	)
 }
