@@ -8,11 +8,13 @@ const WARM_UP = 4
 const AIM_MS = 100
 const LOGGER_AIM = { ms: 5000, megabytes: 150 }
 const SHARING_AIM_MS = 20
+const CUT_OFF_AIM_MS = 20_000
+const DESK_AIM_MS = 1_000
 
 /**
  * What a producer with ten seasons waits for, at one, four and sixteen sixteenths of the full size: pages over HTTP on one
  * connection, the rest by service call; the growth is said, and the full size is held against its aim. Then a logger file
- * of a million readings, and sharing out 10,000 claims.
+ * of a million readings, sharing out 10,000 claims, and the last orders of 2,000 standing orders.
  */
 export async function measureCrop({ database, web, cookie, folder, env, ownerEmail, say }) {
 	const call = (what, facts) => callService({ folder, env }, what, facts)
@@ -44,6 +46,8 @@ export async function measureCrop({ database, web, cookie, folder, env, ownerEma
 		aimRow("Logger file of 1,000,000 readings", "ms", logger.ms, LOGGER_AIM.ms),
 		aimRow("Logger file of 1,000,000 readings", "MB more", logger.megabytes, LOGGER_AIM.megabytes),
 		...sharingRows(call("sharing", {}), say),
+		...cutOffRows(call("standing", {}), say),
+		...deskRows(call("desk", {})),
 	]
 }
 
@@ -59,6 +63,20 @@ function sharingRows({ sizes, times, solved, solvedClaims }, say) {
 		say(`${name}: ${growthWords(ms)} ms for ${sizes.join(", ")} claims`)
 		return aimRow(name, "ms, median", ms[full], SHARING_AIM_MS)
 	})
+}
+
+function cutOffRows({ stores, ms: { one, two } }, say) {
+	const name = `Last orders of ${stores.toLocaleString("en-US")} standing orders`
+	say(`${name}: ${Math.round(one)} ms with one worker, ${Math.round(two)} ms with two`)
+	return [aimRow(`${name}, one worker`, "ms", one, CUT_OFF_AIM_MS), aimRow(`${name}, two workers`, "ms", two, one)]
+}
+
+function deskRows({ stores, toDo, season }) {
+	const open = `${stores.toLocaleString("en-US")} open orders and as many standing ones`
+	return [
+		aimRow(`To do with ${open}, service call`, "ms, median", toDo, DESK_AIM_MS),
+		aimRow(`The season with ${open}, service call`, "ms, median", season, DESK_AIM_MS),
+	]
 }
 
 const growthWords = (times) => times.map((ms) => ms.toFixed(1)).join(", ")

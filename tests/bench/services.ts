@@ -1,6 +1,6 @@
-import { makeDueOrders } from "~/services/standing-orders/make-due-orders.server"
 import { measureLogger, measureSeasons } from "./services/seasons"
 import { measureSharing } from "./services/sharing"
+import { measureDesk, measureStanding, workAtCutOff } from "./services/standing"
 
 /** Measures the product's own services without HTTP: `services.js <what> <facts as JSON>` prints what it found as JSON. */
 const [what, text = "{}"] = process.argv.slice(2)
@@ -9,11 +9,9 @@ const measures: Record<string, () => Promise<unknown>> = {
 	sharing: measureSharing,
 	seasons: () => measureSeasons(facts),
 	logger: () => measureLogger(facts),
-	standing: async () => {
-		const began = performance.now()
-		const { made } = await makeDueOrders({ producerId: facts.producerId, now: new Date(facts.now) })
-		return { made, ms: performance.now() - began }
-	},
+	standing: measureStanding,
+	desk: measureDesk,
+	"cut-off": () => workAtCutOff(facts),
 }
 const measure = measures[what ?? ""]
 if (!measure) throw new Error(`nothing is called ${what}`)

@@ -1,4 +1,4 @@
-import { addDays, type Day, weekday } from "~/domain/calendar"
+import { addDays, type Day, daysBetween, weekday } from "~/domain/calendar"
 import { firstDeliveryDay } from "~/domain/delivery/delivery-days"
 import { cadenceOf } from "./cadence"
 import { occurrences } from "./recurrence"
@@ -32,12 +32,16 @@ export type StandingRule = {
 
 /**
  * The day from which the weeks are counted: the first date that the weekday allows on or after `startsOn`, so that "every
- * other Tuesday from Thursday" begins on the next Tuesday and not in the week after.
+ * other Tuesday from Thursday" begins on the next Tuesday and not in the week after. Where that is before `from`, the
+ * last day before it from which the rule falls on the same dates: standing orders of one rule then share their dates.
  */
-function anchor(rule: string, startsOn: Day): Day {
+function anchor(rule: string, startsOn: Day, from: Day): Day {
 	const cadence = cadenceOf(rule)
 	if (!cadence) throw new RangeError(`not the rule of a standing order: ${rule}`)
-	return cadence.every === "week" ? addDays(startsOn, (cadence.weekday - weekday(startsOn) + 7) % 7) : startsOn
+	if (cadence.every === "month") return from > startsOn ? from : startsOn
+	const first = addDays(startsOn, (cadence.weekday - weekday(startsOn) + 7) % 7)
+	const period = 7 * cadence.interval
+	return from > first ? addDays(first, Math.floor(daysBetween(first, from) / period) * period) : first
 }
 
 /**
@@ -45,21 +49,27 @@ function anchor(rule: string, startsOn: Day): Day {
  * A date on a shut day, or on a weekday when the van does not come, moves to the store's next delivery day after it. A
  * date that would move onto or past the rule's next date is dropped: the van comes once for both. No delivery falls after
  * `endsOn`. Fewer come back when the order ends or no delivery day is left within a year of a date. Throws RangeError on
- * a rule that `ruleOf` does not write. Moving and dropping are this product's own rule.
+ * a rule that `ruleOf` does not write. `datesOf` is `occurrences`, or the same with a memory. Moving and dropping are this product's own rule.
  */
-export function nextDeliveryDates(standing: StandingRule, from: Day, count: number): StandingDate[] {
+export function nextDeliveryDates(
+	standing: StandingRule,
+	from: Day,
+	count: number,
+	datesOf: typeof occurrences = occurrences,
+): StandingDate[] {
 	const { deliveryWeekdays, shutDays, endsOn } = standing
-	const startsOn = anchor(standing.rule, standing.startsOn)
+	if (cadenceOf(standing.rule) === null) throw new RangeError(`not the rule of a standing order: ${standing.rule}`)
 	if (deliveryWeekdays.length === 0 || count <= 0) return []
 	// Dates lie a week or more apart, and only a shut day on which the van would come can bend one. A date from before
 	// `from` reaches past it only over shut days that lie before it; each shut day drops at most one date; and one date
 	// more says what comes next.
 	const bending = shutDays.filter((day) => deliveryWeekdays.includes(weekday(day)))
 	const weeksBack = bending.filter((day) => day < from).length + 1
-	const ruleDays = occurrences({
+	const earliest = addDays(from, -7 * weeksBack)
+	const ruleDays = datesOf({
 		rule: standing.rule,
-		startsOn,
-		from: addDays(from, -7 * weeksBack),
+		startsOn: anchor(standing.rule, standing.startsOn, earliest),
+		from: earliest,
 		...(endsOn === null ? {} : { until: endsOn }),
 		count: count + weeksBack + bending.length + 1,
 	})

@@ -51,3 +51,14 @@ export function occurrences(search: {
 	}
 	return days
 }
+
+/** `occurrences` with a memory, for many standing orders at once: most follow a few rules, and each is searched once. */
+export function rememberedOccurrences(): typeof occurrences {
+	const known = new Map<string, Day[]>()
+	return (search) => {
+		const key = JSON.stringify(search)
+		const days = known.get(key) ?? occurrences(search)
+		known.set(key, days)
+		return days
+	}
+}

@@ -60,10 +60,20 @@ export async function checkAsked(
 		own?: readonly OwnPromise[]
 	},
 ): Promise<{ lines: CheckedLine[]; refused: LineRefusal[] }> {
-	const { producerId, today, deliveryOn, asked, own = [] } = query
-	const products = new Map(query.products.map((product) => [product.productId, product]))
-	const outlooks = await findOutlooks(tx, { producerId, today, productIds: [...products.keys()] })
+	const { producerId, today, deliveryOn, own = [] } = query
+	const productIds = query.products.map(({ productId }) => productId)
+	const outlooks = await findOutlooks(tx, { producerId, today, productIds })
 	setFree(outlooks, deliveryOn, own)
+	return checkAgainst(outlooks, query)
+}
+
+/** The same against outlooks that are read already; it reads nothing, and promises nothing. */
+export function checkAgainst(
+	outlooks: ReadonlyMap<string, ProductOutlook>,
+	query: { deliveryOn: Day; asked: readonly AskedLine[]; products: readonly StoreProduct[] },
+): { lines: CheckedLine[]; refused: LineRefusal[] } {
+	const { deliveryOn, asked } = query
+	const products = new Map(query.products.map((product) => [product.productId, product]))
 	const lines: CheckedLine[] = []
 	const refused: LineRefusal[] = []
 	for (const line of asked) {

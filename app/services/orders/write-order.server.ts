@@ -12,7 +12,7 @@ import type { CheckedLine } from "./check-asked.server"
 import type { PlacingFacts } from "./find-placing-facts.server"
 
 /** Orders are numbered on through the years: a store speaks of "order 318", not of a year's. */
-const NO_YEAR = 0
+export const NO_YEAR = 0
 
 /** An order that has been checked and is about to be written. */
 export type NewOrder = {

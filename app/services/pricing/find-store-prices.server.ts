@@ -19,7 +19,8 @@ export type StoreProduct = {
 	breaks: CaseBreak[]
 }
 
-type Row = {
+/** A product with the prices in force for one store, as a statement gives it. */
+export type StoreProductRow = {
 	id: string
 	code: string
 	name: string
@@ -46,7 +47,7 @@ export async function findStorePrices(
 ): Promise<StoreProduct[]> {
 	const { producerId, storeId, today } = query
 	const only = query.productIds ? sql`and p.id = any(${sql.param(query.productIds)}::uuid[])` : sql``
-	const { rows } = await tx.execute<Row>(sql`
+	const { rows } = await tx.execute<StoreProductRow>(sql`
 		with sold as materialized (
 			select p.id, p.code, p.name, p.detail, p.piece_net_grams, p.pieces_per_case, p.break_family
 			from products p
@@ -85,7 +86,12 @@ export async function findStorePrices(
 		select sold.*, breaks.min_cases, breaks.case_cents, breaks.pound_cents, coalesce(offs.off, 0) as off
 		from sold join breaks on breaks.product_id = sold.id left join offs on offs.product_id = sold.id
 		order by length(sold.code), sold.code`)
-	return rows.map((row) => ({
+	return rows.map(storeProduct)
+}
+
+/** The product as its store buys it, with what a promotion takes off each of its breaks. */
+export function storeProduct(row: StoreProductRow): StoreProduct {
+	return {
 		productId: row.id,
 		code: row.code,
 		name: row.name,
@@ -94,10 +100,10 @@ export async function findStorePrices(
 		piecesPerCase: row.pieces_per_case,
 		breakFamily: row.break_family,
 		breaks: row.min_cases.map((minCases, index) => ({ minCases, ...priceAt(row, index) })),
-	}))
+	}
 }
 
-function priceAt(row: Row, index: number): { caseCents: number; poundCents: number | null } {
+function priceAt(row: StoreProductRow, index: number): { caseCents: number; poundCents: number | null } {
 	const price = { caseCents: row.case_cents[index] ?? 0, poundCents: row.pound_cents[index] ?? null }
 	const sizes = { pieceNetGrams: row.piece_net_grams, piecesPerCase: row.pieces_per_case }
 	return caseCentsAfter(price, sizes, row.off)

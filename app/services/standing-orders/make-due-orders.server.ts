@@ -1,47 +1,68 @@
-import { createHash } from "node:crypto"
 import { sql } from "drizzle-orm"
-import { breaksConstraint } from "~/db/errors.server"
-import { readProducer, type Tx, withProducer } from "~/db/transaction.server"
+import { readProducer, type Tx } from "~/db/transaction.server"
 import { compareDays, type Day } from "~/domain/calendar"
 import { freeToPromise } from "~/domain/promise/free-to-promise"
 import { wholeCases } from "~/domain/quantity"
 import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
-import type { DeliverySchedule } from "~/services/delivery/find-delivery-days.server"
-import { checkAsked } from "~/services/orders/check-asked.server"
-import { findPlacingFacts } from "~/services/orders/find-placing-facts.server"
-import { writeOrder } from "~/services/orders/write-order.server"
-import { findStorePrices } from "~/services/pricing/find-store-prices.server"
 import { findOutlooks } from "~/services/promise/find-outlooks.server"
 import { findAllDates } from "./find-all-dates.server"
-import type { StandingOrder } from "./read-standing-orders.server"
-import type { DueDate } from "./standing-dates.server"
+import { type Due, makeOrders } from "./make-orders.server"
+
+/** So many orders are written in one transaction: the fewer, the sooner others get at the same products. */
+const AT_ONCE = 40
 
 /**
  * Makes the orders of all standing orders of a producer whose last orders have passed and whose delivery is not past: each
  * date once and only once, however many run this at a time and however late. Where a product does not reach for all that
- * close for a day together, all of them are to share it, whichever is written first; a product no longer sold is left out. Each order is a transaction of its own, so that one that
- * fails leaves the others; the first failure is thrown at the end. Returns how many orders were made.
+ * close for a day together, all of them are to share it, whichever is written first; a product no longer sold is left out.
+ * Orders are written in small batches; what another worker has in hand is passed over at first and waited for in the end.
+ * In a batch that fails each order is tried by itself, so that one that fails leaves the others; the first failure is thrown
+ * at the end. Returns how many orders were made.
  */
 export async function makeDueOrders(query: { producerId: string; now: Date }): Promise<{ made: number }> {
-	const due = await readProducer(query.producerId, (tx) => findDue(tx, query))
-	const failures: unknown[] = []
-	let made = 0
-	for (const day of new Set(due.map(({ date }) => date.deliveryOn))) {
-		const ofDay = due.filter(({ date }) => date.deliveryOn === day)
-		const short = await readProducer(query.producerId, (tx) => findShort(tx, query.producerId, ofDay))
-		for (const one of ofDay) {
-			try {
-				if (await makeOrder(query.producerId, one, short)) made += 1
-			} catch (error) {
-				failures.push(error)
-			}
-		}
-	}
+	const first = await makeAll(query, false)
+	const second = first.passedOver > 0 ? await makeAll(query, true) : first
+	const failures = [...first.failures, ...second.failures]
 	if (failures.length > 0) throw failures[0]
-	return { made }
+	return { made: first.made + (second === first ? 0 : second.made) }
 }
 
-type Due = { standing: StandingOrder; date: DueDate; schedule: DeliverySchedule }
+type Made = { made: number; passedOver: number; failures: unknown[] }
+
+async function makeAll(query: { producerId: string; now: Date }, waits: boolean): Promise<Made> {
+	const { producerId } = query
+	const due = await readProducer(producerId, (tx) => findDue(tx, query))
+	const all: Made = { made: 0, passedOver: 0, failures: [] }
+	for (const day of new Set(due.map(({ date }) => date.deliveryOn))) {
+		const ofDay = due.filter(({ date }) => date.deliveryOn === day)
+		const short = await readProducer(producerId, (tx) => findShort(tx, producerId, ofDay))
+		for (let from = 0; from < ofDay.length; from += AT_ONCE) {
+			const batch = await makeBatch(producerId, { due: ofDay.slice(from, from + AT_ONCE), short, waits })
+			all.made += batch.made
+			all.passedOver += batch.passedOver
+			all.failures.push(...batch.failures)
+		}
+	}
+	return all
+}
+
+type Batch = { due: Due[]; short: ReadonlySet<string>; waits: boolean }
+
+async function makeBatch(producerId: string, batch: Batch): Promise<Made> {
+	try {
+		return { ...(await makeOrders(producerId, batch)), failures: [] }
+	} catch (error) {
+		if (batch.due.length === 1) return { made: 0, passedOver: 0, failures: [error] }
+		const all: Made = { made: 0, passedOver: 0, failures: [] }
+		for (const one of batch.due) {
+			const alone = await makeBatch(producerId, { ...batch, due: [one] })
+			all.made += alone.made
+			all.passedOver += alone.passedOver
+			all.failures.push(...alone.failures)
+		}
+		return all
+	}
+}
 
 async function findDue(tx: Tx, query: { producerId: string; now: Date }): Promise<Due[]> {
 	// One that ended lately may have a date that closed before its end and is not made yet.
@@ -111,77 +132,4 @@ async function findMade(tx: Tx, query: { producerId: string; from: Day }): Promi
 		select standing_order_id, standing_on::text from orders
 		where producer_id = ${query.producerId} and delivery_on >= ${query.from} and standing_order_id is not null`)
 	return new Set(rows.map((row) => `${row.standing_order_id} ${row.standing_on}`))
-}
-
-/** True when this call made the order; false when it was there already, or when nothing it asks for is sold. */
-async function makeOrder(
-	producerId: string,
-	{ standing, date, schedule }: Due,
-	short: ReadonlySet<string>,
-): Promise<boolean> {
-	const { storeId } = standing
-	const idempotencyKey = keyOf(standing.id, date.ruleOn)
-	const asked = linesOnDate(standing.lines, standing.changes, date.ruleOn)
-	if (asked.length === 0) return false
-	try {
-		return await withProducer(producerId, async (tx) => {
-			const { today, now } = schedule
-			const productIds = asked.map((line) => line.productId)
-			const products = await findStorePrices(tx, { producerId, storeId, today, productIds, lock: true })
-			const facts = await findPlacingFacts(tx, { producerId, storeId, idempotencyKey })
-			if (facts.earlier) return false
-			const { lines } = await checkAsked(tx, {
-				producerId,
-				today,
-				deliveryOn: date.deliveryOn,
-				asked: asked.map(({ productId, cases, leastCases }) => {
-					const keep = short.has(productId) ? "share" : true
-					return { productId, cases, leastCases, keep }
-				}),
-				products,
-			})
-			if (lines.length === 0) return false
-			const { id } = await writeOrder(tx, {
-				producerId,
-				storeId,
-				facts,
-				deliveryOn: date.deliveryOn,
-				lines,
-				poNumber: "",
-				note: "",
-				idempotencyKey,
-				placedAt: now,
-				placedBy: null,
-				standing: { standingOrderId: standing.id, on: date.ruleOn },
-				acknowledgeTo: standing.createdBy.email,
-				openUntil: null,
-			})
-			await copySubstitutes(tx, { producerId, orderId: id, standingOrderId: standing.id })
-			return true
-		})
-	} catch (error) {
-		if (breaksConstraint(error, "orders_sent_once") || breaksConstraint(error, "orders_one_per_standing_date")) {
-			return false
-		}
-		throw error
-	}
-}
-
-/** The order's lines take over what may stand in for them, for the sharing out that may follow. */
-async function copySubstitutes(
-	tx: Tx,
-	query: { producerId: string; orderId: string; standingOrderId: string },
-): Promise<void> {
-	await tx.execute(sql`
-		update order_lines set substitute_ids = usual.substitute_ids
-		from standing_order_lines usual
-		where order_lines.producer_id = ${query.producerId} and order_lines.order_id = ${query.orderId}
-			and usual.producer_id = order_lines.producer_id and usual.standing_order_id = ${query.standingOrderId}
-			and usual.product_id = order_lines.product_id and usual.substitute_ids <> '{}'`)
-}
-
-/** A key that is the same for the same date of the same standing order, in the form of a UUID (RFC 9562, version 8). */
-function keyOf(standingOrderId: string, ruleOn: Day): string {
-	const hex = createHash("sha256").update(`${standingOrderId} ${ruleOn}`).digest("hex")
-	return `${hex.slice(0, 8)}-${hex.slice(8, 12)}-8${hex.slice(13, 16)}-8${hex.slice(17, 20)}-${hex.slice(20, 32)}`
 }

@@ -2,6 +2,7 @@ import { type Day, weekday } from "~/domain/calendar"
 import { cutoffAt, isOpen } from "~/domain/delivery/delivery-days"
 import { cadenceOf } from "~/domain/standing-orders/cadence"
 import { nextDeliveryDates, type StandingDate } from "~/domain/standing-orders/delivery-dates"
+import type { occurrences } from "~/domain/standing-orders/recurrence"
 import type { DeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 
 /** What decides the dates of a standing order; `createdAt` is null for one that is not saved yet. */
@@ -24,7 +25,12 @@ export type DueDate = StandingDate & { cutoffAt: Date; isOpen: boolean }
  * it has ended, no later than its end. A date closes at the cut-off of the day on which the van really comes. A rule that
  * nobody here writes has no dates, so that one spoilt row stops neither the others nor a page.
  */
-export function standingDates(standing: DatedRule, schedule: DeliverySchedule, count: number): DueDate[] {
+export function standingDates(
+	standing: DatedRule,
+	schedule: DeliverySchedule,
+	count: number,
+	datesOf?: typeof occurrences,
+): DueDate[] {
 	const { rounds, shutDays, zone, today, now } = schedule
 	if (cadenceOf(standing.rule) === null) return []
 	const since = standing.createdAt ?? now
@@ -33,6 +39,7 @@ export function standingDates(standing: DatedRule, schedule: DeliverySchedule, c
 		{ ...standing, deliveryWeekdays: rounds.map((round) => round.weekday), shutDays },
 		today,
 		count + 15,
+		datesOf,
 	)
 	return dates
 		.flatMap((date) => {

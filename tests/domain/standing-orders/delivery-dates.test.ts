@@ -1,7 +1,7 @@
 import fc from "fast-check"
 import { describe, expect, test } from "vitest"
 import { addDays, daysBetween, type Weekday, weekday } from "~/domain/calendar"
-import { ruleOf } from "~/domain/standing-orders/cadence"
+import { type Cadence, cadenceOf, ruleOf } from "~/domain/standing-orders/cadence"
 import { nextDeliveryDates, type StandingRule } from "~/domain/standing-orders/delivery-dates"
 import { occurrences } from "~/domain/standing-orders/recurrence"
 
@@ -164,4 +164,28 @@ describe("a recurrence", () => {
 			expect(() => occurrences({ rule, startsOn: "2026-08-18", count: 1 })).toThrow()
 		}
 	})
+})
+
+test("the dates are those of the rule from its first day, however long ago that was", () => {
+	const someRule = fc.oneof(
+		fc
+			.record({ interval: fc.integer({ min: 1, max: 4 }), weekday: fc.integer({ min: 1, max: 7 }) })
+			.map((week) => ruleOf({ every: "week", months: [], ...week } as Cadence)),
+		fc
+			.record({ nth: fc.constantFrom(1, 2, 4, -1), weekday: fc.integer({ min: 1, max: 7 }) })
+			.map((month) => ruleOf({ every: "month", months: [], ...month } as Cadence)),
+	)
+	fc.assert(
+		fc.property(someRule, fc.integer({ min: 0, max: 900 }), (rule, daysAgo) => {
+			const from = "2026-08-13"
+			const startsOn = addDays(from, -daysAgo)
+			const cadence = cadenceOf(rule)
+			const first =
+				cadence?.every === "week" ? addDays(startsOn, (cadence.weekday - weekday(startsOn) + 7) % 7) : startsOn
+			const standing = { rule, startsOn, endsOn: null, pausedFrom: null, shutDays: [], skips: [] }
+			const found = nextDeliveryDates({ ...standing, deliveryWeekdays: [1, 2, 3, 4, 5, 6, 7] }, from, 5)
+			expect(found.map(({ ruleOn }) => ruleOn)).toEqual(occurrences({ rule, startsOn: first, from, count: 5 }))
+		}),
+		{ numRuns: 60 },
+	)
 })

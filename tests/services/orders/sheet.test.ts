@@ -62,8 +62,8 @@ describe("the order sheet", () => {
 		})
 		expect(row).toMatchObject({ toShareCases: 50, usualCases: 0, orderedCases: 0, lastCases: 0, mayAsk: true })
 		expect(row?.breaks).toEqual([
-			{ minCases: 1, caseCents: 11_400 },
-			{ minCases: 3, caseCents: 10_830 },
+			{ minCases: 1, caseCents: 11_400, poundCents: null },
+			{ minCases: 3, caseCents: 10_830, poundCents: null },
 		])
 	})
 

@@ -4,6 +4,7 @@ import { prices, promotions, storePrices } from "~/db/schema"
 import { readProducer, withProducer } from "~/db/transaction.server"
 import { addDays } from "~/domain/calendar"
 import { breaksForStore, caseCentsAfter, promotionInForce } from "~/domain/pricing/price-in-force"
+import { findPricesOfStores } from "~/services/pricing/find-prices-of-stores.server"
 import { findStorePrices } from "~/services/pricing/find-store-prices.server"
 import { addProduct, openStore, openYard } from "../orders/place-yard"
 
@@ -29,6 +30,7 @@ const aPromotion = fc
 test("the prices that a store is shown are those that the rule gives, whatever has been set and has ended", async () => {
 	const yard = await openYard()
 	const { storeId } = await openStore(yard)
+	const { storeId: otherId } = await openStore(yard)
 	const { producerId, tierId } = yard
 	let made = 0
 	await fc.assert(
@@ -57,8 +59,10 @@ test("the prices that a store is shown are those that the rule gives, whatever h
 						await tx.insert(promotions).values(offs.map((off) => ({ ...row, tierId: null, name: "some days", ...off })))
 					}
 				})
-				const [found] = await readProducer(producerId, (tx) =>
-					findStorePrices(tx, { producerId, storeId, today: TODAY, productIds: [productId] }),
+				const query = { producerId, today: TODAY, productIds: [productId] }
+				const [found] = await readProducer(producerId, (tx) => findStorePrices(tx, { ...query, storeId }))
+				const ofStores = await readProducer(producerId, (tx) =>
+					findPricesOfStores(tx, { ...query, storeIds: [storeId, otherId] }),
 				)
 				const off = promotionInForce(offs, TODAY)
 				const sizes = { pieceNetGrams: found?.pieceNetGrams ?? 0, piecesPerCase: found?.piecesPerCase ?? 0 }
@@ -67,6 +71,13 @@ test("the prices that a store is shown are those that the rule gives, whatever h
 					...caseCentsAfter(price, sizes, off),
 				}))
 				expect(found?.breaks ?? []).toEqual(ruled)
+				// The statement for many stores at once says the same of each: the other has no price of its own.
+				expect(ofStores.get(storeId)?.[0]).toEqual(found)
+				const ofTier = breaksForStore({ own: [], tier }, TODAY).map((price) => ({
+					minCases: price.minCases,
+					...caseCentsAfter(price, sizes, off),
+				}))
+				expect(found === undefined ? [] : (ofStores.get(otherId)?.[0]?.breaks ?? [])).toEqual(found ? ofTier : [])
 			},
 		),
 		{ numRuns: 120 },

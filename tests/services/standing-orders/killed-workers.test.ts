@@ -10,7 +10,7 @@ import { makeDueOrders } from "~/services/standing-orders/make-due-orders.server
 import { setStandingOrder } from "~/services/standing-orders/set-standing-order.server"
 import { addProduct, openStore, openYard, THURSDAY, ZONE } from "../orders/place-yard"
 
-const STORES = 60
+const STORES = 200
 const FRIDAY_NOON = "2026-08-14T16:00:00Z"
 const SCRIPT = fileURLToPath(new URL("make-due.process.ts", import.meta.url))
 
