@@ -63,9 +63,10 @@ export const action = guard(
 		const query = { producerId: producer.id, number, personId: person.id }
 		const { values, weighed, ...typed } = readWeights(form)
 		if (Object.keys(typed.errors).length > 0) return data({ number, values, ...typed, problem: null }, { status: 422 })
-		const answer = intent === "pack" ? await packOrder({ ...query, weighed }) : await sendOrder({ ...query, producer })
+		const sending = intent === "send" ? await sendOrder({ ...query, producer }) : null
+		const answer = sending ?? (await packOrder({ ...query, weighed }))
 		if (answer.ok) {
-			const done = `Order ${number} is ${"invoiceNumber" in answer ? sentWords(answer.invoiceNumber) : "packed"}.`
+			const done = `Order ${number} is ${sending?.ok ? sentWords(sending.invoiceNumber) : "packed"}.`
 			throw redirect(`${url.pathname}?${new URLSearchParams({ day, done })}`)
 		}
 		if (answer.reason === "no-such-order") throw data(null, { status: 404 })
