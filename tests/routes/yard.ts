@@ -55,7 +55,8 @@ export async function openYard(owner: pg.Client): Promise<Yard> {
 	const saleId = randomUUID()
 	const takeId = randomUUID()
 	const certificateId = randomUUID()
-	const [creditId, reportId, brokenLineId, pictureId, invoiceLineId] = Array.from({ length: 5 }, () => randomUUID())
+	const [creditId, reportId, invoiceLineId] = [randomUUID(), randomUUID(), randomUUID()]
+	const [brokenLineId, pictureId] = [randomUUID(), randomUUID()]
 	const [beeYardId, hiveId, superId, photoId] = [randomUUID(), randomUUID(), randomUUID(), randomUUID()]
 	const insert = async (table: string, row: Record<string, unknown>) => {
 		const columns = Object.keys(row)

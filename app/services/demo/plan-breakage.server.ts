@@ -145,6 +145,7 @@ function credit(season: Season, plan: Breakage, stock: Stock, invoices: Invoices
 		fromPlace: "sold",
 		fromRef: invoice.order.id,
 		toPlace: "waste",
+		toRef: invoice.order.id,
 		pieces: BROKEN,
 		reason: "arrived broken",
 		movedBy: by,

@@ -12,7 +12,7 @@ import { addHand, packed, producerOf } from "../desk/desk-steps"
 import { addProduct, openStore, openYard, type Shop, type Yard } from "../orders/place-yard"
 
 /** Thursday after the delivery of Tuesday, August 18: within the three days in which broken comb may be reported. */
-export const AFTER_DELIVERY = new Date("2026-08-20T14:00:00Z")
+const AFTER_DELIVERY = new Date("2026-08-20T14:00:00Z")
 
 /** A delivery of two cases (24 pieces, $228.00, no delivery charge asked) that was sent and invoiced. */
 export async function openDelivery(yardGiven?: Yard, cases = 2) {
