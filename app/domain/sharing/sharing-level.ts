@@ -7,7 +7,7 @@ export type SharingRule = "equal-shares" | "in-proportion" | "equal-shortfall"
 export const NEARLY = 1e-9
 
 /** What is asked and with which weight, claim by claim. */
-export type Askings = { asked: Float64Array; weight: Float64Array }
+type Askings = { asked: Float64Array; weight: Float64Array }
 
 /** Exact shares by one rule, from which claims can be taken out one by one; what they had goes to the others. */
 export class SharingLevel {

@@ -18,7 +18,7 @@ const AFTER_LAST_ORDERS = "2026-08-14T17:00:00Z"
  * A producer with `stores` stores, each with a standing order of three of twelve products for one delivery. Half of the
  * products reach for all who ask.
  */
-export async function openStores(stores: number): Promise<string> {
+async function openStores(stores: number): Promise<string> {
 	const producerId = randomUUID()
 	const email = `${producerId}@bench.example.test`
 	await withPlatform((tx) => tx.execute(sql`insert into users (email, name) values (${email}, 'Buyer')`))
