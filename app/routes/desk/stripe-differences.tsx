@@ -50,7 +50,9 @@ export default function StripeDifferences({ loaderData, params }: Route.Componen
 							<th scope="col" className="max-desk:hidden">
 								Found
 							</th>
-							<th scope="col">What differs</th>
+							<th scope="col" className="max-desk:pl-4!">
+								What differs
+							</th>
 							<th scope="col" className="num max-desk:hidden">
 								Here
 							</th>
@@ -66,7 +68,7 @@ export default function StripeDifferences({ loaderData, params }: Route.Componen
 						{differences.map((one) => (
 							<tr key={one.id}>
 								<td className="max-desk:hidden">{fullDay(one.foundOn)}</td>
-								<td>
+								<td className="max-desk:pl-4!">
 									<b className="name">{differenceWords(one.kind)}</b>
 									<span className="note block desk:hidden">
 										{fullDay(one.foundOn)}: here {amountWords(one.ourCents)}, at Stripe {amountWords(one.theirCents)}.
