@@ -40,7 +40,8 @@ export const invoiceProps = z
 		store: z.object({ name: words, contactName: words.nullish(), address: words.nullish() }),
 		order: z.object({ number: words, placedOn: day }).nullish(),
 		orders: z.array(invoicedOrder).max(500).optional(),
-		poNumbers: words.nullish(),
+		// Those of all orders of a month in a row.
+		poNumbers: z.string().trim().min(1).max(20_000).nullish(),
 		delivered: z
 			.object({
 				from: day.nullish(),

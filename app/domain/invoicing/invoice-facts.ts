@@ -72,7 +72,13 @@ function toStore({ store, order, orders = [], poNumbers }: InvoiceFacts): Party 
 	return {
 		group: "To",
 		name: store.name,
-		facts: known([store.contactName, store.address, ordered, poNumbers && `Your number: ${poNumbers}`]),
+		// Of several orders each has its number beside it.
+		facts: known([
+			store.contactName,
+			store.address,
+			ordered,
+			orders.length < 2 && poNumbers && `Your number: ${poNumbers}`,
+		]),
 	}
 }
 

@@ -163,7 +163,7 @@ function RateTable({ book }: { book: Book }) {
 					<tr key={rate.id} className={rate.standing === "past" ? "text-ink-soft" : undefined}>
 						<td>{rate.place}</td>
 						<td>{fullDay(rate.validFrom)}</td>
-						<td className="num">{percentWords(rate.basisPoints)}</td>
+						<td className="num whitespace-nowrap">{percentWords(rate.basisPoints)}</td>
 						<td>{STANDING_WORDS[rate.standing]}</td>
 						<td className="pr-4! desk:pr-8!">
 							{rate.standing === "in-force" && storesWords(book, rate.place)}

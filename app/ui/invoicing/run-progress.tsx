@@ -24,7 +24,7 @@ export function RunProgress({ done, refused, waiting }: { done: number; refused:
 				</noscript>
 			)}
 			<p className="px-4 py-3 desk:px-8" role="status">
-				<progress className="cold-progress" max={all} value={done + refused} aria-label={words} /> {words}
+				<progress className="run-progress" max={all} value={done + refused} aria-label={words} /> {words}
 				{refused > 0 && <span className="short font-semibold">, {refused} of them refused</span>}
 			</p>
 		</>

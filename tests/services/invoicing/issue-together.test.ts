@@ -1,10 +1,12 @@
 import { randomUUID } from "node:crypto"
+import { sql } from "drizzle-orm"
 import { describe, expect, test, vi } from "vitest"
 import { bookClosings } from "~/db/schema"
 import { withProducer } from "~/db/transaction.server"
 import { issueMonthEnds, issueWaitingNow } from "~/services/invoicing/issue-together.server"
 import { listWaiting } from "~/services/invoicing/list-waiting.server"
 import { sendOrder } from "~/services/orders/send-order.server"
+import { renderMail } from "~emails/render"
 import { addHand, packed, producerOf, standOnThursday } from "../desk/desk-steps"
 import { addProduct, findOutbox, openStore, openYard } from "../orders/place-yard"
 import { agree, invoiceAt, issued } from "./invoicing-steps"
@@ -46,6 +48,18 @@ describe("one invoice for a month", () => {
 		])
 		const mails = (await findOutbox(yard.producerId)).filter(({ template }) => template === "invoice")
 		expect(mails).toHaveLength(1)
+	})
+
+	test("goes by mail also with the store's own numbers of many orders", async () => {
+		const { yard } = await monthlyYard()
+		await withProducer(yard.producerId, (tx) =>
+			tx.execute(sql`update orders set po_number = number || ${"4471".repeat(50)}`),
+		)
+		vi.setSystemTime(september)
+		await issueMonthEnds({ producerId: yard.producerId })
+		const [mail] = (await findOutbox(yard.producerId)).filter(({ template }) => template === "invoice")
+		const letter = await renderMail("invoice", mail?.props)
+		expect(letter.attachments).toMatchObject([{ filename: "invoice-2026-0001.pdf" }])
 	})
 
 	test("is made once, however often and by however many the job runs", async () => {
