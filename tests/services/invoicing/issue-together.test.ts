@@ -53,7 +53,7 @@ describe("one invoice for a month", () => {
 	test("goes by mail also with the store's own numbers of many orders", async () => {
 		const { yard } = await monthlyYard()
 		await withProducer(yard.producerId, (tx) =>
-			tx.execute(sql`update orders set po_number = number || ${"4471".repeat(50)}`),
+			tx.execute(sql`update orders set po_number = number::text || ${"4471".repeat(50)}::text`),
 		)
 		vi.setSystemTime(september)
 		await issueMonthEnds({ producerId: yard.producerId })
