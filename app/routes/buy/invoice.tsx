@@ -25,12 +25,13 @@ export const meta: Route.MetaFunction = ({ params }) => [{ title: `Invoice ${par
 
 export const loader = guard(admits.store("buyer", "payer"), async ({ params, url }: Route.LoaderArgs, scope) => {
 	const { producer, store, storeRoles } = scope
+	const ofStore = { producerId: producer.id, storeId: store.id }
+	// The visit first: where it says paid, what is read after it says so too.
+	const visit = await findVisit({ ...ofStore, visitId: url.searchParams.get("paid") })
 	const page = await findInvoice({ producerId: producer.id, storeId: store.id, number: params.invoice })
 	if (!page) throw data(null, { status: 404 })
 	const now = askClock()
 	const canPay = storeRoles.some(mayPay)
-	const ofStore = { producerId: producer.id, storeId: store.id }
-	const visit = await findVisit({ ...ofStore, visitId: url.searchParams.get("paid") })
 	const found = await findInvoicePayments({ ...ofStore, number: params.invoice })
 	return {
 		frame: await findBuyFrame(scope, { part: "invoices", now }),
@@ -38,7 +39,7 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 		care: page.care,
 		orderNumbers: page.orderNumbers,
 		openCents: page.openCents,
-		payableCents: canPay ? await payableCents(ofStore, params.invoice, dayInZone(now, producer.timeZone)) : 0,
+		payable: canPay ? await findPayable(ofStore, params.invoice, dayInZone(now, producer.timeZone)) : NOTHING,
 		payments: found?.payments ?? [],
 		onItsWayCents: found?.onItsWayCents ?? 0,
 		declineMessage: page.declineMessage,
@@ -51,10 +52,13 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ params, url
 	}
 })
 
+const NOTHING = { leftCents: 0, discountCents: 0 }
+
 /** What is to be paid of it today, less a discount and debits on their way. */
-async function payableCents(ofStore: { producerId: string; storeId: string }, number: string, today: string) {
+async function findPayable(ofStore: { producerId: string; storeId: string }, number: string, today: string) {
 	const { invoices } = await findPayPage({ ...ofStore, today })
-	return invoices.find((invoice) => invoice.number === number)?.leftCents ?? 0
+	const { leftCents, discountCents } = invoices.find((invoice) => invoice.number === number) ?? NOTHING
+	return { leftCents, discountCents }
 }
 
 async function payersOf(query: {
@@ -71,8 +75,8 @@ export const action = guard(admits.store("payer"), async ({ request, params }: R
 	const { producer, store, person } = scope
 	if ((await request.formData()).get("intent") !== "pay") throw data(null, { status: 400 })
 	const today = dayInZone(askClock(), producer.timeZone)
-	const cents = await payableCents({ producerId: producer.id, storeId: store.id }, params.invoice, today)
-	const wishes = [{ number: params.invoice, cents: Math.max(1, cents) }]
+	const { leftCents } = await findPayable({ producerId: producer.id, storeId: store.id }, params.invoice, today)
+	const wishes = [{ number: params.invoice, cents: Math.max(1, leftCents) }]
 	const started = await startPayment({ producer, store, person, wishes, method: "card" })
 	if (started.ok) throw redirect(started.url)
 	if (started.reason === "no-such-invoice") throw data(null, { status: 404 })
@@ -136,7 +140,8 @@ export default function Invoice({ loaderData, actionData, params }: Route.Compon
 }
 
 function Pay({ loaderData, payHref }: Pick<Route.ComponentProps, "loaderData"> & { payHref: string }) {
-	const { openCents, payableCents, canPay, payers, isOnItsWay } = loaderData
+	const { openCents, canPay, payers, isOnItsWay } = loaderData
+	const { leftCents, discountCents } = loaderData.payable
 	const isLeaving = useNavigation().formMethod === "POST"
 	if (openCents === 0 || isOnItsWay) return null
 	if (!canPay) {
@@ -144,7 +149,7 @@ function Pay({ loaderData, payHref }: Pick<Route.ComponentProps, "loaderData"> &
 			payers.length > 0 ? `${payers.join(" and ")} can pay it by card` : "Nobody of your store pays by card yet"
 		return <p className="text-ink-soft">{who}; a check, cash or a transfer is as good.</p>
 	}
-	if (payableCents === 0) return null
+	if (leftCents === 0) return null
 	return (
 		<>
 			<Form method="post">
@@ -156,11 +161,9 @@ function Pay({ loaderData, payHref }: Pick<Route.ComponentProps, "loaderData"> &
 					busy={isLeaving}
 					busyLabel="Opening the card page"
 				>
-					Pay {formatMoney(payableCents)} by card
+					Pay {formatMoney(leftCents)} by card
 				</Button>
-				{payableCents < openCents && loaderData.onItsWayCents === 0 && (
-					<span className="note block">{formatMoney(openCents - payableCents)} off for paying early</span>
-				)}
+				{discountCents > 0 && <span className="note block">{formatMoney(discountCents)} off for paying early</span>}
 			</Form>
 			<Link className="py-1" to={payHref}>
 				Pay a part, or by bank debit

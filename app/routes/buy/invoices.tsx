@@ -21,9 +21,10 @@ export const loader = guard(admits.store("buyer", "payer"), async ({ url }: Rout
 	const now = askClock()
 	const today = dayInZone(now, producer.timeZone)
 	const after = url.searchParams.get("after")
-	const list = await listInvoices({ producerId: producer.id, storeId: store.id, filter: "all", today, after })
+	// The visit first: where it says paid, the list says so too.
 	const visitId = url.searchParams.get("paid")
 	const visit = await findVisit({ producerId: producer.id, storeId: store.id, visitId })
+	const list = await listInvoices({ producerId: producer.id, storeId: store.id, filter: "all", today, after })
 	return {
 		frame: await findBuyFrame(scope, { part: "invoices", now }),
 		today,

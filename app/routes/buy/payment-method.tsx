@@ -18,8 +18,9 @@ export const meta: Route.MetaFunction = () => [{ title: "Way to pay · Waxbill" 
 export const loader = guard(admits.store("payer"), async ({ url }: Route.LoaderArgs, scope) => {
 	const { producer, store } = scope
 	const ofStore = { producerId: producer.id, storeId: store.id }
-	const { agreedAt, ...way } = await findWayToPay(ofStore)
+	// The visit first: where it is done, what was kept is there.
 	const visit = await findVisit({ ...ofStore, visitId: url.searchParams.get("kept") })
+	const { agreedAt, ...way } = await findWayToPay(ofStore)
 	return {
 		frame: await findBuyFrame(scope, { part: "invoices" }),
 		producerName: producer.name,
