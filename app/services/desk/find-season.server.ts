@@ -12,10 +12,9 @@ import {
 } from "~/domain/orders/season"
 import { cadenceOf } from "~/domain/standing-orders/cadence"
 import { linesOnDate } from "~/domain/standing-orders/lines-on-date"
-import { rememberedOccurrences } from "~/domain/standing-orders/recurrence"
 import { findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { readStandingOrders } from "~/services/standing-orders/read-standing-orders.server"
-import { standingDates } from "~/services/standing-orders/standing-dates.server"
+import { newDateMemory, standingDates } from "~/services/standing-orders/standing-dates.server"
 
 /** Half a year: a season with what is committed before it. */
 const WEEKS = 26
@@ -162,12 +161,12 @@ async function addStanding(
 	if (standing.length === 0) return []
 	const all = await findDeliverySchedule(tx, { ...query, storeId: null })
 	const weekdays = await findWeekdays(tx, producerId)
-	const datesOf = rememberedOccurrences()
+	const memory = newDateMemory()
 	for (const order of standing) {
 		const ofStore = weekdays.get(order.storeId) ?? []
 		const schedule = { ...all, rounds: all.rounds.filter((one) => ofStore.includes(one.weekday)) }
 		const ofClass = order.isCommitment ? "commitment" : "standing"
-		for (const { ruleOn, deliveryOn, isSkipped } of standingDates(order, schedule, WEEKS, datesOf)) {
+		for (const { ruleOn, deliveryOn, isSkipped } of standingDates(order, schedule, WEEKS, memory)) {
 			if (isSkipped || deliveryOn > to || made.has(`${order.id} ${ruleOn}`)) continue
 			for (const { productId, cases } of linesOnDate(order.lines, order.changes, ruleOn)) {
 				const product = products.get(productId)

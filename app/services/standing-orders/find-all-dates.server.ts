@@ -1,9 +1,8 @@
 import { type SQL, sql } from "drizzle-orm"
 import type { Tx } from "~/db/transaction.server"
-import { rememberedOccurrences } from "~/domain/standing-orders/recurrence"
 import { type DeliverySchedule, findDeliverySchedule } from "~/services/delivery/find-delivery-days.server"
 import { readStandingOrders, type StandingOrder } from "./read-standing-orders.server"
-import { type DueDate, standingDates } from "./standing-dates.server"
+import { type DueDate, newDateMemory, standingDates } from "./standing-dates.server"
 
 /** Dates of one standing order whose cut-off can have passed while the delivery is still to come. */
 const DATES_WITHIN_A_FORTNIGHT = 15
@@ -26,11 +25,11 @@ export async function findAllDates(
 	if (standingOrders.length === 0) return []
 	const all = await findDeliverySchedule(tx, { producerId, storeId: null, now, zone })
 	const weekdays = await findStoreWeekdays(tx, producerId)
-	const datesOf = rememberedOccurrences()
+	const memory = newDateMemory()
 	return standingOrders.map((standing) => {
 		const stops = weekdays.get(standing.storeId) ?? []
 		const schedule = { ...all, rounds: all.rounds.filter((round) => stops.includes(round.weekday)) }
-		return { standing, schedule, dates: standingDates(standing, schedule, DATES_WITHIN_A_FORTNIGHT, datesOf) }
+		return { standing, schedule, dates: standingDates(standing, schedule, DATES_WITHIN_A_FORTNIGHT, memory) }
 	})
 }
 
