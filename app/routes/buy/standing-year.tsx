@@ -34,7 +34,11 @@ export default function StandingYear({ loaderData }: Route.ComponentProps) {
 					</Link>
 				}
 			/>
-			{loaderData.rows.length === 0 ? <EmptyLine>No date lies ahead: no standing order runs.</EmptyLine> : <YearTable rows={loaderData.rows} />}
+			{loaderData.rows.length === 0 ? (
+				<EmptyLine>No date lies ahead: no standing order runs.</EmptyLine>
+			) : (
+				<YearTable rows={loaderData.rows} />
+			)}
 			<SeasonTotals season={loaderData.season} />
 		</BuyBook>
 	)

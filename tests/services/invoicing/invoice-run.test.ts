@@ -3,7 +3,7 @@ import { describe, expect, test, vi } from "vitest"
 import { findInvoiceRun } from "~/services/invoicing/find-invoice-run.server"
 import { sendInvoiceRun } from "~/services/invoicing/send-invoice-run.server"
 import { startInvoiceRun } from "~/services/invoicing/start-invoice-run.server"
-import { addHand, packed, producerOf, standOnThursday } from "../desk/desk-steps"
+import { addHand, packed, standOnThursday } from "../desk/desk-steps"
 import { addProduct, findOutbox, openStore, openYard, TUESDAY_18 } from "../orders/place-yard"
 import { issued, priceByWeight } from "./invoicing-steps"
 
