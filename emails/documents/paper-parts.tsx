@@ -114,10 +114,7 @@ export function Sums({ charges, total }: SumsProps) {
 	return (
 		<View wrap={false}>
 			{charges.map((charge) => (
-				<View key={charge.label} style={paper.charge}>
-					<Text style={[paper.text, { flex: 1 }]}>{charge.label}</Text>
-					<Text style={paper.amount}>{plainMoney(charge.cents)}</Text>
-				</View>
+				<Sum key={charge.label} {...charge} />
 			))}
 			<View style={paper.total}>
 				<Text style={paper.totalWords}>{total.label}</Text>
@@ -126,6 +123,16 @@ export function Sums({ charges, total }: SumsProps) {
 					<DoubleRule />
 				</View>
 			</View>
+		</View>
+	)
+}
+
+/** One amount with its words. */
+export function Sum({ label, cents }: { label: string; cents: number }) {
+	return (
+		<View style={paper.charge}>
+			<Text style={[paper.text, { flex: 1 }]}>{label}</Text>
+			<Text style={paper.amount}>{plainMoney(cents)}</Text>
 		</View>
 	)
 }

@@ -1,10 +1,11 @@
 import { and, eq, inArray, isNull } from "drizzle-orm"
-import { orderLineLots, orders, outboxMails, stockBalances, stockMoves } from "~/db/schema"
+import { orderLineLots, orders, outboxMails } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { canMove, type OrderState } from "~/domain/orders/order-states"
 import type { Result } from "~/domain/result"
 import { confirmationKey } from "./confirm-order.server"
 import { type LockedOrder, lockOrder } from "./lock-order.server"
+import { movePacked } from "./move-packed.server"
 import { recordChange } from "./record-change.server"
 
 /**
@@ -52,30 +53,8 @@ export function cancelFromDesk(query: {
 
 async function unpack(tx: Tx, { order, personId }: { order: LockedOrder; personId: string }): Promise<void> {
 	const { producerId } = order
-	const packed = await tx
-		.select({ lotId: stockBalances.lotId, pieces: stockBalances.pieces })
-		.from(stockBalances)
-		.where(
-			and(
-				eq(stockBalances.producerId, producerId),
-				eq(stockBalances.place, "packed"),
-				eq(stockBalances.placeRef, order.id),
-			),
-		)
-		.orderBy(stockBalances.lotId)
-	const moves = packed
-		.filter(({ pieces }) => pieces > 0)
-		.map(({ lotId, pieces }) => ({
-			producerId,
-			lotId,
-			fromPlace: "packed" as const,
-			fromRef: order.id,
-			toPlace: "ready" as const,
-			pieces,
-			reason: `order ${order.number} was cancelled`,
-			movedBy: personId,
-		}))
-	if (moves.length > 0) await tx.insert(stockMoves).values(moves)
+	const reason = `order ${order.number} was cancelled`
+	await movePacked(tx, { producerId, orderId: order.id, to: "ready", reason, personId })
 	const lineIds = order.lines.map((line) => line.id)
 	await tx
 		.delete(orderLineLots)

@@ -1,6 +1,6 @@
 import { and, eq, sql } from "drizzle-orm"
 import { breaksConstraint } from "~/db/errors.server"
-import { orders, stockBalances, stockMoves } from "~/db/schema"
+import { orders } from "~/db/schema"
 import { type Tx, withProducer } from "~/db/transaction.server"
 import { dayInZone } from "~/domain/calendar"
 import { canMove } from "~/domain/orders/order-states"
@@ -8,6 +8,7 @@ import { now } from "~/platform/clock.server"
 import { issueInvoice } from "~/services/invoicing/issue-invoice.server"
 import { type InvoiceRefusal, planInvoice } from "~/services/invoicing/plan-invoice.server"
 import { lockOrder } from "./lock-order.server"
+import { movePacked } from "./move-packed.server"
 import { recordChange } from "./record-change.server"
 
 export type Sending =
@@ -51,7 +52,8 @@ export async function sendOrderIn(tx: Tx, query: OrderToSend): Promise<Sending> 
 	const isMonthly = order.store.invoicing === "month-end"
 	const planned = await planInvoice(tx, { producerId: producer.id, orders: [order], issuedOn })
 	if (!planned.ok && !(isMonthly && planned.reason === "books-closed")) return planned
-	await moveToSold(tx, { producerId: producer.id, order, personId })
+	const reason = `sent with order ${order.number}`
+	await movePacked(tx, { producerId: producer.id, orderId: order.id, to: "sold", reason, personId })
 	await tx
 		.update(orders)
 		.set({ state: "sent" })
@@ -59,39 +61,6 @@ export async function sendOrderIn(tx: Tx, query: OrderToSend): Promise<Sending> 
 	await recordChange(tx, { producerId: producer.id, orderId: order.id, kind: "sent", userId: personId })
 	if (isMonthly || !planned.ok) return { ok: true, invoiceNumber: null }
 	return { ok: true, invoiceNumber: await issueInvoice(tx, { producer, plan: planned.plan, personId }) }
-}
-
-/** What lies packed for the order is sold with it. */
-async function moveToSold(
-	tx: Tx,
-	query: { producerId: string; order: { id: string; number: number }; personId: string },
-): Promise<void> {
-	const { producerId, order, personId } = query
-	const packed = await tx
-		.select({ lotId: stockBalances.lotId, pieces: stockBalances.pieces })
-		.from(stockBalances)
-		.where(
-			and(
-				eq(stockBalances.producerId, producerId),
-				eq(stockBalances.place, "packed"),
-				eq(stockBalances.placeRef, order.id),
-			),
-		)
-		.orderBy(stockBalances.lotId)
-	const moves = packed
-		.filter(({ pieces }) => pieces > 0)
-		.map(({ lotId, pieces }) => ({
-			producerId,
-			lotId,
-			fromPlace: "packed" as const,
-			fromRef: order.id,
-			toPlace: "sold" as const,
-			toRef: order.id,
-			pieces,
-			reason: `sent with order ${order.number}`,
-			movedBy: personId,
-		}))
-	if (moves.length > 0) await tx.insert(stockMoves).values(moves)
 }
 
 /** The code of a withdrawn lot that the order was packed from, or null. Its lots can be withdrawn only after this. */
